@@ -1,0 +1,62 @@
+#pragma once
+
+#include <runnel/export.hpp>
+#include <runnel/plan.hpp>
+#include <runnel/takedown.hpp>
+
+#include <cstdint>
+#include <functional>
+#include <optional>
+#include <span>
+#include <string>
+#include <string_view>
+
+RUNNEL_NAMESPACE_BEGIN
+
+/// Takes text as it is made; called many times with parts in order.
+using TextSink = std::function<void(std::string_view)>;
+
+struct ReportOptions {
+    std::optional<Units> units; ///< else the plan's
+    std::string digest;         ///< of the plan's text; empty: none
+    bool colour = false;        ///< text account only
+};
+
+enum class Table : std::uint8_t { members, reactions, rundowns, foundations };
+
+/// The cautions that every report prints, a sentence each.
+[[nodiscard]] RUNNEL_EXPORT std::span<const std::string_view> cautions() noexcept;
+
+/// The result document (result/1), streamed in fixed key order; the same takedown gives the same bytes.
+/// An incomplete takedown gives a document with its problems and nothing computed.
+/// `reading_problems` come before the takedown's own.
+RUNNEL_EXPORT void write_result(const Takedown& takedown, std::span<const Problem> reading_problems,
+                                const ReportOptions& options, const TextSink& sink);
+
+/// The short account for people, at most 100 columns: uplift, balance with load per deck area, members,
+/// rundowns, foundations, warnings, cautions.
+RUNNEL_EXPORT void write_account(const Takedown& takedown, const ReportOptions& options,
+                                 const TextSink& sink);
+
+/// A table as CSV (RFC 4180), units in the header.
+RUNNEL_EXPORT void write_table(const Takedown& takedown, Table table, const ReportOptions& options,
+                               const TextSink& sink);
+
+/// Regions alone, as JSON ({"levels": [{id, regions}]}) or, for one level, as SVG.
+RUNNEL_EXPORT void write_regions(const Plan& plan, const Framing& framing, std::span<const Sharing> sharings,
+                                 const ReportOptions& options, const TextSink& sink);
+
+/// Problems for people, one block each: severity, code, place, sentence, hint. `file` stands before line and
+/// column.
+RUNNEL_EXPORT void write_problems(std::span<const Problem> problems, std::string_view file, Units units,
+                                  bool colour, const TextSink& sink);
+
+/// {"problems": [...]} as in the result document, with `file` on each where it is not empty.
+struct FileProblems {
+    std::string file;
+    Units units;
+    std::span<const Problem> problems;
+};
+RUNNEL_EXPORT void write_problems_json(std::span<const FileProblems> files, const TextSink& sink);
+
+RUNNEL_NAMESPACE_END

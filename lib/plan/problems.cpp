@@ -1,0 +1,96 @@
+#include "plan/problems.hpp"
+
+#include <array>
+#include <charconv>
+#include <cmath>
+
+RUNNEL_NAMESPACE_BEGIN
+
+std::string pointer_to(const Origin& origin, std::string_view list) {
+    std::string text;
+    if (origin.level != Origin::nowhere) {
+        text += "/levels/" + std::to_string(origin.level);
+    }
+    if (!list.empty()) {
+        text += '/';
+        text += list;
+        if (origin.index != Origin::nowhere) {
+            text += '/' + std::to_string(origin.index);
+        }
+    }
+    return text;
+}
+
+Problem problem_at(ProblemCode code, const Origin& origin, std::string_view list, std::string message,
+                   std::string hint, std::vector<std::string> ids) {
+    Problem problem;
+    problem.code = code;
+    problem.severity = kind_of(code).severity;
+    problem.message = std::move(message);
+    problem.hint = std::move(hint);
+    problem.pointer = pointer_to(origin, list);
+    problem.line = origin.line;
+    problem.column = origin.column;
+    problem.ids = std::move(ids);
+    return problem;
+}
+
+Problem problem_inside(ProblemCode code, const Origin& origin, std::string_view list, std::string_view inside,
+                       std::string message, std::string hint, std::vector<std::string> ids) {
+    Problem problem = problem_at(code, origin, list, std::move(message), std::move(hint), std::move(ids));
+    problem.pointer += inside;
+    problem.line = 0;
+    problem.column = 0;
+    return problem;
+}
+
+namespace {
+std::string shortest(double value) {
+    std::array<char, 40> buffer;
+    const auto [end, error] = std::to_chars(buffer.data(), buffer.data() + buffer.size(), value);
+    return {buffer.data(), end};
+}
+} // namespace
+
+std::string exact_text(double value) {
+    return shortest(value == 0 ? 0.0 : value);
+}
+
+std::string text_of(double value) {
+    std::array<char, 64> buffer;
+    const bool plain = value == 0 || (std::abs(value) >= 1e-4 && std::abs(value) < 1e9);
+    const auto [end, error] = plain ? std::to_chars(buffer.data(), buffer.data() + buffer.size(),
+                                                    value == 0 ? 0.0 : value, std::chars_format::general, 6)
+                                    : std::to_chars(buffer.data(), buffer.data() + buffer.size(), value,
+                                                    std::chars_format::general, 3);
+    std::string text(buffer.data(), end);
+    if (plain && text.find('e') != std::string::npos) {
+        const auto [fixed_end, fixed_error] =
+            std::to_chars(buffer.data(), buffer.data() + buffer.size(), value, std::chars_format::fixed, 0);
+        text.assign(buffer.data(), fixed_end);
+    }
+    return text;
+}
+
+namespace {
+std::string with_unit(double value, Units units, Dimension dimension) {
+    return text_of(value / si_per_unit(units, dimension)) + ' ' + unit_text(units, dimension);
+}
+} // namespace
+
+std::string length_text(double metres, Units units) {
+    return with_unit(metres, units, dimension::length);
+}
+std::string area_text(double square_metres, Units units) {
+    return with_unit(square_metres, units, dimension::area);
+}
+std::string force_text(double kilonewtons, Units units) {
+    return with_unit(kilonewtons, units, dimension::force);
+}
+
+std::string point_text(Point point, Units units) {
+    const double scale = si_per_unit(units, dimension::length);
+    return '(' + text_of(point.x / scale) + ", " + text_of(point.y / scale) + ')';
+}
+
+RUNNEL_NAMESPACE_END
