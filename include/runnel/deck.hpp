@@ -59,6 +59,9 @@ struct Cell {
     Border low;
     Border high;
     bool overhang = false;
+    enum class CarrierSide : std::uint8_t { neither, low, high };
+    CarrierSide carrier_side =
+        CarrierSide::neither; ///< which border lies on the carrier of its first transfer
 };
 
 /// A stretch of strips of a one-way deck between two neighbouring carriers, or from the deck's edge to the

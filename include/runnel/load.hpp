@@ -44,9 +44,9 @@ struct ForceSum {
     double magnitude = 0; ///< kN
 };
 
-/// What was put on a deck and what it gave to its carriers, by case.
+/// What area loads and own weight put on a deck and what it gave to its carriers, by case.
 struct DeckBalance {
-    std::uint32_t deck = none; ///< `none`: loads put straight on carriers, and their own weight
+    std::uint32_t deck = none; ///< `none`: line and point loads and the members' own weight
     std::uint32_t load_case = 0;
     ForceSum applied; ///< from zones and decks, without looking at carriers
     ForceSum shared;  ///< from the loads on carriers

@@ -1,0 +1,84 @@
+#include "deck/one_way.hpp"
+#include "geometry/basic.hpp"
+#include "geometry/box_tree.hpp"
+#include "plan/problems.hpp"
+
+#include <runnel/deck.hpp>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+/// Members and walls of a level that decks may bear on.
+std::vector<LineCarrier> line_carriers(const Plan& plan, const FramedLevel& level, const Sharing& sharing) {
+    std::vector<LineCarrier> carriers;
+    carriers.reserve(level.members.size() + level.walls.size());
+    for (std::uint32_t m = 0; m < level.members.size(); ++m) {
+        if (level.members[m].carries_deck) {
+            carriers.push_back({m, level.members[m].from, level.members[m].to});
+        }
+    }
+    for (const std::uint32_t w : level.walls) {
+        carriers.push_back({sharing.number_of({CarrierKind::wall, w}), plan.walls[w].from, plan.walls[w].to});
+    }
+    return carriers;
+}
+
+void refuse(const FramedLevel& level, const FramedDeck& deck, std::string_view what, Sharing& sharing) {
+    sharing.problems.push_back(problem_at(ProblemCode::not_supported_yet, deck.origin, "decks",
+                                          "Level " + level.id + ", deck " + deck.id + ": " +
+                                              std::string(what) + " is not supported yet.",
+                                          "Use \"span\": \"one-way\" with \"share\": \"half\".", {deck.id}));
+}
+
+double area_of(const FramedDeck& deck) {
+    double area = std::abs(signed_area(deck.outline));
+    for (const Ring& opening : deck.openings) {
+        area -= std::abs(signed_area(opening));
+    }
+    return area;
+}
+
+} // namespace
+
+Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t level_index) {
+    const FramedLevel& level = framing.levels[level_index];
+    Sharing sharing;
+    sharing.members = static_cast<std::uint32_t>(level.members.size());
+    sharing.walls = static_cast<std::uint32_t>(plan.walls.size());
+    sharing.columns = static_cast<std::uint32_t>(plan.columns.size());
+
+    const std::vector<LineCarrier> carriers = line_carriers(plan, level, sharing);
+    std::vector<Box> boxes;
+    boxes.reserve(carriers.size());
+    for (const LineCarrier& carrier : carriers) {
+        boxes.push_back(box_of(carrier.from, carrier.to));
+    }
+    const BoxTree tree(boxes);
+
+    std::vector<std::uint32_t> near;
+    std::vector<LineCarrier> beside;
+    for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
+        const FramedDeck& deck = level.decks[d];
+        sharing.deck_area.push_back(area_of(deck));
+        if (deck.span != SpanKind::one_way) {
+            refuse(level, deck, "span " + std::string(name_of(deck.span)), sharing);
+            continue;
+        }
+        if (deck.share != Share::half) {
+            refuse(level, deck, "share " + std::string(name_of(deck.share)), sharing);
+            continue;
+        }
+        tree.find(box_of(deck.outline).grown(plan.settings.snap), near);
+        beside.clear();
+        for (const std::uint32_t i : near) {
+            beside.push_back(carriers[i]);
+        }
+        const std::size_t first_bay = sharing.bays.size();
+        share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
+        find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
+    }
+    return sharing;
+}
+
+RUNNEL_NAMESPACE_END

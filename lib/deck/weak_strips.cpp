@@ -1,0 +1,241 @@
+#include "deck/one_way.hpp"
+#include "deck/pressure.hpp"
+#include "geometry/basic.hpp"
+#include "plan/problems.hpp"
+
+#include <algorithm>
+#include <string>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+/// Length of a bay along the strips at a level across them.
+double length_at(const Bay& bay, double across) {
+    const double x = (across - bay.from) / (bay.to - bay.from);
+    return bay.high.at(x) - bay.low.at(x);
+}
+
+double area_between(const Bay& bay, double from, double to) {
+    return (to - from) * (length_at(bay, from) + length_at(bay, to)) / 2;
+}
+
+Point middle_of(const Bay& bay, const StripAxes& axes) {
+    return axes.to_plan({(bay.low.at(0.5) + bay.high.at(0.5)) / 2, (bay.from + bay.to) / 2});
+}
+
+bool is_unsupported(const Bay& bay) {
+    return bay.low_carrier == none && bay.high_carrier == none;
+}
+bool is_overhang(const Bay& bay) {
+    return (bay.low_carrier == none) != (bay.high_carrier == none);
+}
+
+/// An area that is weak in one way, gathered over the bays of a deck, and where its largest part lies.
+struct WeakArea {
+    double area = 0;
+    double largest = 0;
+    Point place;
+    std::vector<std::uint32_t> carriers;
+
+    void add(double part, Point where, std::uint32_t carrier) {
+        if (part <= 0) {
+            return;
+        }
+        area += part;
+        if (part > largest) {
+            largest = part;
+            place = where;
+        }
+        if (carrier != none) {
+            carriers.push_back(carrier);
+        }
+    }
+};
+
+std::string id_of(std::uint32_t carrier, const Plan& plan, const FramedLevel& level, const Sharing& sharing) {
+    const Carrier c = sharing.carrier(carrier);
+    return c.kind == CarrierKind::member ? level.members[c.index].id : plan.walls[c.index].id;
+}
+
+std::vector<std::string> ids_of(const FramedDeck& deck, WeakArea& weak, const Plan& plan,
+                                const FramedLevel& level, const Sharing& sharing) {
+    constexpr std::size_t most = 20;
+    std::sort(weak.carriers.begin(), weak.carriers.end());
+    weak.carriers.erase(std::unique(weak.carriers.begin(), weak.carriers.end()), weak.carriers.end());
+    std::vector<std::string> ids{deck.id};
+    for (std::size_t i = 0; i < weak.carriers.size() && i < most; ++i) {
+        ids.push_back(id_of(weak.carriers[i], plan, level, sharing));
+    }
+    return ids;
+}
+
+/// The bays of a deck by the carrier and the side on which it bounds them, to find the back span of an
+/// overhang.
+class BaysBeside {
+public:
+    BaysBeside(const Sharing& sharing, std::size_t first_bay) {
+        for (std::size_t i = first_bay; i < sharing.bays.size(); ++i) {
+            const Bay& bay = sharing.bays[i];
+            if (bay.low_carrier != none) {
+                rows_.push_back({bay.low_carrier, true, bay.from, i});
+            }
+            if (bay.high_carrier != none) {
+                rows_.push_back({bay.high_carrier, false, bay.from, i});
+            }
+        }
+        std::sort(rows_.begin(), rows_.end(), [](const Row& l, const Row& r) { return l.key() < r.key(); });
+    }
+
+    /// Calls f(bay index) for those that `carrier` bounds from below (or above) and that overlap from..to
+    /// across.
+    template <class F>
+    void visit(const Sharing& sharing, std::uint32_t carrier, bool from_below, double from, double to,
+               F f) const {
+        // Bays beside one carrier do not overlap across the strips, so the last that begins before `from` is
+        // the first that can reach it.
+        const Row key{carrier, from_below, from, 0};
+        auto it = std::upper_bound(rows_.begin(), rows_.end(), key,
+                                   [](const Row& l, const Row& r) { return l.key() < r.key(); });
+        if (it != rows_.begin() && std::prev(it)->carrier == carrier && std::prev(it)->below == from_below) {
+            --it;
+        }
+        for (; it != rows_.end() && it->carrier == carrier && it->below == from_below && it->from < to;
+             ++it) {
+            if (sharing.bays[it->bay].to > from) {
+                f(it->bay);
+            }
+        }
+    }
+
+private:
+    struct Row {
+        std::uint32_t carrier;
+        bool below;
+        double from;
+        std::size_t bay;
+        [[nodiscard]] std::tuple<std::uint32_t, bool, double> key() const { return {carrier, below, from}; }
+    };
+    std::vector<Row> rows_;
+};
+
+/// The part of from..to where an overhang is longer than half of its back span by more than `snap`.
+double long_overhang_area(const Bay& overhang, const Bay& back, double from, double to, double snap) {
+    const auto excess = [&](double across) {
+        return length_at(overhang, across) - length_at(back, across) / 2 - snap;
+    };
+    const double at_from = excess(from);
+    const double at_to = excess(to);
+    if (at_from <= 0 && at_to <= 0) {
+        return 0;
+    }
+    const double crossing = at_from * at_to < 0 ? from + (to - from) * at_from / (at_from - at_to) : from;
+    return area_between(overhang, at_from > 0 ? from : crossing, at_to > 0 || at_from <= 0 ? to : crossing);
+}
+
+void check_overhang(const Sharing& sharing, const BaysBeside& beside, const Bay& overhang, double snap,
+                    WeakArea& alone, WeakArea& too_long) {
+    const bool low_is_edge = overhang.low_carrier == none;
+    const std::uint32_t carrier = low_is_edge ? overhang.high_carrier : overhang.low_carrier;
+    const Point place = middle_of(overhang, sharing.axes[overhang.axes]);
+    if (std::max(overhang.high.start - overhang.low.start, overhang.high.end - overhang.low.end) <= snap) {
+        return; // the carrier runs along the edge
+    }
+    double backed = 0;
+    beside.visit(sharing, carrier, low_is_edge, overhang.from, overhang.to, [&](std::size_t index) {
+        const Bay& back = sharing.bays[index];
+        const double from = std::max(overhang.from, back.from);
+        const double to = std::min(overhang.to, back.to);
+        if (is_overhang(back)) {
+            return;
+        }
+        backed += area_between(overhang, from, to);
+        too_long.add(long_overhang_area(overhang, back, from, to, snap), place, carrier);
+    });
+    const double area = area_between(overhang, overhang.from, overhang.to);
+    if (const double rest = area - backed; rest > snap * (overhang.to - overhang.from)) {
+        alone.add(rest, place, carrier);
+    }
+}
+
+std::string loads_text(const Plan& plan, const FramedLevel& level, std::uint32_t deck, std::size_t first_bay,
+                       const Sharing& sharing, double noise) {
+    const StripAxes& axes = sharing.axes.back();
+    const DeckPressure pressure(plan, level, deck, area_loads_by_deck(level, noise)[deck], axes, noise);
+    std::vector<double> lost(plan.cases.size(), 0.0);
+    std::vector<DeckPressure::Piece> pieces;
+    for (std::size_t i = first_bay; i < sharing.bays.size(); ++i) {
+        const Bay& bay = sharing.bays[i];
+        if (!is_unsupported(bay)) {
+            continue;
+        }
+        const Convex where{{bay.low.start, bay.from},
+                           {bay.high.start, bay.from},
+                           {bay.high.end, bay.to},
+                           {bay.low.end, bay.to}};
+        for (const DeckPressure::Uniform& u : pressure.uniform()) {
+            lost[u.load_case] += u.q * moments_of(where, where.front()).area;
+        }
+        pressure.zones_over(where, pieces);
+        for (const DeckPressure::Piece& piece : pieces) {
+            lost[piece.load_case] += piece.q * moments_of(piece.where, where.front()).area;
+        }
+    }
+    std::string text;
+    for (std::size_t c = 0; c < lost.size(); ++c) {
+        if (lost[c] != 0) {
+            text += (text.empty() ? "" : ", ") + plan.cases[c].id + ' ' + force_text(lost[c], plan.units);
+        }
+    }
+    return text.empty() ? "no load" : text;
+}
+
+} // namespace
+
+void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t level_index,
+                      std::uint32_t deck_index, std::size_t first_bay, Sharing& sharing) {
+    const FramedLevel& level = framing.levels[level_index];
+    const FramedDeck& deck = level.decks[deck_index];
+    const double snap = plan.settings.snap;
+    const BaysBeside beside(sharing, first_bay);
+    WeakArea unsupported;
+    WeakArea alone;
+    WeakArea too_long;
+    for (std::size_t i = first_bay; i < sharing.bays.size(); ++i) {
+        const Bay& bay = sharing.bays[i];
+        if (is_unsupported(bay)) {
+            unsupported.add(area_between(bay, bay.from, bay.to), middle_of(bay, sharing.axes[bay.axes]),
+                            none);
+        } else if (is_overhang(bay)) {
+            check_overhang(sharing, beside, bay, snap, alone, too_long);
+        }
+    }
+
+    const auto report = [&](ProblemCode code, WeakArea& weak, const std::string& sentence, const char* hint) {
+        if (weak.area <= 0) {
+            return;
+        }
+        Problem problem = problem_at(code, deck.origin, "decks",
+                                     "Level " + level.id + ", deck " + deck.id + ": " +
+                                         area_text(weak.area, plan.units) + ' ' + sentence +
+                                         ", the largest part at " + point_text(weak.place, plan.units) + '.',
+                                     hint, ids_of(deck, weak, plan, level, sharing));
+        problem.point = weak.place;
+        sharing.problems.push_back(std::move(problem));
+    };
+    if (unsupported.area > 0) {
+        const std::string lost =
+            loads_text(plan, level, deck_index, first_bay, sharing, noise_of(framing.largest_coordinate));
+        report(ProblemCode::strip_unsupported, unsupported,
+               "lie in strips that no carrier crosses (" + lost + " would be lost)",
+               "Strips run along `direction`; members along them carry nothing. Turn the direction, end the "
+               "deck at its "
+               "carriers, or add a member across.");
+    }
+    report(ProblemCode::strip_cantilevers, alone, "hang on one carrier alone",
+           "Is a beam missing on the other side, or is the deck built in there?");
+    report(ProblemCode::strip_cantilevers, too_long, "overhang by more than half of the span behind",
+           "Is a beam missing at the edge?");
+}
+
+RUNNEL_NAMESPACE_END

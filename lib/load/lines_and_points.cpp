@@ -1,0 +1,399 @@
+#include "load/phases.hpp"
+
+#include "deck/pressure.hpp"
+#include "load/standing.hpp"
+#include "plan/problems.hpp"
+
+#include <algorithm>
+#include <cmath>
+#include <map>
+#include <optional>
+#include <span>
+#include <string>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+/// A member or wall of the level as a line that loads can be put on.
+struct Axis {
+    std::uint32_t number = none; ///< in Sharing
+    Point from, to;
+    double length = 0;
+    Role role = Role::joist;
+    bool wall = false;
+    std::string_view id;
+};
+
+struct Interval {
+    double from = 0, to = 0;
+};
+
+class LoadPlacer {
+public:
+    LoadPlacer(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
+               Collector& collector)
+        : plan_(plan), level_(framing.levels[level]), sharing_(sharing), collector_(collector),
+          bays_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)) {
+        for (std::uint32_t i = 0; i < axes_.size(); ++i) {
+            by_id_.emplace(axes_[i].id, i);
+        }
+    }
+
+    void place_lines() {
+        for (std::uint32_t i = 0; i < level_.line_loads.size(); ++i) {
+            const LineLoad& load = level_.line_loads[i];
+            const double length = distance(load.from, load.to);
+            const double force = length * (load.w_from + load.w_to) / 2;
+            const Point moment =
+                length / 6 *
+                ((2 * load.w_from + load.w_to) * load.from + (load.w_from + 2 * load.w_to) * load.to);
+            const LinePiece whole{0, length, {load.w_from, (load.w_to - load.w_from) / length, 0, 0, 0}};
+            collector_.applied(none, case_index(plan_, load.case_id), force, moment, magnitude_of(whole));
+            if (load.on.empty()) {
+                place_standing(i);
+            } else {
+                place_on(i);
+            }
+        }
+    }
+
+    void place_points() {
+        for (std::uint32_t i = 0; i < level_.point_loads.size(); ++i) {
+            const PointLoad& load = level_.point_loads[i];
+            collector_.applied(none, case_index(plan_, load.case_id), load.p, load.p * load.at,
+                               std::abs(load.p));
+            if (load.on.empty()) {
+                place_standing_point(i);
+            } else {
+                place_point_on(i);
+            }
+        }
+    }
+
+private:
+    [[nodiscard]] std::vector<Axis> axes_of_level() const {
+        std::vector<Axis> axes;
+        axes.reserve(level_.members.size() + level_.walls.size());
+        for (std::uint32_t m = 0; m < level_.members.size(); ++m) {
+            const FramedMember& member = level_.members[m];
+            axes.push_back({m, member.from, member.to, member.length, member.role, false, member.id});
+        }
+        for (const std::uint32_t w : level_.walls) {
+            const Wall& wall = plan_.walls[w];
+            axes.push_back({sharing_.number_of({CarrierKind::wall, w}), wall.from, wall.to,
+                            distance(wall.from, wall.to), Role::girder, true, wall.id});
+        }
+        return axes;
+    }
+
+    static std::vector<Box> boxes_of(const std::vector<Axis>& axes) {
+        std::vector<Box> boxes;
+        boxes.reserve(axes.size());
+        for (const Axis& axis : axes) {
+            boxes.push_back(box_of(axis.from, axis.to));
+        }
+        return boxes;
+    }
+
+    [[nodiscard]] double snap() const { return plan_.settings.snap; }
+
+    /// "Level L, line_loads[2]".
+    [[nodiscard]] std::string name(const char* list, std::uint32_t i) const {
+        return "Level " + level_.id + ", " + list + '[' + std::to_string(i) + ']';
+    }
+
+    /// The stretch of a line, by fractions of it, that runs along an axis within `snap`.
+    [[nodiscard]] std::optional<Interval> along(const Axis& axis, Point a, Point b) const {
+        const double sa = station_of(a, axis.from, axis.to);
+        const double sb = station_of(b, axis.from, axis.to);
+        const double low = std::max(0.0, std::min(sa, sb));
+        const double high = std::min(axis.length, std::max(sa, sb));
+        if (!(high - low > snap())) {
+            return std::nullopt;
+        }
+        const double t0 = std::clamp((low - sa) / (sb - sa), 0.0, 1.0);
+        const double t1 = std::clamp((high - sa) / (sb - sa), 0.0, 1.0);
+        const Interval interval{std::min(t0, t1), std::max(t0, t1)};
+        for (const double t : {interval.from, interval.to}) {
+            if (distance_to_segment(between(a, b, t), axis.from, axis.to) > snap()) {
+                return std::nullopt;
+            }
+        }
+        return interval;
+    }
+
+    /// Puts a stretch of a line straight on an axis: force and place are kept, what stands beside is moved
+    /// square on to it.
+    void put_along(const Axis& axis, const LineLoad& load, std::uint32_t index, Interval t) {
+        const Point a = between(load.from, load.to, t.from);
+        const Point b = between(load.from, load.to, t.to);
+        const double w_a = (1 - t.from) * load.w_from + t.from * load.w_to;
+        const double w_b = (1 - t.to) * load.w_from + t.to * load.w_to;
+        double sa = std::clamp(station_of(a, axis.from, axis.to), 0.0, axis.length);
+        double sb = std::clamp(station_of(b, axis.from, axis.to), 0.0, axis.length);
+        const double length = distance(a, b);
+        const std::uint32_t load_case = case_index(plan_, load.case_id);
+        const Source source{SourceKind::line_load, index};
+        if (std::abs(sb - sa) <= collector_.noise()) {
+            collector_.put_point(axis.number, none,
+                                 {load_case, source, (sa + sb) / 2, length * (w_a + w_b) / 2});
+            return;
+        }
+        const double scale = length / std::abs(sb - sa);
+        double start = w_a * scale;
+        double end = w_b * scale;
+        if (sb < sa) {
+            std::swap(sa, sb);
+            std::swap(start, end);
+        }
+        collector_.put_line(axis.number, none,
+                            {load_case, source, {sa, sb, {start, (end - start) / (sb - sa), 0, 0, 0}}});
+    }
+
+    /// Takes `t` out of what is left, and hands the parts that were left to `put`.
+    template <class Put>
+    static void take(std::vector<Interval>& left, Interval t, double tolerance, Put put) {
+        std::vector<Interval> rest;
+        for (const Interval& open : left) {
+            double from = std::max(open.from, t.from);
+            double to = std::min(open.to, t.to);
+            if (to - from <= tolerance) {
+                rest.push_back(open);
+                continue;
+            }
+            // Ends that differ by the tolerance alone are one end: nothing is left between neighbours.
+            from = from - open.from <= tolerance ? open.from : from;
+            to = open.to - to <= tolerance ? open.to : to;
+            put(Interval{from, to});
+            if (from > open.from) {
+                rest.push_back({open.from, from});
+            }
+            if (to < open.to) {
+                rest.push_back({to, open.to});
+            }
+        }
+        left.swap(rest);
+    }
+
+    void take_along_axes(const LineLoad& load, std::uint32_t index, std::vector<Interval>& left) {
+        const double tolerance = collector_.noise() / distance(load.from, load.to);
+        tree_.find(box_of(load.from, load.to).grown(snap()), near_);
+        for (const std::uint32_t i : near_) {
+            if (const auto t = along(axes_[i], load.from, load.to)) {
+                take(left, *t, tolerance, [&](Interval part) { put_along(axes_[i], load, index, part); });
+            }
+        }
+    }
+
+    void take_over_bays(const LineLoad& load, std::uint32_t index, std::span<const BayFinder::Hit> hits,
+                        std::vector<Interval>& left) {
+        // Borders of neighbouring bays differ by rounding; a stretch of that size belongs to either.
+        const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
+        const std::uint32_t load_case = case_index(plan_, load.case_id);
+        for (const BayFinder::Hit& hit : hits) {
+            take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
+                const double w_a = (1 - t.from) * load.w_from + t.from * load.w_to;
+                const double w_b = (1 - t.to) * load.w_from + t.to * load.w_to;
+                share_line(sharing_, sharing_.bays[hit.bay], between(load.from, load.to, t.from),
+                           between(load.from, load.to, t.to), w_a, w_b, snap(), load_case,
+                           {SourceKind::line_load, index}, collector_);
+            });
+        }
+    }
+
+    /// Whether the hits cover all that is left.
+    [[nodiscard]] bool cover(const LineLoad& load, std::span<const BayFinder::Hit> hits,
+                             std::vector<Interval> left) const {
+        const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
+        for (const BayFinder::Hit& hit : hits) {
+            take(left, {hit.from, hit.to}, tolerance, [](Interval) {});
+        }
+        return left.empty();
+    }
+
+    void place_standing(std::uint32_t index) {
+        const LineLoad& load = level_.line_loads[index];
+        std::vector<Interval> left{{0, 1}};
+        take_along_axes(load, index, left);
+        if (!left.empty()) {
+            take_over_bays(load, index, bays_.over(load.from, load.to, collector_.noise()), left);
+        }
+        if (!left.empty()) {
+            // What is drawn beside the deck by no more than `snap` stands on it.
+            const std::vector<BayFinder::Hit> hits = bays_.over(load.from, load.to, snap());
+            if (cover(load, hits, left)) {
+                take_over_bays(load, index, hits, left);
+            }
+        }
+        double off = 0;
+        for (const Interval& t : left) {
+            off += t.to - t.from;
+        }
+        if (off > 0) {
+            const Point place = between(load.from, load.to, (left.front().from + left.front().to) / 2);
+            const double length = distance(load.from, load.to);
+            Problem problem =
+                problem_at(ProblemCode::load_off_decks, load.origin, "line_loads",
+                           name("line_loads", index) + " (" + load.case_id +
+                               "): " + length_text(off * length, plan_.units) + " of its " +
+                               length_text(length, plan_.units) + " stand on no deck, around " +
+                               point_text(place, plan_.units) + '.',
+                           "End it at the deck's edge, or name the member or wall it stands on with `on`.");
+            problem.point = place;
+            collector_.problems.push_back(std::move(problem));
+        }
+    }
+
+    /// The carrier that `on` names; nothing if it is not on this level (check_plan has said so).
+    [[nodiscard]] const Axis* named(const std::string& on) const {
+        const std::size_t slash = on.find('/');
+        const auto it = by_id_.find(slash == std::string::npos ? std::string_view(on)
+                                                               : std::string_view(on).substr(slash + 1));
+        return it == by_id_.end() ? nullptr : &axes_[it->second];
+    }
+
+    void refuse_on(const Origin& origin, const char* list, std::uint32_t index, const std::string& on) {
+        collector_.problems.push_back(problem_inside(ProblemCode::unknown_id, origin, list, "/on",
+                                                     name(list, index) + " stands `on` " + on +
+                                                         ", which is no member or wall of this level.",
+                                                     {}, {on}));
+    }
+
+    /// How far a load named `on` an axis reaches past its ends and stands beside it; says so where it
+    /// matters.
+    bool fits(const Axis& axis, std::initializer_list<Point> points, const Origin& origin, const char* list,
+              std::uint32_t index) {
+        double past = 0;
+        double beside = 0;
+        for (const Point& p : points) {
+            const double s = station_of(p, axis.from, axis.to);
+            past = std::max({past, -s, s - axis.length});
+            beside = std::max(beside, distance(p, between(axis.from, axis.to, s / axis.length)));
+        }
+        const std::string subject = name(list, index) + " stands `on` " + std::string(axis.id);
+        if (past > snap()) {
+            Problem problem =
+                problem_at(ProblemCode::load_beyond_its_carrier, origin, list,
+                           subject + " but reaches " + length_text(past, plan_.units) +
+                               " past its end (limit: `snap`, " + length_text(snap(), plan_.units) + ").",
+                           "Shorten the load or lengthen its carrier.", {std::string(axis.id)});
+            problem.point = *points.begin();
+            collector_.problems.push_back(std::move(problem));
+            return false;
+        }
+        if (beside > snap()) {
+            Problem problem = problem_at(
+                ProblemCode::load_off_its_carrier, origin, list,
+                subject + " but lies " + length_text(beside, plan_.units) +
+                    " beside its axis; it is put on the axis, and what that turns is left out.",
+                "Right if the load hangs on the member's side; else check the id.", {std::string(axis.id)});
+            problem.point = *points.begin();
+            collector_.problems.push_back(std::move(problem));
+        }
+        return true;
+    }
+
+    void place_on(std::uint32_t index) {
+        const LineLoad& load = level_.line_loads[index];
+        const Axis* axis = named(load.on);
+        if (axis == nullptr) {
+            refuse_on(load.origin, "line_loads", index, load.on);
+        } else if (fits(*axis, {load.from, load.to}, load.origin, "line_loads", index)) {
+            put_along(*axis, load, index, {0, 1});
+        }
+    }
+
+    void place_point_on(std::uint32_t index) {
+        const PointLoad& load = level_.point_loads[index];
+        const Axis* axis = named(load.on);
+        if (axis == nullptr) {
+            refuse_on(load.origin, "point_loads", index, load.on);
+        } else if (fits(*axis, {load.at}, load.origin, "point_loads", index)) {
+            put_point_on(*axis, load, index);
+        }
+    }
+
+    void put_point_on(const Axis& axis, const PointLoad& load, std::uint32_t index) {
+        const double station = std::clamp(station_of(load.at, axis.from, axis.to), 0.0, axis.length);
+        collector_.put_point(
+            axis.number, none,
+            {case_index(plan_, load.case_id), {SourceKind::point_load, index}, station, load.p});
+    }
+
+    /// A column, wall or member at the point, in this order; of members the lowest role, since a deck lies on
+    /// it.
+    bool place_on_what_is_there(std::uint32_t index) {
+        const PointLoad& load = level_.point_loads[index];
+        for (const std::uint32_t c : level_.columns) {
+            if (distance(plan_.columns[c].at, load.at) <= snap()) {
+                collector_.put_point(
+                    sharing_.number_of({CarrierKind::column, c}), none,
+                    {case_index(plan_, load.case_id), {SourceKind::point_load, index}, 0, load.p});
+                return true;
+            }
+        }
+        tree_.find(box_of(load.at, load.at).grown(snap()), near_);
+        const Axis* best = nullptr;
+        for (const std::uint32_t i : near_) {
+            const Axis& axis = axes_[i];
+            if (distance_to_segment(load.at, axis.from, axis.to) > snap()) {
+                continue;
+            }
+            if (best == nullptr || (axis.wall && !best->wall) || (!best->wall && axis.role < best->role)) {
+                best = &axis;
+            }
+        }
+        if (best != nullptr) {
+            put_point_on(*best, load, index);
+        }
+        return best != nullptr;
+    }
+
+    void place_standing_point(std::uint32_t index) {
+        const PointLoad& load = level_.point_loads[index];
+        if (place_on_what_is_there(index)) {
+            return;
+        }
+        std::uint32_t bay = bays_.under(load.at, collector_.noise());
+        if (bay == none) {
+            bay = bays_.under(load.at, snap());
+        }
+        if (bay != none) {
+            share_point(sharing_, sharing_.bays[bay], load.at, load.p, case_index(plan_, load.case_id),
+                        {SourceKind::point_load, index}, collector_);
+            return;
+        }
+        Problem problem =
+            problem_at(ProblemCode::load_off_decks, load.origin, "point_loads",
+                       name("point_loads", index) + " (" + load.case_id + ") at " +
+                           point_text(load.at, plan_.units) + " stands on no deck.",
+                       "Move it on to a deck, or name the member or wall it stands on with `on`.");
+        problem.point = load.at;
+        collector_.problems.push_back(std::move(problem));
+    }
+
+    const Plan& plan_;
+    const FramedLevel& level_;
+    const Sharing& sharing_;
+    Collector& collector_;
+    BayFinder bays_;
+    std::vector<Axis> axes_;
+    BoxTree tree_;
+    std::map<std::string_view, std::uint32_t> by_id_;
+    std::vector<std::uint32_t> near_;
+};
+
+} // namespace
+
+void load_lines_and_points(const Plan& plan, const Framing& framing, std::uint32_t level,
+                           const Sharing& sharing, Collector& collector) {
+    if (framing.levels[level].line_loads.empty() && framing.levels[level].point_loads.empty()) {
+        return;
+    }
+    LoadPlacer placer(plan, framing, level, sharing, collector);
+    placer.place_lines();
+    placer.place_points();
+}
+
+RUNNEL_NAMESPACE_END

@@ -1,0 +1,268 @@
+#include "load/standing.hpp"
+
+#include "geometry/basic.hpp"
+#include "load/fit.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+Box box_of(const Bay& bay) {
+    Box box = box_of(Point{bay.low.start, bay.from}, Point{bay.high.end, bay.to});
+    box.add({bay.high.start, bay.from});
+    box.add({bay.low.end, bay.to});
+    return box;
+}
+
+std::vector<Box> outline_boxes(const FramedLevel& level) {
+    std::vector<Box> boxes;
+    for (const FramedDeck& deck : level.decks) {
+        boxes.push_back(box_of(deck.outline));
+    }
+    return boxes;
+}
+
+/// Narrows from..to to where start + (end - start) t >= 0.
+void keep_positive(double start, double end, double& from, double& to) {
+    if (start < 0 && end < 0) {
+        to = from - 1;
+    } else if (start < 0) {
+        from = std::max(from, start / (start - end));
+    } else if (end < 0) {
+        to = std::min(to, start / (start - end));
+    }
+}
+
+/// A border's along coordinate at a level, the border taken as going on straight.
+double along_of(const Border& border, const Bay& bay, double across) {
+    const double x = (across - bay.from) / (bay.to - bay.from);
+    return (1 - x) * border.start + x * border.end;
+}
+
+bool clip_to_bay(const Bay& bay, Point a, Point b, double margin, double& from, double& to) {
+    from = 0;
+    to = 1;
+    keep_positive(a.y - bay.from + margin, b.y - bay.from + margin, from, to);
+    keep_positive(bay.to - a.y + margin, bay.to - b.y + margin, from, to);
+    keep_positive(a.x - along_of(bay.low, bay, a.y) + margin, b.x - along_of(bay.low, bay, b.y) + margin,
+                  from, to);
+    keep_positive(along_of(bay.high, bay, a.y) - a.x + margin, along_of(bay.high, bay, b.y) - b.x + margin,
+                  from, to);
+    return to >= from;
+}
+
+} // namespace
+
+BayFinder::BayFinder(const FramedLevel& level, const Sharing& sharing)
+    : sharing_(&sharing), decks_(level.decks.size()), outlines_(outline_boxes(level)) {
+    for (std::uint32_t i = 0; i < sharing.bays.size();) {
+        std::uint32_t end = i;
+        while (end < sharing.bays.size() && sharing.bays[end].deck == sharing.bays[i].deck) {
+            ++end;
+        }
+        decks_[sharing.bays[i].deck].first = i;
+        decks_[sharing.bays[i].deck].last = end;
+        i = end;
+    }
+}
+
+BayFinder::DeckBays& BayFinder::bays_of(std::uint32_t deck) {
+    DeckBays& bays = decks_[deck];
+    if (!bays.tree) {
+        std::vector<Box> boxes;
+        for (std::uint32_t i = bays.first; i < bays.last; ++i) {
+            boxes.push_back(box_of(sharing_->bays[i]));
+        }
+        bays.tree.emplace(boxes);
+    }
+    return bays;
+}
+
+std::vector<BayFinder::Hit> BayFinder::over(Point a, Point b, double margin) {
+    std::vector<Hit> hits;
+    std::vector<std::uint32_t> decks;
+    std::vector<std::uint32_t> near;
+    outlines_.find(box_of(a, b).grown(margin), decks);
+    for (const std::uint32_t d : decks) {
+        const DeckBays& bays = bays_of(d);
+        if (bays.first == bays.last) {
+            continue;
+        }
+        const StripAxes& axes = sharing_->axes[sharing_->bays[bays.first].axes];
+        const Point sa = axes.to_strip(a);
+        const Point sb = axes.to_strip(b);
+        bays.tree->find(box_of(sa, sb).grown(margin), near);
+        for (const std::uint32_t k : near) {
+            Hit hit;
+            hit.bay = bays.first + k;
+            if (clip_to_bay(sharing_->bays[hit.bay], sa, sb, margin, hit.from, hit.to)) {
+                hits.push_back(hit);
+            }
+        }
+    }
+    std::sort(hits.begin(), hits.end(),
+              [](const Hit& l, const Hit& r) { return l.from != r.from ? l.from < r.from : l.bay < r.bay; });
+    return hits;
+}
+
+std::uint32_t BayFinder::under(Point p, double margin) {
+    const std::vector<Hit> hits = over(p, p, margin);
+    return hits.empty() ? none : hits.front().bay;
+}
+
+namespace {
+
+/// Part of a load at (along, across) that goes to the bay's high carrier; the rest goes to the low one.
+double part_of_high(const Bay& bay, Point p) {
+    if (bay.low_carrier == none || bay.high_carrier == none) {
+        return bay.high_carrier == none ? 0 : 1;
+    }
+    const double low = along_of(bay.low, bay, p.y);
+    const double high = along_of(bay.high, bay, p.y);
+    return high > low ? std::clamp((p.x - low) / (high - low), 0.0, 1.0) : 0.5;
+}
+
+double low_station(const Bay& bay, double across) {
+    const double x = std::clamp((across - bay.from) / (bay.to - bay.from), 0.0, 1.0);
+    return (1 - x) * bay.low_station_from + x * bay.low_station_to;
+}
+
+double high_station(const Bay& bay, double across) {
+    const double x = std::clamp((across - bay.from) / (bay.to - bay.from), 0.0, 1.0);
+    return (1 - x) * bay.high_station_from + x * bay.high_station_to;
+}
+
+/// A cubic in y = 0..1 between stations `at_from` and `at_to`, whichever way they run, as a piece of line
+/// load.
+LinePiece piece_between(double at_from, double at_to, std::array<double, 4> c) {
+    if (at_to < at_from) {
+        // y = 1 - z
+        c = {c[0] + c[1] + c[2] + c[3], -(c[1] + 2 * c[2] + 3 * c[3]), c[2] + 3 * c[3], -c[3]};
+        std::swap(at_from, at_to);
+    }
+    LinePiece piece;
+    piece.from = at_from;
+    piece.to = at_to;
+    const double length = at_to - at_from;
+    double scale = 1;
+    for (std::size_t k = 0; k < c.size(); ++k) {
+        piece.c[k] = c[k] * scale;
+        scale /= length;
+    }
+    return piece;
+}
+
+/// A stretch of line load over a bay, in strip axes.
+struct Stretch {
+    const Bay& bay;
+    Point a, b;
+    double length;
+    double w_a, w_b;
+    std::uint32_t load_case;
+    Source source;
+
+    [[nodiscard]] double part(double t) const { return part_of_high(bay, between(a, b, t)); }
+    [[nodiscard]] double w(double t) const { return (1 - t) * w_a + t * w_b; }
+};
+
+/// A stretch along the strips puts one point load on each carrier. Parts are linear along it, so Simpson's
+/// rule is exact.
+void put_points(const Stretch& s, Collector& collector) {
+    const double whole = s.length * (s.w_a + s.w_b) / 2;
+    const double high = s.length * (s.w(0) * s.part(0) + 4 * s.w(0.5) * s.part(0.5) + s.w(1) * s.part(1)) / 6;
+    const double sum = s.w_a + s.w_b;
+    const double centre = sum != 0 ? std::clamp((s.w_a + 2 * s.w_b) / (3 * sum), 0.0, 1.0) : 0.5;
+    const double across = between(s.a, s.b, centre).y;
+    if (s.bay.high_carrier != none) {
+        collector.put_point(
+            s.bay.high_carrier, none,
+            {s.load_case, s.source, high_station(s.bay, across), s.bay.low_carrier == none ? whole : high});
+    }
+    if (s.bay.low_carrier != none) {
+        collector.put_point(s.bay.low_carrier, none,
+                            {s.load_case, s.source, low_station(s.bay, across),
+                             s.bay.high_carrier == none ? whole : whole - high});
+    }
+}
+
+void put_cubic(const Stretch& s, bool high, double from, double to, std::array<double, 4> c,
+               Collector& collector) {
+    const double across_from = between(s.a, s.b, from).y;
+    const double across_to = between(s.a, s.b, to).y;
+    const double at_from = high ? high_station(s.bay, across_from) : low_station(s.bay, across_from);
+    const double at_to = high ? high_station(s.bay, across_to) : low_station(s.bay, across_to);
+    const std::uint32_t carrier = high ? s.bay.high_carrier : s.bay.low_carrier;
+    const double stretch = std::abs(at_to - at_from);
+    if (!(stretch > 0)) {
+        const double force = s.length * (to - from) * (c[0] + c[1] / 2 + c[2] / 3 + c[3] / 4);
+        collector.put_point(carrier, none, {s.load_case, s.source, at_from, force});
+        return;
+    }
+    for (double& k : c) {
+        k *= s.length * (to - from) / stretch; // per length of carrier
+    }
+    collector.put_line(carrier, none, {s.load_case, s.source, piece_between(at_from, at_to, c)});
+}
+
+/// A stretch across the strips puts a line on each carrier: w times the part, a polynomial where the carriers
+/// are parallel, else a rational function that cubics replace.
+void put_lines(const Stretch& s, double noise, Collector& collector) {
+    const bool both = s.bay.low_carrier != none && s.bay.high_carrier != none;
+    if (!both) {
+        put_cubic(s, s.bay.high_carrier != none, 0, 1, {s.w_a, s.w_b - s.w_a, 0, 0}, collector);
+        return;
+    }
+    const auto width = [&](Point p) {
+        return along_of(s.bay.high, s.bay, p.y) - along_of(s.bay.low, s.bay, p.y);
+    };
+    std::vector<CubicPiece> pieces;
+    if (std::abs(width(s.a) - width(s.b)) <= noise) {
+        const double w1 = s.w_b - s.w_a;
+        const double f0 = s.part(0);
+        const double f1 = s.part(1) - f0;
+        pieces.push_back({0, 1, {s.w_a * f0, s.w_a * f1 + w1 * f0, w1 * f1, 0}});
+    } else {
+        pieces = fit_cubics([&](double t) { return s.w(t) * s.part(t); });
+    }
+    for (const CubicPiece& piece : pieces) {
+        put_cubic(s, true, piece.from, piece.to, piece.c, collector);
+        const std::array<double, 4> rest{s.w(piece.from) - piece.c[0],
+                                         s.w(piece.to) - s.w(piece.from) - piece.c[1], -piece.c[2],
+                                         -piece.c[3]};
+        put_cubic(s, false, piece.from, piece.to, rest, collector);
+    }
+}
+
+} // namespace
+
+void share_line(const Sharing& sharing, const Bay& bay, Point a, Point b, double w_a, double w_b, double snap,
+                std::uint32_t load_case, Source source, Collector& collector) {
+    if (bay.low_carrier == none && bay.high_carrier == none) {
+        return; // an unsupported strip: an error already
+    }
+    const StripAxes& axes = sharing.axes[bay.axes];
+    const Stretch stretch{bay,   axes.to_strip(a), axes.to_strip(b), distance(a, b), w_a, w_b, load_case,
+                          source};
+    if (std::abs(stretch.b.y - stretch.a.y) <= snap) {
+        put_points(stretch, collector);
+    } else {
+        put_lines(stretch, collector.noise(), collector);
+    }
+}
+
+void share_point(const Sharing& sharing, const Bay& bay, Point at, double p, std::uint32_t load_case,
+                 Source source, Collector& collector) {
+    const Point q = sharing.axes[bay.axes].to_strip(at);
+    const double high = part_of_high(bay, q);
+    if (bay.high_carrier != none) {
+        collector.put_point(bay.high_carrier, none, {load_case, source, high_station(bay, q.y), p * high});
+    }
+    if (bay.low_carrier != none) {
+        collector.put_point(bay.low_carrier, none, {load_case, source, low_station(bay, q.y), p - p * high});
+    }
+}
+
+RUNNEL_NAMESPACE_END
