@@ -192,15 +192,21 @@ private:
         return best;
     }
 
-    /// Without corners on the straight between their neighbours.
-    [[nodiscard]] Ring without_needless(const Ring& ring) const {
+    /// Without corners on the straight between their neighbours. Begins at the corner farthest from the
+    /// first, which is never on such a straight, so that of two corners side by side one always stays.
+    [[nodiscard]] Ring without_needless(Ring ring) const {
+        std::rotate(ring.begin(),
+                    std::max_element(ring.begin(), ring.end(),
+                                     [first = ring.front()](Point l, Point r) {
+                                         return distance(first, l) < distance(first, r);
+                                     }),
+                    ring.end());
         Ring kept;
-        const std::size_t n = ring.size();
-        for (std::size_t i = 0; i < n; ++i) {
-            const Point before = kept.empty() ? ring[(i + n - 1) % n] : kept.back();
-            const Point after = ring[(i + 1) % n];
-            const double length = distance(before, after);
-            if (!(length > 0) || std::abs(cross(after - before, ring[i] - before)) / length > 2 * noise_) {
+        for (std::size_t i = 0; i < ring.size(); ++i) {
+            const Point after = ring[(i + 1) % ring.size()];
+            const double length = kept.empty() ? 0 : distance(kept.back(), after);
+            if (!(length > 0) ||
+                std::abs(cross(after - kept.back(), ring[i] - kept.back())) / length > 2 * noise_) {
                 kept.push_back(ring[i]);
             }
         }

@@ -97,12 +97,12 @@ void lines_of_part(const Cell& cell, const Transfer& transfer, const Convex& par
         const double x = (across - cell.from) / (cell.to - cell.from);
         return (1 - x) * transfer.station_from + x * transfer.station_to;
     };
-    double from = levels.front();
-    for (const double to : levels) {
-        if (to - from <= noise && to != levels.back()) {
-            continue;
-        }
-        if (!(to > from)) {
+    // Corners that lie on one level but for noise are passed together: a level edge has its breadth only
+    // behind them.
+    for (std::size_t i = 0; i + 1 < levels.size(); ++i) {
+        const double from = levels[i];
+        const double to = levels[i + 1];
+        if (to - from <= noise) {
             continue;
         }
         const Extent at_from = extent_at(part, from);
@@ -118,7 +118,6 @@ void lines_of_part(const Cell& cell, const Transfer& transfer, const Convex& par
             c *= q;
         }
         pieces.push_back(piece);
-        from = to;
     }
 }
 
