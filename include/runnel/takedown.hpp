@@ -136,6 +136,7 @@ struct Takedown {
 
 struct TakedownOptions {
     std::optional<Share> share; ///< overrides the plan's setting
+    unsigned threads = 1;       ///< for levels side by side; the result is the same with any number
     Limits limits;
 };
 
