@@ -16,6 +16,7 @@ constexpr double closing = 1e-9;
 /// The carriers that feet name on one of their sides, each once.
 std::vector<Carrier> different(const std::vector<Foot>& feet, Carrier Foot::*side) {
     std::vector<Carrier> carriers;
+    carriers.reserve(feet.size());
     for (const Foot& foot : feet) {
         carriers.push_back(foot.*side);
     }

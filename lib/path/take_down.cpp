@@ -1,3 +1,4 @@
+#include "path/parallel.hpp"
 #include "path/path.hpp"
 
 #include <iterator>
@@ -30,26 +31,30 @@ Takedown stopped(Plan plan, Framing framing, std::vector<Problem> problems) {
     return takedown;
 }
 
-/// Shares the decks of every level, and holds them to the law of cover.
-std::vector<Problem> share_levels(const Plan& plan, const Framing& framing, PathInput& input) {
-    std::vector<Problem> problems;
-    for (std::uint32_t l = 0; l < framing.levels.size(); ++l) {
-        input.sharing.push_back(share_decks(plan, framing, l));
-        const bool shared = !has_errors(input.sharing[l].problems);
-        append(problems, input.sharing[l].problems);
-        if (shared) {
-            std::vector<Problem> broken = check_cover(framing, l, input.sharing[l]);
-            append(problems, broken);
+/// Splits and loads every level; levels know nothing of each other here. Problems come out in the order of
+/// phases, then of levels, whatever the number of threads.
+std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, unsigned threads,
+                                    PathInput& input) {
+    const std::size_t levels = framing.levels.size();
+    input.sharing.resize(levels);
+    input.areas.resize(levels);
+    input.loads.resize(levels);
+    std::vector<std::vector<Problem>> broken(levels);
+    for_each_index(levels, threads, [&](std::size_t l) {
+        const auto level = static_cast<std::uint32_t>(l);
+        input.sharing[l] = share_decks(plan, framing, level);
+        if (!has_errors(input.sharing[l].problems)) {
+            broken[l] = check_cover(framing, level, input.sharing[l]);
         }
-    }
-    return problems;
-}
-
-std::vector<Problem> load_levels(const Plan& plan, const Framing& framing, PathInput& input) {
+        input.areas[l] = areas_of(input.sharing[l]);
+        input.loads[l] = load_carriers(plan, framing, level, input.sharing[l]);
+    });
     std::vector<Problem> problems;
-    for (std::uint32_t l = 0; l < framing.levels.size(); ++l) {
-        input.areas.push_back(areas_of(input.sharing[l]));
-        input.loads.push_back(load_carriers(plan, framing, l, input.sharing[l]));
+    for (std::size_t l = 0; l < levels; ++l) {
+        append(problems, input.sharing[l].problems);
+        append(problems, broken[l]);
+    }
+    for (std::size_t l = 0; l < levels; ++l) {
         append(problems, input.loads[l].problems);
     }
     return problems;
@@ -64,19 +69,12 @@ Takedown take_down(Plan plan, const TakedownOptions& options) {
     Framing framing = frame_plan(plan, options.limits);
     std::vector<Problem> problems = std::move(framing.problems);
     framing.problems.clear();
-    if (has_errors(problems)) {
-        return stopped(std::move(plan), std::move(framing), std::move(problems));
-    }
 
+    // Sharing and loads need members, not bearings: their problems are found in the same pass as those of
+    // framing.
     PathInput input;
-    std::vector<Problem> of_sharing = share_levels(plan, framing, input);
-    append(problems, of_sharing);
-    if (has_errors(problems)) {
-        return stopped(std::move(plan), std::move(framing), std::move(problems));
-    }
-
-    std::vector<Problem> of_loads = load_levels(plan, framing, input);
-    append(problems, of_loads);
+    std::vector<Problem> more = share_and_load(plan, framing, options.threads, input);
+    append(problems, more);
     if (has_errors(problems)) {
         return stopped(std::move(plan), std::move(framing), std::move(problems));
     }
