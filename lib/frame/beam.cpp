@@ -1,21 +1,12 @@
 #include "frame/beam.hpp"
 
-#include "frame/beam_shape.hpp"
+#include "frame/beam_spans.hpp"
 
 #include <algorithm>
 
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-using Ends = BeamNodes::Ends;
-
-/// The cubic through an element's ends, in (station - its start) (Hermite).
-std::array<double, 4> cubic_through(const Ends& ends, double length) {
-    const double chord = (ends.move_to - ends.move_from) / length;
-    return {ends.move_from, ends.turn_from, (3 * chord - 2 * ends.turn_from - ends.turn_to) / length,
-            (ends.turn_from + ends.turn_to - 2 * chord) / (length * length)};
-}
 
 /// Integrals of w (s - from)^k over a piece, k = 0 to 3.
 std::array<double, 4> moments_of(const LinePiece& piece) {
@@ -36,43 +27,28 @@ std::array<double, 4> moments_of(const LinePiece& piece) {
 } // namespace
 
 std::optional<BeamInfluence> BeamInfluence::of(const Beam& beam) {
-    const std::optional<BeamNodes> solved = BeamNodes::of(beam);
-    if (!solved) {
+    const std::optional<BeamSpans> spans = BeamSpans::of(beam);
+    if (!spans) {
         return std::nullopt;
     }
-    const auto nodes = solved->nodes();
     BeamInfluence influence;
     influence.supports_ = beam.supports.size();
-
-    // Elements: the straight stretch before the first bearing (which may have no length), those between
-    // nodes, and the stretch beyond the last bearing.
-    influence.starts_.push_back(0);
-    for (const BeamNodes::Node& node : nodes) {
-        influence.starts_.push_back(node.station);
-    }
-    const auto add_shape = [&](std::size_t node, bool turned) {
-        const std::vector<Ends> ends = turned ? solved->turn(node) : solved->move(node);
-        Ends single; // one bearing, built in: the whole beam moves or turns with it
-        single.move_from = single.move_to = turned ? 0 : 1;
-        single.turn_from = single.turn_to = turned ? 1 : 0;
-        const Ends& first = ends.empty() ? single : ends.front();
-        const Ends& last = ends.empty() ? single : ends.back();
-        const double overhang = nodes.front().station;
-        influence.shapes_.push_back({first.move_from - first.turn_from * overhang, first.turn_from, 0, 0});
-        for (std::size_t e = 0; e < ends.size(); ++e) {
-            influence.shapes_.push_back(cubic_through(ends[e], nodes[e + 1].station - nodes[e].station));
+    const auto add_line_of = [&](const std::vector<BeamSpans::Stretch>& shape) {
+        const bool first = influence.starts_.empty();
+        for (const BeamSpans::Stretch& stretch : shape) {
+            influence.shapes_.push_back(stretch.cubic);
+            if (first) {
+                influence.starts_.push_back(stretch.from);
+            }
         }
-        influence.shapes_.push_back({last.move_to, last.turn_to, 0, 0});
     };
-    for (std::size_t n = 0; n < nodes.size(); ++n) {
-        if (nodes[n].support != BeamNodes::absent) {
-            add_shape(n, false);
-        }
+    for (std::size_t i = 0; i < influence.supports_; ++i) {
+        add_line_of(spans->moved(i));
     }
-    for (std::size_t n = 0; n < nodes.size(); ++n) {
-        if (nodes[n].held) {
-            influence.held_.push_back(nodes[n].support);
-            add_shape(n, true);
+    for (std::size_t i = 0; i < influence.supports_; ++i) {
+        if (spans->held(i)) {
+            influence.held_.push_back(i);
+            add_line_of(spans->turned(i));
         }
     }
     return influence;

@@ -15,27 +15,22 @@ struct BeamSupport {
     bool turn_held = false; ///< built in
 };
 
-/// The bending stiffness from a station on, up to the next. Any unit: reactions depend on ratios only.
-struct BeamStiffness {
-    double from = 0;
-    double EI = 1;
-};
-
 /// A straight beam on rigid bearings, loaded downward square to its axis.
 struct Beam {
-    double length = 0;                    ///< m
-    std::vector<BeamSupport> supports;    ///< by rising station
-    std::vector<double> hinges;           ///< stations, rising; at a bearing the beam is parted over it
-    std::vector<BeamStiffness> stiffness; ///< by rising station, the first at 0; empty: constant
+    double length = 0;                 ///< m
+    std::vector<BeamSupport> supports; ///< by rising station
+    std::vector<double> hinges;        ///< stations, rising; at a bearing the beam is parted over it
+    /// EI of each stretch between bearings, in any unit, since reactions depend on ratios only; empty:
+    /// constant.
+    std::vector<double> span_stiffness;
 };
 
 /// What each bearing of a beam returns for a unit load at any station, exactly.
 ///
 /// The influence line of a reaction or of a held moment is the shape that the unloaded beam takes when that
-/// bearing alone is moved or turned by one (Mueller-Breslau 1886): a cubic between nodes, straight beyond the
-/// last bearing. Each shape is one solution by direct stiffness; ends that a hinge, or the beam's own end,
-/// frees are condensed, so that neither a hinge close to a bearing nor a long overhang harms the digits. The
-/// effect of any load then is the integral of intensity times cubic, worked out exactly.
+/// bearing alone is moved or turned by one (Mueller-Breslau 1886): a cubic between bearings and hinges,
+/// straight beyond the last bearing. Each shape is one solution by direct stiffness (BeamSpans). The effect
+/// of any load then is the integral of intensity times cubic, worked out exactly.
 ///
 /// Reactions are positive upward. Held moments act on the beam, positive where they hold a cantilever that
 /// runs in the direction of rising stations. Laws (tests/laws/beam_test.cpp):

@@ -118,20 +118,13 @@ TEST_CASE("a built-in overhang is held by its bearing, not by the back span") {
     check_values(found.moments, {-18, 0});
 }
 
-TEST_CASE("a span with stiffer and weaker part: the stiffness ratio moves the reactions") {
+TEST_CASE("a stiffer span draws more of the load") {
     // Two spans of 15 and 20 with I = 300 and 600: reactions by the three-moment equation,
     // (15/300 + 20/600) 2 M = w1 15^3 / (4 x 300) + w2 20^3 / (4 x 600) with both ends pinned.
     const double m = (240 * 3375.0 / 1200 + 250 * 8000.0 / 2400) / (2 * (15.0 / 300 + 20.0 / 600));
-    check_values(answer({35, {{0}, {15}, {35}}, {}, {{0, 300}, {15, 600}}},
-                        {{0, 15, 240, 240}, {15, 35, 250, 250}}, {})
+    check_values(answer({35, {{0}, {15}, {35}}, {}, {300, 600}}, {{0, 15, 240, 240}, {15, 35, 250, 250}}, {})
                      .reactions,
                  {1800 - m / 15, 1800 + m / 15 + 2500 + m / 20, 2500 - m / 20});
-    // Cantilever of 2, of double stiffness up to 1, propped at the tip, P at 1: force method, EI = 1
-    // beyond 1. tip deflection of the unpropped beam: (1/3 + 1/2) / 2; flexibility at the tip: (8 - 1) / 3 /
-    // 2 + 1 / 3.
-    const double prop = (1.0 / 3 + 1.0 / 2) / 2 / (7.0 / 6 + 1.0 / 3);
-    check_values(answer({2, {{0, true}, {2}}, {}, {{0, 2}, {1, 1}}}, {}, {{1, 1}}).reactions,
-                 {1 - prop, prop});
 }
 
 TEST_CASE("mechanisms are refused") {
