@@ -144,6 +144,11 @@ private:
 
     static MemberContact swapped(const MemberContact& m) { return {m.b, m.a, m.station_b, m.station_a}; }
 
+    /// Problems name two equals in the order of their ids, not of the list.
+    [[nodiscard]] MemberContact by_id(const MemberContact& m) const {
+        return draft_.level.members[m.a].id < draft_.level.members[m.b].id ? m : swapped(m);
+    }
+
     /// a with its station first, the lower role.
     void lower_on_higher(const MemberContact& meeting) {
         const MemberContact ordered = role(meeting.a) < role(meeting.b) ? meeting : swapped(meeting);
@@ -207,7 +212,8 @@ private:
         });
     }
 
-    void refuse_meeting(const MemberContact& meeting) {
+    void refuse_meeting(const MemberContact& found) {
+        const MemberContact meeting = by_id(found);
         draft_.problems.add(ProblemCode::equal_roles_meet, [&] {
             const Point at = draft_.axis_of(meeting.a).at(meeting.station_a);
             const std::string a = label_of(draft_, meeting.a);
@@ -222,7 +228,8 @@ private:
         });
     }
 
-    void refuse_crossing(const MemberContact& meeting) {
+    void refuse_crossing(const MemberContact& found) {
+        const MemberContact meeting = by_id(found);
         draft_.problems.add(ProblemCode::equal_roles_cross, [&] {
             const Point at = draft_.axis_of(meeting.a).at(meeting.station_a);
             const std::string a = label_of(draft_, meeting.a);

@@ -311,7 +311,8 @@ TEST_CASE("a stretch along another member is named with its ends") {
     const Problem* along = find_problem(framing, ProblemCode::lies_along);
     REQUIRE(along);
     CHECK(along->message.find("for 5 m, from (2, 0) m to (7, 0) m") != std::string::npos);
-    CHECK(along->ids == std::vector<std::string>{"G1", "B"});
+    CHECK(along->pointer == "/levels/0/members/2");
+    CHECK(along->ids == std::vector<std::string>{"B", "G1"});
 }
 
 TEST_CASE("a place is named by the grid lines that cross there") {
