@@ -29,6 +29,7 @@ public:
                 decide_by_role(contacts_.meetings[i]);
             }
         }
+        refuse_meetings();
         named_.refuse_untouched();
         return Grouped<Found>::from_pairs(draft_.level.members.size(), std::move(found_));
     }
@@ -184,9 +185,22 @@ private:
         if (own < highest_meeting_[a_end] || own < highest_meeting_[b_end] || both_listed) {
             return;
         }
-        if (!(reported_[a_end] && reported_[b_end])) {
-            reported_[a_end] = reported_[b_end] = 1;
-            refuse_meeting(meeting);
+        uncarried_.push_back(by_id(meeting));
+    }
+
+    /// Of many ends at one place each is named once, in pairs by id: the order of the list does not show.
+    void refuse_meetings() {
+        const auto& members = draft_.level.members;
+        std::sort(uncarried_.begin(), uncarried_.end(), [&](const MemberContact& x, const MemberContact& y) {
+            return x.a != y.a ? members[x.a].id < members[y.a].id : members[x.b].id < members[y.b].id;
+        });
+        for (const MemberContact& meeting : uncarried_) {
+            const std::size_t a_end = end(meeting.a, meeting.station_a);
+            const std::size_t b_end = end(meeting.b, meeting.station_b);
+            if (!(reported_[a_end] && reported_[b_end])) {
+                reported_[a_end] = reported_[b_end] = 1;
+                refuse_meeting(meeting);
+            }
         }
     }
 
@@ -212,8 +226,7 @@ private:
         });
     }
 
-    void refuse_meeting(const MemberContact& found) {
-        const MemberContact meeting = by_id(found);
+    void refuse_meeting(const MemberContact& meeting) {
         draft_.problems.add(ProblemCode::equal_roles_meet, [&] {
             const Point at = draft_.axis_of(meeting.a).at(meeting.station_a);
             const std::string a = label_of(draft_, meeting.a);
@@ -265,6 +278,7 @@ private:
     std::vector<std::uint8_t> runs_through_;   ///< by end: it ends on the inside of another
     std::vector<std::int8_t> highest_meeting_; ///< by end: highest role of other ends there
     std::vector<std::uint8_t> reported_;       ///< by end
+    std::vector<MemberContact> uncarried_;     ///< equal roles that meet over nothing
     std::vector<std::pair<std::uint32_t, Found>> found_;
 };
 

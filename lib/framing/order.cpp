@@ -61,10 +61,7 @@ private:
         std::vector<std::uint32_t> walk_of(members_, 0);
         std::vector<std::uint32_t> loop;
         std::uint32_t walk = 0;
-        for (std::uint32_t start = 0; start < members_; ++start) {
-            if (done_[start]) {
-                continue;
-            }
+        for (const std::uint32_t start : left_over_by_id()) {
             ++walk;
             std::uint32_t m = start;
             for (; walk_of[m] == 0; m = resting[m]) {
@@ -80,17 +77,34 @@ private:
                 next = resting[next];
             } while (next != m);
             std::reverse(loop.begin(), loop.end());
-            std::rotate(loop.begin(), std::min_element(loop.begin(), loop.end()), loop.end());
+            std::rotate(loop.begin(),
+                        std::min_element(loop.begin(), loop.end(),
+                                         [&](std::uint32_t a, std::uint32_t b) { return id(a) < id(b); }),
+                        loop.end());
             report(loop);
         }
     }
 
+    [[nodiscard]] const std::string& id(std::uint32_t m) const { return draft_.level.members[m].id; }
+
+    /// By id, so that the loops that are named do not depend on the order of the list.
+    [[nodiscard]] std::vector<std::uint32_t> left_over_by_id() const {
+        std::vector<std::uint32_t> members;
+        for (std::uint32_t m = 0; m < members_; ++m) {
+            if (!done_[m]) {
+                members.push_back(m);
+            }
+        }
+        std::sort(members.begin(), members.end(),
+                  [&](std::uint32_t a, std::uint32_t b) { return id(a) < id(b); });
+        return members;
+    }
+
     [[nodiscard]] std::vector<std::uint32_t> one_resting_on_each() const {
         std::vector<std::uint32_t> resting(members_, none);
-        for (std::uint32_t m = 0; m < members_; ++m) {
+        for (const std::uint32_t m : left_over_by_id()) {
             for (const Bearing& bearing : draft_.level.bearings[m]) {
-                if (!done_[m] && bearing.on.kind == CarrierKind::member &&
-                    resting[bearing.on.index] == none) {
+                if (bearing.on.kind == CarrierKind::member && resting[bearing.on.index] == none) {
                     resting[bearing.on.index] = m;
                 }
             }
