@@ -33,9 +33,9 @@ enum class Table : std::uint8_t { members, reactions, rundowns, foundations };
 RUNNEL_EXPORT void write_result(const Takedown& takedown, std::span<const Problem> reading_problems,
                                 const ReportOptions& options, const TextSink& sink);
 
-/// The short account for people, never wider than 100 columns: uplift, balance with load per deck area, members,
-/// rundowns, foundations, warnings, cautions.
-/// Of plans with many members, columns and walls it shows the heaviest and says how many are left out.
+/// The short account for people, never wider than 100 columns: uplift, balance with load per deck area,
+/// members, rundowns, foundations, warnings, cautions. Of plans with many members, columns and walls it shows
+/// the heaviest and says how many are left out.
 RUNNEL_EXPORT void write_account(const Takedown& takedown, const ReportOptions& options,
                                  const TextSink& sink);
 

@@ -89,8 +89,7 @@ private:
 
     /// North is up: y turns round.
     [[nodiscard]] Point on_sheet(Point p) const {
-        return {margin + (p.x - low_.x) * per_metre_,
-                margin + title_height + (high_.y - p.y) * per_metre_};
+        return {margin + (p.x - low_.x) * per_metre_, margin + title_height + (high_.y - p.y) * per_metre_};
     }
 
     void open_sheet() {
@@ -100,7 +99,8 @@ private:
         svg_.text(plan_.title).add(plan_.title.empty() ? "" : ": ").text(level_.id).add("</title>\n<defs>\n");
         for (std::size_t t = 0; t < tints.size(); ++t) {
             svg_.add("<pattern id=\"tint").count(t).add("\" width=\"7\" height=\"7\" patternUnits=\"");
-            svg_.add("userSpaceOnUse\" patternTransform=\"rotate(").count(static_cast<std::size_t>(tints[t].angle));
+            svg_.add("userSpaceOnUse\" patternTransform=\"rotate(")
+                .count(static_cast<std::size_t>(tints[t].angle));
             svg_.add(")\"><rect width=\"7\" height=\"7\" fill=\"").add(tints[t].paper);
             svg_.add("\"/><line x1=\"0\" y1=\"0\" x2=\"7\" y2=\"0\" stroke=\"").add(tints[t].line);
             svg_.add("\" stroke-width=\"0.9\"/></pattern>\n");
@@ -118,7 +118,11 @@ private:
                  "stroke-linejoin:round}\n"
                  ".of-column{fill:#8c1c13;text-anchor:start}.of-deck{font-style:italic;fill:#39434b}\n"
                  "</style>\n<rect width=\"100%\" height=\"100%\" fill=\"#fff\"/>\n");
-        svg_.add("<text x=\"").number(margin).add("\" y=\"").number(margin * 0.75).add("\" font-size=\"18\">");
+        svg_.add("<text x=\"")
+            .number(margin)
+            .add("\" y=\"")
+            .number(margin * 0.75)
+            .add("\" font-size=\"18\">");
         svg_.text(plan_.title).add(plan_.title.empty() ? "" : " - ").text(level_.id).add("</text>\n");
     }
 
@@ -211,7 +215,10 @@ private:
         for (const std::uint32_t c : level_.columns) {
             const Point p = on_sheet(plan_.columns[c].at);
             svg_.add("<rect class=\"column\" data-id=\"").text(plan_.columns[c].id).add("\" x=\"");
-            svg_.number(p.x - column_side / 2).add("\" y=\"").number(p.y - column_side / 2).add("\" width=\"");
+            svg_.number(p.x - column_side / 2)
+                .add("\" y=\"")
+                .number(p.y - column_side / 2)
+                .add("\" width=\"");
             svg_.number(column_side).add("\" height=\"").number(column_side).add("\"/>\n");
         }
         svg_.add("</g>\n");
@@ -233,7 +240,8 @@ private:
         }
         for (const std::uint32_t c : level_.columns) {
             Point p = on_sheet(plan_.columns[c].at);
-            label({p.x + column_side, p.y + column_side * 1.7}, 0, plan_.columns[c].id, "label of-column", letter);
+            label({p.x + column_side, p.y + column_side * 1.7}, 0, plan_.columns[c].id, "label of-column",
+                  letter);
         }
         svg_.add("</g>\n");
     }
@@ -269,7 +277,8 @@ private:
             angle += 2 * quarter;
         }
         const Point middle = between(a, b, 0.5);
-        label({middle.x + lift * std::sin(angle), middle.y - lift * std::cos(angle)}, angle, id, "label", size);
+        label({middle.x + lift * std::sin(angle), middle.y - lift * std::cos(angle)}, angle, id, "label",
+              size);
     }
 
     void label(Point at, double angle, std::string_view id, std::string_view css_class, double size) {

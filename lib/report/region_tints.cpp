@@ -33,7 +33,8 @@ Grouped<std::uint32_t> neighbours_of(std::span<const Region> regions) {
     for (std::size_t i = 0; i < corners.size(); ++i) {
         // Only a few regions meet at a corner; a corner of many is left to chance.
         constexpr std::size_t most = 8;
-        for (std::size_t j = i + 1; j < corners.size() && j < i + most && corners[j].at == corners[i].at; ++j) {
+        for (std::size_t j = i + 1; j < corners.size() && j < i + most && corners[j].at == corners[i].at;
+             ++j) {
             pairs.emplace_back(corners[i].region, corners[j].region);
             pairs.emplace_back(corners[j].region, corners[i].region);
         }

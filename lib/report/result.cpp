@@ -54,8 +54,9 @@ void ResultWriter::units_and_conventions() {
     json_.key("loads").text("positive downward");
     json_.key("reactions").text("positive upward: compression in a column is positive; uplift is negative");
     json_.key("stations").text("along a member or wall from its `from` end");
-    json_.key("moments").text("sagging positive; at a fixed end: positive where it holds a cantilever that runs "
-                              "towards the other end");
+    json_.key("moments").text(
+        "sagging positive; at a fixed end: positive where it holds a cantilever that runs "
+        "towards the other end");
     json_.key("first_moments").text("[sum of P x, sum of P y] about the plan's origin");
     json_.close_object();
 }

@@ -64,7 +64,7 @@ private:
     Scale scale_;
     Names names_;
     JsonWriter json_;
-    double noise_ = 0; ///< m, of stations
+    double noise_ = 0;                           ///< m, of stations
     std::vector<std::vector<LinePiece>> pieces_; ///< by case
 };
 
