@@ -38,7 +38,7 @@ struct Stations {
 
     [[nodiscard]] double at(double across) const {
         const double t = std::clamp((across - across_from) / (across_to - across_from), 0.0, 1.0);
-        return t * length;
+        return t * length + 0.0; // no negative zero
     }
 };
 

@@ -11,48 +11,79 @@ public:
     explicit ContactFinder(LevelDraft& draft) : draft_(draft) {}
 
     Contacts run() {
-        const auto members = static_cast<std::uint32_t>(draft_.level.members.size());
+        const std::size_t members = draft_.level.members.size();
         contacts_.supports.reserve(members, members);
-        for (std::uint32_t m = 0; m < members; ++m) {
-            const std::uint32_t line = draft_.line_of[m];
+        for (std::uint32_t line = 0; line < draft_.elements.lines; ++line) {
             if (draft_.lines[line].usable) {
                 for (const std::uint32_t e : draft_.near[line]) {
-                    meet(m, e);
+                    meet(line, e);
                 }
-                meet_own_pieces(m, line);
+                meet_own_pieces(line);
             }
-            contacts_.supports.end_group();
+            flush_supports(line);
         }
         return std::move(contacts_);
     }
 
 private:
-    void meet(std::uint32_t m, std::uint32_t element) {
+    void meet(std::uint32_t line, std::uint32_t element) {
         if (draft_.elements.is_column(element)) {
-            meet_column(m, draft_.column_of(element));
+            const std::uint32_t column = draft_.column_of(element);
+            const Point at = draft_.plan.columns[column].at;
+            const auto [first, last] = draft_.members_near(line, at, at, draft_.reach());
+            for (std::uint32_t m = first; m < last; ++m) {
+                meet_column(m, column);
+            }
         } else if (draft_.elements.is_wall(element)) {
-            meet_wall(m, draft_.wall_of(element));
-        } else if (draft_.lines[element].usable) {
-            for (std::uint32_t other = draft_.first_member[element]; other < draft_.first_member[element + 1];
-                 ++other) {
-                if (m < other) {
-                    meet_member(m, other);
-                }
+            const std::uint32_t wall = draft_.wall_of(element);
+            const Axis axis = draft_.wall_axis(wall);
+            const auto [first, last] = draft_.members_near(line, axis.from, axis.to, draft_.reach());
+            for (std::uint32_t m = first; m < last; ++m) {
+                meet_wall(m, wall);
+            }
+        } else if (line < element && draft_.lines[element].usable) {
+            meet_line(line, element);
+        }
+    }
+
+    void meet_line(std::uint32_t line, std::uint32_t other_line) {
+        const Axis& axis = draft_.lines[other_line].axis;
+        const auto [first, last] = draft_.members_near(line, axis.from, axis.to, draft_.reach());
+        for (std::uint32_t m = first; m < last; ++m) {
+            const FramedMember& member = draft_.level.members[m];
+            const auto [other_first, other_last] =
+                draft_.members_near(other_line, member.from, member.to, draft_.reach());
+            for (std::uint32_t other = other_first; other < other_last; ++other) {
+                meet_member(m, other);
             }
         }
     }
 
     /// Pieces of one joist meet where it was cut.
-    void meet_own_pieces(std::uint32_t m, std::uint32_t line) {
-        for (std::uint32_t other = m + 1; other < draft_.first_member[line + 1]; ++other) {
-            meet_member(m, other);
+    void meet_own_pieces(std::uint32_t line) {
+        for (std::uint32_t m = draft_.first_member[line]; m + 1 < draft_.first_member[line + 1]; ++m) {
+            meet_member(m, m + 1);
         }
+    }
+
+    /// Closes the groups of a line's members: supports were found support by support, not piece by piece.
+    void flush_supports(std::uint32_t line) {
+        std::stable_sort(found_.begin(), found_.end(),
+                         [](const auto& a, const auto& b) { return a.first < b.first; });
+        std::size_t next = 0;
+        for (std::uint32_t m = draft_.first_member[line]; m < draft_.first_member[line + 1]; ++m) {
+            for (; next < found_.size() && found_[next].first == m; ++next) {
+                contacts_.supports.push(found_[next].second);
+            }
+            contacts_.supports.end_group();
+        }
+        found_.clear();
     }
 
     void meet_column(std::uint32_t m, std::uint32_t column) {
         const NearPoint near = nearest_on(draft_.axis_of(m), draft_.plan.columns[column].at);
         if (near.distance <= draft_.reach()) {
-            contacts_.supports.push({{CarrierKind::column, column}, near.station, 0});
+            found_.emplace_back(m, SupportContact{{CarrierKind::column, column}, near.station, 0});
         }
     }
 
@@ -62,7 +93,8 @@ private:
         if (const auto stretch = stretch_along(axis, wall_axis, draft_.reach())) {
             refuse_along(m, {CarrierKind::wall, wall}, *stretch);
         } else if (const auto touch = touch_of(axis, wall_axis, draft_.reach())) {
-            contacts_.supports.push({{CarrierKind::wall, wall}, touch->station, touch->other_station});
+            found_.emplace_back(
+                m, SupportContact{{CarrierKind::wall, wall}, touch->station, touch->other_station});
         }
     }
 
@@ -95,6 +127,7 @@ private:
 
     LevelDraft& draft_;
     Contacts contacts_;
+    std::vector<std::pair<std::uint32_t, SupportContact>> found_; ///< of the line at hand, by member
 };
 
 } // namespace

@@ -27,6 +27,30 @@ void Surroundings::find(Point a, Point b, double reach, std::vector<std::uint32_
     index_.find(box_around(a, b, reach), found);
 }
 
+std::pair<std::uint32_t, std::uint32_t> LevelDraft::members_near(std::uint32_t line, Point a, Point b,
+                                                                 double distance) const {
+    const std::uint32_t first = first_member[line];
+    const std::uint32_t last = first_member[line + 1];
+    if (last - first < 2) {
+        return {first, last};
+    }
+    // Pieces stand in order along their line, so that stations on it tell which of them can be near. A piece
+    // may lie off its line's stations by snap.
+    const Axis& axis = lines[line].axis;
+    const double station_a = station_of(a, axis.from, axis.to);
+    const double station_b = station_of(b, axis.from, axis.to);
+    const double low = std::min(station_a, station_b) - distance - reach();
+    const double high = std::max(station_a, station_b) + distance + reach();
+    const auto members = level.members.begin();
+    const auto begin = std::partition_point(members + first, members + last, [&](const FramedMember& m) {
+        return station_of(m.to, axis.from, axis.to) < low;
+    });
+    const auto end = std::partition_point(begin, members + last, [&](const FramedMember& m) {
+        return station_of(m.from, axis.from, axis.to) <= high;
+    });
+    return {static_cast<std::uint32_t>(begin - members), static_cast<std::uint32_t>(end - members)};
+}
+
 namespace {
 /// The id that the plan gave: that of the field for a generated joist.
 std::string_view given_id(const LevelDraft& draft, std::uint32_t member) {

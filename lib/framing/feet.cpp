@@ -57,7 +57,8 @@ private:
             } else if (draft_.elements.is_wall(e)) {
                 carriers.push_back({CarrierKind::wall, draft_.wall_of(e)});
             } else if (draft_.lines[e].usable) {
-                for (std::uint32_t m = draft_.first_member[e]; m < draft_.first_member[e + 1]; ++m) {
+                const auto [first, last] = draft_.members_near(e, a, b, reach);
+                for (std::uint32_t m = first; m < last; ++m) {
                     carriers.push_back({CarrierKind::member, m});
                 }
             }

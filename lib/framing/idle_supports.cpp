@@ -108,7 +108,8 @@ private:
             if (!draft_.elements.is_line(e) || !draft_.lines[e].usable) {
                 continue;
             }
-            for (std::uint32_t m = draft_.first_member[e]; m < draft_.first_member[e + 1]; ++m) {
+            const auto [first, last] = draft_.members_near(e, axis.from, axis.to, limit_);
+            for (std::uint32_t m = first; m < last; ++m) {
                 const Gap gap = gap_between(axis, draft_.axis_of(m));
                 if (gap.distance <= limit_ && gap.distance > draft_.reach() &&
                     (!best || gap.distance < best->second.distance)) {

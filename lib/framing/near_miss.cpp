@@ -49,7 +49,8 @@ private:
                 offer(m, end, draft_.wall_axis(draft_.wall_of(e)), {CarrierKind::wall, draft_.wall_of(e)},
                       best);
             } else if (draft_.lines[e].usable && draft_.lines[e].role >= draft_.level.members[m].role) {
-                for (std::uint32_t q = draft_.first_member[e]; q < draft_.first_member[e + 1]; ++q) {
+                const auto [first, last] = draft_.members_near(e, end, end, limit_);
+                for (std::uint32_t q = first; q < last; ++q) {
                     if (q != m) {
                         offer(m, end, draft_.axis_of(q), {CarrierKind::member, q}, best);
                     }
@@ -82,16 +83,15 @@ private:
         // Within 45 degrees of the member's own direction it stops short, else it passes beside.
         const bool short_of = dot(way, outward) >= std::abs(cross(way, outward));
         const std::string on = label_of(draft_, miss.carrier);
-        const std::string text = "`" + std::string(from_end ? "from" : "to") + "` end is " +
-                                 length_text(miss.near.distance, draft_.plan.units) +
-                                 (short_of ? " short of " : " beside ") + on;
+        const std::string end_name = from_end ? "`from` end" : "`to` end";
+        std::string miss_text = length_text(miss.near.distance, draft_.plan.units);
+        miss_text += (short_of ? " short of " : " beside ") + on + " at " + place_text(draft_.plan, end);
         std::string& known = misses_[m];
-        known += (known.empty() ? "Its " : " Its ") + text + " at " + place_text(draft_.plan, end) + '.';
+        known += (known.empty() ? "Its " : " Its ") + end_name + " is " + miss_text + '.';
         draft_.problems.add(ProblemCode::near_miss, [&] {
             const std::string id = label_of(draft_, m);
             return member_problem(draft_, ProblemCode::near_miss, m,
-                                  "The " + text.substr(0, text.find(" is ")) + " of " + id +
-                                      text.substr(text.find(" is ")) + " at " + place_text(draft_.plan, end) +
+                                  "The " + end_name + " of " + id + " is " + miss_text +
                                       "; points are one within snap (" +
                                       length_text(draft_.tolerance.snap, draft_.plan.units) + ") only.",
                                   "To bear on " + on + ", end at " + place_text(draft_.plan, miss.near.at) +

@@ -41,7 +41,8 @@ private:
                 offer(edge, draft_.plan.walls[draft_.wall_of(e)].from);
                 offer(edge, draft_.plan.walls[draft_.wall_of(e)].to);
             } else {
-                for (std::uint32_t m = draft_.first_member[e]; m < draft_.first_member[e + 1]; ++m) {
+                const auto [first, last] = draft_.members_near(e, edge.from, edge.to, draft_.reach());
+                for (std::uint32_t m = first; m < last; ++m) {
                     offer(edge, draft_.level.members[m].from);
                     offer(edge, draft_.level.members[m].to);
                 }

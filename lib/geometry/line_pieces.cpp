@@ -48,16 +48,35 @@ std::size_t cluster_of(const std::vector<double>& clusters, double station) {
 
 struct Stretch {
     std::size_t from = 0, to = 0; ///< clusters
-    const LinePiece* piece = nullptr;
+    LinePiece piece;              ///< moved to them
 };
+
+/// The piece stretched to other ends, its force kept: a short steep piece would otherwise gain or lose what
+/// its ends move.
+LinePiece moved_to(const LinePiece& piece, double from, double to) {
+    if (piece.from == from && piece.to == to) {
+        return piece;
+    }
+    LinePiece moved = piece;
+    moved.from = from;
+    moved.to = to;
+    const double rate = (piece.to - piece.from) / (to - from);
+    double scale = rate;
+    for (double& c : moved.c) {
+        c *= scale;
+        scale *= rate;
+    }
+    return moved;
+}
 
 std::vector<Stretch> stretches_of(const std::vector<LinePiece>& pieces, const std::vector<double>& clusters) {
     std::vector<Stretch> stretches;
     stretches.reserve(pieces.size());
     for (const LinePiece& piece : pieces) {
-        const Stretch stretch{cluster_of(clusters, piece.from), cluster_of(clusters, piece.to), &piece};
-        if (stretch.from < stretch.to) {
-            stretches.push_back(stretch);
+        const std::size_t from = cluster_of(clusters, piece.from);
+        const std::size_t to = cluster_of(clusters, piece.to);
+        if (from < to) {
+            stretches.push_back({from, to, moved_to(piece, clusters[from], clusters[to])});
         }
     }
     std::stable_sort(stretches.begin(), stretches.end(),
@@ -92,8 +111,12 @@ bool join(LinePiece& left, const LinePiece& right, double noise) {
     const double reach = right.to - left.from;
     // Where a border moved by noise, the steepest change of intensity there follows from size and reach.
     const double size = std::max(size_over(left, reach), size_over(right, reach));
-    const double allowed = rounding * size + noise * std::abs(left.c[1]);
     const double length = shorter.to - shorter.from;
+    // Pieces whose ends were moved carry their force on another length; that counts by what stands on them
+    // themselves.
+    const double own =
+        std::max(size_over(left, left.to - left.from), size_over(right, right.to - right.from));
+    const double allowed = rounding * size + noise / length * own + noise * std::abs(left.c[1]);
     double power = 1;
     for (std::size_t k = 0; k < continued.c.size(); ++k) {
         if (!(std::abs(continued.c[k] - shorter.c[k]) * power <= allowed)) {
@@ -101,7 +124,9 @@ bool join(LinePiece& left, const LinePiece& right, double noise) {
         }
         power *= length;
     }
+    const double force = left.total() + right.total();
     left = left_leads ? LinePiece{left.from, right.to, left.c} : right.between(left.from, right.to);
+    left.c[0] += (force - left.total()) / (left.to - left.from); // what the shorter differed by is not lost
     return true;
 }
 
@@ -127,7 +152,7 @@ std::vector<LinePiece> merged(std::vector<LinePiece> pieces, double noise) {
         }
         LinePiece sum{clusters[i], clusters[i + 1], {}};
         for (const Stretch& stretch : active) {
-            const LinePiece part = stretch.piece->between(sum.from, sum.to);
+            const LinePiece part = stretch.piece.between(sum.from, sum.to);
             for (std::size_t k = 0; k < sum.c.size(); ++k) {
                 sum.c[k] += part.c[k];
             }

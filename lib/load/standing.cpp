@@ -4,7 +4,9 @@
 #include "load/fit.hpp"
 
 #include <algorithm>
+#include <array>
 #include <cmath>
+#include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -168,24 +170,44 @@ struct Stretch {
     [[nodiscard]] double w(double t) const { return (1 - t) * w_a + t * w_b; }
 };
 
-/// A stretch along the strips puts one point load on each carrier. Parts are linear along it, so Simpson's
-/// rule is exact.
+/// Force and first moment, in the stretch's parameter t, of part of a load.
+struct Resultant {
+    double force = 0;
+    double moment = 0;
+
+    /// Where it acts; for a force that cancels itself, the middle, which a point load cannot better.
+    [[nodiscard]] double centre() const { return force != 0 ? std::clamp(moment / force, 0.0, 1.0) : 0.5; }
+};
+
+/// A stretch along the strips, to within `snap`, puts one point load on each carrier, where its part of the
+/// load acts.
 void put_points(const Stretch& s, Collector& collector) {
-    const double whole = s.length * (s.w_a + s.w_b) / 2;
-    const double high = s.length * (s.w(0) * s.part(0) + 4 * s.w(0.5) * s.part(0.5) + s.w(1) * s.part(1)) / 6;
-    const double sum = s.w_a + s.w_b;
-    const double centre = sum != 0 ? std::clamp((s.w_a + 2 * s.w_b) / (3 * sum), 0.0, 1.0) : 0.5;
-    const double across = between(s.a, s.b, centre).y;
-    if (s.bay.high_carrier != none) {
-        collector.put_point(
-            s.bay.high_carrier, none,
-            {s.load_case, s.source, high_station(s.bay, across), s.bay.low_carrier == none ? whole : high});
+    // Gauss's rule of three points: exact up to the fifth power, and parts are all but linear along the
+    // strips.
+    const double apart = std::sqrt(0.6) / 2;
+    const std::array<std::pair<double, double>, 3> rule{
+        {{0.5 - apart, 5.0 / 18}, {0.5, 8.0 / 18}, {0.5 + apart, 5.0 / 18}}};
+    Resultant whole;
+    Resultant high;
+    for (const auto& [t, weight] : rule) {
+        const double w = weight * s.length * s.w(t);
+        whole.force += w;
+        whole.moment += w * t;
+        high.force += w * s.part(t);
+        high.moment += w * s.part(t) * t;
     }
-    if (s.bay.low_carrier != none) {
-        collector.put_point(s.bay.low_carrier, none,
-                            {s.load_case, s.source, low_station(s.bay, across),
-                             s.bay.high_carrier == none ? whole : whole - high});
+    const auto put = [&](std::uint32_t carrier, bool is_high, const Resultant& part) {
+        const double across = between(s.a, s.b, part.centre()).y;
+        const double station = is_high ? high_station(s.bay, across) : low_station(s.bay, across);
+        collector.put_point(carrier, none, {s.load_case, s.source, station, part.force});
+    };
+    if (s.bay.low_carrier == none || s.bay.high_carrier == none) {
+        const bool is_high = s.bay.high_carrier != none;
+        put(is_high ? s.bay.high_carrier : s.bay.low_carrier, is_high, whole);
+        return;
     }
+    put(s.bay.high_carrier, true, high);
+    put(s.bay.low_carrier, false, {whole.force - high.force, whole.moment - high.moment});
 }
 
 void put_cubic(const Stretch& s, bool high, double from, double to, std::array<double, 4> c,

@@ -78,12 +78,11 @@ private:
 
 /// What a column or wall that ends here has gathered above.
 AreaBrought above_of(const Takedown& takedown, Carrier upper) {
-    if (upper.kind == CarrierKind::column) {
-        const Lift& lift = takedown.columns[upper.index].lifts.back();
-        return {0, lift.area_total, lift.floors};
-    }
-    const WallLift& lift = takedown.walls[upper.index].lifts.back();
-    return {0, lift.area_total, lift.floors};
+    const auto of_last = [](const auto& lifts) {
+        return lifts.empty() ? AreaBrought{} : AreaBrought{0, lifts.back().area_total, lifts.back().floors};
+    };
+    return upper.kind == CarrierKind::column ? of_last(takedown.columns[upper.index].lifts)
+                                             : of_last(takedown.walls[upper.index].lifts);
 }
 
 /// The part of what a foot's carrier brings that stands on this foot: a wall's area is spread evenly along

@@ -52,15 +52,17 @@ void add_feet_on(const Takedown& takedown, std::uint32_t level_index, Carrier ca
 /// What a column or wall brings to its foot, on its own axis.
 void add_foot_of(const Takedown& takedown, Carrier upper, CaseSums& sums) {
     if (upper.kind == CarrierKind::column) {
-        const Lift& lift = takedown.columns[upper.index].lifts.back();
-        for (std::uint32_t c = 0; c < sums.cases(); ++c) {
-            sums.add_point(c, takedown.plan.columns[upper.index].at, lift.total[c]);
+        const std::vector<Lift>& lifts = takedown.columns[upper.index].lifts;
+        for (std::uint32_t c = 0; !lifts.empty() && c < sums.cases(); ++c) {
+            sums.add_point(c, takedown.plan.columns[upper.index].at, lifts.back().total[c]);
         }
         return;
     }
     const Wall& wall = takedown.plan.walls[upper.index];
-    const WallLift& lift = takedown.walls[upper.index].lifts.back();
-    sums.add_loads(axis_between(wall.from, wall.to), lift.line, lift.point);
+    const std::vector<WallLift>& lifts = takedown.walls[upper.index].lifts;
+    if (!lifts.empty()) {
+        sums.add_loads(axis_between(wall.from, wall.to), lifts.back().line, lifts.back().point);
+    }
 }
 
 void add_fixed_moments(const Takedown& takedown, std::uint32_t level_index, CaseSums& sums) {

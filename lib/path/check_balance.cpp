@@ -141,9 +141,9 @@ void BalanceChecker::check_level(std::uint32_t level_index) {
         if (foot.lower.kind != CarrierKind::member || foot.upper.kind != CarrierKind::column) {
             continue;
         }
-        const Lift& lift = takedown_.columns[foot.upper.index].lifts.back();
-        for (std::uint32_t c = 0; c < cases_; ++c) {
-            put_on(c, lift.total[c]);
+        const std::vector<Lift>& lifts = takedown_.columns[foot.upper.index].lifts;
+        for (std::uint32_t c = 0; !lifts.empty() && c < cases_; ++c) {
+            put_on(c, lifts.back().total[c]);
         }
     }
     for (std::uint32_t m = 0; m < level.sharing.members && !framed.feet.empty(); ++m) {

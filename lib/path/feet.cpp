@@ -93,7 +93,11 @@ struct FootLoads {
 };
 
 void stand_column(const Takedown& takedown, const Sharing& sharing, const Foot& foot, FootLoads& loads) {
-    const Lift& lift = takedown.columns[foot.upper.index].lifts.back();
+    const std::vector<Lift>& lifts = takedown.columns[foot.upper.index].lifts;
+    if (lifts.empty()) {
+        return; // nothing bears on it anywhere
+    }
+    const Lift& lift = lifts.back();
     const std::uint32_t carrier = sharing.number_of(foot.lower);
     for (std::uint32_t c = 0; c < lift.total.size(); ++c) {
         if (lift.total[c] != 0) {
@@ -127,6 +131,9 @@ void stand_line(const CarrierLine& line, const WallFeet& wall, const Sharing& sh
 void stand_wall(const Takedown& takedown, const Sharing& sharing, const WallFeet& wall, double noise,
                 FootLoads& loads) {
     const std::uint32_t index = wall.feet.front()->upper.index;
+    if (takedown.walls[index].lifts.empty()) {
+        return; // nothing bears on it anywhere
+    }
     const WallLift& lift = takedown.walls[index].lifts.back();
     for (const CarrierLine& line : lift.line) {
         stand_line(line, wall, sharing, noise, loads);

@@ -1,6 +1,7 @@
 #include "path/findings.hpp"
 
 #include "geometry/basic.hpp"
+#include "path/member_names.hpp"
 #include "path/member_path.hpp"
 #include "path/places.hpp"
 #include "plan/problems.hpp"
@@ -19,10 +20,6 @@ constexpr double rounding = 4096 * std::numeric_limits<double>::epsilon();
 
 /// Ids that a note lists; the rest is counted.
 constexpr std::size_t ids_listed = 20;
-
-std::string full_id(const FramedLevel& level, const FramedMember& member) {
-    return level.id + '/' + member.id;
-}
 
 const char* list_of(const FramedMember& member) {
     return member.from_field ? "joist_fields" : "members";
@@ -105,6 +102,7 @@ void find_uplift(Takedown& takedown) {
 void warn_of_fixed_moments(Takedown& takedown) {
     const std::size_t cases = takedown.plan.cases.size();
     const Units units = takedown.plan.units;
+    MemberNames names(takedown.framing);
     for (std::size_t l = 0; l < takedown.levels.size(); ++l) {
         const FramedLevel& framed = takedown.framing.levels[l];
         const std::span<const double> moments = takedown.levels[l].fixed_moments;
@@ -116,14 +114,15 @@ void warn_of_fixed_moments(Takedown& takedown) {
                 if (!bearings[b].fixed || magnitude_of_all(own) == 0) {
                     continue;
                 }
+                const std::string name = names.of(l, m);
                 const std::string on = carrier_id(takedown.plan, framed, bearings[b].on);
                 Problem problem = problem_at(
                     ProblemCode::moment_not_carried_down, member.origin, list_of(member),
                     "The moment of " + moment_text(sum_of(own), units) + " (all cases together) that holds " +
-                        full_id(framed, member) + " at its built-in end on " + on +
+                        name + " at its built-in end on " + on +
                         " leaves the load path there: it is not carried further down.",
                     "Check what carries it: on a member it is torsion, on a column or wall bending.",
-                    {full_id(framed, member), on});
+                    {name, on});
                 problem.point = bearings[b].at;
                 takedown.problems.push_back(std::move(problem));
             }
@@ -133,7 +132,9 @@ void warn_of_fixed_moments(Takedown& takedown) {
 
 void note_assumed_stiffness(Takedown& takedown) {
     const Plan& plan = takedown.plan;
-    for (const FramedLevel& framed : takedown.framing.levels) {
+    MemberNames names(takedown.framing);
+    for (std::size_t l = 0; l < takedown.framing.levels.size(); ++l) {
+        const FramedLevel& framed = takedown.framing.levels[l];
         std::vector<std::string> ids;
         std::size_t count = 0;
         for (std::uint32_t m = 0; m < framed.members.size(); ++m) {
@@ -142,7 +143,7 @@ void note_assumed_stiffness(Takedown& takedown) {
             const bool known = section != nullptr && section->E && section->I;
             if (!known && degree_of_indeterminacy(member, framed.bearings[m], plan.settings.snap) > 0 &&
                 ++count <= ids_listed) {
-                ids.push_back(full_id(framed, member));
+                ids.push_back(names.of(l, m));
             }
         }
         if (count == 0) {

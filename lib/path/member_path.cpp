@@ -46,22 +46,18 @@ Beam beam_of(const FramedMember& member, std::span<const Bearing> bearings, doub
 
 } // namespace
 
-std::vector<Span> spans_of(const FramedMember& member, std::span<const Bearing> bearings, double snap) {
-    std::vector<Span> spans;
-    if (bearings.empty()) {
-        return spans;
-    }
-    spans.reserve(bearings.size() + 1);
-    if (bearings.front().station > snap) {
-        spans.push_back({0, bearings.front().station, true});
+void push_spans(const FramedMember& member, std::span<const Bearing> bearings, double snap,
+                Grouped<Span>& spans) {
+    if (!bearings.empty() && bearings.front().station > snap) {
+        spans.push({0, bearings.front().station, true});
     }
     for (std::size_t b = 0; b + 1 < bearings.size(); ++b) {
-        spans.push_back({bearings[b].station, bearings[b + 1].station, false});
+        spans.push({bearings[b].station, bearings[b + 1].station, false});
     }
-    if (member.length - bearings.back().station > snap) {
-        spans.push_back({bearings.back().station, member.length, true});
+    if (!bearings.empty() && member.length - bearings.back().station > snap) {
+        spans.push({bearings.back().station, member.length, true});
     }
-    return spans;
+    spans.end_group();
 }
 
 std::uint32_t span_at(std::span<const Span> spans, double last_bearing, double station, double noise) {

@@ -11,10 +11,10 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
-/// The spans and overhangs of a member, by rising station. A bearing within `snap` of an end leaves no
-/// overhang there.
-[[nodiscard]] std::vector<Span> spans_of(const FramedMember& member, std::span<const Bearing> bearings,
-                                         double snap);
+/// Adds the spans and overhangs of a member, by rising station, as a group. A bearing within `snap` of an end
+/// leaves no overhang there.
+void push_spans(const FramedMember& member, std::span<const Bearing> bearings, double snap,
+                Grouped<Span>& spans);
 
 /// The span that a point load counts with: over a bearing (within `noise`) the one that begins there, over
 /// the last bearing the one that ends there.

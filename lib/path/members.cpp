@@ -1,9 +1,12 @@
 #include "geometry/basic.hpp"
 #include "path/level_path.hpp"
+#include "path/member_names.hpp"
 #include "path/member_path.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
+#include <string>
+#include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -19,7 +22,7 @@ struct ColumnsInPathOrder {
 void find_spans(LevelTakedown& level, const FramedLevel& framed, double snap) {
     level.spans.reserve(framed.members.size(), framed.bearings.items().size());
     for (std::uint32_t m = 0; m < framed.members.size(); ++m) {
-        level.spans.push_group(spans_of(framed.members[m], framed.bearings[m], snap));
+        push_spans(framed.members[m], framed.bearings[m], snap, level.spans);
     }
 }
 
@@ -69,14 +72,18 @@ void keep(LevelTakedown& level, const FramedLevel& framed, std::uint32_t member,
     columns.items.insert(columns.items.end(), worked.columns().begin(), worked.columns().end());
 }
 
-Problem cannot_stand(const FramedLevel& framed, std::uint32_t index) {
+Problem cannot_stand(const Framing& framing, std::uint32_t level, std::uint32_t index) {
+    const FramedLevel& framed = framing.levels[level];
     const FramedMember& member = framed.members[index];
-    Problem problem =
-        problem_at(ProblemCode::mechanism, member.origin, member.from_field ? "joist_fields" : "members",
-                   "Member " + framed.id + '/' + member.id + " moves freely on its " +
-                       std::to_string(framed.bearings[index].size()) + " bearings and " +
-                       std::to_string(member.hinges.size()) + " hinges.",
-                   "Take out a hinge, or add a bearing.", {framed.id + '/' + member.id});
+    const std::string name = MemberNames(framing).of(level, index);
+    const auto counted = [](std::size_t count, const char* what) {
+        return std::to_string(count) + ' ' + what + (count == 1 ? "" : "s");
+    };
+    Problem problem = problem_at(
+        ProblemCode::mechanism, member.origin, member.from_field ? "joist_fields" : "members",
+        "Member " + name + " moves freely: it has " + counted(framed.bearings[index].size(), "bearing") +
+            " and " + counted(member.hinges.size(), "hinge") + '.',
+        "Take out a hinge, or add a bearing.", {name});
     problem.point = member.from;
     return problem;
 }
@@ -121,7 +128,7 @@ void pass_members(Takedown& takedown, std::uint32_t level_index, const LevelPath
         if (stands) {
             keep(level, framed, m, cases, worked, columns);
         } else {
-            takedown.problems.push_back(cannot_stand(framed, m));
+            takedown.problems.push_back(cannot_stand(takedown.framing, level_index, m));
         }
     }
     order_columns(level, columns);

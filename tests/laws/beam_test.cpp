@@ -31,18 +31,22 @@ struct Effects {
 
 using Real = long double;
 
+Real real(double value) {
+    return static_cast<Real>(value);
+}
+
 Real intensity(const LinePiece& piece, Real t) {
     Real w = 0;
     for (std::size_t k = piece.c.size(); k-- > 0;) {
-        w = w * (t - static_cast<Real>(piece.from)) + static_cast<Real>(piece.c[k]);
+        w = w * (t - real(piece.from)) + real(piece.c[k]);
     }
     return w;
 }
 
 /// Integral of w(t) (s - t)^n / n! over the part of the piece before s.
 Real piled(const LinePiece& piece, Real s, int n) {
-    const Real from = piece.from;
-    const Real to = std::min<Real>(s, piece.to);
+    const Real from = real(piece.from);
+    const Real to = std::min(s, real(piece.to));
     if (to <= from) {
         return 0;
     }
@@ -96,20 +100,20 @@ struct Oracle {
         r.push_back(d == 0 ? 1 : 0);
         r.push_back(d == 0 ? s : (d == 1 ? 1 : 0));
         for (const BeamSupport& support : beam.supports) {
-            r.push_back(-bracket(s - static_cast<Real>(support.station), 3 - d));
+            r.push_back(-bracket(s - real(support.station), 3 - d));
         }
         for (const std::size_t i : held) {
-            r.push_back(d > 2 ? 0 : bracket(s - static_cast<Real>(beam.supports[i].station), 2 - d));
+            r.push_back(d > 2 ? 0 : bracket(s - real(beam.supports[i].station), 2 - d));
         }
         for (const double hinge : beam.hinges) {
-            r.push_back(d > 1 ? 0 : bracket(s - static_cast<Real>(hinge), 1 - d));
+            r.push_back(d > 1 ? 0 : bracket(s - real(hinge), 1 - d));
         }
         Real load = 0;
         for (const LinePiece& piece : loads.lines) {
             load += piled(piece, s, 3 - d);
         }
         for (const PointLoad1& point : loads.points) {
-            load += static_cast<Real>(point.p) * bracket(s - static_cast<Real>(point.station), 3 - d);
+            load += real(point.p) * bracket(s - real(point.station), 3 - d);
         }
         r.push_back(-load);
         return r;
@@ -117,16 +121,16 @@ struct Oracle {
     [[nodiscard]] std::optional<Effects> solve(const Loads& loads) const {
         std::vector<std::vector<Real>> a;
         for (const BeamSupport& support : beam.supports) {
-            a.push_back(row(support.station, 0, loads));
+            a.push_back(row(real(support.station), 0, loads));
         }
         for (const std::size_t i : held) {
-            a.push_back(row(beam.supports[i].station, 1, loads));
+            a.push_back(row(real(beam.supports[i].station), 1, loads));
         }
         for (const double hinge : beam.hinges) {
-            a.push_back(row(hinge, 2, loads));
+            a.push_back(row(real(hinge), 2, loads));
         }
-        a.push_back(row(beam.length, 2, loads));
-        a.push_back(row(beam.length, 3, loads));
+        a.push_back(row(real(beam.length), 2, loads));
+        a.push_back(row(real(beam.length), 3, loads));
         const std::size_t n = size();
         std::vector<std::size_t> order(n);
         for (std::size_t j = 0; j < n; ++j) {
@@ -143,7 +147,7 @@ struct Oracle {
                     }
                 }
             }
-            if (std::abs(a[row_at][column_at]) < Real{1e-11}) {
+            if (std::abs(a[row_at][column_at]) < real(1e-11)) {
                 return std::nullopt; // a mechanism
             }
             std::swap(a[k], a[row_at]);
@@ -314,27 +318,26 @@ TEST_CASE("random beams: reactions and held moments balance the load as force an
         Real moment = 0;
         Real size = 0;
         for (const LinePiece& piece : loads.lines) {
-            const Real total = piled(piece, beam.length, 0);
+            const Real total = piled(piece, real(beam.length), 0);
             force += total;
-            moment += total * static_cast<Real>(beam.length) - piled(piece, beam.length, 1);
+            moment += total * real(beam.length) - piled(piece, real(beam.length), 1);
             size += std::abs(total);
         }
         for (const PointLoad1& point : loads.points) {
-            force += static_cast<Real>(point.p);
-            moment += static_cast<Real>(point.p) * static_cast<Real>(point.station);
-            size += std::abs(static_cast<Real>(point.p));
+            force += real(point.p);
+            moment += real(point.p) * real(point.station);
+            size += std::abs(real(point.p));
         }
         for (std::size_t i = 0; i < found.reactions.size(); ++i) {
-            const Real reaction = found.reactions[i];
+            const Real reaction = real(found.reactions[i]);
             force -= reaction;
-            moment -=
-                reaction * static_cast<Real>(beam.supports[i].station) + static_cast<Real>(found.moments[i]);
+            moment -= reaction * real(beam.supports[i].station) + real(found.moments[i]);
             size += std::abs(reaction);
         }
         INFO("round ", round);
         worst = std::max(worst, static_cast<double>(std::abs(force) / size));
-        REQUIRE(std::abs(force) <= Real{1e-12} * size);
-        REQUIRE(std::abs(moment) <= Real{1e-12} * size * static_cast<Real>(beam.length));
+        REQUIRE(std::abs(force) <= real(1e-12) * size);
+        REQUIRE(std::abs(moment) <= real(1e-12) * size * real(beam.length));
     }
     MESSAGE("seed ", seed, ": worst force left over ", worst, " of the sum of |P|");
 }

@@ -12,6 +12,12 @@ namespace support {
 
 namespace {
 
+/// Whole twentieths of a metre: points then fall on each other or lie apart, and `snap` has nothing to
+/// choose, whose choice goes by the order of the lists.
+double round_to_twentieths(double value) {
+    return std::round(20 * value) / 20;
+}
+
 class Builder {
 public:
     Builder(std::uint64_t seed, const Placing& placing) : random_(seed), placing_(placing) {}
@@ -62,11 +68,11 @@ private:
         const int ny = random_.whole(1, 3);
         xs_.push_back(0);
         for (int i = 0; i < nx; ++i) {
-            xs_.push_back(xs_.back() + random_.between(3, 8));
+            xs_.push_back(xs_.back() + round_to_twentieths(random_.between(3, 8)));
         }
         ys_.push_back(0);
         for (int i = 0; i < ny; ++i) {
-            ys_.push_back(ys_.back() + random_.between(3, 7));
+            ys_.push_back(ys_.back() + round_to_twentieths(random_.between(3, 7)));
         }
         storeys_ = static_cast<std::size_t>(random_.whole(1, 4));
         wall_ = random_.chance(0.35);
@@ -189,7 +195,7 @@ private:
             field.id = "J" + id;
             field.outline = rectangle(x0, y0, x1, y1);
             field.direction = 90 + placing_.degrees;
-            field.spacing = random_.between(0.4, 1.4);
+            field.spacing = round_to_twentieths(random_.between(0.4, 1.4));
             field.section = "timber";
             field.origin.level = level.origin.level;
             field.origin.index = static_cast<std::uint32_t>(level.joist_fields.size());
@@ -198,8 +204,9 @@ private:
         }
         const int n = random_.whole(1, 4);
         for (int k = 1; k <= n; ++k) {
-            const double x = x0 + wide * k / (n + 1);
-            const double lean = kind == 3 ? random_.between(-0.3, 0.3) * wide / (n + 1) : 0;
+            const double x = round_to_twentieths(x0 + wide * k / (n + 1));
+            const double lean =
+                kind == 3 ? round_to_twentieths(random_.between(-0.3, 0.3) * wide / (n + 1)) : 0;
             member(level, "S" + id + "." + std::to_string(k), Role::joist, at(x, y0), at(x + lean, y1));
         }
     }
