@@ -72,20 +72,19 @@ std::string text_of(double value) {
     return text;
 }
 
-namespace {
-std::string with_unit(double value, Units units, Dimension dimension) {
-    return text_of(value / si_per_unit(units, dimension)) + ' ' + unit_text(units, dimension);
+std::string quantity_text(double si_value, Units units, Dimension dimension) {
+    const std::string unit = unit_text(units, dimension);
+    return text_of(si_value / si_per_unit(units, dimension)) + (unit.empty() ? "" : " ") + unit;
 }
-} // namespace
 
 std::string length_text(double metres, Units units) {
-    return with_unit(metres, units, dimension::length);
+    return quantity_text(metres, units, dimension::length);
 }
 std::string area_text(double square_metres, Units units) {
-    return with_unit(square_metres, units, dimension::area);
+    return quantity_text(square_metres, units, dimension::area);
 }
 std::string force_text(double kilonewtons, Units units) {
-    return with_unit(kilonewtons, units, dimension::force);
+    return quantity_text(kilonewtons, units, dimension::force);
 }
 
 std::string point_text(Point point, Units units) {

@@ -26,6 +26,8 @@ RUNNEL_NAMESPACE_BEGIN
 
 /// Short text of a number for sentences: up to six significant figures, no exponent where it can be helped.
 [[nodiscard]] std::string text_of(double value);
+/// A quantity in the document's units, with its unit.
+[[nodiscard]] std::string quantity_text(double si_value, Units units, Dimension dimension);
 /// A length in the document's units, with its unit: "0.012 m".
 [[nodiscard]] std::string length_text(double metres, Units units);
 [[nodiscard]] std::string area_text(double square_metres, Units units);

@@ -1,0 +1,224 @@
+#include "plan/check_levels.hpp"
+
+#include "geometry/basic.hpp"
+#include "plan/problems.hpp"
+#include "plan/ring_checks.hpp"
+#include "plan/words.hpp"
+
+#include <algorithm>
+#include <cmath>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+void check_bears_on(CheckContext& context, const LevelIndex& index, std::size_t level, const Member& member,
+                    const Subject& subject) {
+    const double elevation = context.plan.levels[level].elevation;
+    for (std::size_t i = 0; i < member.bears_on.size(); ++i) {
+        const std::string& name = member.bears_on[i];
+        if (context.is_unread(name)) {
+            continue;
+        }
+        const std::string inside = "/bears_on/" + std::to_string(i);
+        const std::optional<std::string_view> id = index.local_id(level, name);
+        if (id && *id == member.id) {
+            context.report(subject, ProblemCode::load_path_loop, inside,
+                           subject.name() + " bears on itself.");
+            continue;
+        }
+        const Column* column = id ? context.columns.find(*id) : nullptr;
+        const Wall* wall = id ? context.walls.find(*id) : nullptr;
+        const bool is_there = (column != nullptr && context.bears_at(*column, elevation)) ||
+                              (wall != nullptr && context.bears_at(*wall, elevation)) ||
+                              (id && (index.member(level, *id) != nullptr || index.is_joist(level, *id)));
+        if (!is_there && !context.doubts.supports) {
+            const bool elsewhere = column != nullptr || wall != nullptr;
+            context.refuse_reference(name, "carrier on this level", subject, inside,
+                                     elsewhere
+                                         ? "It is no bearing at this level: its base is not below it, or "
+                                           "its top is."
+                                         : "");
+        }
+    }
+}
+
+void check_hinges(CheckContext& context, const Member& member, const Subject& subject) {
+    const double length = distance(member.from, member.to);
+    for (std::size_t i = 0; i < member.hinges.size(); ++i) {
+        const double hinge = member.hinges[i];
+        const std::string inside = "/hinges/" + std::to_string(i);
+        if (context.good_number(hinge, subject, inside, dimension::length) &&
+            (hinge < -context.snap || hinge > length + context.snap)) {
+            context.report(subject, ProblemCode::out_of_range, inside,
+                           "A hinge of " + subject.name() + " is at station " + context.lengths(hinge) +
+                               ", outside its length of " + context.lengths(length) + '.');
+        }
+    }
+}
+
+} // namespace
+
+void check_members(CheckContext& context, const LevelIndex& index, std::size_t level) {
+    const std::vector<Member>& members = context.plan.levels[level].members;
+    const Section* section = nullptr; // the last one; neighbours mostly share it
+    for (std::size_t i = 0; i < members.size(); ++i) {
+        const Member& member = members[i];
+        const Subject subject =
+            CheckContext::subject(member, "members", "member", i, static_cast<std::uint32_t>(level));
+        if (context.good_line(member.from, member.to, subject)) {
+            check_hinges(context, member, subject);
+        }
+        if (!member.section.empty() && (section == nullptr || section->id != member.section)) {
+            section = context.refer(member.section, context.sections, "section", context.doubts.sections,
+                                    subject, "/section");
+            context.use_section(section);
+        }
+        check_bears_on(context, index, level, member, subject);
+    }
+}
+
+void check_joist_fields(CheckContext& context, std::size_t level) {
+    const std::vector<JoistField>& fields = context.plan.levels[level].joist_fields;
+    for (std::size_t i = 0; i < fields.size(); ++i) {
+        const JoistField& field = fields[i];
+        const Subject subject =
+            CheckContext::subject(field, "joist_fields", "joist field", i, static_cast<std::uint32_t>(level));
+        (void)context.good_ring(field.outline, subject, "/outline");
+        context.good_number(field.direction, subject, "/direction", dimension::none);
+        const bool spaced =
+            context.good_number(field.spacing, subject, "/spacing", dimension::length, Range::positive);
+        if (spaced && field.spacing <= context.snap) {
+            context.report(subject, ProblemCode::out_of_range, "/spacing",
+                           "`spacing` of " + subject.name() + " is " + context.lengths(field.spacing) +
+                               ", no more than `snap`, " + context.lengths(context.snap) +
+                               ": its joists would be one.");
+        }
+        const bool placed =
+            context.good_number(field.offset, subject, "/offset", dimension::length, Range::not_negative);
+        const double joists = joists_of(field);
+        if (spaced && placed && std::isfinite(joists) && field.offset > joists * field.spacing) {
+            context.report(subject, ProblemCode::out_of_range, "/offset",
+                           "`offset` of " + subject.name() + " is " + context.lengths(field.offset) +
+                               ", beyond the far edge of its outline.");
+        }
+        if (!field.section.empty()) {
+            context.use_section(context.refer(field.section, context.sections, "section",
+                                              context.doubts.sections, subject, "/section"));
+        }
+    }
+}
+
+namespace {
+
+struct Opening {
+    std::size_t index;
+    Ring ring;
+};
+
+/// Each opening with the first one before it that it shares area with.
+void check_overlaps(CheckContext& context, const std::vector<Opening>& openings, const Subject& subject) {
+    if (openings.size() < 2) {
+        return;
+    }
+    std::vector<Box> boxes;
+    std::vector<RingQuery> queries;
+    for (const Opening& opening : openings) {
+        queries.emplace_back(opening.ring, context.snap);
+        boxes.push_back(queries.back().box());
+    }
+    const BoxTree tree(boxes);
+    std::vector<std::uint32_t> near;
+    constexpr std::size_t most = 100; // of one deck: the rest is the same mistake
+    std::size_t told = 0;
+    for (std::uint32_t i = 1; i < openings.size() && told < most; ++i) {
+        tree.find(boxes[i], near);
+        for (const std::uint32_t k : near) {
+            if (k >= i) {
+                break;
+            }
+            if (const auto p = shared_point(queries[i], openings[i].ring, queries[k], openings[k].ring)) {
+                ++told;
+                context
+                    .report(subject, ProblemCode::openings_overlap,
+                            "/openings/" + std::to_string(openings[i].index),
+                            "Openings " + std::to_string(openings[k].index) + " and " +
+                                std::to_string(openings[i].index) + " of " + subject.name() +
+                                " share area around " + point_text(*p, context.plan.units) +
+                                (told == most ? "; no more overlaps of this deck are listed." : "."),
+                            "Draw them as one opening.")
+                    .point = *p;
+                break;
+            }
+        }
+    }
+}
+
+void check_openings(CheckContext& context, const Deck& deck, const Ring& outline, const Subject& subject) {
+    std::optional<RingQuery> query;
+    if (!outline.empty()) {
+        query.emplace(outline, context.snap);
+    }
+    std::vector<Opening> good;
+    for (std::size_t i = 0; i < deck.openings.size(); ++i) {
+        const std::string inside = "/openings/" + std::to_string(i);
+        Ring ring = context.good_ring(deck.openings[i], subject, inside);
+        if (ring.empty()) {
+            continue;
+        }
+        if (const auto p = query ? query->point_beyond(ring, Side::outside) : std::nullopt) {
+            context
+                .report(subject, ProblemCode::opening_outside_deck, inside,
+                        "Opening " + std::to_string(i) + " of " + subject.name() +
+                            " reaches outside the deck at " + point_text(*p, context.plan.units) +
+                            ", by more than `snap`, " + context.lengths(context.snap) + '.',
+                        "Let it end at the deck's edge, or draw the edge around it.")
+                .point = *p;
+        }
+        good.push_back({i, std::move(ring)});
+    }
+    check_overlaps(context, good, subject);
+}
+
+} // namespace
+
+void check_decks(CheckContext& context, std::size_t level) {
+    const std::vector<Deck>& decks = context.plan.levels[level].decks;
+    for (std::size_t i = 0; i < decks.size(); ++i) {
+        const Deck& deck = decks[i];
+        const Subject subject =
+            CheckContext::subject(deck, "decks", "deck", i, static_cast<std::uint32_t>(level));
+        const Ring outline = context.good_ring(deck.outline, subject, "/outline");
+        if (!deck.openings.empty()) {
+            check_openings(context, deck, outline, subject);
+        }
+        if (deck.span == SpanKind::one_way && !deck.direction) {
+            context.report(subject, ProblemCode::missing_key, "",
+                           "`direction` of " + subject.name() + " is missing: a one-way deck needs it.",
+                           "The angle in degrees along which it spans, from +x counter-clockwise.");
+        }
+        if (deck.direction) {
+            context.good_number(*deck.direction, subject, "/direction", dimension::none);
+        }
+        if (deck.span != SpanKind::one_way) {
+            context.report(subject, ProblemCode::not_supported_yet, "/span",
+                           "`span` of " + subject.name() + ": sharing `" + std::string(name_of(deck.span)) +
+                               "` cannot be computed yet.",
+                           "`one-way` can.");
+        }
+        if (deck.share && *deck.share != Share::half) {
+            context.report(subject, ProblemCode::not_supported_yet, "/share",
+                           "`share` of " + subject.name() + ": sharing by `" +
+                               std::string(name_of(*deck.share)) + "` cannot be computed yet.",
+                           "`half` can.");
+        }
+        context.good_number(deck.q, subject, "/q", dimension::area_load, Range::not_negative);
+        const Build* build = deck.build.empty() ? nullptr
+                                                : context.refer(deck.build, context.builds, "build",
+                                                                context.doubts.builds, subject, "/build");
+        context.uses_own_weight = context.uses_own_weight || deck.q.value_or(0) > 0 ||
+                                  (build != nullptr && build->weight_per_area() > 0);
+    }
+}
+
+RUNNEL_NAMESPACE_END
