@@ -3,6 +3,7 @@
 #include <runnel/version.hpp>
 
 #include <algorithm>
+#include <cmath>
 #include <map>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -10,7 +11,12 @@ RUNNEL_NAMESPACE_BEGIN
 namespace {
 
 constexpr std::size_t indent = 2;
-constexpr std::size_t id_width = 18; ///< columns for an id in a table: all columns and one value fit the page
+constexpr std::size_t id_width = 18; ///< columns for an id in a table
+
+// The columns of the members' table, one value of 16 columns and the gaps fit the page.
+constexpr std::size_t on_width = 14;
+constexpr std::size_t role_width = 6;
+constexpr std::size_t number_width = 10;
 
 using Align = PageTable::Align;
 
@@ -157,69 +163,130 @@ void Account::members() {
     }
 }
 
+namespace {
+/// "JB.2 (5 alike)"
+std::string named(std::string_view id, std::size_t count) {
+    const std::string alike = count > 1 ? " (" + std::to_string(count) + " alike)" : "";
+    return fit(id, id_width - std::min(id_width / 2, alike.size())) + alike;
+}
+} // namespace
+
+/// Heaviest groups of a level, in the plan's order.
+std::vector<Account::Alike> Account::heaviest_members(std::uint32_t level, std::size_t most) const {
+    std::vector<Alike> groups;
+    const std::size_t count = takedown_.framing.levels[level].members.size();
+    for (std::uint32_t m = 0; m < count; ++m) {
+        constexpr std::ptrdiff_t recent = 6; // pieces of a cut joist take turns
+        const auto oldest = groups.end() - std::min(recent, std::distance(groups.begin(), groups.end()));
+        const auto group = std::find_if(
+            oldest, groups.end(), [&](const Alike& candidate) { return alike(level, candidate.first, m); });
+        if (group != groups.end()) {
+            ++group->count;
+        } else {
+            groups.push_back({m, 1, reactions_of(level, m)});
+        }
+    }
+    const auto heavier = [](const Alike& a, const Alike& b) {
+        return a.load > b.load || (a.load == b.load && a.first < b.first);
+    };
+    if (groups.size() > most) {
+        std::partial_sort(groups.begin(), groups.begin() + static_cast<std::ptrdiff_t>(most), groups.end(),
+                          heavier);
+        groups.resize(most);
+    }
+    std::sort(groups.begin(), groups.end(), [](const Alike& a, const Alike& b) { return a.first < b.first; });
+    return groups;
+}
+
+/// All reactions of a member together, kN.
+double Account::reactions_of(std::uint32_t level, std::uint32_t member) const {
+    double sum = 0;
+    for (const double value : reaction_rows(level, member)) {
+        sum += std::abs(value);
+    }
+    return sum;
+}
+
+std::span<const double> Account::reaction_rows(std::uint32_t level, std::uint32_t member) const {
+    const Grouped<Bearing>& bearings = takedown_.framing.levels[level].bearings;
+    const std::size_t cases = takedown_.plan.cases.size();
+    return std::span(takedown_.levels[level].reactions)
+        .subspan(bearings.first(member) * cases, bearings[member].size() * cases);
+}
+
+/// Joists of one field, on the same carriers, whose values read the same.
+bool Account::alike(std::uint32_t level, std::uint32_t a, std::uint32_t b) const {
+    const FramedLevel& framed = takedown_.framing.levels[level];
+    const FramedMember& first = framed.members[a];
+    const FramedMember& other = framed.members[b];
+    const std::span<const Bearing> of_first = framed.bearings[a];
+    const std::span<const Bearing> of_other = framed.bearings[b];
+    if (!first.from_field || !other.from_field || first.origin.index != other.origin.index ||
+        of_first.size() != of_other.size()) {
+        return false;
+    }
+    const auto same = [](double x, double y) {
+        constexpr double three_figures = 5e-4;
+        return std::abs(x - y) <= three_figures * std::max(std::abs(x), std::abs(y));
+    };
+    for (std::size_t i = 0; i < of_first.size(); ++i) {
+        if (of_first[i].on != of_other[i].on || !same(of_first[i].station, of_other[i].station)) {
+            return false;
+        }
+    }
+    const std::vector<double>& areas = takedown_.levels[level].tributary_area;
+    const std::span<const double> x = reaction_rows(level, a);
+    const std::span<const double> y = reaction_rows(level, b);
+    return same(first.length, other.length) && same(areas[a], areas[b]) &&
+           std::equal(x.begin(), x.end(), y.begin(), same);
+}
+
 void Account::level_members(std::uint32_t level, std::size_t most) {
     const FramedLevel& framed = takedown_.framing.levels[level];
-    const std::size_t cases = takedown_.plan.cases.size();
-    const std::vector<double>& reactions = takedown_.levels[level].reactions;
     page_.heading("Members of " + fit(framed.id, 2 * id_width) + ", at " + length(framed.elevation) + ' ' +
-                  std::string(name_of(scale_.units.length)));
-    std::vector<std::pair<double, std::uint32_t>> by_load;
-    for (std::uint32_t m = 0; m < framed.members.size(); ++m) {
-        const std::size_t first = framed.bearings.first(m) * cases;
-        double load = 0;
-        for (std::size_t i = 0; i < framed.bearings[m].size() * cases; ++i) {
-            load += std::abs(reactions[first + i]);
-        }
-        by_load.emplace_back(-load, m);
-    }
-    std::vector<std::uint32_t> shown;
-    const std::size_t count = std::min(most, by_load.size());
-    std::partial_sort(by_load.begin(), by_load.begin() + static_cast<std::ptrdiff_t>(count), by_load.end());
-    for (std::size_t i = 0; i < count; ++i) {
-        shown.push_back(by_load[i].second);
-    }
-    std::sort(shown.begin(), shown.end());
+                  std::string(name_of(scale_.units.length)) + "; reactions in " +
+                  std::string(name_of(scale_.units.force)));
     PageTable table;
     table.describe("member", Align::left, id_width);
-    table.describe("role", Align::left, 6);
-    table.describe(with_unit("length", dimension::length), Align::right, 10);
-    table.describe(with_unit("area", dimension::area), Align::right, 10);
-    table.describe("on", Align::left, id_width - 4);
-    table.describe("station", Align::right, 10);
+    table.describe("role", Align::left, role_width);
+    table.describe(with_unit("length", dimension::length), Align::right, number_width);
+    table.describe(with_unit("area", dimension::area), Align::right, number_width);
+    table.describe("on", Align::left, on_width);
+    table.describe("station", Align::right, number_width);
     case_headings(table);
-    for (const std::uint32_t m : shown) {
-        member_rows(table, level, m);
+    std::size_t shown = 0;
+    for (const Alike& group : heaviest_members(level, most)) {
+        member_rows(table, level, group);
+        shown += group.count;
     }
-    if (!shown.empty()) {
+    if (shown > 0) {
         table.print(page_, indent);
     }
-    if (count < by_load.size()) {
-        page_.line("and " + counted(by_load.size() - count, "lighter member") +
+    if (shown < framed.members.size()) {
+        page_.line("and " + counted(framed.members.size() - shown, "lighter member") +
                        ": all stand in the table `reactions` and in the result document",
                    indent);
     }
     page_.blank();
 }
 
-void Account::member_rows(PageTable& table, std::uint32_t level, std::uint32_t member) const {
+void Account::member_rows(PageTable& table, std::uint32_t level, const Alike& group) const {
     const FramedLevel& framed = takedown_.framing.levels[level];
     const LevelTakedown& result = takedown_.levels[level];
     const std::size_t cases = takedown_.plan.cases.size();
-    const std::size_t first = framed.bearings.first(member);
-    const std::span<const Bearing> bearings = framed.bearings[member];
+    const std::span<const Bearing> bearings = framed.bearings[group.first];
+    const std::span<const double> reactions = reaction_rows(level, group.first);
     for (std::size_t b = 0; b < bearings.size(); ++b) {
-        std::vector<std::string> row;
+        std::vector<std::string> row(4);
         if (b == 0) {
-            const FramedMember& one = framed.members[member];
-            row = {one.id, std::string(name_of(one.role)), length(one.length),
-                   area(result.tributary_area[member])};
-        } else {
-            row.resize(4);
+            const FramedMember& one = framed.members[group.first];
+            row = {named(one.id, group.count), std::string(name_of(one.role)), length(one.length),
+                   area(result.tributary_area[group.first])};
         }
         row.emplace_back(names_.carrier(level, bearings[b].on));
         row.push_back(length(bearings[b].station));
-        for (std::size_t c = 0; c < cases; ++c) {
-            row.push_back(reaction(result.reactions[(first + b) * cases + c]));
+        for (const double value : reactions.subspan(b * cases, cases)) {
+            row.push_back(reaction(value));
         }
         table.add_row(std::move(row));
     }

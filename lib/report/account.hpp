@@ -32,7 +32,17 @@ private:
     void cautions();
 
     void balance_rows(PageTable& table, std::string_view where, std::span<const Balance> balances) const;
-    void member_rows(PageTable& table, std::uint32_t level, std::uint32_t member) const;
+    /// Joists of one field that read the same stand in one row, under the first one's id.
+    struct Alike {
+        std::uint32_t first = 0; ///< member
+        std::size_t count = 0;
+        double load = 0; ///< kN, of one of them
+    };
+    [[nodiscard]] std::vector<Alike> heaviest_members(std::uint32_t level, std::size_t most) const;
+    [[nodiscard]] bool alike(std::uint32_t level, std::uint32_t a, std::uint32_t b) const;
+    [[nodiscard]] double reactions_of(std::uint32_t level, std::uint32_t member) const;
+    [[nodiscard]] std::span<const double> reaction_rows(std::uint32_t level, std::uint32_t member) const;
+    void member_rows(PageTable& table, std::uint32_t level, const Alike& group) const;
     template <class AnyLift>
     void lift_rows(PageTable& table, std::string_view id, std::span<const AnyLift> lifts) const;
     void case_headings(PageTable& table) const;

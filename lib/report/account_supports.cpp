@@ -47,7 +47,7 @@ std::vector<double> weights_of(const Supports& supports) {
 } // namespace
 
 void Account::rundowns() {
-    page_.heading("Rundowns, each lift at its foot");
+    page_.heading("Rundowns, each lift at its foot, " + unit_text(scale_.units, dimension::force));
     PageTable table;
     table.describe("column, wall", Align::left, id_width);
     table.describe("level", Align::left, id_width - 4);

@@ -1,5 +1,6 @@
 #include "geometry/basic.hpp"
 #include "report/names.hpp"
+#include "report/page.hpp"
 #include "report/region_tints.hpp"
 #include "report/scale.hpp"
 #include "report/svg_text.hpp"
@@ -16,6 +17,7 @@ namespace {
 // Sizes on the sheet, in its own units (px at 96 a inch).
 constexpr double sheet_side = 1000; ///< the plan's longer side
 constexpr double margin = 60;
+constexpr double least_width = 480; ///< for the title
 constexpr double title_height = 46;
 constexpr double scale_bar_height = 40;
 constexpr double letter = 13;
@@ -83,7 +85,7 @@ private:
         }
         const double side = std::max(high_.x - low_.x, high_.y - low_.y);
         per_metre_ = side > 0 ? sheet_side / side : 1;
-        width_ = (high_.x - low_.x) * per_metre_ + 2 * margin;
+        width_ = std::max((high_.x - low_.x) * per_metre_ + 2 * margin, least_width);
         height_ = (high_.y - low_.y) * per_metre_ + 2 * margin + title_height + scale_bar_height;
     }
 
@@ -123,7 +125,9 @@ private:
             .add("\" y=\"")
             .number(margin * 0.75)
             .add("\" font-size=\"18\">");
-        svg_.text(plan_.title).add(plan_.title.empty() ? "" : " - ").text(level_.id).add("</text>\n");
+        constexpr std::size_t longest = 80;
+        svg_.text(fit(plan_.title, longest)).add(plan_.title.empty() ? "" : ", ");
+        svg_.text(fit(level_.id, longest / 2)).add("</text>\n");
     }
 
     void ring_path(const Ring& ring) {
@@ -265,7 +269,7 @@ private:
     }
 
     void label_along(Point from, Point to, std::string_view id, double size) {
-        constexpr double lift = 4; // clear of the line
+        constexpr double lift = 5; // clear of the line
         const Point a = on_sheet(from);
         const Point b = on_sheet(to);
         double angle = std::atan2(b.y - a.y, b.x - a.x);
@@ -288,7 +292,8 @@ private:
             svg_.add(" transform=\"rotate(").number(angle * 90 / std::acos(0.0)).add(" ").number(at.x);
             svg_.add(" ").number(at.y).add(")\"");
         }
-        svg_.add(">").text(id).add("</text>\n");
+        constexpr std::size_t longest = 24;
+        svg_.add(">").text(fit(id, longest)).add("</text>\n");
     }
 
     /// A round length of about a fifth of the drawing.
