@@ -120,7 +120,7 @@ struct Uplift {
 
 /// Everything the takedown found. Levels are as in Framing.
 struct Takedown {
-    Plan plan; ///< as given
+    Plan plan; ///< as given, with the share that the options ask for
     Framing framing;
     std::vector<LevelTakedown> levels;
     std::vector<std::vector<Balance>> level_balance; ///< by level, by case

@@ -29,6 +29,7 @@ public:
                 decide_by_role(contacts_.meetings[i]);
             }
         }
+        refuse_meetings();
         named_.refuse_untouched();
         return Grouped<Found>::from_pairs(draft_.level.members.size(), std::move(found_));
     }
@@ -144,6 +145,11 @@ private:
 
     static MemberContact swapped(const MemberContact& m) { return {m.b, m.a, m.station_b, m.station_a}; }
 
+    /// Problems name two equals in the order of their ids, not of the list.
+    [[nodiscard]] MemberContact by_id(const MemberContact& m) const {
+        return draft_.level.members[m.a].id < draft_.level.members[m.b].id ? m : swapped(m);
+    }
+
     /// a with its station first, the lower role.
     void lower_on_higher(const MemberContact& meeting) {
         const MemberContact ordered = role(meeting.a) < role(meeting.b) ? meeting : swapped(meeting);
@@ -179,9 +185,22 @@ private:
         if (own < highest_meeting_[a_end] || own < highest_meeting_[b_end] || both_listed) {
             return;
         }
-        if (!(reported_[a_end] && reported_[b_end])) {
-            reported_[a_end] = reported_[b_end] = 1;
-            refuse_meeting(meeting);
+        uncarried_.push_back(by_id(meeting));
+    }
+
+    /// Of many ends at one place each is named once, in pairs by id: the order of the list does not show.
+    void refuse_meetings() {
+        const auto& members = draft_.level.members;
+        std::sort(uncarried_.begin(), uncarried_.end(), [&](const MemberContact& x, const MemberContact& y) {
+            return x.a != y.a ? members[x.a].id < members[y.a].id : members[x.b].id < members[y.b].id;
+        });
+        for (const MemberContact& meeting : uncarried_) {
+            const std::size_t a_end = end(meeting.a, meeting.station_a);
+            const std::size_t b_end = end(meeting.b, meeting.station_b);
+            if (!(reported_[a_end] && reported_[b_end])) {
+                reported_[a_end] = reported_[b_end] = 1;
+                refuse_meeting(meeting);
+            }
         }
     }
 
@@ -222,7 +241,8 @@ private:
         });
     }
 
-    void refuse_crossing(const MemberContact& meeting) {
+    void refuse_crossing(const MemberContact& found) {
+        const MemberContact meeting = by_id(found);
         draft_.problems.add(ProblemCode::equal_roles_cross, [&] {
             const Point at = draft_.axis_of(meeting.a).at(meeting.station_a);
             const std::string a = label_of(draft_, meeting.a);
@@ -258,6 +278,7 @@ private:
     std::vector<std::uint8_t> runs_through_;   ///< by end: it ends on the inside of another
     std::vector<std::int8_t> highest_meeting_; ///< by end: highest role of other ends there
     std::vector<std::uint8_t> reported_;       ///< by end
+    std::vector<MemberContact> uncarried_;     ///< equal roles that meet over nothing
     std::vector<std::pair<std::uint32_t, Found>> found_;
 };
 

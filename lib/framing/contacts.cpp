@@ -102,10 +102,24 @@ private:
         const Axis axis = draft_.axis_of(m);
         const Axis other_axis = draft_.axis_of(other);
         if (const auto stretch = stretch_along(axis, other_axis, draft_.reach())) {
-            refuse_along(m, {CarrierKind::member, other}, *stretch);
+            if (is_the_one_along(m, other)) {
+                refuse_along(m, {CarrierKind::member, other}, *stretch);
+            } else {
+                refuse_along(other, {CarrierKind::member, m},
+                             *stretch_along(other_axis, axis, draft_.reach()));
+            }
         } else if (const auto touch = touch_of(axis, other_axis, draft_.reach())) {
             contacts_.meetings.push_back({m, other, touch->station, touch->other_station});
         }
+    }
+
+    /// Of two that lie along each other the lower role is told so; of equal roles the shorter, then by id.
+    [[nodiscard]] bool is_the_one_along(std::uint32_t m, std::uint32_t other) const {
+        const FramedMember& a = draft_.level.members[m];
+        const FramedMember& b = draft_.level.members[other];
+        return a.role != b.role                                         ? a.role < b.role
+               : std::abs(a.length - b.length) > draft_.tolerance.noise ? a.length < b.length
+                                                                        : a.id < b.id;
     }
 
     void refuse_along(std::uint32_t m, Carrier on, const Stretch& stretch) {

@@ -103,8 +103,8 @@ struct LevelDraft {
         return {m.from, m.to, m.length};
     }
 
-    /// The members of a line that may come within `distance` of the axis from a to b, as first and one past the
-    /// last: a joist that runs over a hundred girders has a hundred pieces, of which a girder meets two.
+    /// The members of a line that may come within `distance` of the axis from a to b, as first and one past
+    /// the last: a joist that runs over a hundred girders has a hundred pieces, of which a girder meets two.
     [[nodiscard]] std::pair<std::uint32_t, std::uint32_t> members_near(std::uint32_t line, Point a, Point b,
                                                                        double distance) const;
 

@@ -198,7 +198,7 @@ private:
         }
         return best ? "It misses " + label_of(draft_, best->first) + " by " +
                           length_text(best->second.distance, draft_.plan.units) + " at " +
-                          place_text(draft_.plan, best->second.at) + '.'
+                          place_text(draft_.plan, best->second.other_at) + '.'
                     : std::string{};
     }
 

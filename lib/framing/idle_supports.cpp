@@ -133,7 +133,8 @@ private:
             const std::string text =
                 " misses " + member + " by " + length_text(miss->second.distance, draft_.plan.units);
             hint = "It" + text + '.';
-            if (reported_.count(miss->first) == 0) {
+            const std::set<std::uint32_t>& told = column ? reported_.columns : reported_.walls;
+            if (told.count(carrier.index) == 0) {
                 add(ProblemCode::near_miss, carrier, origin,
                     name + text + " at " + place_text(draft_.plan, miss->second.at) + " on level " +
                         draft_.level.id + "; points are one within snap (" +

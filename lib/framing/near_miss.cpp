@@ -83,10 +83,15 @@ private:
         // Within 45 degrees of the member's own direction it stops short, else it passes beside.
         const bool short_of = dot(way, outward) >= std::abs(cross(way, outward));
         const std::string on = label_of(draft_, miss.carrier);
+        if (miss.carrier.kind == CarrierKind::column) {
+            misses_.columns.insert(miss.carrier.index);
+        } else if (miss.carrier.kind == CarrierKind::wall) {
+            misses_.walls.insert(miss.carrier.index);
+        }
         const std::string end_name = from_end ? "`from` end" : "`to` end";
         std::string miss_text = length_text(miss.near.distance, draft_.plan.units);
         miss_text += (short_of ? " short of " : " beside ") + on + " at " + place_text(draft_.plan, end);
-        std::string& known = misses_[m];
+        std::string& known = misses_.by_member[m];
         known += (known.empty() ? "Its " : " Its ") + end_name + " is " + miss_text + '.';
         draft_.problems.add(ProblemCode::near_miss, [&] {
             const std::string id = label_of(draft_, m);

@@ -2,13 +2,17 @@
 
 #include "framing/draft.hpp"
 
+#include <set>
 #include <string>
 #include <unordered_map>
 
 RUNNEL_NAMESPACE_BEGIN
 
-/// By member: what its free ends miss by little, for the hint of the error that may follow from it.
-using NearMisses = std::unordered_map<std::uint32_t, std::string>;
+/// What free ends miss by little.
+struct NearMisses {
+    std::unordered_map<std::uint32_t, std::string> by_member; ///< for the hint of the error that may follow
+    std::set<std::uint32_t> columns, walls;                   ///< that ends miss
+};
 
 /// Warns of member ends without a bearing that lie farther than `snap` from a carrier, but not much farther.
 [[nodiscard]] NearMisses find_near_misses(LevelDraft& draft);

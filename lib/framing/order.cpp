@@ -54,39 +54,62 @@ private:
         }
     }
 
-    /// Follows bearings from each member left over, back to one already met on this walk. Members behind a
-    /// loop are left over too; every way down from them that is not done leads into one.
+    /// What is left over is in a loop, or carries something that is. So every one of them carries another
+    /// that is left over: going up from one to the next leads round a loop.
     void report_loops() {
+        const std::vector<std::uint32_t> resting = one_resting_on_each();
         std::vector<std::uint32_t> walk_of(members_, 0);
         std::vector<std::uint32_t> loop;
         std::uint32_t walk = 0;
-        for (std::uint32_t start = 0; start < members_; ++start) {
-            std::uint32_t m = start;
+        for (const std::uint32_t start : left_over_by_id()) {
             ++walk;
-            while (m != none && !done_[m] && walk_of[m] == 0) {
+            std::uint32_t m = start;
+            for (; walk_of[m] == 0; m = resting[m]) {
                 walk_of[m] = walk;
-                m = carrier_in_loop(m);
             }
-            if (m == none || done_[m] || walk_of[m] != walk) {
-                continue;
+            if (walk_of[m] != walk) {
+                continue; // a loop that has been reported
             }
             loop.clear();
             std::uint32_t next = m;
             do {
                 loop.push_back(next);
-                next = carrier_in_loop(next);
+                next = resting[next];
             } while (next != m);
+            std::reverse(loop.begin(), loop.end());
+            std::rotate(loop.begin(),
+                        std::min_element(loop.begin(), loop.end(),
+                                         [&](std::uint32_t a, std::uint32_t b) { return id(a) < id(b); }),
+                        loop.end());
             report(loop);
         }
     }
 
-    [[nodiscard]] std::uint32_t carrier_in_loop(std::uint32_t m) const {
-        for (const Bearing& bearing : draft_.level.bearings[m]) {
-            if (bearing.on.kind == CarrierKind::member && !done_[bearing.on.index]) {
-                return bearing.on.index;
+    [[nodiscard]] const std::string& id(std::uint32_t m) const { return draft_.level.members[m].id; }
+
+    /// By id, so that the loops that are named do not depend on the order of the list.
+    [[nodiscard]] std::vector<std::uint32_t> left_over_by_id() const {
+        std::vector<std::uint32_t> members;
+        for (std::uint32_t m = 0; m < members_; ++m) {
+            if (!done_[m]) {
+                members.push_back(m);
             }
         }
-        return none;
+        std::sort(members.begin(), members.end(),
+                  [&](std::uint32_t a, std::uint32_t b) { return id(a) < id(b); });
+        return members;
+    }
+
+    [[nodiscard]] std::vector<std::uint32_t> one_resting_on_each() const {
+        std::vector<std::uint32_t> resting(members_, none);
+        for (const std::uint32_t m : left_over_by_id()) {
+            for (const Bearing& bearing : draft_.level.bearings[m]) {
+                if (bearing.on.kind == CarrierKind::member && resting[bearing.on.index] == none) {
+                    resting[bearing.on.index] = m;
+                }
+            }
+        }
+        return resting;
     }
 
     void report(const std::vector<std::uint32_t>& loop) {

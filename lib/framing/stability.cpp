@@ -191,10 +191,10 @@ void refuse(LevelDraft& draft, std::uint32_t m, const FreeMotion& motion, const 
     const ProblemCode code = too_few ? ProblemCode::too_few_bearings : ProblemCode::mechanism;
     draft.problems.add(code, [&] {
         const std::string id = label_of(draft, m);
-        const auto near = near_misses.find(m);
-        std::string hint = near != near_misses.end() ? near->second
-                           : too_few                 ? "Put a carrier under it, or build one end in."
-                                                     : "Take a hinge away, or put a carrier under the piece.";
+        const auto near = near_misses.by_member.find(m);
+        std::string hint = near != near_misses.by_member.end() ? near->second
+                           : too_few ? "Put a carrier under it, or build one end in."
+                                     : "Take a hinge away, or put a carrier under the piece.";
         const FramedMember& member = draft.level.members[m];
         const Point at = too_few && !bearings.empty() ? bearings.front().at
                          : too_few                    ? member.from

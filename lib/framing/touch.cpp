@@ -106,10 +106,10 @@ Gap gap_between(const Axis& a, const Axis& b) {
     return gap;
 }
 
-std::optional<Stretch> stretch_along(const Axis& a, const Axis& b, double reach) {
-    if (a.length <= reach || b.length <= reach) {
-        return std::nullopt;
-    }
+namespace {
+
+/// The stretch in stations of `a`, which is the longer.
+std::optional<Stretch> stretch_on_longer(const Axis& a, const Axis& b, double reach) {
     const Point u = (1 / a.length) * (a.to - a.from);
     const double s_from = dot(b.from - a.from, u);
     const double s_to = dot(b.to - a.from, u);
@@ -127,6 +127,25 @@ std::optional<Stretch> stretch_along(const Axis& a, const Axis& b, double reach)
         return std::nullopt;
     }
     return side_by_side;
+}
+
+} // namespace
+
+std::optional<Stretch> stretch_along(const Axis& a, const Axis& b, double reach) {
+    if (a.length <= reach || b.length <= reach) {
+        return std::nullopt;
+    }
+    // Judged on the longer of the two, so that it is the same question from both sides.
+    if (a.length >= b.length) {
+        return stretch_on_longer(a, b, reach);
+    }
+    const auto on_b = stretch_on_longer(b, a, reach);
+    if (!on_b) {
+        return std::nullopt;
+    }
+    const double s = nearest_on(a, b.at(on_b->from)).station;
+    const double t = nearest_on(a, b.at(on_b->to)).station;
+    return Stretch{std::min(s, t), std::max(s, t)};
 }
 
 RUNNEL_NAMESPACE_END

@@ -10,6 +10,25 @@ RUNNEL_NAMESPACE_BEGIN
 
 namespace {
 
+/// What should add up to nothing, by case.
+class Tally {
+public:
+    explicit Tally(std::size_t cases) : rest_(cases), magnitude_(cases, 0.0) {}
+
+    void add(std::uint32_t load_case, double p) {
+        rest_[load_case].add(p);
+        magnitude_[load_case] += std::abs(p);
+    }
+    [[nodiscard]] double rest(std::uint32_t load_case) const { return rest_[load_case].value(); }
+    [[nodiscard]] bool closes(std::uint32_t load_case) const {
+        return is_closed(rest(load_case), {}, magnitude_[load_case], 0);
+    }
+
+private:
+    std::vector<Sum> rest_;
+    std::vector<double> magnitude_;
+};
+
 /// Recomputes the laws of a takedown from its final loads, lifts and foundations, by other loops than those
 /// that made the balances.
 class BalanceChecker {
@@ -22,7 +41,12 @@ public:
             check_members(l);
             check_level(l);
         }
-        check_lifts();
+        for (std::uint32_t c = 0; c < takedown_.columns.size(); ++c) {
+            check_column_lifts(c);
+        }
+        for (std::uint32_t w = 0; w < takedown_.walls.size(); ++w) {
+            check_wall_lifts(w);
+        }
         check_building();
         return std::move(problems_);
     }
@@ -31,7 +55,11 @@ private:
     void check_members(std::uint32_t level_index);
     void check_member(std::uint32_t level_index, std::uint32_t member);
     void check_level(std::uint32_t level_index);
-    void check_lifts();
+    void put_on_level(std::uint32_t level_index, Tally& tally) const;
+    void check_column_lifts(std::uint32_t column);
+    void check_wall_lifts(std::uint32_t wall);
+    void check_lift(const std::string& what, const std::string& id, std::uint32_t level, double self_weight,
+                    const std::vector<double>& total, Tally& tally);
     void check_building();
 
     void open(std::string what, std::uint32_t load_case, std::string numbers,
@@ -84,7 +112,6 @@ void BalanceChecker::check_member(std::uint32_t level_index, std::uint32_t index
         double put = 0;
         double put_moment = 0;
         double magnitude = 0;
-        double lever = member.length;
         for (; line != lines.end() && line->load_case == c; ++line) {
             const double total = line->piece.total();
             put += total;
@@ -108,7 +135,7 @@ void BalanceChecker::check_member(std::uint32_t level_index, std::uint32_t index
                 put_moment -= at_to ? -level.fixed_moments[i] : level.fixed_moments[i];
             }
         }
-        if (!is_closed(put, {put_moment, 0}, magnitude, lever)) {
+        if (!is_closed(put, {put_moment, 0}, magnitude, member.length)) {
             open("Member " + framed.id + '/' + member.id, c,
                  "its loads and reactions differ by " + force(put) + " and by " +
                      text_of(put_moment / si_per_unit(takedown_.plan.units, dimension::moment)) + ' ' +
@@ -122,49 +149,49 @@ void BalanceChecker::check_member(std::uint32_t level_index, std::uint32_t index
     }
 }
 
-/// Every level: what was put on its decks and carriers against what its columns and walls took on.
-void BalanceChecker::check_level(std::uint32_t level_index) {
+/// What was put on a level: on its decks and straight on its carriers, and feet that its members carry. Feet
+/// on columns and walls go straight into their lifts.
+void BalanceChecker::put_on_level(std::uint32_t level_index, Tally& tally) const {
     const FramedLevel& framed = takedown_.framing.levels[level_index];
     const LevelTakedown& level = takedown_.levels[level_index];
-    const std::string name = "Level " + framed.id;
-    std::vector<Sum> put(cases_);
-    std::vector<double> magnitude(cases_, 0.0);
-    const auto put_on = [&](std::uint32_t load_case, double p) {
-        put[load_case].add(p);
-        magnitude[load_case] += std::abs(p);
-    };
     for (const DeckBalance& deck : level.loads.balance) {
-        put_on(deck.load_case, deck.applied.force);
+        tally.add(deck.load_case, deck.applied.force);
     }
-    // Feet on members pass through the level; those on columns and walls go straight into their lifts.
     for (const Foot& foot : framed.feet) {
         if (foot.lower.kind != CarrierKind::member || foot.upper.kind != CarrierKind::column) {
             continue;
         }
         const std::vector<Lift>& lifts = takedown_.columns[foot.upper.index].lifts;
         for (std::uint32_t c = 0; !lifts.empty() && c < cases_; ++c) {
-            put_on(c, lifts.back().total[c]);
+            tally.add(c, lifts.back().total[c]);
         }
     }
     for (std::uint32_t m = 0; m < level.sharing.members && !framed.feet.empty(); ++m) {
         for (const CarrierLine& line : level.lines[m]) {
             if (line.source.kind == SourceKind::wall) {
-                put_on(line.load_case, line.piece.total());
+                tally.add(line.load_case, line.piece.total());
             }
         }
         for (const CarrierPoint& point : level.points[m]) {
             if (point.source.kind == SourceKind::wall) {
-                put_on(point.load_case, point.p);
+                tally.add(point.load_case, point.p);
             }
         }
     }
+}
+
+/// Every level: what was put on it against what its columns and walls took on from it.
+void BalanceChecker::check_level(std::uint32_t level_index) {
+    const LevelTakedown& level = takedown_.levels[level_index];
+    const std::string name = "Level " + takedown_.framing.levels[level_index].id;
+    Tally tally(cases_);
+    put_on_level(level_index, tally);
+    const auto take = [&tally](std::uint32_t load_case, const Source& source, double p) {
+        if (source.kind != SourceKind::wall && source.kind != SourceKind::column) {
+            tally.add(load_case, -p);
+        }
+    };
     for (std::uint32_t n = level.sharing.members; n < level.sharing.carrier_count(); ++n) {
-        const auto take = [&](std::uint32_t load_case, const Source& source, double p) {
-            if (source.kind != SourceKind::wall && source.kind != SourceKind::column) {
-                put[load_case].add(-p);
-                magnitude[load_case] += std::abs(p);
-            }
-        };
         for (const CarrierLine& line : level.lines[n]) {
             take(line.load_case, line.source, line.piece.total());
         }
@@ -176,60 +203,54 @@ void BalanceChecker::check_level(std::uint32_t level_index) {
         const Balance& balance = takedown_.level_balance[level_index][c];
         if (!balance.closes) {
             report(name, balance);
-        } else if (!is_closed(put[c].value(), {}, magnitude[c], 0)) {
-            open(name, c, "load and what its columns and walls took on differ by " + force(put[c].value()));
+        } else if (!tally.closes(c)) {
+            open(name, c, "load and what its columns and walls took on differ by " + force(tally.rest(c)));
         }
     }
 }
 
-/// Every lift: what came in, what came from the lift above and its own weight against its total.
-void BalanceChecker::check_lifts() {
-    const Framing& framing = takedown_.framing;
-    for (std::size_t i = 0; i < takedown_.columns.size(); ++i) {
-        for (const Lift& lift : takedown_.columns[i].lifts) {
-            for (std::uint32_t c = 0; c < cases_; ++c) {
-                double rest = lift.total[c] - (c == takedown_.self_weight_case ? lift.self_weight : 0);
-                double magnitude = std::abs(lift.total[c]);
-                for (const LiftLoad& load : lift.from) {
-                    rest -= load.load_case == c ? load.p : 0;
-                    magnitude += load.load_case == c ? std::abs(load.p) : 0;
-                }
-                if (!is_closed(rest, {}, magnitude, 0)) {
-                    open("Column " + takedown_.plan.columns[i].id + " under level " +
-                             framing.levels[lift.level].id,
-                         c, "what came in and its total differ by " + force(rest),
-                         {takedown_.plan.columns[i].id});
-                }
-            }
+/// Every lift of a column: what came in and its own weight against its total.
+void BalanceChecker::check_column_lifts(std::uint32_t column) {
+    const std::string& id = takedown_.plan.columns[column].id;
+    for (const Lift& lift : takedown_.columns[column].lifts) {
+        Tally tally(cases_);
+        for (const LiftLoad& load : lift.from) {
+            tally.add(load.load_case, load.p);
         }
+        check_lift("Column " + id, id, lift.level, lift.self_weight, lift.total, tally);
     }
-    for (std::uint32_t w = 0; w < takedown_.walls.size(); ++w) {
-        std::vector<double> above(cases_, 0.0);
-        for (const WallLift& lift : takedown_.walls[w].lifts) {
-            const LevelTakedown& level = takedown_.levels[lift.level];
-            const std::uint32_t carrier = level.sharing.number_of({CarrierKind::wall, w});
-            std::vector<Sum> came(cases_);
-            std::vector<double> magnitude(cases_, 0.0);
-            for (const CarrierLine& line : level.lines[carrier]) {
-                came[line.load_case].add(line.piece.total());
-                magnitude[line.load_case] += std::abs(line.piece.total());
-            }
-            for (const CarrierPoint& point : level.points[carrier]) {
-                came[point.load_case].add(point.p);
-                magnitude[point.load_case] += std::abs(point.p);
-            }
-            for (std::uint32_t c = 0; c < cases_; ++c) {
-                came[c].add(above[c]);
-                came[c].add(c == takedown_.self_weight_case ? lift.self_weight : 0);
-                const double rest = came[c].value() - lift.total[c];
-                if (!is_closed(rest, {}, magnitude[c] + std::abs(above[c]) + std::abs(lift.total[c]), 0)) {
-                    open("Wall " + takedown_.plan.walls[w].id + " under level " +
-                             framing.levels[lift.level].id,
-                         c, "what came in and its total differ by " + force(rest),
-                         {takedown_.plan.walls[w].id});
-                }
-            }
-            above = lift.total;
+}
+
+/// Every lift of a wall: what stands on it at the level, the lift above and its own weight against its total.
+void BalanceChecker::check_wall_lifts(std::uint32_t wall) {
+    const std::string& id = takedown_.plan.walls[wall].id;
+    std::vector<double> above(cases_, 0.0);
+    for (const WallLift& lift : takedown_.walls[wall].lifts) {
+        const LevelTakedown& level = takedown_.levels[lift.level];
+        const std::uint32_t carrier = level.sharing.number_of({CarrierKind::wall, wall});
+        Tally tally(cases_);
+        for (const CarrierLine& line : level.lines[carrier]) {
+            tally.add(line.load_case, line.piece.total());
+        }
+        for (const CarrierPoint& point : level.points[carrier]) {
+            tally.add(point.load_case, point.p);
+        }
+        for (std::uint32_t c = 0; c < cases_; ++c) {
+            tally.add(c, above[c]);
+        }
+        check_lift("Wall " + id, id, lift.level, lift.self_weight, lift.total, tally);
+        above = lift.total;
+    }
+}
+
+void BalanceChecker::check_lift(const std::string& what, const std::string& id, std::uint32_t level,
+                                double self_weight, const std::vector<double>& total, Tally& tally) {
+    for (std::uint32_t c = 0; c < cases_; ++c) {
+        tally.add(c, c == takedown_.self_weight_case ? self_weight : 0);
+        tally.add(c, -total[c]);
+        if (!tally.closes(c)) {
+            open(what + " under level " + takedown_.framing.levels[level].id, c,
+                 "what came in and its total differ by " + force(tally.rest(c)), {id});
         }
     }
 }

@@ -1,5 +1,6 @@
 #include "path/level_path.hpp"
 
+#include <algorithm>
 #include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -79,8 +80,12 @@ void gather_points(const LevelTakedown& level, const FramedLevel& framed, const 
 void complete_points(LevelTakedown& level, const FramedLevel& framed, const LevelPath& path,
                      std::size_t cases) {
     const std::size_t carriers = level.loads.points.size();
+    const auto brought = static_cast<std::size_t>(std::count_if(
+        level.reactions.begin(), level.reactions.end(), [](double reaction) { return reaction != 0; }));
     std::vector<CarrierPoint> points;
-    level.points.reserve(carriers, level.loads.points.items().size());
+    // Exactly what will be there: memory touched twice would cost more than all the rest of this.
+    level.points.reserve(carriers,
+                         level.loads.points.items().size() + path.foot_points.items().size() + brought);
     for (std::uint32_t c = 0; c < carriers; ++c) {
         points.clear();
         gather_points(level, framed, path, c, cases, points);

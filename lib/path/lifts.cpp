@@ -135,47 +135,7 @@ void sort_and_join(std::vector<CarrierPoint>& points, Source self, double noise)
     points.resize(kept);
 }
 
-void add_wall_lift(Takedown& takedown, std::uint32_t level_index, std::uint32_t wall,
-                   const AreaBrought& arrived) {
-    const LevelTakedown& level = takedown.levels[level_index];
-    const Plan& plan = takedown.plan;
-    std::vector<WallLift>& lifts = takedown.walls[wall].lifts;
-    const std::uint32_t carrier = level.sharing.number_of({CarrierKind::wall, wall});
-    const Source self{SourceKind::wall, wall};
-    const double length = length_of(plan.walls[wall]);
-    const std::size_t cases = plan.cases.size();
-    const double noise = noise_of(takedown.framing.largest_coordinate);
-    WallLift lift;
-    lift.level = level_index;
-    lift.height = height_below(takedown, level_index, takedown.framing.wall_base[wall],
-                               [wall](const FramedLevel& below) {
-                                   return std::binary_search(below.walls.begin(), below.walls.end(), wall);
-                               });
-
-    std::vector<std::vector<LinePiece>> pieces(cases);
-    const auto take_lines = [&](std::span<const CarrierLine> lines) {
-        for (const CarrierLine& line : lines) {
-            pieces[line.load_case].push_back(line.piece);
-        }
-    };
-    take_lines(level.lines[carrier]);
-    const std::span<const CarrierPoint> own = level.points[carrier];
-    lift.point.assign(own.begin(), own.end());
-    if (!lifts.empty()) {
-        take_lines(lifts.back().line);
-        for (const CarrierPoint& point : lifts.back().point) {
-            lift.point.push_back({point.load_case, self, point.station, point.p});
-        }
-    }
-    sort_and_join(lift.point, self, noise);
-    const double weight = plan.walls[wall].self_weight.value_or(0) * lift.height;
-    if (takedown.self_weight_case != none && weight != 0) {
-        lift.self_weight = weight * length;
-        pieces[takedown.self_weight_case].push_back({0, length, {weight, 0, 0, 0, 0}});
-    }
-    lift.line = merged_by_case(std::move(pieces), self, noise);
-    add_areas(lift, arrived, lifts.empty() ? nullptr : &lifts.back());
-
+void add_up_wall_lift(WallLift& lift, std::size_t cases) {
     std::vector<Sum> total(cases);
     for (const CarrierLine& line : lift.line) {
         total[line.load_case].add(line.piece.total());
@@ -186,6 +146,53 @@ void add_wall_lift(Takedown& takedown, std::uint32_t level_index, std::uint32_t 
     for (const Sum& sum : total) {
         lift.total.push_back(sum.value());
     }
+}
+
+/// Lines and points at the foot of a wall's lift: what the level puts on it, what the lift above brings, and
+/// own weight as a line.
+void load_wall_lift(const Takedown& takedown, std::uint32_t wall, const WallLift* above, WallLift& lift) {
+    const LevelTakedown& level = takedown.levels[lift.level];
+    const std::uint32_t carrier = level.sharing.number_of({CarrierKind::wall, wall});
+    const Source self{SourceKind::wall, wall};
+    const double noise = noise_of(takedown.framing.largest_coordinate);
+    std::vector<std::vector<LinePiece>> pieces(takedown.plan.cases.size());
+    const auto take_lines = [&pieces](std::span<const CarrierLine> lines) {
+        for (const CarrierLine& line : lines) {
+            pieces[line.load_case].push_back(line.piece);
+        }
+    };
+    const std::span<const CarrierPoint> own = level.points[carrier];
+    take_lines(level.lines[carrier]);
+    lift.point.assign(own.begin(), own.end());
+    if (above != nullptr) {
+        take_lines(above->line);
+        for (const CarrierPoint& point : above->point) {
+            lift.point.push_back({point.load_case, self, point.station, point.p});
+        }
+    }
+    sort_and_join(lift.point, self, noise);
+    const double weight = takedown.plan.walls[wall].self_weight.value_or(0) * lift.height;
+    if (takedown.self_weight_case != none && weight != 0) {
+        const double length = length_of(takedown.plan.walls[wall]);
+        lift.self_weight = weight * length;
+        pieces[takedown.self_weight_case].push_back({0, length, {weight, 0, 0, 0, 0}});
+    }
+    lift.line = merged_by_case(std::move(pieces), self, noise);
+}
+
+void add_wall_lift(Takedown& takedown, std::uint32_t level_index, std::uint32_t wall,
+                   const AreaBrought& arrived) {
+    std::vector<WallLift>& lifts = takedown.walls[wall].lifts;
+    const WallLift* const above = lifts.empty() ? nullptr : &lifts.back();
+    WallLift lift;
+    lift.level = level_index;
+    lift.height = height_below(takedown, level_index, takedown.framing.wall_base[wall],
+                               [wall](const FramedLevel& below) {
+                                   return std::binary_search(below.walls.begin(), below.walls.end(), wall);
+                               });
+    load_wall_lift(takedown, wall, above, lift);
+    add_areas(lift, arrived, above);
+    add_up_wall_lift(lift, takedown.plan.cases.size());
     lifts.push_back(std::move(lift));
 }
 

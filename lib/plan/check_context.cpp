@@ -56,6 +56,10 @@ Problem& CheckContext::report(const Subject& subject, ProblemCode code, std::str
     if (!subject.id.empty() && !is_unread(subject.id)) {
         ids.emplace_back(subject.id);
     }
+    if (!subject.noun.empty() && std::string_view(message).substr(0, subject.noun.size()) == subject.noun) {
+        message.front() =
+            static_cast<char>(message.front() - 'a' + 'A'); // a sentence that begins with its subject
+    }
     return log.add(inside.empty() ? problem_at(code, subject.origin, subject.list, std::move(message),
                                                std::move(hint), std::move(ids))
                                   : problem_inside(code, subject.origin, subject.list, inside,

@@ -6,8 +6,8 @@
 
 #include <algorithm>
 #include <cmath>
+#include <limits>
 #include <numbers>
-#include <numeric>
 #include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -237,7 +237,7 @@ void check_levels(CheckContext& context) {
 }
 
 double joists_of(const JoistField& field) {
-    if (field.outline.empty() || !(field.spacing > 0)) {
+    if (field.outline.empty() || !(field.spacing > 0) || !std::isfinite(field.direction)) {
         return std::numeric_limits<double>::quiet_NaN();
     }
     const double angle = field.direction * std::numbers::pi / 180;

@@ -88,7 +88,9 @@ void check_joist_fields(CheckContext& context, std::size_t level) {
         context.good_number(field.direction, subject, "/direction", dimension::none);
         const bool spaced =
             context.good_number(field.spacing, subject, "/spacing", dimension::length, Range::positive);
-        if (spaced && field.spacing <= context.snap) {
+        const double joists = joists_of(field);
+        const bool too_many = joists > static_cast<double>(context.limits.members); // said by check_amounts
+        if (spaced && !too_many && field.spacing <= context.snap) {
             context.report(subject, ProblemCode::out_of_range, "/spacing",
                            "`spacing` of " + subject.name() + " is " + context.lengths(field.spacing) +
                                ", no more than `snap`, " + context.lengths(context.snap) +
@@ -96,7 +98,6 @@ void check_joist_fields(CheckContext& context, std::size_t level) {
         }
         const bool placed =
             context.good_number(field.offset, subject, "/offset", dimension::length, Range::not_negative);
-        const double joists = joists_of(field);
         if (spaced && placed && std::isfinite(joists) && field.offset > joists * field.spacing) {
             context.report(subject, ProblemCode::out_of_range, "/offset",
                            "`offset` of " + subject.name() + " is " + context.lengths(field.offset) +

@@ -106,10 +106,14 @@ private:
         return receiver_.scalar(kind, value, text, static_cast<std::uint32_t>(at));
     }
 
-    /// A number ends at the first byte that cannot belong to it; the parser has looked at that one too.
+    /// A number ends at the first byte that cannot belong to it, and the parser has taken that one too,
+    /// unless the text ends there.
     bool number(double value) {
         const std::size_t at = token_start();
-        passed_ = std::min(text_.find_first_not_of("+-.0123456789eE", at), text_.size());
+        pass_token();
+        const bool at_end =
+            passed_ == text_.size() && std::string_view("0123456789").find(text_.back()) != text_.npos;
+        passed_ -= at_end ? 0 : 1;
         after_key_ = after_open_ = false;
         return receiver_.scalar(JsonKind::number, value, {}, static_cast<std::uint32_t>(at));
     }

@@ -25,7 +25,8 @@ void two_girders(PlanBuilder& p) {
 
 const std::vector<std::string> girders_on_columns{"G1 on C1", "G1 on C2", "G2 on C3", "G2 on C4"};
 
-std::vector<std::string> with(std::vector<std::string> more, std::vector<std::string> base = girders_on_columns) {
+std::vector<std::string> with(std::vector<std::string> more,
+                              std::vector<std::string> base = girders_on_columns) {
     base.insert(base.end(), more.begin(), more.end());
     std::sort(base.begin(), base.end());
     return base;
@@ -34,7 +35,9 @@ std::vector<std::string> with(std::vector<std::string> more, std::vector<std::st
 std::vector<Row> rules() {
     return {
         {"a girder's ends bear on the columns under them",
-         [](PlanBuilder& p) { p.column("C1", {0, 0}).column("C2", {9, 0}).girder("G", {0, 0}, {9, 0}); },
+         [](PlanBuilder& p) {
+             p.column("C1", {0, 0}).column("C2", {9, 0}).girder("G", {0, 0}, {9, 0});
+         },
          {"G on C1", "G on C2"},
          {}},
         {"a girder runs on over a column under its inside",
@@ -52,7 +55,10 @@ std::vector<Row> rules() {
          {}},
         {"a girder bears on the end of a wall that it crosses square",
          [](PlanBuilder& p) {
-             p.column("C1", {0, 0}).column("C2", {9, 0}).wall("W1", {4, 0}, {4, 2}).girder("G", {0, 0}, {9, 0});
+             p.column("C1", {0, 0})
+                 .column("C2", {9, 0})
+                 .wall("W1", {4, 0}, {4, 2})
+                 .girder("G", {0, 0}, {9, 0});
          },
          {"G on C1", "G on C2", "G on W1"},
          {}},
@@ -65,8 +71,11 @@ std::vector<Row> rules() {
          {}},
         {"girders that cross over a column do not bear on each other",
          [](PlanBuilder& p) {
-             p.column("C0", {0, 0}).column("C1", {9, 0}).column("C2", {-9, 0}).column("C3", {0, 7}).column(
-                 "C4", {0, -7});
+             p.column("C0", {0, 0})
+                 .column("C1", {9, 0})
+                 .column("C2", {-9, 0})
+                 .column("C3", {0, 7})
+                 .column("C4", {0, -7});
              p.girder("G1", {-9, 0}, {9, 0}).girder("G2", {0, -7}, {0, 7});
          },
          {"G1 on C0", "G1 on C1", "G1 on C2", "G2 on C0", "G2 on C3", "G2 on C4"},
@@ -198,7 +207,9 @@ std::vector<Row> rules() {
          girders_on_columns,
          {"lies-along", "too-few-bearings"}},
         {"a member along a wall is refused",
-         [](PlanBuilder& p) { p.wall("W", {0, 0}, {9, 0}).beam("B", {2, 0}, {7, 0}); },
+         [](PlanBuilder& p) {
+             p.wall("W", {0, 0}, {9, 0}).beam("B", {2, 0}, {7, 0});
+         },
          {},
          {"carries-nothing", "lies-along", "too-few-bearings"}},
         {"members end to end on one line do not lie along each other",
@@ -211,8 +222,10 @@ std::vector<Row> rules() {
         {"four beams that bear on each other in a ring are a loop",
          [](PlanBuilder& p) {
              p.column("C1", {0, 2}).column("C2", {6, 0}).column("C3", {8, 6}).column("C4", {2, 8});
-             p.beam("B1", {0, 2}, {6, 2}).beam("B2", {6, 0}, {6, 6}).beam("B3", {8, 6}, {2, 6}).beam(
-                 "B4", {2, 8}, {2, 2});
+             p.beam("B1", {0, 2}, {6, 2})
+                 .beam("B2", {6, 0}, {6, 6})
+                 .beam("B3", {8, 6}, {2, 6})
+                 .beam("B4", {2, 8}, {2, 2});
          },
          {"B1 on B2", "B1 on C1", "B2 on B3", "B2 on C2", "B3 on B4", "B3 on C3", "B4 on B1", "B4 on C4"},
          {"load-path-loop"}},
@@ -264,7 +277,10 @@ TEST_CASE("a bearing knows its stations on both and where it is") {
 TEST_CASE("a loop is reported with its ids in the order of the path") {
     PlanBuilder p;
     p.column("C1", {0, 2}).column("C2", {6, 0}).column("C3", {8, 6}).column("C4", {2, 8});
-    p.beam("B1", {0, 2}, {6, 2}).beam("B2", {6, 0}, {6, 6}).beam("B3", {8, 6}, {2, 6}).beam("B4", {2, 8}, {2, 2});
+    p.beam("B1", {0, 2}, {6, 2})
+        .beam("B2", {6, 0}, {6, 6})
+        .beam("B3", {8, 6}, {2, 6})
+        .beam("B4", {2, 8}, {2, 2});
     const Framing framing = frame_plan(p.plan);
     const Problem* loop = find_problem(framing, ProblemCode::load_path_loop);
     REQUIRE(loop);
@@ -295,7 +311,8 @@ TEST_CASE("a stretch along another member is named with its ends") {
     const Problem* along = find_problem(framing, ProblemCode::lies_along);
     REQUIRE(along);
     CHECK(along->message.find("for 5 m, from (2, 0) m to (7, 0) m") != std::string::npos);
-    CHECK(along->ids == std::vector<std::string>{"G1", "B"});
+    CHECK(along->pointer == "/levels/0/members/2");
+    CHECK(along->ids == std::vector<std::string>{"B", "G1"});
 }
 
 TEST_CASE("a place is named by the grid lines that cross there") {

@@ -1,0 +1,31 @@
+#include "plan/sha256.hpp"
+
+#include <runnel/plan.hpp>
+
+#include <doctest/doctest.h>
+
+#include <string>
+
+using namespace runnel;
+
+TEST_CASE("digests of FIPS 180-4 examples") {
+    CHECK(sha256_hex("") == "e3b0c44298fc1c149afbf4c8996fb92427ae41e4649b934ca495991b7852b855");
+    CHECK(sha256_hex("abc") == "ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad");
+    CHECK(sha256_hex("abcdbcdecdefdefgefghfghighijhijkijkljklmklmnlmnomnopnopq") ==
+          "248d6a61d20638b8e5c026930c3e6039a33ce45964ff2167f6ecedd419db06c1");
+    CHECK(sha256_hex(std::string(1000000, 'a')) ==
+          "cdc76e5c9914fb9281a1c7e284d73e67f1809a48a497200e046d39ccc7112cd0");
+}
+
+TEST_CASE("a plan's digest is that of its bytes, also when they are no plan") {
+    CHECK(read_plan("abc").digest ==
+          "sha256:ba7816bf8f01cfea414140de5dae2223b00361a396177a9cb410ff61f20015ad");
+    // Lengths around the block size, where the padding takes one block or two.
+    CHECK(sha256_hex(std::string(55, 'x')) != sha256_hex(std::string(56, 'x')));
+    CHECK(sha256_hex(std::string(55, 'a')) ==
+          "9f4390f8d30c2dd92ec9f095b65e2b9ae9b0a925a5258e241c9f1e910f734318");
+    CHECK(sha256_hex(std::string(56, 'a')) ==
+          "b35439a4ac6f0948b6d6f9e3c6af0f5f590ce20f1bde7090ef7970686ec6738a");
+    CHECK(sha256_hex(std::string(64, 'a')) ==
+          "ffe054fe7ae0cb6dc65c3af9b61d5209f439851db43d0ba5997337df154668eb");
+}
