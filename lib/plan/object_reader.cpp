@@ -61,6 +61,9 @@ void JsonValue::report(ProblemCode code, std::string message, std::string hint,
 }
 
 void JsonValue::wrong_type(std::string_view wanted, std::string hint) const {
+    if (!context->log.wants(ProblemCode::wrong_type)) {
+        return;
+    }
     report(ProblemCode::wrong_type,
            name() + " takes " + std::string(wanted) + ", not " + std::string(words_for(kind())) + '.',
            std::move(hint));
@@ -247,6 +250,9 @@ std::optional<JsonValue> ObjectReader::value(std::string_view key, Need need) {
             continue;
         }
         ++found_;
+        if (result && !self_.context->log.wants(ProblemCode::duplicate_key)) {
+            continue;
+        }
         JsonValue here{self_.context, &tree,    i + 1, Place::of_key(&self_.place, tree.text(i)),
                        self_.noun,    owner_id_};
         if (!result) {
@@ -258,7 +264,7 @@ std::optional<JsonValue> ObjectReader::value(std::string_view key, Need need) {
                     '`' + std::string(key) + "` stands twice in " + here.owner() + "; the first counts.",
                     "Leave one of them out.");
     }
-    if (!result && need == Need::required) {
+    if (!result && need == Need::required && self_.context->log.wants(ProblemCode::missing_key)) {
         self_.report(ProblemCode::missing_key,
                      "`" + std::string(key) + "` of " + self_.owner() + " is missing.");
     }
@@ -337,7 +343,8 @@ void ObjectReader::finish() {
     const std::uint32_t end = tree.node(self_.node).next;
     for (std::uint32_t i = self_.node + 1; i < end; i = tree.node(i + 1).next) {
         const std::string_view key = tree.text(i);
-        if (std::find(known.begin(), known.end(), key) != known.end()) {
+        if (std::find(known.begin(), known.end(), key) != known.end() ||
+            !self_.context->log.wants(ProblemCode::unknown_key)) {
             continue;
         }
         const JsonValue here{self_.context, &tree,    i, Place::of_key(&self_.place, key),

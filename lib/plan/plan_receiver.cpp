@@ -182,7 +182,7 @@ private:
 
 } // namespace
 
-std::size_t count_elements(std::string_view text, std::size_t at) {
+ElementCount count_elements(std::string_view text, std::size_t at) {
     std::size_t depth = 0;
     std::size_t commas = 0;
     bool empty = true;
@@ -202,7 +202,7 @@ std::size_t count_elements(std::string_view text, std::size_t at) {
         case ']':
         case '}':
             if (--depth == 0) {
-                return empty ? 0 : commas + 1;
+                return {empty ? 0 : commas + 1, i + 1 - at};
             }
             break;
         case ',':
@@ -213,7 +213,7 @@ std::size_t count_elements(std::string_view text, std::size_t at) {
             break;
         }
     }
-    return commas;
+    return {commas, text.size() - at};
 }
 
 PlanReceiver::PlanReceiver(ReadingContext& context, Plan& plan) : context_(context), plan_(plan) {
@@ -368,7 +368,12 @@ void PlanReceiver::enter_list(std::uint32_t at) {
     item_count_ = 0;
     list_count_ = 0;
     list_place_ = Place::of_key(place_here(), name_of_key(key_));
-    const std::size_t count = std::min(count_elements(context_.text, at), context_.limits.members);
+    // The shortest object that is kept, {"case":"d","q":1}, has 18 bytes: a list of less is not given room
+    // for.
+    constexpr std::size_t least_bytes = 18;
+    const ElementCount list = count_elements(context_.text, at);
+    const std::size_t count =
+        std::min({list.elements, list.bytes / least_bytes + 1, context_.limits.members});
     switch (key_) {
     case PlanKey::columns:
         return plan_.columns.reserve(count);
@@ -389,7 +394,7 @@ void PlanReceiver::enter_list(std::uint32_t at) {
         return level_.point_loads.reserve(count);
     case PlanKey::frames:
     case PlanKey::combinations:
-        if (count > 0) {
+        if (list.elements > 0) {
             report_here(ProblemCode::not_supported_yet, at, list_place_.pointer(),
                         key_ == PlanKey::frames
                             ? "`frames` of the plan: frames cannot be computed yet."

@@ -125,7 +125,11 @@ private:
     Place list_place_;
 };
 
-/// How many elements the list that begins at `at` has; the text need not be right.
-[[nodiscard]] std::size_t count_elements(std::string_view text, std::size_t at);
+/// How many elements the list that begins at `at` has, and how many bytes; the text need not be right.
+struct ElementCount {
+    std::size_t elements = 0;
+    std::size_t bytes = 0;
+};
+[[nodiscard]] ElementCount count_elements(std::string_view text, std::size_t at);
 
 RUNNEL_NAMESPACE_END
