@@ -90,6 +90,7 @@ private:
     void report_here(ProblemCode code, std::uint32_t at, std::string pointer, std::string message,
                      std::string hint = {});
     [[nodiscard]] std::string_view noun_here() const;
+    [[nodiscard]] std::string owner_here() const;
     [[nodiscard]] const Place* place_here() const { return in_level_ ? &level_place_ : nullptr; }
 
     template <class Item>
