@@ -33,18 +33,37 @@ enum class Table : std::uint8_t { members, reactions, rundowns, foundations };
 RUNNEL_EXPORT void write_result(const Takedown& takedown, std::span<const Problem> reading_problems,
                                 const ReportOptions& options, const TextSink& sink);
 
-/// The short account for people, at most 100 columns: uplift, balance with load per deck area, members,
-/// rundowns, foundations, warnings, cautions.
+/// The short account for people, never wider than 100 columns: uplift, balance with load per deck area,
+/// members, rundowns, foundations, warnings, cautions. Of plans with many members, columns and walls it shows
+/// the heaviest and says how many are left out.
 RUNNEL_EXPORT void write_account(const Takedown& takedown, const ReportOptions& options,
                                  const TextSink& sink);
 
-/// A table as CSV (RFC 4180), units in the header.
+/// A table as CSV (RFC 4180), units in the header. A text that a spreadsheet would take for a formula gets an
+/// apostrophe before it.
 RUNNEL_EXPORT void write_table(const Takedown& takedown, Table table, const ReportOptions& options,
                                const TextSink& sink);
 
-/// Regions alone, as JSON ({"levels": [{id, regions}]}) or, for one level, as SVG.
+enum class RegionFormat : std::uint8_t { json, geojson, svg };
+
+/// What a drawing or list of regions shows.
+struct RegionView {
+    RegionFormat format = RegionFormat::json;
+    std::optional<std::uint32_t> level; ///< index; all levels where not given. SVG draws one level: the first
+};
+
+/// The split alone. JSON: {"units", "problems", "levels": [{id, regions}]} with regions as in the result
+/// document. GeoJSON (RFC 7946, but in plan coordinates): one feature a region. SVG: a level to scale, with
+/// `<path class="region" data-deck data-carrier>`, `<line class="member" data-id>`, `class="column"` and
+/// `class="wall"` with `data-id`. `sharings` are by level; those of levels that are not shown may be empty.
+/// An empty `framing` gives a document without levels.
 RUNNEL_EXPORT void write_regions(const Plan& plan, const Framing& framing, std::span<const Sharing> sharings,
+                                 std::span<const Problem> problems, const RegionView& view,
                                  const ReportOptions& options, const TextSink& sink);
+
+/// The SVG of one level.
+RUNNEL_EXPORT void draw_level(const Plan& plan, const Framing& framing, std::uint32_t level,
+                              const Sharing& sharing, const ReportOptions& options, const TextSink& sink);
 
 /// Problems for people, one block each: severity, code, place, sentence, hint. `file` stands before line and
 /// column.

@@ -120,7 +120,7 @@ struct Uplift {
 
 /// Everything the takedown found. Levels are as in Framing.
 struct Takedown {
-    Plan plan; ///< as given
+    Plan plan; ///< as given, with the share that the options ask for
     Framing framing;
     std::vector<LevelTakedown> levels;
     std::vector<std::vector<Balance>> level_balance; ///< by level, by case
@@ -136,14 +136,16 @@ struct Takedown {
 
 struct TakedownOptions {
     std::optional<Share> share; ///< overrides the plan's setting
+    unsigned threads = 1;       ///< for levels side by side; the result is the same with any number
     Limits limits;
 };
 
 /// Carries all loads of a plan down to the foundations.
 ///
-/// The plan must be free of errors (read_plan or check_plan). Errors found on the way end it after the phase
-/// that found them, with all problems of that phase. Laws (tests/laws/takedown_test.cpp): balance (force and
-/// moment, level and building), order, motion, scaling.
+/// The plan must be free of errors (read_plan or check_plan). Framing, sharing and loads are all gone through
+/// for their problems; with errors among them nothing is passed down.
+///
+/// Laws (tests/laws/takedown_test.cpp): balance (force and moment, level and building), order, motion.
 [[nodiscard]] RUNNEL_EXPORT Takedown take_down(Plan plan, const TakedownOptions& options = {});
 
 /// Law checker: recomputes every balance from loads and foundations alone. Empty: all close.

@@ -14,6 +14,7 @@ CarrierAreas areas_of(const Sharing& sharing) {
         if (sharing.transfers[c].empty()) {
             continue;
         }
+        // Regions are drawn by halves: a cell counts for its first carrier.
         const Cell& cell = sharing.cells[c];
         const Transfer& transfer = sharing.transfers[c].front();
         const double start = cell.high.start - cell.low.start;

@@ -50,6 +50,18 @@ public:
         std::uint32_t carrier = none;
     };
 
+    /// The answer at p, clear only if all points within `reach` of it have the same: carriers and edges may
+    /// have been fitted to each other by that much.
+    [[nodiscard]] Answer ask_around(Point p, double margin, double reach) const {
+        Answer answer = ask(p, margin);
+        for (const Point d : {Point{reach, 0}, Point{-reach, 0}, Point{0, reach}, Point{0, -reach}}) {
+            const Answer beside = ask(p + d, margin);
+            answer.clear = answer.clear && beside.clear && beside.inside == answer.inside &&
+                           beside.carrier == answer.carrier;
+        }
+        return answer;
+    }
+
     [[nodiscard]] Answer ask(Point p, double margin) const {
         Beside low;
         Beside high;
@@ -196,8 +208,9 @@ std::vector<Problem> check_owners(const Plan& plan, const Framing& framing, std:
         by_deck.emplace_back(sharing.cells[c].deck, c);
     }
     const auto cells = Grouped<std::uint32_t>::from_pairs(level.decks.size(), std::move(by_deck));
-    // Points nearer than this to a border are left out: rounding may put them on either side.
-    const double margin = 4 * noise_of(framing.largest_coordinate);
+    // Points nearer than this to a border are left out: rounding, or fitting carriers to edges within `snap`,
+    // may put them on either side.
+    const double margin = 4 * noise_of(framing.largest_coordinate) + 2 * plan.settings.snap;
     std::mt19937_64 random(seed);
     std::vector<Problem> problems;
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
@@ -220,7 +233,7 @@ std::vector<Problem> check_owners(const Plan& plan, const Framing& framing, std:
         std::vector<std::uint32_t> near;
         for (std::uint32_t i = 0; i < samples; ++i) {
             const Point p{along(random), across(random)};
-            const StripProbe::Answer answer = probe.ask(p, margin);
+            const StripProbe::Answer answer = probe.ask_around(p, margin, 2 * plan.settings.snap);
             if (!answer.clear) {
                 continue;
             }

@@ -138,8 +138,10 @@ void check_overhang(const Sharing& sharing, const BaysBeside& beside, const Bay&
     const bool low_is_edge = overhang.low_carrier == none;
     const std::uint32_t carrier = low_is_edge ? overhang.high_carrier : overhang.low_carrier;
     const Point place = middle_of(overhang, sharing.axes[overhang.axes]);
-    if (std::max(overhang.high.start - overhang.low.start, overhang.high.end - overhang.low.end) <= snap) {
-        return; // the carrier runs along the edge
+    const double breadth =
+        std::max(overhang.high.start - overhang.low.start, overhang.high.end - overhang.low.end);
+    if (breadth <= 2 * snap || overhang.to - overhang.from <= 2 * snap) {
+        return; // the carrier runs along the edge, or the drawing is a little off
     }
     double backed = 0;
     beside.visit(sharing, carrier, low_is_edge, overhang.from, overhang.to, [&](std::size_t index) {

@@ -12,8 +12,9 @@ RUNNEL_NAMESPACE_BEGIN
 /// is no longer than that vanishes. Neighbours that continue each other as the same polynomial, to rounding,
 /// are joined; where the sum is exactly nothing there is no stretch. Laws
 /// (tests/unit/path_line_pieces_test.cpp):
-///   (1) sum    at every station the intensity is the sum of those given
-///   (2) order  the result does not depend on the order of `pieces`
+///   (1) sum    at every station the intensity is the sum of those given, but for what noise moves
+///   (2) keep   force and first moment are those given, to rounding, however far the plan's origin
+///   (3) order  the result does not depend on the order of `pieces`
 /// Cost: O(n log n + n d) for n stretches of which at most d overlap.
 [[nodiscard]] std::vector<LinePiece> merged(std::vector<LinePiece> pieces, double noise);
 

@@ -144,27 +144,54 @@ struct RawLine {
     LinePiece piece;
 };
 
+/// All load of a cell whose transfers lead to single points of their carriers: slivers that the drawing left.
+void put_cell_as_points(const Sharing& sharing, std::size_t c, double q, double area, std::uint32_t load_case,
+                        std::uint32_t deck, Collector& collector) {
+    for (const Transfer& transfer : sharing.transfers[c]) {
+        collector.put_point(
+            transfer.carrier, deck,
+            {load_case, {SourceKind::deck, deck}, transfer.station_from, transfer.weight[0] * q * area});
+    }
+}
+
+void gather_cell_as_points(const Sharing& sharing, std::size_t c, const DeckPressure& pressure,
+                           std::uint32_t deck, std::vector<DeckPressure::Piece>& parts,
+                           Collector& collector) {
+    const Cell& cell = sharing.cells[c];
+    const double area =
+        (cell.to - cell.from) * (cell.high.start - cell.low.start + cell.high.end - cell.low.end) / 2;
+    for (const DeckPressure::Uniform& u : pressure.uniform()) {
+        put_cell_as_points(sharing, c, u.q, area, u.load_case, deck, collector);
+    }
+    const Convex where = corners_of(cell, collector.noise());
+    if (!pressure.has_zones() || where.empty()) {
+        return;
+    }
+    pressure.zones_over(where, parts);
+    for (const DeckPressure::Piece& part : parts) {
+        const double part_area = moments_of(part.where, part.where.front()).area;
+        put_cell_as_points(sharing, c, part.q, part_area, part.load_case, deck, collector);
+    }
+}
+
 void gather_cells(const Sharing& sharing, std::size_t first, std::size_t last, const DeckPressure& pressure,
                   std::uint32_t deck, Collector& collector, std::vector<RawLine>& raw) {
     std::vector<DeckPressure::Piece> parts;
     std::vector<LinePiece> pieces;
     for (std::size_t c = first; c < last; ++c) {
         const Cell& cell = sharing.cells[c];
-        for (const Transfer& transfer : sharing.transfers[c]) {
-            if (transfer.station_from == transfer.station_to) {
-                // Levels so near that the carrier's stations do not tell them apart: no line can stand there.
-                const double area = (cell.to - cell.from) *
-                                    (cell.high.start - cell.low.start + cell.high.end - cell.low.end) / 2;
-                for (const DeckPressure::Uniform& u : pressure.uniform()) {
-                    collector.put_point(
-                        transfer.carrier, deck,
-                        {u.load_case, {SourceKind::deck, deck}, transfer.station_from, u.q * area});
-                }
-                continue;
-            }
+        const std::span<const Transfer> transfers = sharing.transfers[c];
+        if (transfers.empty()) {
+            continue;
+        }
+        if (transfers.front().station_from == transfers.front().station_to) {
+            gather_cell_as_points(sharing, c, pressure, deck, parts, collector);
+            continue;
+        }
+        for (const Transfer& transfer : transfers) {
             raw.push_back({transfer.carrier, none, line_of_unit_pressure(cell, transfer)});
         }
-        if (!pressure.has_zones() || sharing.transfers[c].empty()) {
+        if (!pressure.has_zones()) {
             continue;
         }
         const Convex where = corners_of(cell, collector.noise());
@@ -173,10 +200,7 @@ void gather_cells(const Sharing& sharing, std::size_t first, std::size_t last, c
         }
         pressure.zones_over(where, parts);
         for (const DeckPressure::Piece& part : parts) {
-            for (const Transfer& transfer : sharing.transfers[c]) {
-                if (transfer.station_from == transfer.station_to) {
-                    continue;
-                }
+            for (const Transfer& transfer : transfers) {
                 pieces.clear();
                 lines_of_part(cell, transfer, part.where, part.q, collector.noise(), pieces);
                 for (const LinePiece& piece : pieces) {

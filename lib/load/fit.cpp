@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <numbers>
+#include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -51,10 +52,12 @@ GaussRule make_rule() {
     return rule;
 }
 
-/// Legendre coefficients of f on from..to, up to the third.
-std::array<double, 4> project(const std::function<double(double)>& f, double from, double to) {
+using Coefficients = std::array<double, 5>;
+
+/// Legendre coefficients of f on from..to, up to the fourth.
+Coefficients project(const std::function<double(double)>& f, double from, double to) {
     static const GaussRule rule = make_rule();
-    std::array<double, 4> a{};
+    Coefficients a{};
     for (std::size_t i = 0; i < order; ++i) {
         const double value = f(from + (to - from) * (1 + rule.node[i]) / 2);
         for (std::size_t k = 0; k < a.size(); ++k) {
@@ -64,52 +67,77 @@ std::array<double, 4> project(const std::function<double(double)>& f, double fro
     return a;
 }
 
-double value_of(const std::array<double, 4>& a, double z) {
-    return a[0] + a[1] * z + a[2] * (3 * z * z - 1) / 2 + a[3] * (5 * z * z * z - 3 * z) / 2;
+double value_of(const Coefficients& a, double z) {
+    double value = 0;
+    for (std::size_t k = 0; k < a.size(); ++k) {
+        value += a[k] * legendre(k, z);
+    }
+    return value;
 }
 
-/// From Legendre coefficients in z = 2 y - 1 to powers of y.
-CubicPiece to_powers(const std::array<double, 4>& a, double from, double to) {
-    return {from,
-            to,
-            {a[0] - a[1] + a[2] - a[3], 2 * a[1] - 6 * a[2] + 12 * a[3], 6 * a[2] - 30 * a[3], 20 * a[3]}};
+/// From Legendre coefficients in z = 2 y - 1 to powers of y (the shifted Legendre polynomials).
+Coefficients to_powers(const Coefficients& a) {
+    constexpr std::array<Coefficients, 5> shifted{
+        {{1, 0, 0, 0, 0}, {-1, 2, 0, 0, 0}, {1, -6, 6, 0, 0}, {-1, 12, -30, 20, 0}, {1, -20, 90, -140, 70}}};
+    Coefficients c{};
+    for (std::size_t k = 0; k < a.size(); ++k) {
+        for (std::size_t i = 0; i < c.size(); ++i) {
+            c[i] += a[k] * shifted[k][i];
+        }
+    }
+    return c;
 }
 
-double error_of(const std::function<double(double)>& f, const std::array<double, 4>& a, double from,
-                double to) {
+/// A piece with what it is off by at most, at Chebyshev's points.
+struct Tried {
+    double from, to;
+    Coefficients a;
+    double error;
+};
+
+Tried try_piece(const std::function<double(double)>& f, double from, double to) {
+    Tried tried{from, to, project(f, from, to), 0};
     constexpr int samples = 9;
-    double error = 0;
     for (int i = 0; i < samples; ++i) {
         const double z = -std::cos(std::numbers::pi * i / (samples - 1));
-        error = std::max(error, std::abs(f(from + (to - from) * (1 + z) / 2) - value_of(a, z)));
+        const double off = std::abs(f(from + (to - from) * (1 + z) / 2) - value_of(tried.a, z));
+        tried.error = std::max(tried.error, off);
     }
-    return error;
+    return tried;
 }
 
-} // namespace
-
-std::vector<CubicPiece> fit_cubics(const std::function<double(double)>& f) {
+double largest_of(const std::function<double(double)>& f) {
     double largest = 0;
     constexpr int samples = 33;
     for (int i = 0; i < samples; ++i) {
         largest = std::max(largest, std::abs(f(static_cast<double>(i) / (samples - 1))));
     }
-    std::vector<std::pair<double, double>> open{{0, 1}};
-    std::vector<CubicPiece> done;
-    while (!open.empty()) {
-        const auto [from, to] = open.back();
-        open.pop_back();
-        const std::array<double, 4> a = project(f, from, to);
-        const bool full = done.size() + open.size() + 1 >= most_pieces;
-        if (full || error_of(f, a, from, to) <= wanted * largest) {
-            done.push_back(to_powers(a, from, to));
-        } else {
-            const double middle = (from + to) / 2;
-            open.emplace_back(middle, to);
-            open.emplace_back(from, middle);
+    return largest;
+}
+
+} // namespace
+
+std::vector<QuarticPiece> fit_quartics(const std::function<double(double)>& f) {
+    const double bound = wanted * largest_of(f);
+    const auto better = [](const Tried& l, const Tried& r) { return l.error < r.error; };
+    std::vector<Tried> pieces{try_piece(f, 0, 1)}; // a heap, the worst on top
+    while (pieces.front().error > bound && pieces.size() < most_pieces) {
+        std::pop_heap(pieces.begin(), pieces.end(), better);
+        const Tried worst = pieces.back();
+        pieces.pop_back();
+        const double middle = (worst.from + worst.to) / 2;
+        for (const auto& [from, to] : {std::pair(worst.from, middle), std::pair(middle, worst.to)}) {
+            pieces.push_back(try_piece(f, from, to));
+            std::push_heap(pieces.begin(), pieces.end(), better);
         }
     }
-    return done;
+    std::sort(pieces.begin(), pieces.end(), [](const Tried& l, const Tried& r) { return l.from < r.from; });
+    std::vector<QuarticPiece> fitted;
+    fitted.reserve(pieces.size());
+    for (const Tried& piece : pieces) {
+        fitted.push_back({piece.from, piece.to, to_powers(piece.a)});
+    }
+    return fitted;
 }
 
 RUNNEL_NAMESPACE_END

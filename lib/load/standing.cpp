@@ -4,7 +4,9 @@
 #include "load/fit.hpp"
 
 #include <algorithm>
+#include <array>
 #include <cmath>
+#include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -135,12 +137,20 @@ double high_station(const Bay& bay, double across) {
     return (1 - x) * bay.high_station_from + x * bay.high_station_to;
 }
 
-/// A cubic in y = 0..1 between stations `at_from` and `at_to`, whichever way they run, as a piece of line
+using Quartic = std::array<double, 5>;
+
+/// A quartic in y = 0..1 between stations `at_from` and `at_to`, whichever way they run, as a piece of line
 /// load.
-LinePiece piece_between(double at_from, double at_to, std::array<double, 4> c) {
+LinePiece piece_between(double at_from, double at_to, Quartic c) {
     if (at_to < at_from) {
-        // y = 1 - z
-        c = {c[0] + c[1] + c[2] + c[3], -(c[1] + 2 * c[2] + 3 * c[3]), c[2] + 3 * c[3], -c[3]};
+        // y = 1 - z: a Taylor shift to 1, then the odd powers change sign.
+        for (std::size_t i = 0; i + 1 < c.size(); ++i) {
+            for (std::size_t k = c.size() - 1; k-- > i;) {
+                c[k] += c[k + 1];
+            }
+        }
+        c[1] = -c[1];
+        c[3] = -c[3];
         std::swap(at_from, at_to);
     }
     LinePiece piece;
@@ -168,28 +178,47 @@ struct Stretch {
     [[nodiscard]] double w(double t) const { return (1 - t) * w_a + t * w_b; }
 };
 
-/// A stretch along the strips puts one point load on each carrier. Parts are linear along it, so Simpson's
-/// rule is exact.
+/// Force and first moment, in the stretch's parameter t, of part of a load.
+struct Resultant {
+    double force = 0;
+    double moment = 0;
+
+    /// Where it acts; for a force that cancels itself, the middle, which a point load cannot better.
+    [[nodiscard]] double centre() const { return force != 0 ? std::clamp(moment / force, 0.0, 1.0) : 0.5; }
+};
+
+/// A stretch along the strips, to within `snap`, puts one point load on each carrier, where its part of the
+/// load acts.
 void put_points(const Stretch& s, Collector& collector) {
-    const double whole = s.length * (s.w_a + s.w_b) / 2;
-    const double high = s.length * (s.w(0) * s.part(0) + 4 * s.w(0.5) * s.part(0.5) + s.w(1) * s.part(1)) / 6;
-    const double sum = s.w_a + s.w_b;
-    const double centre = sum != 0 ? std::clamp((s.w_a + 2 * s.w_b) / (3 * sum), 0.0, 1.0) : 0.5;
-    const double across = between(s.a, s.b, centre).y;
-    if (s.bay.high_carrier != none) {
-        collector.put_point(
-            s.bay.high_carrier, none,
-            {s.load_case, s.source, high_station(s.bay, across), s.bay.low_carrier == none ? whole : high});
+    // Gauss's rule of three points: exact up to the fifth power, and parts are all but linear along the
+    // strips.
+    const double apart = std::sqrt(0.6) / 2;
+    const std::array<std::pair<double, double>, 3> rule{
+        {{0.5 - apart, 5.0 / 18}, {0.5, 8.0 / 18}, {0.5 + apart, 5.0 / 18}}};
+    Resultant whole;
+    Resultant high;
+    for (const auto& [t, weight] : rule) {
+        const double w = weight * s.length * s.w(t);
+        whole.force += w;
+        whole.moment += w * t;
+        high.force += w * s.part(t);
+        high.moment += w * s.part(t) * t;
     }
-    if (s.bay.low_carrier != none) {
-        collector.put_point(s.bay.low_carrier, none,
-                            {s.load_case, s.source, low_station(s.bay, across),
-                             s.bay.high_carrier == none ? whole : whole - high});
+    const auto put = [&](std::uint32_t carrier, bool is_high, const Resultant& part) {
+        const double across = between(s.a, s.b, part.centre()).y;
+        const double station = is_high ? high_station(s.bay, across) : low_station(s.bay, across);
+        collector.put_point(carrier, none, {s.load_case, s.source, station, part.force});
+    };
+    if (s.bay.low_carrier == none || s.bay.high_carrier == none) {
+        const bool is_high = s.bay.high_carrier != none;
+        put(is_high ? s.bay.high_carrier : s.bay.low_carrier, is_high, whole);
+        return;
     }
+    put(s.bay.high_carrier, true, high);
+    put(s.bay.low_carrier, false, {whole.force - high.force, whole.moment - high.moment});
 }
 
-void put_cubic(const Stretch& s, bool high, double from, double to, std::array<double, 4> c,
-               Collector& collector) {
+void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c, Collector& collector) {
     const double across_from = between(s.a, s.b, from).y;
     const double across_to = between(s.a, s.b, to).y;
     const double at_from = high ? high_station(s.bay, across_from) : low_station(s.bay, across_from);
@@ -197,7 +226,7 @@ void put_cubic(const Stretch& s, bool high, double from, double to, std::array<d
     const std::uint32_t carrier = high ? s.bay.high_carrier : s.bay.low_carrier;
     const double stretch = std::abs(at_to - at_from);
     if (!(stretch > 0)) {
-        const double force = s.length * (to - from) * (c[0] + c[1] / 2 + c[2] / 3 + c[3] / 4);
+        const double force = s.length * (to - from) * (c[0] + c[1] / 2 + c[2] / 3 + c[3] / 4 + c[4] / 5);
         collector.put_point(carrier, none, {s.load_case, s.source, at_from, force});
         return;
     }
@@ -208,31 +237,30 @@ void put_cubic(const Stretch& s, bool high, double from, double to, std::array<d
 }
 
 /// A stretch across the strips puts a line on each carrier: w times the part, a polynomial where the carriers
-/// are parallel, else a rational function that cubics replace.
+/// are parallel, else a rational function that quartics replace.
 void put_lines(const Stretch& s, double noise, Collector& collector) {
     const bool both = s.bay.low_carrier != none && s.bay.high_carrier != none;
     if (!both) {
-        put_cubic(s, s.bay.high_carrier != none, 0, 1, {s.w_a, s.w_b - s.w_a, 0, 0}, collector);
+        put_quartic(s, s.bay.high_carrier != none, 0, 1, {s.w_a, s.w_b - s.w_a, 0, 0, 0}, collector);
         return;
     }
     const auto width = [&](Point p) {
         return along_of(s.bay.high, s.bay, p.y) - along_of(s.bay.low, s.bay, p.y);
     };
-    std::vector<CubicPiece> pieces;
+    std::vector<QuarticPiece> pieces;
     if (std::abs(width(s.a) - width(s.b)) <= noise) {
         const double w1 = s.w_b - s.w_a;
         const double f0 = s.part(0);
         const double f1 = s.part(1) - f0;
-        pieces.push_back({0, 1, {s.w_a * f0, s.w_a * f1 + w1 * f0, w1 * f1, 0}});
+        pieces.push_back({0, 1, {s.w_a * f0, s.w_a * f1 + w1 * f0, w1 * f1, 0, 0}});
     } else {
-        pieces = fit_cubics([&](double t) { return s.w(t) * s.part(t); });
+        pieces = fit_quartics([&](double t) { return s.w(t) * s.part(t); });
     }
-    for (const CubicPiece& piece : pieces) {
-        put_cubic(s, true, piece.from, piece.to, piece.c, collector);
-        const std::array<double, 4> rest{s.w(piece.from) - piece.c[0],
-                                         s.w(piece.to) - s.w(piece.from) - piece.c[1], -piece.c[2],
-                                         -piece.c[3]};
-        put_cubic(s, false, piece.from, piece.to, rest, collector);
+    for (const QuarticPiece& piece : pieces) {
+        put_quartic(s, true, piece.from, piece.to, piece.c, collector);
+        const Quartic rest{s.w(piece.from) - piece.c[0], s.w(piece.to) - s.w(piece.from) - piece.c[1],
+                           -piece.c[2], -piece.c[3], -piece.c[4]};
+        put_quartic(s, false, piece.from, piece.to, rest, collector);
     }
 }
 

@@ -86,6 +86,7 @@ Drawing draw(Random& random, Shape shape) {
 
 HandFramed framed(const Drawing& d, const Motion& move, bool reversed = false) {
     HandFramed f;
+    f.plan.settings.snap = 1e-7; // nothing here has been snapped: what lies beside each other is meant to
     auto members = d.members;
     if (reversed) {
         std::reverse(members.begin(), members.end());

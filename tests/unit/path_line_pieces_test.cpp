@@ -3,6 +3,7 @@
 #include <doctest/doctest.h>
 
 #include <algorithm>
+#include <cmath>
 #include <random>
 
 using namespace runnel;
@@ -65,6 +66,37 @@ TEST_CASE("breakpoints that differ by rounding are one") {
     REQUIRE(result.size() == 1);
     CHECK(result[0].from == 0);
     CHECK(result[0].to == 6);
+}
+
+TEST_CASE("far from the origin, where coordinates are coarse, force and moment stay as given") {
+    constexpr double far_noise = 7e-9; // at 1000 km
+    constexpr unsigned seed = 5;
+    INFO("seed ", seed);
+    std::mt19937 random(seed);
+    std::uniform_real_distribution<double> unit(0, 1);
+    for (int round = 0; round < 500; ++round) {
+        std::vector<LinePiece> pieces;
+        double force = 0;
+        double moment = 0;
+        double station = 0;
+        for (int i = 0; i < 20; ++i) {
+            const double from = station + (unit(random) - 0.5) * 1e-9;
+            station += i % 7 == 3 ? 3e-9 : 0.3 + unit(random);
+            const double to = station + (unit(random) - 0.5) * 1e-9;
+            const double w = i % 5 == 0 ? 2.5 : 1;
+            pieces.push_back({std::min(from, to), std::max(from, to), {w, 0.01 * (i % 3), 0, 0, 0}});
+            force += pieces.back().total();
+            moment += pieces.back().total() * pieces.back().from + pieces.back().first_moment();
+        }
+        const auto result = merged(pieces, far_noise);
+        REQUIRE(result.size() < pieces.size());
+        for (const LinePiece& piece : result) {
+            force -= piece.total();
+            moment -= piece.total() * piece.from + piece.first_moment();
+        }
+        REQUIRE(std::abs(force) < 1e-12);
+        REQUIRE(std::abs(moment) < 1e-11);
+    }
 }
 
 TEST_CASE("loads that cancel leave nothing") {

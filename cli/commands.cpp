@@ -1,0 +1,264 @@
+#include "commands.hpp"
+
+#include "files.hpp"
+#include "nearest.hpp"
+#include "progress.hpp"
+#include "result_folder.hpp"
+
+#include <runnel/takedown.hpp>
+
+#include <algorithm>
+
+namespace runnel_cli {
+
+namespace {
+
+/// A plan's text and what reading it gave.
+struct Input {
+    std::string file;
+    std::string text;
+    runnel::PlanReading reading;
+
+    [[nodiscard]] bool usable() const { return !runnel::has_errors(reading.problems); }
+};
+
+std::optional<Input> read_input(const std::string& file, const Request& request) {
+    std::optional<std::string> text = read_file(file);
+    if (!text) {
+        return std::nullopt;
+    }
+    Input input{file == "-" ? "standard input" : file, std::move(*text), {}};
+    input.reading = runnel::read_plan(input.text);
+    if (request.share) {
+        std::vector<std::string>& defaults = input.reading.plan.defaults_used;
+        defaults.erase(std::remove(defaults.begin(), defaults.end(), "share"), defaults.end());
+    }
+    return input;
+}
+
+runnel::TakedownOptions takedown_options(const Request& request) {
+    runnel::TakedownOptions options;
+    options.share = request.share;
+    options.threads = request.threads;
+    return options;
+}
+
+runnel::ReportOptions report_options(const Request& request, const Input& input) {
+    runnel::ReportOptions options;
+    options.units = request.units;
+    options.digest = input.reading.digest;
+    options.colour = colour_on(stdout);
+    return options;
+}
+
+/// The takedown of a plan; one without results where the plan cannot be used.
+runnel::Takedown take_down(const Input& input, const Request& request) {
+    runnel::Takedown takedown;
+    if (input.usable()) {
+        const Progress progress("taking the loads down");
+        takedown = runnel::take_down(input.reading.plan, takedown_options(request));
+        runnel::locate_problems(input.text, takedown.problems);
+    } else {
+        takedown.plan = input.reading.plan;
+    }
+    return takedown;
+}
+
+std::vector<runnel::Problem> together(const std::vector<runnel::Problem>& first,
+                                      const std::vector<runnel::Problem>& then) {
+    std::vector<runnel::Problem> all = first;
+    all.insert(all.end(), then.begin(), then.end());
+    return all;
+}
+
+void complain_of(const Input& input, const std::vector<runnel::Problem>& problems) {
+    runnel::write_problems(problems, input.file, input.reading.plan.units, colour_on(stderr),
+                           standard_error());
+}
+
+std::string counted(std::size_t count, const std::string& what) {
+    return std::to_string(count) + ' ' + what + (count == 1 ? "" : "s");
+}
+
+/// "2 errors, 1 warning, no notes" as one line.
+std::string summary(const std::vector<runnel::Problem>& problems) {
+    const auto count = [&](runnel::Severity severity) {
+        return static_cast<std::size_t>(
+            std::count_if(problems.begin(), problems.end(),
+                          [severity](const runnel::Problem& p) { return p.severity == severity; }));
+    };
+    return counted(count(runnel::Severity::error), "error") + ", " +
+           counted(count(runnel::Severity::warning), "warning") + ", " +
+           counted(count(runnel::Severity::note), "note");
+}
+
+Status worse(Status a, Status b) {
+    return std::max(a, b);
+}
+
+} // namespace
+
+Status check(const Request& request) {
+    Status status = done;
+    std::vector<Input> inputs;
+    std::vector<std::vector<runnel::Problem>> problems;
+    for (const std::string& file : request.files) {
+        std::optional<Input> input = read_input(file, request);
+        if (!input) {
+            status = worse(status, file_trouble);
+            continue;
+        }
+        problems.push_back(together(input->reading.problems, take_down(*input, request).problems));
+        inputs.push_back(std::move(*input));
+        if (runnel::has_errors(problems.back())) {
+            status = worse(status, input_errors);
+        }
+    }
+    Output output = Output::standard();
+    if (request.format == "json") {
+        std::vector<runnel::FileProblems> files;
+        for (std::size_t i = 0; i < inputs.size(); ++i) {
+            files.push_back({request.files.size() > 1 ? inputs[i].file : std::string{},
+                             request.units.value_or(inputs[i].reading.plan.units), problems[i]});
+        }
+        runnel::write_problems_json(files, output.sink());
+    } else {
+        for (std::size_t i = 0; i < inputs.size(); ++i) {
+            runnel::write_problems(problems[i], inputs[i].file, inputs[i].reading.plan.units,
+                                   colour_on(stdout), output.sink());
+            output.sink()(inputs[i].file + ": " + summary(problems[i]) + '\n');
+        }
+    }
+    return output.close() ? status : file_trouble;
+}
+
+Status takedown(const Request& request) {
+    const std::optional<Input> input = read_input(request.files.front(), request);
+    if (!input) {
+        return file_trouble;
+    }
+    const runnel::Takedown takedown = take_down(*input, request);
+    const std::vector<runnel::Problem>& read = input->reading.problems;
+    const runnel::ReportOptions options = report_options(request, *input);
+
+    Output output = Output::standard();
+    if (request.format == "json") {
+        runnel::write_result(takedown, read, options, output.sink());
+    } else if (takedown.complete && request.format == "csv") {
+        runnel::write_table(takedown, request.table.value_or(runnel::Table::reactions), options,
+                            output.sink());
+    } else if (takedown.complete) {
+        runnel::write_account(takedown, options, output.sink());
+    }
+    bool written = output.close();
+    if (request.format != "json") {
+        complain_of(*input, together(read, takedown.problems));
+    }
+    if (!request.folder.empty()) {
+        written = write_folder(request.folder, takedown, read, options) && written;
+    }
+    if (!written) {
+        return file_trouble;
+    }
+    return runnel::has_errors(read) || runnel::has_errors(takedown.problems) ? input_errors : done;
+}
+
+namespace {
+
+struct Split {
+    runnel::Framing framing;
+    std::vector<runnel::Sharing> sharings;
+    std::vector<runnel::Problem> problems;
+};
+
+/// Only the levels asked for are split.
+Split split_decks(runnel::Plan& plan, const Request& request, std::optional<std::uint32_t> level) {
+    const Progress progress("splitting the decks");
+    if (request.share) {
+        plan.settings.share = *request.share;
+        for (runnel::Level& one : plan.levels) {
+            for (runnel::Deck& deck : one.decks) {
+                deck.share.reset();
+            }
+        }
+    }
+    Split split;
+    split.framing = runnel::frame_plan(plan);
+    split.problems = split.framing.problems;
+    split.sharings.resize(split.framing.levels.size());
+    for (std::uint32_t l = 0; l < split.framing.levels.size(); ++l) {
+        if (!level || *level == l) {
+            split.sharings[l] = runnel::share_decks(plan, split.framing, l);
+            const std::vector<runnel::Problem>& more = split.sharings[l].problems;
+            split.problems.insert(split.problems.end(), more.begin(), more.end());
+        }
+    }
+    return split;
+}
+
+/// Index of the level that is asked for. False, with a sentence on standard error, where there is none.
+bool find_level(const runnel::Plan& plan, const Request& request, std::optional<std::uint32_t>& level) {
+    std::vector<std::string> ids;
+    for (const runnel::Level& one : plan.levels) {
+        if (one.id == request.level) {
+            level = static_cast<std::uint32_t>(ids.size());
+        }
+        ids.push_back(one.id);
+    }
+    if (!request.level.empty() && !level) {
+        const std::string meant = nearest(request.level, ids);
+        complain("the plan has no level \"" + request.level + '"' +
+                 (meant.empty() ? "" : "; did you mean \"" + meant + "\"?"));
+        return false;
+    }
+    if (request.format == "svg" && !level && plan.levels.size() != 1) {
+        complain("a drawing shows one level: give --level, one of " + counted(plan.levels.size(), "level"));
+        return false;
+    }
+    return true;
+}
+
+runnel::RegionFormat region_format(const std::string& name) {
+    if (name == "svg") {
+        return runnel::RegionFormat::svg;
+    }
+    return name == "geojson" ? runnel::RegionFormat::geojson : runnel::RegionFormat::json;
+}
+
+} // namespace
+
+Status regions(const Request& request) {
+    std::optional<Input> input = read_input(request.files.front(), request);
+    if (!input) {
+        return file_trouble;
+    }
+    runnel::RegionView view;
+    view.format = region_format(request.format);
+    Split split;
+    if (input->usable()) {
+        if (!find_level(input->reading.plan, request, view.level)) {
+            return wrong_usage;
+        }
+        split = split_decks(input->reading.plan, request, view.level);
+        runnel::locate_problems(input->text, split.problems);
+    }
+    const std::vector<runnel::Problem> problems = together(input->reading.problems, split.problems);
+    Output output = Output::standard();
+    runnel::write_regions(input->reading.plan, split.framing, split.sharings, problems, view,
+                          report_options(request, *input), output.sink());
+    if (view.format == runnel::RegionFormat::svg) {
+        complain_of(*input, problems);
+    }
+    if (!output.close()) {
+        return file_trouble;
+    }
+    return runnel::has_errors(problems) ? input_errors : done;
+}
+
+Status schema(const Request& request) {
+    Output output = Output::standard();
+    output.sink()(runnel::schema_of(request.document));
+    return output.close() ? done : file_trouble;
+}
+
+} // namespace runnel_cli

@@ -1,0 +1,17 @@
+#pragma once
+
+#include <runnel/report.hpp>
+
+#include <span>
+#include <string>
+
+namespace runnel_cli {
+
+/// Writes the result, its tables and a drawing of each level into a folder, which is made where it is not
+/// there. Of a plan with errors, the result alone. False, with a sentence on standard error, where something
+/// cannot be written.
+[[nodiscard]] bool write_folder(const std::string& folder, const runnel::Takedown& takedown,
+                                std::span<const runnel::Problem> reading_problems,
+                                const runnel::ReportOptions& options);
+
+} // namespace runnel_cli

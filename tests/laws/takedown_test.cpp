@@ -1,0 +1,125 @@
+#include "support/building_support.hpp"
+
+#include <runnel/takedown.hpp>
+
+#include <doctest/doctest.h>
+
+#include <cmath>
+#include <map>
+
+using namespace runnel;
+using support::Placing;
+
+namespace {
+
+std::string texts_of(std::span<const Problem> problems) {
+    std::string text;
+    for (const Problem& problem : problems) {
+        if (problem.severity == Severity::error) {
+            text += std::string(kind_of(problem.code).name) + ": " + problem.message + "\n";
+        }
+    }
+    return text;
+}
+
+/// Foundation reactions by id and case.
+std::map<std::string, std::vector<double>> foundations_of(const Takedown& takedown) {
+    std::map<std::string, std::vector<double>> result;
+    for (const Foundation& foundation : takedown.foundations) {
+        const Plan& plan = takedown.plan;
+        const std::string& id = foundation.under.kind == CarrierKind::column
+                                    ? plan.columns[foundation.under.index].id
+                                    : plan.walls[foundation.under.index].id;
+        result[id] = foundation.reactions;
+    }
+    return result;
+}
+
+struct Closing {
+    double force = 0;
+    double moment = 0;
+};
+
+/// Largest relative disagreement of the building's balance.
+Closing closing_of(const Takedown& takedown) {
+    Closing worst;
+    const double size = std::max(takedown.framing.largest_coordinate, 1.0);
+    for (const Balance& row : takedown.balance) {
+        const double magnitude = row.applied.magnitude;
+        if (magnitude > 0) {
+            worst.force = std::max(worst.force, row.difference / magnitude);
+            worst.moment = std::max({worst.moment, std::abs(row.moment_difference.x) / (magnitude * size),
+                                     std::abs(row.moment_difference.y) / (magnitude * size)});
+        }
+    }
+    return worst;
+}
+
+double largest_difference(const Takedown& a, const Takedown& b) {
+    const auto here = foundations_of(a);
+    const auto there = foundations_of(b);
+    REQUIRE(here.size() == there.size());
+    double worst = 0;
+    for (const auto& [id, reactions] : here) {
+        for (std::size_t c = 0; c < reactions.size(); ++c) {
+            worst = std::max(worst, std::abs(reactions[c] - there.at(id)[c]));
+        }
+    }
+    return worst;
+}
+
+} // namespace
+
+TEST_CASE("random buildings: balance closes, and turning, moving or renumbering changes no foundation load") {
+    const std::uint64_t seed = support::seed_of_run(41);
+    MESSAGE("seed " << seed);
+    Closing near;
+    Closing far;
+    double motion = 0;
+    double order = 0;
+    double scale = 0;
+    constexpr int plans = 520;
+    for (int i = 0; i < plans; ++i) {
+        const std::uint64_t own = seed + static_cast<std::uint64_t>(i);
+        CAPTURE(own);
+        const Takedown plain = take_down(support::random_building(own));
+        REQUIRE_MESSAGE(plain.complete, texts_of(plain.problems));
+        CHECK(check_balance(plain).empty());
+        const Closing closing = closing_of(plain);
+        near.force = std::max(near.force, closing.force);
+        near.moment = std::max(near.moment, closing.moment);
+
+        support::Random random(own);
+        Placing away;
+        away.degrees =
+            random.between(-89, 89); // past a quarter turn joist fields count from their other side
+        away.shift = {random.between(-1, 1) * 1e5, random.between(-1, 1) * 1e5};
+        const Takedown moved = take_down(support::random_building(own, away));
+        REQUIRE_MESSAGE(moved.complete, texts_of(moved.problems));
+        CHECK(check_balance(moved).empty());
+        const Closing moved_closing = closing_of(moved);
+        far.force = std::max(far.force, moved_closing.force);
+        far.moment = std::max(far.moment, moved_closing.moment);
+        motion = std::max(motion, largest_difference(plain, moved));
+
+        Placing reversed;
+        reversed.reversed = true;
+        const Takedown back = take_down(support::random_building(own, reversed));
+        REQUIRE_MESSAGE(back.complete, texts_of(back.problems));
+        order = std::max(order, largest_difference(plain, back));
+        for (const Balance& row : plain.balance) {
+            scale = std::max(scale, row.applied.magnitude);
+        }
+    }
+    MESSAGE("closing error over " << plans << " plans: force " << near.force << ", moment " << near.moment
+                                  << "; turned and 100 km away: force " << far.force << ", moment "
+                                  << far.moment << "; foundation loads differ by " << motion
+                                  << " kN turned and moved, " << order << " kN renumbered, of up to " << scale
+                                  << " kN");
+    CHECK(near.force <= 1e-12);
+    CHECK(near.moment <= 1e-12);
+    CHECK(far.force <= 1e-11);
+    CHECK(far.moment <= 1e-11);
+    CHECK(motion <= 1e-6);
+    CHECK(order <= 1e-9);
+}
