@@ -96,7 +96,7 @@ private:
         const Point p = between(edge.a, edge.b, low / edge_length);
         const Point q = between(edge.a, edge.b, high / edge_length);
         const double off = std::max(distance_to_segment(p, a, b), distance_to_segment(q, a, b));
-        if (off > 2 * snap || off <= tolerance_.noise) {
+        if (off > snap || off <= tolerance_.noise) {
             return;
         }
         const double sp = std::clamp(station_of(p, a, b), 0.0, length);

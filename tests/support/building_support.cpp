@@ -181,8 +181,11 @@ private:
         const int kind = random_.whole(0, 3);
         std::vector<Ring> openings;
         if (random_.chance(0.3)) {
-            openings.push_back(rectangle(x0 + 0.3 * wide, y0 + 0.3 * deep, x0 + 0.6 * wide, y0 + 0.7 * deep));
-            openings_.push_back({x0 + 0.3 * wide, y0 + 0.3 * deep, x0 + 0.6 * wide, y0 + 0.7 * deep});
+            const std::array<double, 4> o{
+                round_to_twentieths(x0 + 0.3 * wide), round_to_twentieths(y0 + 0.3 * deep),
+                round_to_twentieths(x0 + 0.6 * wide), round_to_twentieths(y0 + 0.7 * deep)};
+            openings.push_back(rectangle(o[0], o[1], o[2], o[3]));
+            openings_.push_back(o);
         }
         if (kind == 0) {
             deck(level, id, rectangle(x0, y0, x1, y1), 90, openings);
