@@ -36,3 +36,5 @@ if(TARGET runnel_cli)
                          "RUNNEL=$<TARGET_FILE:runnel_cli>;README_PROGRAM=$<TARGET_FILE:readme_program>")
   endforeach()
 endif()
+
+include(${CMAKE_CURRENT_SOURCE_DIR}/problems/schema.cmake)
