@@ -89,7 +89,7 @@ public:
                       const Subject& subject, std::string_view inside) {
         const Item* item = index.find(id);
         if (item == nullptr && !is_unread(id) && !in_doubt) {
-            refuse_reference(id, noun, subject, inside);
+            refuse_reference(id, noun, subject, inside, index.hint_for_id(id));
         }
         return item;
     }

@@ -123,11 +123,17 @@ void check_overlaps(CheckContext& context, const std::vector<Opening>& openings,
         return;
     }
     std::vector<Box> boxes;
-    std::vector<RingQuery> queries;
     for (const Opening& opening : openings) {
-        queries.emplace_back(opening.ring, context.snap);
-        boxes.push_back(queries.back().box());
+        // Less than `snap` is no overlap: neighbours that only touch are not even looked at.
+        boxes.push_back(box_of(opening.ring).grown(-context.snap / 2));
     }
+    std::vector<std::optional<RingQuery>> queries(openings.size());
+    const auto query = [&](std::size_t i) -> const RingQuery& {
+        if (!queries[i]) {
+            queries[i].emplace(openings[i].ring, context.snap);
+        }
+        return *queries[i];
+    };
     const BoxTree tree(boxes);
     std::vector<std::uint32_t> near;
     constexpr std::size_t most = 100; // of one deck: the rest is the same mistake
@@ -138,7 +144,7 @@ void check_overlaps(CheckContext& context, const std::vector<Opening>& openings,
             if (k >= i) {
                 break;
             }
-            if (const auto p = shared_point(queries[i], openings[i].ring, queries[k], openings[k].ring)) {
+            if (const auto p = shared_point(query(i), openings[i].ring, query(k), openings[k].ring)) {
                 ++told;
                 context
                     .report(subject, ProblemCode::openings_overlap,

@@ -1,10 +1,14 @@
 #pragma once
 
+#include "plan/words.hpp"
+
 #include <runnel/export.hpp>
 
+#include <algorithm>
 #include <cstdint>
 #include <functional>
 #include <span>
+#include <string>
 #include <string_view>
 #include <vector>
 
@@ -42,6 +46,16 @@ public:
     }
     [[nodiscard]] std::size_t index_of(const Item* item) const {
         return static_cast<std::size_t>(item - items_.data());
+    }
+
+    /// "Did you mean `x`?" where an id is near; of long lists only the beginning is looked at.
+    [[nodiscard]] std::string hint_for_id(std::string_view id) const {
+        constexpr std::size_t most = 100;
+        std::vector<std::string_view> ids;
+        for (const Item& item : items_.first(std::min(items_.size(), most))) {
+            ids.push_back(item.id);
+        }
+        return hint_for(id, ids, {});
     }
 
 private:

@@ -27,6 +27,19 @@ constexpr Table<SpanKind, 3> spans{
 constexpr Table<Role, 3> roles{{{"joist", Role::joist}, {"beam", Role::beam}, {"girder", Role::girder}}};
 constexpr Table<BaseFixity, 2> fixities{{{"pinned", BaseFixity::pinned}, {"fixed", BaseFixity::fixed}}};
 
+/// asce7, then en1991.
+constexpr Table<std::string_view, 11> categories{{{"assembly", "assembly"},
+                                                  {"passenger_garage", "passenger_garage"},
+                                                  {"other", "other"},
+                                                  {"A", "A"},
+                                                  {"B", "B"},
+                                                  {"C", "C"},
+                                                  {"D", "D"},
+                                                  {"E", "E"},
+                                                  {"F", "F"},
+                                                  {"G", "G"},
+                                                  {"H", "H"}}};
+
 template <class Choice, std::size_t n>
 Choices<Choice> choices(const Table<Choice, n>& table) {
     return table;
@@ -45,7 +58,9 @@ LoadCase read_case(ObjectReader& object) {
     const auto one_of = object.value("one_of");
     load_case.reducible = reducible ? boolean_from(*reducible, usual) : usual;
     load_case.pattern = pattern ? boolean_from(*pattern, usual) : usual;
-    load_case.category = category ? text_from(*category, "a text") : std::string{};
+    if (category) {
+        load_case.category = choice_from(*category, choices(categories)).value_or(std::string_view{});
+    }
     load_case.one_of = one_of ? text_from(*one_of, "a text") : std::string{};
     for (const auto& value : {reducible, pattern, category, one_of}) {
         note_without_effect(value);
@@ -281,11 +296,13 @@ LineLoad read_line_load(ObjectReader& object) {
     load.w_to = w ? load.w_from : read(w_to);
     if (w && (w_from || w_to)) {
         (w_from ? w_from : w_to)
-            ->report(ProblemCode::conflicting_keys, "`w` excludes `w_from` and `w_to`.",
+            ->report(ProblemCode::conflicting_keys,
+                     "`w` of " + object.self().owner() + " excludes `w_from` and `w_to`.",
                      "`w` alone where the load is uniform, else the other two.");
     } else if (!w && w_from.has_value() != w_to.has_value()) {
         (w_from ? w_from : w_to)
-            ->report(ProblemCode::conflicting_keys, "`w_from` and `w_to` need each other.",
+            ->report(ProblemCode::conflicting_keys,
+                     "`w_from` and `w_to` of " + object.self().owner() + " need each other.",
                      "`w` where the load is uniform.");
     } else if (!w && !w_from) {
         object.self().report(ProblemCode::missing_key, "`w` of " + object.self().owner() + " is missing.",

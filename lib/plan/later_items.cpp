@@ -34,15 +34,20 @@ void each_entry(const JsonValue& value, std::string_view wanted, Take take) {
     const JsonTree& tree = *value.tree;
     for (std::uint32_t i = value.node + 1; i < tree.node(value.node).next; i = tree.node(i + 1).next) {
         const Place place = Place::of_key(&value.place, tree.text(i));
-        take(JsonValue{value.context, &tree, i + 1, place, value.noun, value.owner_id});
+        take(JsonValue{value.context, &tree, i + 1, place, value.noun, value.owner_id, value.owner_place});
         seen.push_back(tree.text(i));
     }
     std::sort(seen.begin(), seen.end());
     for (std::uint32_t i = value.node + 1; i < tree.node(value.node).next; i = tree.node(i + 1).next) {
         const auto [first, last] = std::equal_range(seen.begin(), seen.end(), tree.text(i));
         if (last - first > 1) {
-            const JsonValue here{value.context, &tree,         i, Place::of_key(&value.place, tree.text(i)),
-                                 value.noun,    value.owner_id};
+            const JsonValue here{value.context,
+                                 &tree,
+                                 i,
+                                 Place::of_key(&value.place, tree.text(i)),
+                                 value.noun,
+                                 value.owner_id,
+                                 value.owner_place};
             here.report(ProblemCode::duplicate_key,
                         "`" + shown(tree.text(i)) + "` stands more than once in " + value.name() + '.');
         }

@@ -27,6 +27,13 @@ std::string_view Place::nearest_key() const {
     return place == nullptr ? std::string_view{} : place->key;
 }
 
+std::string Place::element() const {
+    if (is_key || up == nullptr || !up->is_key) {
+        return {};
+    }
+    return std::string(up->key) + '[' + std::to_string(index) + ']';
+}
+
 bool ReadingContext::note_once(std::string_view key) {
     if (std::find(noted.begin(), noted.end(), key) != noted.end()) {
         return false;
@@ -37,7 +44,8 @@ bool ReadingContext::note_once(std::string_view key) {
 
 std::string JsonValue::owner() const {
     if (owner_id.empty()) {
-        return noun == "plan" ? "the plan" : "this " + std::string(noun);
+        const std::string element = owner_place == nullptr ? std::string{} : owner_place->element();
+        return element.empty() ? "the " + std::string(noun) : element;
     }
     return std::string(noun) + ' ' + shown(owner_id);
 }
@@ -61,6 +69,9 @@ void JsonValue::report(ProblemCode code, std::string message, std::string hint,
 }
 
 void JsonValue::wrong_type(std::string_view wanted, std::string hint) const {
+    if (!context->log.wants(ProblemCode::wrong_type)) {
+        return;
+    }
     report(ProblemCode::wrong_type,
            name() + " takes " + std::string(wanted) + ", not " + std::string(words_for(kind())) + '.',
            std::move(hint));
@@ -100,6 +111,12 @@ constexpr std::array<std::string_view, 22> unit_words{"m",   "mm",  "cm",  "ft",
                                                       "klf", "ksf", "psi", "ksi", "pcf", "deg"};
 
 std::string hint_for_unit(std::string_view unit) {
+    if (unit.substr(0, 1) == ",") {
+        return "Decimals stand behind a point.";
+    }
+    if (unit == "rad") {
+        return "Angles are in degrees.";
+    }
     if (unit == "kg" || unit == "t" || unit == "lb" || unit == "lbs" || unit == "g") {
         return "Loads are forces: kN, N, lbf, kip.";
     }
@@ -228,6 +245,7 @@ ObjectReader::ObjectReader(const JsonValue& value, std::string_view noun) : self
         }
     }
     self_.owner_id = owner_id_;
+    self_.owner_place = &self_.place;
 }
 
 Origin ObjectReader::origin(std::uint32_t level, std::uint32_t index) const {
@@ -247,8 +265,11 @@ std::optional<JsonValue> ObjectReader::value(std::string_view key, Need need) {
             continue;
         }
         ++found_;
-        JsonValue here{self_.context, &tree,    i + 1, Place::of_key(&self_.place, tree.text(i)),
-                       self_.noun,    owner_id_};
+        if (result && !self_.context->log.wants(ProblemCode::duplicate_key)) {
+            continue;
+        }
+        JsonValue here{self_.context, &tree,     i + 1,       Place::of_key(&self_.place, tree.text(i)),
+                       self_.noun,    owner_id_, &self_.place};
         if (!result) {
             result = here;
             continue;
@@ -258,7 +279,7 @@ std::optional<JsonValue> ObjectReader::value(std::string_view key, Need need) {
                     '`' + std::string(key) + "` stands twice in " + here.owner() + "; the first counts.",
                     "Leave one of them out.");
     }
-    if (!result && need == Need::required) {
+    if (!result && need == Need::required && self_.context->log.wants(ProblemCode::missing_key)) {
         self_.report(ProblemCode::missing_key,
                      "`" + std::string(key) + "` of " + self_.owner() + " is missing.");
     }
@@ -325,7 +346,7 @@ void refuse_choice(const JsonValue& found, std::span<const std::string_view> wor
     }
     found.report(ProblemCode::unknown_choice,
                  found.name() + " cannot be `" + shown(found.text()) + "`; it takes " + listed(words) + '.',
-                 hint_for(found.text(), words, "It takes "));
+                 hint_for(found.text(), words, {}));
 }
 
 void ObjectReader::finish() {
@@ -337,11 +358,12 @@ void ObjectReader::finish() {
     const std::uint32_t end = tree.node(self_.node).next;
     for (std::uint32_t i = self_.node + 1; i < end; i = tree.node(i + 1).next) {
         const std::string_view key = tree.text(i);
-        if (std::find(known.begin(), known.end(), key) != known.end()) {
+        if (std::find(known.begin(), known.end(), key) != known.end() ||
+            !self_.context->log.wants(ProblemCode::unknown_key)) {
             continue;
         }
-        const JsonValue here{self_.context, &tree,    i, Place::of_key(&self_.place, key),
-                             self_.noun,    owner_id_};
+        const JsonValue here{self_.context, &tree,     i,           Place::of_key(&self_.place, key),
+                             self_.noun,    owner_id_, &self_.place};
         here.report(ProblemCode::unknown_key,
                     "A key `" + shown(key) + "` is unknown in " + here.owner() + '.',
                     hint_for(key, known, "Known are "));

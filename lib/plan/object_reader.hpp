@@ -37,6 +37,8 @@ struct Place {
     }
     [[nodiscard]] std::string pointer() const;
     [[nodiscard]] std::string_view nearest_key() const;
+    /// "area_loads[2]" for an element of a list; empty for others.
+    [[nodiscard]] std::string element() const;
 };
 
 /// An id that a frame or a combination cites; they are no part of the plan yet, but their references are
@@ -75,13 +77,14 @@ struct JsonValue {
     Place place;
     std::string_view noun;
     std::string_view owner_id;
+    const Place* owner_place = nullptr; ///< names an owner without an id
 
     [[nodiscard]] JsonKind kind() const { return tree->node(node).kind; }
     [[nodiscard]] std::uint32_t at() const { return tree->node(node).at; }
     [[nodiscard]] std::string_view text() const { return tree->text(node); }
     [[nodiscard]] double number() const { return tree->node(node).number; }
 
-    /// "member G1", or "this member" without an id.
+    /// "member G1", "area_loads[2]" where it has no id, "the plan".
     [[nodiscard]] std::string owner() const;
     /// "`from` of member G1".
     [[nodiscard]] std::string name() const;
@@ -101,7 +104,7 @@ struct JsonValue {
         const std::uint32_t end = tree->node(node).next;
         std::uint32_t index = 0;
         for (std::uint32_t i = node + 1; i < end; i = tree->node(i).next) {
-            take(JsonValue{context, tree, i, Place::of_index(&place, index++), noun, owner_id});
+            take(JsonValue{context, tree, i, Place::of_index(&place, index++), noun, owner_id, owner_place});
         }
         return true;
     }
@@ -146,7 +149,8 @@ public:
     ObjectReader(const JsonValue& value, std::string_view noun);
 
     [[nodiscard]] Origin origin(std::uint32_t level, std::uint32_t index) const;
-    [[nodiscard]] bool has_id() const { return !owner_id_.empty(); }
+    ObjectReader(const ObjectReader&) = delete; // values point back at its place
+    ObjectReader& operator=(const ObjectReader&) = delete;
 
     [[nodiscard]] std::optional<JsonValue> value(std::string_view key, Need need = Need::optional);
     [[nodiscard]] std::string id();

@@ -170,7 +170,8 @@ private:
         if (!capturing_ || !tree_.whole()) {
             return true;
         }
-        found = read_units(JsonValue{&quiet_, &tree_, 0, Place::of_key(nullptr, "units"), "plan", {}});
+        found =
+            read_units(JsonValue{&quiet_, &tree_, 0, Place::of_key(nullptr, "units"), "plan", {}, nullptr});
         return false;
     }
 
@@ -182,7 +183,7 @@ private:
 
 } // namespace
 
-std::size_t count_elements(std::string_view text, std::size_t at) {
+ElementCount count_elements(std::string_view text, std::size_t at) {
     std::size_t depth = 0;
     std::size_t commas = 0;
     bool empty = true;
@@ -202,7 +203,7 @@ std::size_t count_elements(std::string_view text, std::size_t at) {
         case ']':
         case '}':
             if (--depth == 0) {
-                return empty ? 0 : commas + 1;
+                return {empty ? 0 : commas + 1, i + 1 - at};
             }
             break;
         case ',':
@@ -213,7 +214,7 @@ std::size_t count_elements(std::string_view text, std::size_t at) {
             break;
         }
     }
-    return commas;
+    return {commas, text.size() - at};
 }
 
 PlanReceiver::PlanReceiver(ReadingContext& context, Plan& plan) : context_(context), plan_(plan) {
@@ -232,6 +233,14 @@ void PlanReceiver::report_here(ProblemCode code, std::uint32_t at, std::string p
         problem.ids.push_back(level_.id);
     }
     context_.log.add_at(at, std::move(problem));
+}
+
+std::string PlanReceiver::owner_here() const {
+    if (!in_level_) {
+        return "the plan";
+    }
+    return level_.id.empty() || level_.id == unread::id ? level_place_.element()
+                                                        : "level " + shown(level_.id);
 }
 
 std::string_view PlanReceiver::noun_here() const {
@@ -263,7 +272,7 @@ bool PlanReceiver::key(std::string_view name, std::uint32_t at) {
         return true;
     }
     const KeyRow* row = in_level_ ? row_named(level_rows, name) : row_named(plan_rows, name);
-    const std::string where = in_level_ ? "this level" : "the plan";
+    const std::string where = owner_here();
     if (row == nullptr) {
         const auto plan_names = names_of(plan_rows);
         const auto level_names = names_of(level_rows);
@@ -368,7 +377,12 @@ void PlanReceiver::enter_list(std::uint32_t at) {
     item_count_ = 0;
     list_count_ = 0;
     list_place_ = Place::of_key(place_here(), name_of_key(key_));
-    const std::size_t count = std::min(count_elements(context_.text, at), context_.limits.members);
+    // The shortest object that is kept, {"case":"d","q":1}, has 18 bytes: a list of less is not given room
+    // for.
+    constexpr std::size_t least_bytes = 18;
+    const ElementCount list = count_elements(context_.text, at);
+    const std::size_t count =
+        std::min({list.elements, list.bytes / least_bytes + 1, context_.limits.members});
     switch (key_) {
     case PlanKey::columns:
         return plan_.columns.reserve(count);
@@ -389,7 +403,7 @@ void PlanReceiver::enter_list(std::uint32_t at) {
         return level_.point_loads.reserve(count);
     case PlanKey::frames:
     case PlanKey::combinations:
-        if (count > 0) {
+        if (list.elements > 0) {
             report_here(ProblemCode::not_supported_yet, at, list_place_.pointer(),
                         key_ == PlanKey::frames
                             ? "`frames` of the plan: frames cannot be computed yet."
@@ -430,9 +444,8 @@ void PlanReceiver::begin_level(std::uint32_t at) {
 void PlanReceiver::end_level() {
     for (const PlanKey key : {PlanKey::id, PlanKey::elevation}) {
         if ((level_keys_ & bit(key)) == 0) {
-            const std::string name = level_.id == unread::id ? "this level" : "level " + shown(level_.id);
             report_here(ProblemCode::missing_key, level_at_, level_place_.pointer(),
-                        '`' + std::string(name_of_key(key)) + "` of " + name + " is missing.");
+                        '`' + std::string(name_of_key(key)) + "` of " + owner_here() + " is missing.");
         }
     }
     in_level_ = false;
@@ -497,7 +510,7 @@ void PlanReceiver::doubt(PlanKey list) {
 void PlanReceiver::capture_done() {
     capturing_ = false;
     if (!in_plan_) {
-        const JsonValue value{&context_, &tree_, 0, Place{}, "plan", {}};
+        const JsonValue value{&context_, &tree_, 0, Place{}, "plan", {}, nullptr};
         Problem problem;
         problem.code = ProblemCode::wrong_type;
         problem.severity = Severity::error;
@@ -510,17 +523,20 @@ void PlanReceiver::capture_done() {
     }
     if (in_list_) {
         const Place place = Place::of_index(&list_place_, item_count_++);
-        return read_item(JsonValue{&context_, &tree_, 0, place, noun_of(key_), {}});
+        return read_item(JsonValue{&context_, &tree_, 0, place, noun_of(key_), {}, nullptr});
     }
     if (in_levels_ && !in_level_) {
-        const JsonValue value{&context_, &tree_, 0, level_place_, "plan", {}};
+        const JsonValue value{&context_, &tree_, 0, level_place_, "plan", {}, nullptr};
         doubts_.levels = true;
-        return value.wrong_type("a list of levels, each an object");
+        return value.report(ProblemCode::wrong_type, "`levels` takes a list of objects, and " +
+                                                         value.place.element() + " is " +
+                                                         std::string(words_for(value.kind())) + '.');
     }
-    const JsonValue value{
-        &context_,   &tree_,
-        0,           Place::of_key(place_here(), name_of_key(key_)),
-        noun_here(), in_level_ && level_.id != unread::id ? std::string_view(level_.id) : std::string_view{}};
+    const bool known_level = in_level_ && level_.id != unread::id;
+    const JsonValue value{&context_,   &tree_,
+                          0,           Place::of_key(place_here(), name_of_key(key_)),
+                          noun_here(), known_level ? std::string_view(level_.id) : std::string_view{},
+                          place_here()};
     if (is_list(key_)) {
         doubt(key_);
         return value.wrong_type("a list");
@@ -598,7 +614,9 @@ void PlanReceiver::keep(std::vector<Item>& list, Item item, const Origin& origin
 void PlanReceiver::read_item(const JsonValue& value) {
     if (value.kind() != JsonKind::object) {
         doubt(key_);
-        return value.wrong_type("a list of objects");
+        return value.report(ProblemCode::wrong_type,
+                            '`' + std::string(name_of_key(key_)) + "` takes a list of objects, and " +
+                                value.place.element() + " is " + std::string(words_for(value.kind())) + '.');
     }
     ObjectReader object(value, noun_of(key_));
     const Origin origin = object.origin(in_level_ ? level_count_ - 1 : Origin::nowhere, item_count_ - 1);

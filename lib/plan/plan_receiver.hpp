@@ -90,6 +90,7 @@ private:
     void report_here(ProblemCode code, std::uint32_t at, std::string pointer, std::string message,
                      std::string hint = {});
     [[nodiscard]] std::string_view noun_here() const;
+    [[nodiscard]] std::string owner_here() const;
     [[nodiscard]] const Place* place_here() const { return in_level_ ? &level_place_ : nullptr; }
 
     template <class Item>
@@ -125,7 +126,11 @@ private:
     Place list_place_;
 };
 
-/// How many elements the list that begins at `at` has; the text need not be right.
-[[nodiscard]] std::size_t count_elements(std::string_view text, std::size_t at);
+/// How many elements the list that begins at `at` has, and how many bytes; the text need not be right.
+struct ElementCount {
+    std::size_t elements = 0;
+    std::size_t bytes = 0;
+};
+[[nodiscard]] ElementCount count_elements(std::string_view text, std::size_t at);
 
 RUNNEL_NAMESPACE_END

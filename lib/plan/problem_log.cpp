@@ -16,6 +16,15 @@ bool ProblemLog::count(ProblemCode code) {
     return ++counts_[index] <= cap_;
 }
 
+bool ProblemLog::wants(ProblemCode code) {
+    const auto index = static_cast<std::size_t>(code);
+    if (index >= counts_.size() || counts_[index] < cap_) {
+        return true;
+    }
+    ++counts_[index];
+    return false;
+}
+
 Problem& ProblemLog::add(Problem problem) {
     if (!count(problem.code)) {
         return dropped_ = std::move(problem);

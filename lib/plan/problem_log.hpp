@@ -17,6 +17,8 @@ public:
 
     /// The problem as kept, to be added to; past the cap it is only counted.
     Problem& add(Problem problem);
+    /// False, and counted, if one more of this code would not be listed: then its text need not be made.
+    [[nodiscard]] bool wants(ProblemCode code);
     /// With the offset in the document of what it concerns; line and column follow in `take`.
     void add_at(std::uint32_t at, Problem problem);
 

@@ -81,7 +81,7 @@ std::string hint_for(std::string_view given, std::span<const std::string_view> w
     if (!nearest.empty()) {
         return "Did you mean `" + std::string(nearest) + "`?";
     }
-    return words.empty() ? std::string{} : std::string(lead) + listed(words) + '.';
+    return lead.empty() || words.empty() ? std::string{} : std::string(lead) + listed(words) + '.';
 }
 
 RUNNEL_NAMESPACE_END

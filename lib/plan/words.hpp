@@ -18,7 +18,7 @@ RUNNEL_NAMESPACE_BEGIN
 /// "a, b or c".
 [[nodiscard]] std::string listed(std::span<const std::string_view> words);
 
-/// A hint from both: "Did you mean `b`?", or what may stand there.
+/// A hint from both: "Did you mean `b`?", or else the lead and what may stand there; without a lead nothing.
 [[nodiscard]] std::string hint_for(std::string_view given, std::span<const std::string_view> words,
                                    std::string_view lead);
 

@@ -283,11 +283,11 @@ TEST_CASE("locating survives a text that breaks off") {
 }
 
 TEST_CASE("elements are counted ahead, texts and nested lists passed over") {
-    CHECK(count_elements("[]", 0) == 0);
-    CHECK(count_elements("[ \n ]", 0) == 0);
-    CHECK(count_elements("x [1]", 2) == 1);
-    CHECK(count_elements(R"([{"a": [1, 2]}, "[,\",", 3])", 0) == 3);
-    CHECK(count_elements("[1, 2", 0) == 1);
+    CHECK(count_elements("[]", 0).elements == 0);
+    CHECK(count_elements("[ \n ]", 0).elements == 0);
+    CHECK(count_elements("x [1]", 2).elements == 1);
+    CHECK(count_elements(R"([{"a": [1, 2]}, "[,\",", 3])", 0).elements == 3);
+    CHECK(count_elements("[1, 2", 0).elements == 1);
 }
 
 TEST_CASE("a level like another may load its members and decks, and bear on its joists") {

@@ -24,7 +24,7 @@ constexpr double reach = 0.005;
 
 TEST_CASE("a member stands, or moves in as many ways as statics says") {
     struct Row {
-        const char* name;
+        std::string name;
         std::vector<Bearing> bearings;
         std::vector<double> hinges;
         int ways;
