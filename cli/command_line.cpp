@@ -138,7 +138,10 @@ private:
     }
 
     void add_common(CLI::App& command) {
-        command.add_option("--share", words_.share, "Use this instead of the plan's setting and its decks'")
+        command
+            .add_option(
+                "--share", words_.share,
+                "Use this instead of the plan's setting and its decks' (lever, continuous: not built yet)")
             ->check(CLI::IsMember(names_in(shares)));
         command.add_option("--units", words_.units, "Units of the output, for example m,kN or ft,kip")
             ->type_name("LENGTH,FORCE")

@@ -27,15 +27,16 @@ Progress::~Progress() {
 void Progress::show() {
     constexpr const char* clear_line = "\r\x1B[K";
     std::unique_lock lock(guard_);
+    int shown = 0;
     for (int seconds = 1; !ended_.wait_for(lock, std::chrono::seconds(1), [this] { return end_; });
          ++seconds) {
         std::fprintf(stderr, "%s%s, %d s", clear_line, what_.load(), seconds);
         std::fflush(stderr);
-        if (end_) {
-            break;
-        }
+        shown = seconds;
     }
-    std::fputs(clear_line, stderr);
+    if (shown > 0) {
+        std::fputs(clear_line, stderr);
+    }
 }
 
 } // namespace runnel_cli

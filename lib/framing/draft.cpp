@@ -3,13 +3,27 @@
 RUNNEL_NAMESPACE_BEGIN
 
 Surroundings::Surroundings(const std::vector<Axis>& axes, Point along, double reach) : along_(along) {
-    if (!axes.empty()) {
-        origin_ = axes.front().from;
+    if (axes.empty()) {
+        return;
     }
+    origin_ = axes.front().from;
+    Sum lengths;
+    for (const Axis& axis : axes) {
+        lengths.add(axis.length);
+    }
+    typical_ = lengths.value() / static_cast<double>(axes.size());
     std::vector<Box> boxes;
     boxes.reserve(axes.size());
-    for (const Axis& axis : axes) {
-        boxes.push_back(box_around(axis.from, axis.to, reach));
+    elements_.reserve(axes.size());
+    for (std::uint32_t i = 0; i < axes.size(); ++i) {
+        const std::size_t pieces = pieces_of(axes[i].from, axes[i].to);
+        for (std::size_t k = 0; k < pieces; ++k) {
+            const double from = static_cast<double>(k) / static_cast<double>(pieces);
+            const double to = static_cast<double>(k + 1) / static_cast<double>(pieces);
+            boxes.push_back(box_around(between(axes[i].from, axes[i].to, from),
+                                       between(axes[i].from, axes[i].to, to), reach));
+            elements_.push_back(i);
+        }
     }
     index_ = BoxIndex(boxes);
 }
@@ -23,9 +37,58 @@ Box Surroundings::box_around(Point a, Point b, double reach) const {
     return Box::around(turned(a), turned(b), reach);
 }
 
-void Surroundings::find(Point a, Point b, double reach, std::vector<std::uint32_t>& found) const {
-    index_.find(box_around(a, b, reach), found);
+/// Boxes of all elements together stay in proportion to the elements: the pieces of one are no more than its
+/// length in typical lengths, and one.
+std::size_t Surroundings::pieces_of(Point a, Point b) const {
+    const Box box = box_around(a, b, 0);
+    const double thickness = std::min(box.x_max - box.x_min, box.y_max - box.y_min);
+    return typical_ > 0 ? static_cast<std::size_t>(thickness / typical_) + 1 : 1;
 }
+
+void Surroundings::find(Point a, Point b, double reach, std::vector<std::uint32_t>& found) const {
+    const auto before = static_cast<std::ptrdiff_t>(found.size());
+    const std::size_t pieces = pieces_of(a, b);
+    for (std::size_t k = 0; k < pieces; ++k) {
+        const double from = static_cast<double>(k) / static_cast<double>(pieces);
+        const double to = static_cast<double>(k + 1) / static_cast<double>(pieces);
+        index_.find(box_around(between(a, b, from), between(a, b, to), reach), found);
+    }
+    for (auto box = found.begin() + before; box != found.end(); ++box) {
+        *box = elements_[*box];
+    }
+    if (found.size() > static_cast<std::size_t>(before) + 1) {
+        std::sort(found.begin() + before, found.end());
+        found.erase(std::unique(found.begin() + before, found.end()), found.end());
+    }
+}
+
+namespace {
+
+/// Stations on an axis between which the part of a to b that comes within `limit` of its line lies, widened
+/// by `limit`; from > to where none does.
+Stretch stations_beside(const Axis& axis, Point a, Point b, double limit) {
+    const Point u = (1 / axis.length) * (axis.to - axis.from);
+    const double off_a = cross(u, a - axis.from);
+    const double off_b = cross(u, b - axis.from);
+    double from = 0;
+    double to = 1;
+    if (off_a != off_b) {
+        const double at_left = (limit - off_a) / (off_b - off_a);
+        const double at_right = (-limit - off_a) / (off_b - off_a);
+        from = std::max(from, std::min(at_left, at_right));
+        to = std::min(to, std::max(at_left, at_right));
+    }
+    if (from > to || (off_a == off_b && std::abs(off_a) > limit)) {
+        return {0, -1};
+    }
+    const double station_a = dot(a - axis.from, u);
+    const double station_b = dot(b - axis.from, u);
+    const double s = station_a + from * (station_b - station_a);
+    const double t = station_a + to * (station_b - station_a);
+    return {std::min(s, t) - limit, std::max(s, t) + limit};
+}
+
+} // namespace
 
 std::pair<std::uint32_t, std::uint32_t> LevelDraft::members_near(std::uint32_t line, Point a, Point b,
                                                                  double distance) const {
@@ -35,18 +98,15 @@ std::pair<std::uint32_t, std::uint32_t> LevelDraft::members_near(std::uint32_t l
         return {first, last};
     }
     // Pieces stand in order along their line, so that stations on it tell which of them can be near. A piece
-    // may lie off its line's stations by snap.
+    // may lie off its line, and off its stations, by snap.
     const Axis& axis = lines[line].axis;
-    const double station_a = station_of(a, axis.from, axis.to);
-    const double station_b = station_of(b, axis.from, axis.to);
-    const double low = std::min(station_a, station_b) - distance - reach();
-    const double high = std::max(station_a, station_b) + distance + reach();
+    const Stretch stations = stations_beside(axis, a, b, distance + reach());
     const auto members = level.members.begin();
     const auto begin = std::partition_point(members + first, members + last, [&](const FramedMember& m) {
-        return station_of(m.to, axis.from, axis.to) < low;
+        return station_of(m.to, axis.from, axis.to) < stations.from;
     });
     const auto end = std::partition_point(begin, members + last, [&](const FramedMember& m) {
-        return station_of(m.from, axis.from, axis.to) <= high;
+        return station_of(m.from, axis.from, axis.to) <= stations.to;
     });
     return {static_cast<std::uint32_t>(begin - members), static_cast<std::uint32_t>(end - members)};
 }

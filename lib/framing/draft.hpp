@@ -37,8 +37,9 @@ struct Elements {
     [[nodiscard]] std::uint32_t count() const { return lines + walls + columns; }
 };
 
-/// Elements by place. Boxes stand in axes turned to the level's main direction, so that a turned plan costs
-/// what a straight one does: the box of a slanting line holds much that is not near the line.
+/// Elements by place. The box of a slanting line holds much that is not near the line. So boxes stand in axes
+/// turned to the level's main direction, and a line that still slants (a girder askew to the joists) has its
+/// box in pieces about as large as the typical element.
 class Surroundings {
 public:
     Surroundings() = default;
@@ -52,8 +53,12 @@ public:
 
 private:
     [[nodiscard]] Point turned(Point p) const;
+    [[nodiscard]] std::size_t pieces_of(Point a, Point b) const;
+
     Point origin_;
     Point along_{1, 0};
+    double typical_ = 0;                  ///< length of an element, m
+    std::vector<std::uint32_t> elements_; ///< by box
     BoxIndex index_;
 };
 

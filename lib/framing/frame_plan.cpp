@@ -42,7 +42,7 @@ void frame_level(LevelDraft& draft, std::uint32_t number, std::size_t& room) {
     snap_decks(draft);
     refuse_overlaps(draft);
 
-    make_members(draft);
+    make_members(draft, room);
     node_decks(draft);
     note_moves(draft);
 

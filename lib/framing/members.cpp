@@ -210,8 +210,8 @@ FramedMember member_of(const Listed<Member>& listed, const Line& line, const Sec
 
 class MemberMaker {
 public:
-    explicit MemberMaker(LevelDraft& draft)
-        : draft_(draft), sections_(number_sections(draft.plan)), cutter_(draft),
+    MemberMaker(LevelDraft& draft, std::size_t& room)
+        : draft_(draft), room_(room), sections_(number_sections(draft.plan)), cutter_(draft),
           left_out_(draft.lists.joist_fields.size()) {}
 
     void run() {
@@ -250,6 +250,9 @@ private:
             }
         }
         const Listed<JoistField>& field = draft_.lists.joist_fields[joist.field];
+        if (!take_room(joist.field, end - first)) {
+            pieces_.clear();
+        }
         const std::string id = field.what->id + '.' + std::to_string(joist.source + 1);
         std::uint32_t line = first;
         start_line();
@@ -269,6 +272,27 @@ private:
             start_line();
         }
         return end;
+    }
+
+    /// Lines have had their room; pieces beyond them need more.
+    bool take_room(std::uint32_t field, std::size_t lines) {
+        const std::size_t more = pieces_.size() > lines ? pieces_.size() - lines : 0;
+        if (more <= room_) {
+            room_ -= more;
+            return true;
+        }
+        if (refused_field_ != field) {
+            refused_field_ = field;
+            const Listed<JoistField>& listed = draft_.lists.joist_fields[field];
+            draft_.problems.add(ProblemCode::too_much, [&] {
+                return problem_at(ProblemCode::too_much, listed.origin, "joist_fields",
+                                  "Cut where they cross other members, the joists of field " +
+                                      listed.what->id +
+                                      " are more than the plan's limit of members leaves room for.",
+                                  {}, {listed.what->id});
+            });
+        }
+        return false;
     }
 
     void add(const Listed<JoistField>& field, const JoistPiece& piece, const std::string& id) {
@@ -305,6 +329,8 @@ private:
     }
 
     LevelDraft& draft_;
+    std::size_t& room_;
+    std::uint32_t refused_field_ = none; ///< the last field whose pieces found no room
     SectionNumbers sections_;
     JoistCutter cutter_;
     std::vector<JoistPiece> pieces_;
@@ -313,8 +339,8 @@ private:
 
 } // namespace
 
-void make_members(LevelDraft& draft) {
-    MemberMaker(draft).run();
+void make_members(LevelDraft& draft, std::size_t& room) {
+    MemberMaker(draft, room).run();
 }
 
 RUNNEL_NAMESPACE_END

@@ -88,6 +88,10 @@ private:
         } else if (miss.carrier.kind == CarrierKind::wall) {
             misses_.walls.insert(miss.carrier.index);
         }
+        if (!draft_.problems.has_room(ProblemCode::near_miss)) {
+            draft_.problems.add(ProblemCode::near_miss, [] { return Problem{}; }); // counted, not listed
+            return;
+        }
         const std::string end_name = from_end ? "`from` end" : "`to` end";
         std::string miss_text = length_text(miss.near.distance, draft_.plan.units);
         miss_text += (short_of ? " short of " : " beside ") + on + " at " + place_text(draft_.plan, end);

@@ -25,6 +25,11 @@ public:
         }
     }
 
+    /// Whether the next problem of a code will be listed, not only counted.
+    [[nodiscard]] bool has_room(ProblemCode code) const {
+        return counts_[static_cast<std::size_t>(code)] < limit_;
+    }
+
     /// All problems, with one that counts for each code that ran over the limit.
     [[nodiscard]] std::vector<Problem> take() {
         for (const ProblemKind& kind : problem_kinds()) {

@@ -38,6 +38,7 @@ std::string left_out(std::size_t count, std::string_view table) {
 template <class Supports>
 std::vector<double> weights_of(const Supports& supports) {
     std::vector<double> weights;
+    weights.reserve(supports.size());
     for (const auto& support : supports) {
         weights.push_back(support.lifts.empty() ? 0 : magnitude(support.lifts.back().total));
     }

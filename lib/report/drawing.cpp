@@ -41,8 +41,8 @@ class LevelDrawing {
 public:
     LevelDrawing(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
                  const ReportOptions& options, const TextSink& sink)
-        : plan_(plan), framing_(framing), level_(framing.levels[level]), level_index_(level),
-          sharing_(sharing), names_(plan, framing), scale_(options.units.value_or(plan.units)), svg_(sink) {}
+        : plan_(plan), level_(framing.levels[level]), level_index_(level), sharing_(sharing),
+          names_(plan, framing), scale_(options.units.value_or(plan.units)), svg_(sink) {}
 
     void draw() {
         find_extent();
@@ -312,7 +312,6 @@ private:
     }
 
     const Plan& plan_;
-    const Framing& framing_;
     const FramedLevel& level_;
     std::uint32_t level_index_;
     const Sharing& sharing_;

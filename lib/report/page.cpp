@@ -75,7 +75,7 @@ std::string printable(std::string_view text) {
 }
 
 std::string fit(std::string_view text, std::size_t width) {
-    const std::string whole = printable(text);
+    std::string whole = printable(text);
     if (columns_of(whole) <= width) {
         return whole;
     }

@@ -126,12 +126,12 @@ Plan random_tangle(std::uint64_t seed) {
             1.5 * snap);
     };
     for (int i = 0; i < 3; ++i) {
-        p.column("C" + std::to_string(i), point());
+        p.column(numbered("C", i), point());
     }
     p.wall("W", point(), point());
     for (int i = 0; i < 10; ++i) {
         const Role role = static_cast<Role>(pick(random, 0, 2));
-        p.member("M" + std::to_string(i), role, point(), point());
+        p.member(numbered("M", i), role, point(), point());
     }
     p.deck("D", {points[0], drawn(random, points[0], 3), drawn(random, points[0], 3)});
     return p.plan;
@@ -176,7 +176,9 @@ constexpr double same_station = 1e-6;
 
 void check_same(const Picture& a, const Picture& b) {
     REQUIRE(a.size() == b.size());
-    for (const auto& [id, bearings] : a) {
+    for (const auto& member : a) {
+        const std::string& id = member.first;
+        const std::vector<Seen>& bearings = member.second;
         CAPTURE(id);
         const auto other = b.find(id);
         REQUIRE(other != b.end());
@@ -191,6 +193,13 @@ void check_same(const Picture& a, const Picture& b) {
 
 double distance(Point a, Point b) {
     return std::hypot(a.x - b.x, a.y - b.y);
+}
+
+void check_moved(const Ring& ring, const Ring& moved, const Redrawing& how) {
+    REQUIRE(ring.size() == moved.size());
+    for (std::size_t i = 0; i < ring.size(); ++i) {
+        CHECK(distance(redrawn(ring[i], how), moved[i]) < same_station);
+    }
 }
 
 double distance_to_ring(Point p, const Ring& ring) {
@@ -264,6 +273,10 @@ TEST_CASE("law of framing: turning and moving the plan changes no id and no stat
                 const Point expected = redrawn(a.levels[0].members[m].from, how);
                 CHECK(distance(expected, b.levels[0].members[m].from) < same_station);
             }
+            for (std::size_t d = 0; d < a.levels[0].decks.size(); ++d) {
+                check_moved(a.levels[0].decks[d].outline, b.levels[0].decks[d].outline, how);
+            }
+            CHECK(a.levels[0].feet.size() == b.levels[0].feet.size());
         }
     }
 }

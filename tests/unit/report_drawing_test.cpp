@@ -1,0 +1,39 @@
+#include "report/region_tints.hpp"
+#include "support/report_support.hpp"
+
+#include <doctest/doctest.h>
+
+using namespace runnel;
+using support::takedown_of;
+using support::written;
+
+TEST_CASE("regions that lie side by side have different tints") {
+    const Takedown takedown = takedown_of(support::footbridge);
+    const std::vector<Region> regions = regions_of(takedown.levels[0].sharing);
+    const std::vector<std::uint8_t> tints = choose_tints(regions);
+    REQUIRE(tints.size() == 3);
+    CHECK(tints[0] != tints[1]);
+    CHECK(tints[1] != tints[2]);
+}
+
+TEST_CASE("a drawing is to scale, with y upward") {
+    const Takedown takedown = takedown_of(support::footbridge);
+    const std::string svg = written([&](const TextSink& sink) {
+        draw_level(takedown.plan, takedown.framing, 0, takedown.levels[0].sharing, {}, sink);
+    });
+    // 8 m are 1000 px: 125 px a metre; the north girder stands 250 px above the south one.
+    CHECK(svg.find("<line class=\"member girder\" data-id=\"north\" x1=\"60\" y1=\"106\" x2=\"1060\" "
+                   "y2=\"106\"/>") != std::string::npos);
+    CHECK(svg.find("<line class=\"member girder\" data-id=\"south\" x1=\"60\" y1=\"356\" x2=\"1060\" "
+                   "y2=\"356\"/>") != std::string::npos);
+    CHECK(svg.find("<path class=\"region\" data-deck=\"boards\" data-carrier=\"b\"") != std::string::npos);
+}
+
+TEST_CASE("a level with nothing on it is drawn as an empty sheet") {
+    Takedown takedown = takedown_of(support::footbridge);
+    takedown.framing.levels[0] = {};
+    const std::string svg = written(
+        [&](const TextSink& sink) { draw_level(takedown.plan, takedown.framing, 0, Sharing{}, {}, sink); });
+    CHECK(svg.find("nan") == std::string::npos);
+    CHECK(svg.find("inf") == std::string::npos);
+}
