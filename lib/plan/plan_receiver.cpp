@@ -1,221 +1,21 @@
 #include "plan/plan_receiver.hpp"
 
-#include "plan/items.hpp"
+#include "plan/look_ahead.hpp"
 #include "plan/words.hpp"
 
 #include <algorithm>
-#include <array>
+#include <span>
 #include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
 
-constexpr std::string_view version_of_plans = "plan/1";
-
-struct KeyRow {
-    std::string_view name;
-    PlanKey key;
-    bool is_list;
-};
-
-constexpr std::array plan_rows{KeyRow{"runnel", PlanKey::runnel, false},
-                               KeyRow{"title", PlanKey::title, false},
-                               KeyRow{"units", PlanKey::units, false},
-                               KeyRow{"settings", PlanKey::settings, false},
-                               KeyRow{"cases", PlanKey::cases, true},
-                               KeyRow{"sections", PlanKey::sections, true},
-                               KeyRow{"builds", PlanKey::builds, true},
-                               KeyRow{"grid", PlanKey::grid, true},
-                               KeyRow{"columns", PlanKey::columns, true},
-                               KeyRow{"walls", PlanKey::walls, true},
-                               KeyRow{"levels", PlanKey::levels, true},
-                               KeyRow{"frames", PlanKey::frames, true},
-                               KeyRow{"combinations", PlanKey::combinations, true},
-                               KeyRow{"reductions", PlanKey::reductions, false}};
-constexpr std::array level_rows{KeyRow{"id", PlanKey::id, false},
-                                KeyRow{"elevation", PlanKey::elevation, false},
-                                KeyRow{"like", PlanKey::like, false},
-                                KeyRow{"moving_point", PlanKey::moving_point, false},
-                                KeyRow{"members", PlanKey::members, true},
-                                KeyRow{"joist_fields", PlanKey::joist_fields, true},
-                                KeyRow{"decks", PlanKey::decks, true},
-                                KeyRow{"area_loads", PlanKey::area_loads, true},
-                                KeyRow{"line_loads", PlanKey::line_loads, true},
-                                KeyRow{"point_loads", PlanKey::point_loads, true}};
-
 constexpr std::uint32_t bit(PlanKey key) {
     return std::uint32_t{1} << static_cast<std::uint32_t>(key);
 }
 
-template <std::size_t n>
-const KeyRow* row_named(const std::array<KeyRow, n>& rows, std::string_view name) {
-    const auto it =
-        std::find_if(rows.begin(), rows.end(), [&](const KeyRow& row) { return row.name == name; });
-    return it == rows.end() ? nullptr : &*it;
-}
-
-template <std::size_t n>
-std::array<std::string_view, n> names_of(const std::array<KeyRow, n>& rows) {
-    std::array<std::string_view, n> names;
-    std::transform(rows.begin(), rows.end(), names.begin(), [](const KeyRow& row) { return row.name; });
-    return names;
-}
-
-std::string_view name_of_key(PlanKey key) {
-    for (const KeyRow& row : plan_rows) {
-        if (row.key == key) {
-            return row.name;
-        }
-    }
-    for (const KeyRow& row : level_rows) {
-        if (row.key == key) {
-            return row.name;
-        }
-    }
-    return {};
-}
-
-bool is_list(PlanKey key) {
-    const auto is = [&](const KeyRow& row) { return row.key == key && row.is_list; };
-    return std::any_of(plan_rows.begin(), plan_rows.end(), is) ||
-           std::any_of(level_rows.begin(), level_rows.end(), is);
-}
-
-/// What one element of a list is called.
-std::string_view noun_of(PlanKey list) {
-    switch (list) {
-    case PlanKey::cases:
-        return "case";
-    case PlanKey::sections:
-        return "section";
-    case PlanKey::builds:
-        return "build";
-    case PlanKey::grid:
-        return "grid line";
-    case PlanKey::columns:
-        return "column";
-    case PlanKey::walls:
-        return "wall";
-    case PlanKey::levels:
-        return "level";
-    case PlanKey::frames:
-        return "frame";
-    case PlanKey::combinations:
-        return "combination";
-    case PlanKey::members:
-        return "member";
-    case PlanKey::joist_fields:
-        return "joist field";
-    case PlanKey::decks:
-        return "deck";
-    case PlanKey::area_loads:
-        return "area load";
-    case PlanKey::line_loads:
-        return "line load";
-    case PlanKey::point_loads:
-        return "point load";
-    default:
-        return "plan";
-    }
-}
-
-template <class Item>
-const std::string& name_of_item(const Item& item) {
-    if constexpr (requires { item.case_id; }) {
-        return item.case_id;
-    } else {
-        return item.id;
-    }
-}
-
-/// Looks ahead for the plan's units where quantities come before them.
-class UnitsFinder final : public JsonReceiver {
-public:
-    explicit UnitsFinder(ReadingContext& quiet) : quiet_(quiet) {}
-
-    bool scalar(JsonKind kind, double number, std::string_view text, std::uint32_t at) override {
-        if (capturing_) {
-            tree_.scalar(kind, number, text, at);
-        }
-        return go_on();
-    }
-    bool key(std::string_view name, std::uint32_t at) override {
-        if (capturing_) {
-            tree_.key(name, at);
-        } else {
-            capturing_ = depth_ == 1 && name == "units";
-        }
-        return true;
-    }
-    bool open(JsonKind kind, std::uint32_t at) override {
-        ++depth_;
-        if (capturing_) {
-            tree_.open(kind, at);
-        }
-        return true;
-    }
-    bool close() override {
-        --depth_;
-        if (capturing_) {
-            tree_.close();
-        }
-        return go_on();
-    }
-
-    std::optional<Units> found;
-
-private:
-    bool go_on() {
-        if (!capturing_ || !tree_.whole()) {
-            return true;
-        }
-        found =
-            read_units(JsonValue{&quiet_, &tree_, 0, Place::of_key(nullptr, "units"), "plan", {}, nullptr});
-        return false;
-    }
-
-    ReadingContext& quiet_;
-    JsonTree tree_;
-    std::size_t depth_ = 0;
-    bool capturing_ = false;
-};
-
 } // namespace
-
-ElementCount count_elements(std::string_view text, std::size_t at) {
-    std::size_t depth = 0;
-    std::size_t commas = 0;
-    bool empty = true;
-    for (std::size_t i = at; i < text.size(); ++i) {
-        switch (text[i]) {
-        case '"':
-            empty = false;
-            for (++i; i < text.size() && text[i] != '"'; ++i) {
-                i += text[i] == '\\' ? 1 : 0;
-            }
-            break;
-        case '[':
-        case '{':
-            empty = empty && depth == 0;
-            ++depth;
-            break;
-        case ']':
-        case '}':
-            if (--depth == 0) {
-                return {empty ? 0 : commas + 1, i + 1 - at};
-            }
-            break;
-        case ',':
-            commas += depth == 1 ? 1 : 0;
-            break;
-        default:
-            empty = empty && static_cast<unsigned char>(text[i]) <= ' ';
-            break;
-        }
-    }
-    return {commas, text.size() - at};
-}
 
 PlanReceiver::PlanReceiver(ReadingContext& context, Plan& plan) : context_(context), plan_(plan) {
     plan_.defaults_used = {"snap", "ground_elevation", "share", "self_weight_case"};
@@ -271,13 +71,14 @@ bool PlanReceiver::key(std::string_view name, std::uint32_t at) {
         tree_.key(name, at);
         return true;
     }
-    const KeyRow* row = in_level_ ? row_named(level_rows, name) : row_named(plan_rows, name);
+    const std::span<const KeyRow> rows = in_level_ ? keys_of_level() : keys_of_plan();
+    const KeyRow* row = row_named(rows, name);
     const std::string where = owner_here();
     if (row == nullptr) {
-        const auto plan_names = names_of(plan_rows);
-        const auto level_names = names_of(level_rows);
-        const std::span<const std::string_view> known =
-            in_level_ ? std::span<const std::string_view>(level_names) : plan_names;
+        std::vector<std::string_view> known;
+        for (const KeyRow& each : rows) {
+            known.push_back(each.name);
+        }
         report_here(ProblemCode::unknown_key, at, Place::of_key(place_here(), name).pointer(),
                     "A key `" + shown(name) + "` is unknown in " + where + '.',
                     hint_for(name, known, "Known are "));
@@ -475,12 +276,7 @@ void PlanReceiver::know_units() {
         return;
     }
     units_known_ = true;
-    Limits limits = context_.limits;
-    limits.problems = 0;
-    ReadingContext quiet(context_.text, limits);
-    UnitsFinder finder(quiet);
-    (void)walk_json(context_.text, context_.limits.nesting, finder);
-    plan_.units = finder.found.value_or(Units{});
+    plan_.units = find_units(context_.text, context_.limits).value_or(Units{});
     context_.scales = UnitScales(plan_.units);
 }
 
@@ -542,128 +338,6 @@ void PlanReceiver::capture_done() {
         return value.wrong_type("a list");
     }
     in_level_ ? read_level_value(value) : read_plan_value(value);
-}
-
-void PlanReceiver::read_version(const JsonValue& value) {
-    if (value.kind() != JsonKind::text) {
-        return value.wrong_type("the text \"plan/1\"");
-    }
-    if (value.text() != version_of_plans) {
-        value.report(ProblemCode::wrong_version,
-                     "`runnel` is \"" + shown(value.text()) + "\", and only \"plan/1\" is read here.",
-                     value.text().substr(0, 5) == "frame" ? "A frame by itself is read by `runnel frame`."
-                                                          : "");
-        is_other_document_ = true; // its keys may mean something else
-    }
-}
-
-void PlanReceiver::read_plan_value(const JsonValue& value) {
-    switch (key_) {
-    case PlanKey::runnel:
-        return read_version(value);
-    case PlanKey::title:
-        plan_.title = text_from(value, "a text");
-        return;
-    case PlanKey::units:
-        if (const std::optional<Units> units = read_units(value)) {
-            plan_.units = *units;
-        }
-        context_.scales = UnitScales(plan_.units);
-        units_known_ = true;
-        return;
-    case PlanKey::settings:
-        plan_.settings = read_settings(value, plan_.defaults_used);
-        return;
-    case PlanKey::reductions:
-        return refuse_reductions(value);
-    default:
-        return;
-    }
-}
-
-void PlanReceiver::read_level_value(const JsonValue& value) {
-    switch (key_) {
-    case PlanKey::id:
-        level_.id = text_from(value, "a text");
-        return;
-    case PlanKey::elevation:
-        level_.elevation = quantity_from(value, dimension::length);
-        return;
-    case PlanKey::like:
-        level_.like = text_from(value, "a level's id");
-        return;
-    case PlanKey::moving_point:
-        return refuse_moving_point(value);
-    default:
-        return;
-    }
-}
-
-template <class Item>
-void PlanReceiver::keep(std::vector<Item>& list, Item item, const Origin& origin) {
-    // What has neither id nor case can be neither cited nor checked; a text full of them is not to fill
-    // memory.
-    const auto& name = name_of_item(item);
-    if (name == unread::id) {
-        return doubt(key_);
-    }
-    item.origin = origin;
-    list.push_back(std::move(item));
-}
-
-void PlanReceiver::read_item(const JsonValue& value) {
-    if (value.kind() != JsonKind::object) {
-        doubt(key_);
-        return value.report(ProblemCode::wrong_type,
-                            '`' + std::string(name_of_key(key_)) + "` takes a list of objects, and " +
-                                value.place.element() + " is " + std::string(words_for(value.kind())) + '.');
-    }
-    ObjectReader object(value, noun_of(key_));
-    const Origin origin = object.origin(in_level_ ? level_count_ - 1 : Origin::nowhere, item_count_ - 1);
-    in_level_ ? read_level_item(object, origin) : read_plan_item(object, origin);
-    object.finish();
-}
-
-void PlanReceiver::read_plan_item(ObjectReader& object, const Origin& origin) {
-    switch (key_) {
-    case PlanKey::cases:
-        return keep(plan_.cases, read_case(object), origin);
-    case PlanKey::sections:
-        return keep(plan_.sections, read_section(object), origin);
-    case PlanKey::builds:
-        return keep(plan_.builds, read_build(object), origin);
-    case PlanKey::grid:
-        return keep(plan_.grid, read_grid_line(object), origin);
-    case PlanKey::columns:
-        return keep(plan_.columns, read_column(object), origin);
-    case PlanKey::walls:
-        return keep(plan_.walls, read_wall(object), origin);
-    case PlanKey::frames:
-        return refuse_frame(object);
-    case PlanKey::combinations:
-        return refuse_combination(object);
-    default:
-        return;
-    }
-}
-
-void PlanReceiver::read_level_item(ObjectReader& object, const Origin& origin) {
-    switch (key_) {
-    case PlanKey::members:
-        return keep(level_.members, read_member(object), origin);
-    case PlanKey::joist_fields:
-        return keep(level_.joist_fields, read_joist_field(object), origin);
-    case PlanKey::decks:
-        return keep(level_.decks, read_deck(object), origin);
-    case PlanKey::area_loads:
-        return keep(level_.area_loads, read_area_load(object), origin);
-    case PlanKey::line_loads:
-        return keep(level_.line_loads, read_line_load(object), origin);
-    case PlanKey::point_loads:
-        return keep(level_.point_loads, read_point_load(object), origin);
-    default:
-        return;
-    }
 }
 
 RUNNEL_NAMESPACE_END

@@ -2,6 +2,7 @@
 
 #include "plan/json_tree.hpp"
 #include "plan/object_reader.hpp"
+#include "plan/plan_keys.hpp"
 
 #include <runnel/plan.hpp>
 
@@ -12,34 +13,6 @@
 #include <vector>
 
 RUNNEL_NAMESPACE_BEGIN
-
-/// Keys that stand at the top of a plan or in a level, in the order of the tables in plan_receiver.cpp.
-enum class PlanKey : std::uint8_t {
-    runnel,
-    title,
-    units,
-    settings,
-    cases,
-    sections,
-    builds,
-    grid,
-    columns,
-    walls,
-    levels,
-    frames,
-    combinations,
-    reductions,
-    id,
-    elevation,
-    like,
-    moving_point,
-    members,
-    joist_fields,
-    decks,
-    area_loads,
-    line_loads,
-    point_loads
-};
 
 /// What checks need to know of a reading: lists of which something could not be read, so that a reference
 /// into them may be right.
@@ -125,12 +98,5 @@ private:
     Place level_place_;
     Place list_place_;
 };
-
-/// How many elements the list that begins at `at` has, and how many bytes; the text need not be right.
-struct ElementCount {
-    std::size_t elements = 0;
-    std::size_t bytes = 0;
-};
-[[nodiscard]] ElementCount count_elements(std::string_view text, std::size_t at);
 
 RUNNEL_NAMESPACE_END

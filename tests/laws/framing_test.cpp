@@ -126,12 +126,12 @@ Plan random_tangle(std::uint64_t seed) {
             1.5 * snap);
     };
     for (int i = 0; i < 3; ++i) {
-        p.column("C" + std::to_string(i), point());
+        p.column(numbered("C", i), point());
     }
     p.wall("W", point(), point());
     for (int i = 0; i < 10; ++i) {
         const Role role = static_cast<Role>(pick(random, 0, 2));
-        p.member("M" + std::to_string(i), role, point(), point());
+        p.member(numbered("M", i), role, point(), point());
     }
     p.deck("D", {points[0], drawn(random, points[0], 3), drawn(random, points[0], 3)});
     return p.plan;

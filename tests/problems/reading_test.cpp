@@ -1,4 +1,4 @@
-#include "plan/plan_receiver.hpp"
+#include "plan/look_ahead.hpp"
 #include "problems/bad_plans.hpp"
 
 #include <runnel/plan.hpp>

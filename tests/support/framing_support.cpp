@@ -80,6 +80,11 @@ Deck& PlanBuilder::deck(const std::string& id, Ring outline) {
     return floor().decks.back();
 }
 
+std::string numbered(std::string name, int number) {
+    name += std::to_string(number);
+    return name;
+}
+
 Ring rectangle(double x0, double y0, double x1, double y1) {
     return {{x0, y0}, {x1, y0}, {x1, y1}, {x0, y1}};
 }

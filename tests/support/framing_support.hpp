@@ -27,6 +27,8 @@ public:
     runnel::Plan plan;
 };
 
+/// "J.", 3 -> "J.3".
+[[nodiscard]] std::string numbered(std::string name, int number);
 [[nodiscard]] runnel::Ring rectangle(double x0, double y0, double x1, double y1);
 
 /// How a plan is drawn anew; what it means stays the same.

@@ -329,7 +329,7 @@ TEST_CASE("a place is named by the grid lines that cross there") {
 TEST_CASE("problems past the limit of one code are counted") {
     PlanBuilder p;
     for (int i = 0; i < 20; ++i) {
-        p.beam("B" + std::to_string(i), {0, 1.0 * i}, {5, 1.0 * i});
+        p.beam(numbered("B", i), {0, 1.0 * i}, {5, 1.0 * i});
     }
     Limits limits;
     limits.problems = 5;

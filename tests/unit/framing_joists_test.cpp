@@ -45,7 +45,7 @@ TEST_CASE("joists stand at multiples of the spacing, with one more at the far ed
     CHECK(joists_of(framing) == Ids{"J.1", "J.2", "J.3", "J.4", "J.5", "J.6"});
     CHECK(codes(framing).empty());
     for (int k = 0; k < 5; ++k) {
-        const FramedMember& joist = member(framing, "J." + std::to_string(k + 1));
+        const FramedMember& joist = member(framing, numbered("J.", k + 1));
         CHECK(joist.from == Point{k * 0.6, 0});
         CHECK(joist.to == Point{k * 0.6, 6});
         CHECK(joist.role == Role::joist);
@@ -108,7 +108,7 @@ TEST_CASE("a joist in a concave outline is in pieces, numbered along its directi
     PlanBuilder p;
     const Ring u{{0, 0}, {4, 0}, {4, 2}, {1, 2}, {1, 4}, {4, 4}, {4, 6}, {0, 6}};
     for (std::size_t i = 0; i < u.size(); ++i) {
-        p.wall("W" + std::to_string(i), u[i], u[(i + 1) % u.size()]);
+        p.wall(numbered("W", i), u[i], u[(i + 1) % u.size()]);
     }
     p.field("J", u, 90, 1).offset = 0.5;
     const Framing framing = frame_plan(p.plan);
@@ -189,8 +189,9 @@ TEST_CASE("a header cuts the joists that it crosses and leaves the trimmers whol
         // A header is a beam on two joists: that is what the warning says.
         CHECK(codes(framing) == Ids(4, "higher-on-lower"));
         const std::vector<std::string> bearings = who_bears_on_whom(plan, framing);
-        for (const std::string line : {"H1 on J.3", "H1 on J.5", "H2 on J.3", "H2 on J.5", "J.4.1 on H1",
-                                 "J.4.3 on H2", "J.4.1 on G1", "J.4.3 on G2", "J.3 on G1", "J.3 on G2"}) {
+        for (const std::string line :
+             {"H1 on J.3", "H1 on J.5", "H2 on J.3", "H2 on J.5", "J.4.1 on H1", "J.4.3 on H2", "J.4.1 on G1",
+              "J.4.3 on G2", "J.3 on G1", "J.3 on G2"}) {
             CAPTURE(line);
             CHECK(std::count(bearings.begin(), bearings.end(), line) == 1);
         }

@@ -57,12 +57,12 @@ TEST_CASE("of ends within snap the girder's stays, then the beam's, then the joi
 TEST_CASE("points are not joined in chains longer than snap") {
     PlanBuilder p;
     for (int i = 0; i < 10; ++i) {
-        p.beam("B" + std::to_string(i), {0.004 * i, 0}, {0.004 * i + 3, 5.0 + i});
+        p.beam(numbered("B", i), {0.004 * i, 0}, {0.004 * i + 3, 5.0 + i});
     }
     const Framing framing = frame_plan(p.plan);
     for (int i = 0; i < 10; ++i) {
         const Point drawn{0.004 * i, 0};
-        const Point at = member(framing, "B" + std::to_string(i)).from;
+        const Point at = member(framing, numbered("B", i)).from;
         CHECK(std::hypot(at.x - drawn.x, at.y - drawn.y) <= 0.005);
         CHECK(at == Point{0.004 * (i - i % 2), 0});
     }

@@ -173,10 +173,9 @@ TEST_CASE("cut puts a hinge at each inner bearing, and hinges go to bearings wit
 TEST_CASE("members that run on over bearings are listed in one note a level") {
     PlanBuilder p;
     for (int i = 0; i < 25; ++i) {
-        const std::string n = std::to_string(i);
         const double y = 2.0 * i;
-        p.column("A" + n, {0, y}).column("B" + n, {4, y}).column("C" + n, {9, y});
-        p.girder("G" + n, {0, y}, {9, y});
+        p.column(numbered("A", i), {0, y}).column(numbered("B", i), {4, y}).column(numbered("C", i), {9, y});
+        p.girder(numbered("G", i), {0, y}, {9, y});
     }
     const Framing framing = frame_plan(p.plan);
     const Problem* note = find_problem(framing, ProblemCode::continuous_as_drawn);
