@@ -280,7 +280,8 @@ private:
         } else if (angle <= -quarter - 1e-6) {
             angle += 2 * quarter;
         }
-        const Point middle = between(a, b, 0.5);
+        constexpr double clear_of_columns = 0.42; // which stand at halves and thirds
+        const Point middle = between(a, b, clear_of_columns);
         label({middle.x + lift * std::sin(angle), middle.y - lift * std::cos(angle)}, angle, id, "label",
               size);
     }
