@@ -314,18 +314,9 @@ private:
 
     /// Column, wall, member of the higher role; of equal ones by id, so that no order of lists matters.
     [[nodiscard]] bool goes_before(Carrier a, Carrier b) const {
-        const int rank_a = rank_of(a);
-        const int rank_b = rank_of(b);
+        const int rank_a = draft_.order_of_choice(a);
+        const int rank_b = draft_.order_of_choice(b);
         return rank_a != rank_b ? rank_a > rank_b : label_of(draft_, a) < label_of(draft_, b);
-    }
-
-    [[nodiscard]] int rank_of(Carrier carrier) const {
-        constexpr int wall = 10;
-        constexpr int column = 11;
-        return carrier.kind == CarrierKind::column ? column
-               : carrier.kind == CarrierKind::wall
-                   ? wall
-                   : static_cast<int>(draft_.level.members[carrier.index].role);
     }
 
     [[nodiscard]] Bearing bearing_of(std::uint32_t m, const Found& found) const {

@@ -25,7 +25,7 @@ Surroundings::Surroundings(const std::vector<Axis>& axes, Point along, double re
             elements_.push_back(i);
         }
     }
-    index_ = BoxIndex(boxes);
+    index_ = BoxTree(boxes);
 }
 
 Point Surroundings::turned(Point p) const {
@@ -34,14 +34,14 @@ Point Surroundings::turned(Point p) const {
 }
 
 Box Surroundings::box_around(Point a, Point b, double reach) const {
-    return Box::around(turned(a), turned(b), reach);
+    return box_of(turned(a), turned(b)).grown(reach);
 }
 
 /// Boxes of all elements together stay in proportion to the elements: the pieces of one are no more than its
 /// length in typical lengths, and one.
 std::size_t Surroundings::pieces_of(Point a, Point b) const {
     const Box box = box_around(a, b, 0);
-    const double thickness = std::min(box.x_max - box.x_min, box.y_max - box.y_min);
+    const double thickness = std::min(box.high.x - box.low.x, box.high.y - box.low.y);
     return typical_ > 0 ? static_cast<std::size_t>(thickness / typical_) + 1 : 1;
 }
 
@@ -51,7 +51,7 @@ void Surroundings::find(Point a, Point b, double reach, std::vector<std::uint32_
     for (std::size_t k = 0; k < pieces; ++k) {
         const double from = static_cast<double>(k) / static_cast<double>(pieces);
         const double to = static_cast<double>(k + 1) / static_cast<double>(pieces);
-        index_.find(box_around(between(a, b, from), between(a, b, to), reach), found);
+        index_.find_more(box_around(between(a, b, from), between(a, b, to), reach), found);
     }
     for (auto box = found.begin() + before; box != found.end(); ++box) {
         *box = elements_[*box];

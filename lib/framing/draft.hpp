@@ -1,9 +1,9 @@
 #pragma once
 
-#include "framing/box_index.hpp"
 #include "framing/expand.hpp"
 #include "framing/problem_list.hpp"
 #include "framing/touch.hpp"
+#include "geometry/box_tree.hpp"
 
 #include <runnel/framing.hpp>
 
@@ -59,7 +59,7 @@ private:
     Point along_{1, 0};
     double typical_ = 0;                  ///< length of an element, m
     std::vector<std::uint32_t> elements_; ///< by box
-    BoxIndex index_;
+    BoxTree index_;
 };
 
 /// What all phases of a level work on.
@@ -106,6 +106,22 @@ struct LevelDraft {
     [[nodiscard]] Axis axis_of(std::uint32_t member) const {
         const FramedMember& m = level.members[member];
         return {m.from, m.to, m.length};
+    }
+
+    /// Where a carrier stands in the order of choice at one place, the higher the better: column, wall,
+    /// member of the higher role.
+    [[nodiscard]] int order_of_choice(Carrier carrier) const {
+        constexpr int wall = 10;
+        constexpr int column = 11;
+        switch (carrier.kind) {
+        case CarrierKind::column:
+            return column;
+        case CarrierKind::wall:
+            return wall;
+        case CarrierKind::member:
+            return static_cast<int>(level.members[carrier.index].role);
+        }
+        return 0;
     }
 
     /// The members of a line that may come within `distance` of the axis from a to b, as first and one past

@@ -24,16 +24,6 @@ public:
     }
 
 private:
-    /// Where a carrier stands in the order of choice; the higher the better.
-    [[nodiscard]] int choice(Carrier carrier) const {
-        constexpr int wall = 10;
-        constexpr int column = 11;
-        return carrier.kind == CarrierKind::column ? column
-               : carrier.kind == CarrierKind::wall
-                   ? wall
-                   : static_cast<int>(draft_.level.members[carrier.index].role);
-    }
-
     [[nodiscard]] Axis axis_of(Carrier carrier) const {
         switch (carrier.kind) {
         case CarrierKind::member:
@@ -72,7 +62,8 @@ private:
         NearPoint best_near;
         for (const Carrier carrier : carriers_near(at, at, 2 * draft_.reach())) {
             const NearPoint near = nearest_on(axis_of(carrier), at);
-            if (near.distance <= draft_.reach() && (best.index == none || choice(carrier) > choice(best))) {
+            if (near.distance <= draft_.reach() &&
+                (best.index == none || draft_.order_of_choice(carrier) > draft_.order_of_choice(best))) {
                 best = carrier;
                 best_near = near;
             }
@@ -134,7 +125,8 @@ private:
             Carrier best;
             for (const Under& candidate : under) {
                 if (candidate.stretch.from <= middle && middle <= candidate.stretch.to &&
-                    (best.index == none || choice(candidate.carrier) > choice(best))) {
+                    (best.index == none ||
+                     draft_.order_of_choice(candidate.carrier) > draft_.order_of_choice(best))) {
                     best = candidate.carrier;
                 }
             }

@@ -63,23 +63,15 @@ private:
     void index_decks() {
         std::vector<Box> boxes;
         for (const FramedDeck& deck : draft_.level.decks) {
-            Box box;
-            for (std::size_t i = 0; i < deck.outline.size(); ++i) {
-                const Point p = deck.outline[i];
-                const Box point = Box::around(p, p, draft_.reach());
-                box = i == 0 ? point
-                             : Box{std::min(box.x_min, point.x_min), std::min(box.y_min, point.y_min),
-                                   std::max(box.x_max, point.x_max), std::max(box.y_max, point.y_max)};
-            }
-            boxes.push_back(box);
+            boxes.push_back(deck.outline.empty() ? Box{} : box_of(deck.outline).grown(draft_.reach()));
         }
-        decks_ = BoxIndex(boxes);
+        decks_ = BoxTree(boxes);
     }
 
     /// Columns carry decks only where the deck is shared to columns; walls carry any deck.
     bool deck_bears_on(const Axis& axis, bool column) {
         std::vector<std::uint32_t> found;
-        decks_.find(Box::around(axis.from, axis.to, draft_.reach()), found);
+        decks_.find(box_of(axis.from, axis.to).grown(draft_.reach()), found);
         return std::any_of(found.begin(), found.end(), [&](std::uint32_t i) {
             const FramedDeck& deck = draft_.level.decks[i];
             if (column && deck.span != SpanKind::columns) {
@@ -168,7 +160,7 @@ private:
     const NearMisses& reported_;
     double limit_;
     std::vector<bool> column_carries_, wall_carries_;
-    BoxIndex decks_;
+    BoxTree decks_;
 };
 
 } // namespace

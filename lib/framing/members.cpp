@@ -65,17 +65,12 @@ public:
                 if (opening.empty()) {
                     continue;
                 }
-                Box box = Box::around(opening.front(), opening.front(), 0);
-                for (const Point p : opening) {
-                    box = {std::min(box.x_min, p.x), std::min(box.y_min, p.y), std::max(box.x_max, p.x),
-                           std::max(box.y_max, p.y)};
-                }
-                boxes.push_back(box);
+                boxes.push_back(box_of(opening));
                 openings_.push_back(&opening);
             }
         }
         if (!boxes.empty()) {
-            opening_index_ = BoxIndex(boxes);
+            opening_index_ = BoxTree(boxes);
         }
     }
 
@@ -181,7 +176,7 @@ private:
         }
         found_.clear();
         const Point middle = between(piece.from, piece.to, 0.5);
-        opening_index_.find(Box::around(middle, middle, 0), found_);
+        opening_index_.find(box_of(middle, middle), found_);
         return std::any_of(found_.begin(), found_.end(), [&](std::uint32_t i) {
             return lies_inside(piece, *openings_[i], draft_.reach());
         });
@@ -189,7 +184,7 @@ private:
 
     LevelDraft& draft_;
     std::vector<const Ring*> openings_;
-    BoxIndex opening_index_;
+    BoxTree opening_index_;
     std::vector<Cut> cuts_;
     std::vector<Stretch> along_;
     std::vector<std::uint32_t> found_;

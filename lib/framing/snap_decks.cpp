@@ -13,9 +13,9 @@ public:
         std::vector<Box> boxes;
         boxes.reserve(drawn.size());
         for (const Point p : drawn) {
-            boxes.push_back(Box::around(p, p, reach));
+            boxes.push_back(box_of(p, p).grown(reach));
         }
-        index_ = BoxIndex(boxes);
+        index_ = BoxTree(boxes);
     }
 
     void settle(Point p) { settled_[count_++] = p; }
@@ -23,7 +23,7 @@ public:
     [[nodiscard]] std::optional<Point> first_near(Point p) {
         found_.clear();
         // A settled vertex lies within reach of where it was drawn, which its box allows for.
-        index_.find(Box::around(p, p, reach_), found_);
+        index_.find(box_of(p, p).grown(reach_), found_);
         for (const std::uint32_t i : found_) {
             if (i < count_ && distance(settled_[i], p) <= reach_) {
                 return settled_[i];
@@ -34,7 +34,7 @@ public:
 
 private:
     double reach_;
-    BoxIndex index_;
+    BoxTree index_;
     std::vector<Point> settled_;
     std::size_t count_ = 0;
     std::vector<std::uint32_t> found_;
@@ -65,14 +65,14 @@ private:
         RingEdges(const Ring& ring_, double reach) : ring(ring_) {
             std::vector<Box> boxes;
             for (std::size_t i = 0; i < ring.size(); ++i) {
-                boxes.push_back(Box::around(ring[i], ring[(i + 1) % ring.size()], reach));
+                boxes.push_back(box_of(ring[i], ring[(i + 1) % ring.size()]).grown(reach));
             }
-            index = BoxIndex(boxes);
+            index = BoxTree(boxes);
         }
         [[nodiscard]] Axis edge(std::uint32_t i) const { return {ring[i], ring[(i + 1) % ring.size()]}; }
 
         const Ring& ring;
-        BoxIndex index;
+        BoxTree index;
     };
 
     static std::vector<Point> all_vertices(const LevelDraft& draft) {
@@ -179,7 +179,7 @@ private:
 
     [[nodiscard]] std::optional<Point> on_edges(Point drawn, const RingEdges& edges) {
         std::vector<std::uint32_t> found;
-        edges.index.find(Box::around(drawn, drawn, 0), found);
+        edges.index.find(box_of(drawn, drawn), found);
         std::optional<NearPoint> best;
         for (const std::uint32_t i : found) {
             const NearPoint near = nearest_on(edges.edge(i), drawn);

@@ -31,16 +31,20 @@ BoxTree::BoxTree(std::span<const Box> boxes) : tree_(std::make_unique<Tree>()) {
     tree_->entries = bgi::rtree<Entry, bgi::rstar<16>>(entries);
 }
 
+BoxTree::BoxTree() = default;
 BoxTree::~BoxTree() = default;
 BoxTree::BoxTree(BoxTree&&) noexcept = default;
 BoxTree& BoxTree::operator=(BoxTree&&) noexcept = default;
 
-void BoxTree::find(const Box& box, std::vector<std::uint32_t>& found) const {
-    found.clear();
+void BoxTree::find_more(const Box& box, std::vector<std::uint32_t>& found) const {
+    if (!tree_) {
+        return;
+    }
+    const auto first = static_cast<std::ptrdiff_t>(found.size());
     tree_->entries.query(bgi::intersects(BoostBox(box.low, box.high)),
                          boost::make_function_output_iterator(
                              [&found](const Entry& entry) { found.push_back(entry.second); }));
-    std::sort(found.begin(), found.end());
+    std::sort(found.begin() + first, found.end());
 }
 
 RUNNEL_NAMESPACE_END

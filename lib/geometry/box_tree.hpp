@@ -46,13 +46,19 @@ inline Box box_of(Point a, Point b) {
 /// A packed R-tree of boxes that is built once (range constructor) and asked often.
 class BoxTree {
 public:
+    BoxTree(); ///< of no boxes
     explicit BoxTree(std::span<const Box> boxes);
     ~BoxTree();
     BoxTree(BoxTree&&) noexcept;
     BoxTree& operator=(BoxTree&&) noexcept;
 
     /// Indices of the boxes that meet `box` (closed), rising. `found` is cleared first.
-    void find(const Box& box, std::vector<std::uint32_t>& found) const;
+    void find(const Box& box, std::vector<std::uint32_t>& found) const {
+        found.clear();
+        find_more(box, found);
+    }
+    /// The same, appended to what `found` holds; the new ones are rising.
+    void find_more(const Box& box, std::vector<std::uint32_t>& found) const;
 
 private:
     struct Tree;

@@ -1,4 +1,5 @@
 #include "support/building_support.hpp"
+#include "support/problem_support.hpp"
 
 #include <runnel/takedown.hpp>
 
@@ -14,31 +15,21 @@ using support::spoil;
 
 namespace {
 
-std::string texts_of(std::span<const Problem> problems) {
-    std::string text;
-    for (const Problem& problem : problems) {
-        if (problem.severity == Severity::error) {
-            text += std::string(kind_of(problem.code).name) + ": " + problem.message + "\n";
-        }
-    }
-    return text;
-}
-
 /// Checks and takes down as the command line does; true when it came to an end without errors.
 bool survives(const Plan& plan, std::string& errors) {
     const std::vector<Problem> problems = check_plan(plan);
     if (has_errors(problems)) {
-        errors = texts_of(problems);
+        errors = support::texts_of_errors(problems);
         return false;
     }
     const Takedown takedown = take_down(plan);
-    errors = texts_of(takedown.problems);
+    errors = support::texts_of_errors(takedown.problems);
     CHECK(takedown.complete == errors.empty());
     if (!takedown.complete) {
         return false;
     }
     const std::vector<Problem> broken = check_balance(takedown);
-    CHECK_MESSAGE(broken.empty(), texts_of(broken));
+    CHECK_MESSAGE(broken.empty(), support::texts_of_errors(broken));
     return true;
 }
 

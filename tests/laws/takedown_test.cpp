@@ -1,4 +1,5 @@
 #include "support/building_support.hpp"
+#include "support/problem_support.hpp"
 
 #include <runnel/takedown.hpp>
 
@@ -11,16 +12,6 @@ using namespace runnel;
 using support::Placing;
 
 namespace {
-
-std::string texts_of(std::span<const Problem> problems) {
-    std::string text;
-    for (const Problem& problem : problems) {
-        if (problem.severity == Severity::error) {
-            text += std::string(kind_of(problem.code).name) + ": " + problem.message + "\n";
-        }
-    }
-    return text;
-}
 
 /// Foundation reactions by id and case.
 std::map<std::string, std::vector<double>> foundations_of(const Takedown& takedown) {
@@ -36,6 +27,7 @@ std::map<std::string, std::vector<double>> foundations_of(const Takedown& takedo
 }
 
 struct Closing {
+    double cover = 0;
     double force = 0;
     double moment = 0;
 };
@@ -50,6 +42,26 @@ Closing closing_of(const Takedown& takedown) {
             worst.force = std::max(worst.force, row.difference / magnitude);
             worst.moment = std::max({worst.moment, std::abs(row.moment_difference.x) / (magnitude * size),
                                      std::abs(row.moment_difference.y) / (magnitude * size)});
+        }
+    }
+    return worst;
+}
+
+/// Largest relative error of cover over all decks; owners are checked at sampled points on the way, which
+/// also shows that no two cells share area.
+double check_split(const Takedown& takedown, std::uint32_t samples, std::uint64_t seed) {
+    double worst = 0;
+    for (std::uint32_t l = 0; l < takedown.levels.size(); ++l) {
+        const Sharing& sharing = takedown.levels[l].sharing;
+        CHECK(check_cover(takedown.framing, l, sharing).empty());
+        CHECK(check_owners(takedown.plan, takedown.framing, l, sharing, samples, seed).empty());
+        std::vector<double> area(sharing.deck_area.size(), 0.0);
+        for (const Cell& cell : sharing.cells) {
+            area[cell.deck] +=
+                (cell.to - cell.from) * (cell.high.start - cell.low.start + cell.high.end - cell.low.end) / 2;
+        }
+        for (std::size_t d = 0; d < area.size(); ++d) {
+            worst = std::max(worst, std::abs(area[d] - sharing.deck_area[d]) / sharing.deck_area[d]);
         }
     }
     return worst;
@@ -70,7 +82,8 @@ double largest_difference(const Takedown& a, const Takedown& b) {
 
 } // namespace
 
-TEST_CASE("random buildings: balance closes, and turning, moving or renumbering changes no foundation load") {
+TEST_CASE("random buildings: decks are covered, balance closes, and turning, moving or renumbering changes "
+          "no foundation load") {
     const std::uint64_t seed = support::seed_of_run(41);
     MESSAGE("seed " << seed);
     Closing near;
@@ -83,8 +96,9 @@ TEST_CASE("random buildings: balance closes, and turning, moving or renumbering 
         const std::uint64_t own = seed + static_cast<std::uint64_t>(i);
         CAPTURE(own);
         const Takedown plain = take_down(support::random_building(own));
-        REQUIRE_MESSAGE(plain.complete, texts_of(plain.problems));
+        REQUIRE_MESSAGE(plain.complete, support::texts_of_errors(plain.problems));
         CHECK(check_balance(plain).empty());
+        near.cover = std::max(near.cover, check_split(plain, 20, own));
         const Closing closing = closing_of(plain);
         near.force = std::max(near.force, closing.force);
         near.moment = std::max(near.moment, closing.moment);
@@ -95,8 +109,9 @@ TEST_CASE("random buildings: balance closes, and turning, moving or renumbering 
             random.between(-89, 89); // past a quarter turn joist fields count from their other side
         away.shift = {random.between(-1, 1) * 1e5, random.between(-1, 1) * 1e5};
         const Takedown moved = take_down(support::random_building(own, away));
-        REQUIRE_MESSAGE(moved.complete, texts_of(moved.problems));
+        REQUIRE_MESSAGE(moved.complete, support::texts_of_errors(moved.problems));
         CHECK(check_balance(moved).empty());
+        far.cover = std::max(far.cover, check_split(moved, 20, own));
         const Closing moved_closing = closing_of(moved);
         far.force = std::max(far.force, moved_closing.force);
         far.moment = std::max(far.moment, moved_closing.moment);
@@ -105,17 +120,19 @@ TEST_CASE("random buildings: balance closes, and turning, moving or renumbering 
         Placing reversed;
         reversed.reversed = true;
         const Takedown back = take_down(support::random_building(own, reversed));
-        REQUIRE_MESSAGE(back.complete, texts_of(back.problems));
+        REQUIRE_MESSAGE(back.complete, support::texts_of_errors(back.problems));
         order = std::max(order, largest_difference(plain, back));
         for (const Balance& row : plain.balance) {
             scale = std::max(scale, row.applied.magnitude);
         }
     }
-    MESSAGE("closing error over " << plans << " plans: force " << near.force << ", moment " << near.moment
-                                  << "; turned and 100 km away: force " << far.force << ", moment "
-                                  << far.moment << "; foundation loads differ by " << motion
-                                  << " kN turned and moved, " << order << " kN renumbered, of up to " << scale
-                                  << " kN");
+    MESSAGE("closing error over " << plans << " plans: area " << near.cover << ", force " << near.force
+                                  << ", moment " << near.moment << "; turned and 100 km away: area "
+                                  << far.cover << ", force " << far.force << ", moment " << far.moment
+                                  << "; foundation loads differ by " << motion << " kN turned and moved, "
+                                  << order << " kN renumbered, of up to " << scale << " kN");
+    CHECK(near.cover <= 1e-12);
+    CHECK(far.cover <= 1e-12);
     CHECK(near.force <= 1e-12);
     CHECK(near.moment <= 1e-12);
     CHECK(far.force <= 1e-11);

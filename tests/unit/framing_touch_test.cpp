@@ -88,15 +88,3 @@ TEST_CASE("a piece of joist is inside an opening only where all of it is") {
     CHECK_FALSE(lies_inside({{1, -0.5}, {1, 5}}, l, reach)); // sticks out
     CHECK_FALSE(lies_inside({{7, 0}, {7, 6}}, l, reach));
 }
-
-TEST_CASE("an area with an opening in convex pieces keeps its area") {
-    const std::vector<Ring> rings{rectangle(0, 0, 9, 6), {{3, 2}, {5, 1.5}, {4.5, 4}, {2, 5}}};
-    const ConvexPieces pieces(rings, 0, 6);
-    double area = 0;
-    for (const Ring& piece : pieces.pieces()) {
-        area += signed_area(piece);
-    }
-    CHECK(area == doctest::Approx(54 - std::abs(signed_area(rings[1]))));
-    CHECK(signed_area(clip_convex(rectangle(0, 0, 4, 4), rectangle(3, 3, 9, 9))) == doctest::Approx(1));
-    CHECK(clip_convex(rectangle(0, 0, 1, 1), rectangle(3, 3, 9, 9)).size() < 3);
-}
