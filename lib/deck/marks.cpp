@@ -144,7 +144,7 @@ private:
     }
 
     std::vector<DeckEdge> edges_;
-    BoxTree tree_;
+    BoxFinder tree_;
     Tolerance tolerance_;
     std::vector<std::uint32_t> near_, beside_;
     std::vector<CarrierMark> stretches_; ///< of one carrier along edges

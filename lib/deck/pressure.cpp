@@ -132,13 +132,11 @@ DeckPressure::DeckPressure(const Plan& plan, const FramedLevel& level, std::uint
         }
         if (!zone.everywhere) {
             zone.pieces = convex_zone(to_strip(axes, load.outline), noise);
+            std::vector<Box> boxes;
             for (const Convex& piece : zone.pieces) {
-                zone.boxes.push_back(box_of(piece));
+                boxes.push_back(box_of(piece));
             }
-            constexpr std::size_t worth_a_tree = 16;
-            if (zone.pieces.size() > worth_a_tree) {
-                zone.tree.emplace(zone.boxes);
-            }
+            zone.finder = BoxFinder(std::move(boxes));
         }
         zones.push_back(std::move(zone));
     }
@@ -158,19 +156,6 @@ DeckPressure::DeckPressure(const Plan& plan, const FramedLevel& level, std::uint
     }
 }
 
-void DeckPressure::find_pieces(const Zone& zone, const Box& box, std::vector<std::uint32_t>& found) const {
-    if (zone.tree) {
-        zone.tree->find(box, found);
-        return;
-    }
-    found.clear();
-    for (std::uint32_t i = 0; i < zone.boxes.size(); ++i) {
-        if (zone.boxes[i].meets(box)) {
-            found.push_back(i);
-        }
-    }
-}
-
 void DeckPressure::carve_out(const Zone& by, std::vector<Convex>& parts) const {
     if (by.everywhere) {
         parts.clear();
@@ -179,7 +164,7 @@ void DeckPressure::carve_out(const Zone& by, std::vector<Convex>& parts) const {
     std::vector<std::uint32_t> found;
     std::vector<Convex> kept;
     for (Convex& part : parts) {
-        find_pieces(by, box_of(part), found);
+        by.finder.find(box_of(part), found);
         std::vector<Convex> rest;
         rest.push_back(std::move(part));
         for (const std::uint32_t i : found) {
@@ -206,7 +191,7 @@ void DeckPressure::zones_over(const Convex& area, std::vector<Piece>& pieces) co
         if (zone.everywhere) {
             parts.push_back(area);
         } else {
-            find_pieces(zone, box, found);
+            zone.finder.find(box, found);
             for (const std::uint32_t i : found) {
                 Convex inside = clipped(area, zone.pieces[i], noise_);
                 if (!inside.empty()) {

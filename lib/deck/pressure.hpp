@@ -6,7 +6,6 @@
 #include <runnel/deck.hpp>
 
 #include <cstdint>
-#include <optional>
 #include <span>
 #include <vector>
 
@@ -48,13 +47,11 @@ private:
         std::uint32_t load_case = 0;
         double q = 0;
         bool everywhere = false;
-        std::vector<Convex> pieces; ///< where not everywhere
-        std::vector<Box> boxes;
-        std::optional<BoxTree> tree;            ///< where there are many pieces
+        std::vector<Convex> pieces;             ///< where not everywhere
+        BoxFinder finder;                       ///< of the pieces
         std::vector<std::uint32_t> replaced_by; ///< later zones of the same case that replace
     };
 
-    void find_pieces(const Zone& zone, const Box& box, std::vector<std::uint32_t>& found) const;
     void carve_out(const Zone& by, std::vector<Convex>& parts) const;
 
     double noise_ = 0;

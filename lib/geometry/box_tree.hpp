@@ -4,7 +4,9 @@
 
 #include <cstdint>
 #include <memory>
+#include <optional>
 #include <span>
+#include <utility>
 #include <vector>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -55,6 +57,35 @@ public:
 private:
     struct Tree;
     std::unique_ptr<Tree> tree_;
+};
+
+/// The same for a set that is mostly small: few boxes are gone through one by one, which beats any tree.
+class BoxFinder {
+public:
+    BoxFinder() = default;
+    explicit BoxFinder(std::vector<Box> boxes) : boxes_(std::move(boxes)) {
+        constexpr std::size_t worth_a_tree = 24;
+        if (boxes_.size() > worth_a_tree) {
+            tree_.emplace(boxes_);
+        }
+    }
+
+    void find(const Box& box, std::vector<std::uint32_t>& found) const {
+        if (tree_) {
+            tree_->find(box, found);
+            return;
+        }
+        found.clear();
+        for (std::uint32_t i = 0; i < boxes_.size(); ++i) {
+            if (boxes_[i].meets(box)) {
+                found.push_back(i);
+            }
+        }
+    }
+
+private:
+    std::vector<Box> boxes_;
+    std::optional<BoxTree> tree_;
 };
 
 RUNNEL_NAMESPACE_END

@@ -16,6 +16,10 @@ bool is_space(char c) {
     return c == ' ' || c == '\t' || c == '\n' || c == '\r';
 }
 
+bool is_letter(char c) {
+    return (c >= 'a' && c <= 'z') || (c >= 'A' && c <= 'Z');
+}
+
 /// The parser copies its iterators, so what they have passed is counted outside of them.
 struct Cursor {
     const char* at;
@@ -145,6 +149,7 @@ private:
     [[nodiscard]] std::size_t fault_start() const;
     [[nodiscard]] std::size_t fault_in_text(std::size_t at) const;
     void describe(std::size_t at);
+    [[nodiscard]] std::string_view hint_at(std::size_t at) const;
 
     std::string_view text_;
     std::size_t nesting_;
@@ -199,38 +204,50 @@ std::string shown(char c) {
 }
 
 void SaxHandler::describe(std::size_t at) {
-    const std::string_view rest = text_.substr(at);
-    if (rest.empty()) {
-        end.message = text_.empty() ? "The text is empty." : "The text ends in the middle of a value.";
-        end.hint = depth_ > 0 ? std::to_string(depth_) + (depth_ == 1 ? " bracket is" : " brackets are") +
-                                    " still open."
-                              : std::string{};
+    if (at < text_.size()) {
+        end.message = "The text is not JSON: " + shown(text_[at]) + " cannot stand here; reading ends.";
+        end.hint = hint_at(at);
         return;
     }
-    end.message = "The text is not JSON: " + shown(rest.front()) + " cannot stand here; reading ends.";
+    end.message = text_.empty() ? "The text is empty." : "The text ends in the middle of a value.";
+    if (depth_ > 0) {
+        end.hint = std::to_string(depth_) + (depth_ == 1 ? " bracket is" : " brackets are") + " still open.";
+    }
+}
+
+/// What is likely to have been meant by a byte that cannot stand where it does.
+std::string_view SaxHandler::hint_at(std::size_t at) const {
+    const std::string_view rest = text_.substr(at);
+    const auto begins = [&](std::string_view word) { return rest.substr(0, word.size()) == word; };
+    const char c = rest.front();
     std::size_t before = at;
     while (before > 0 && is_space(text_[before - 1])) {
         --before;
     }
-    const bool after_comma = before > 0 && text_[before - 1] == ',';
-    const char c = rest.front();
-    if (after_comma && (c == ']' || c == '}')) {
-        end.hint = "Leave out the comma before it.";
-    } else if (c == '\'') {
-        end.hint = "Texts stand in double quotes.";
-    } else if (c == '/' || c == '#') {
-        end.hint = "JSON has no comments.";
-    } else if (c == '+' || c == '.') {
-        end.hint = "A number begins with a digit or a minus sign.";
-    } else if (rest.substr(0, 3) == "NaN" || rest.substr(0, 3) == "nan" || rest.substr(0, 3) == "Inf" ||
-               rest.substr(0, 4) == "-Inf" || rest.substr(0, 3) == "inf") {
-        end.hint = "Infinities and not-a-number cannot be written.";
-    } else if (depth_ > 0 && !after_comma && before == passed_ && !after_key_ &&
-               (c == '"' || c == '{' || c == '[')) {
-        end.hint = "Is a comma missing before it?";
-    } else if (depth_ > 0 && in_object_.back() && !after_key_) {
-        end.hint = "Keys stand in double quotes.";
+    const bool no_separator = before == passed_ && depth_ > 0 && !after_open_;
+    if (before > 0 && text_[before - 1] == ',' && (c == ']' || c == '}')) {
+        return "Leave out the comma before it.";
     }
+    if (c == '\'') {
+        return "Texts stand in double quotes.";
+    }
+    if (c == '/' || c == '#') {
+        return "JSON has no comments.";
+    }
+    if (c == '+' || c == '.') {
+        return "A number begins with a digit or a minus sign.";
+    }
+    if (begins("NaN") || begins("nan") || begins("Inf") || begins("-Inf") || begins("inf")) {
+        return "Infinities and not-a-number cannot be written.";
+    }
+    if (no_separator && after_key_) {
+        return "Is a colon missing before it?";
+    }
+    if (no_separator && (c == '"' || c == '{' || c == '[')) {
+        return "Is a comma missing before it?";
+    }
+    const bool wants_key = depth_ > 0 && in_object_.back() && !after_key_;
+    return wants_key && (is_letter(c) || c == '_') ? "Keys stand in double quotes." : "";
 }
 
 bool SaxHandler::parse_error(std::size_t /*position*/, const std::string& /*token*/,

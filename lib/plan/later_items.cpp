@@ -49,7 +49,7 @@ void each_entry(const JsonValue& value, std::string_view wanted, Take take) {
                                  value.owner_id,
                                  value.owner_place};
             here.report(ProblemCode::duplicate_key,
-                        "`" + shown(tree.text(i)) + "` stands more than once in " + value.name() + '.');
+                        '`' + shown(tree.text(i)) + "` stands more than once in " + value.name() + '.');
         }
     }
 }

@@ -281,7 +281,7 @@ std::optional<JsonValue> ObjectReader::value(std::string_view key, Need need) {
     }
     if (!result && need == Need::required && self_.context->log.wants(ProblemCode::missing_key)) {
         self_.report(ProblemCode::missing_key,
-                     "`" + std::string(key) + "` of " + self_.owner() + " is missing.");
+                     '`' + std::string(key) + "` of " + self_.owner() + " is missing.");
     }
     return result;
 }

@@ -236,7 +236,7 @@ void PlanReceiver::begin_level(std::uint32_t at) {
     level_keys_ = 0;
     level_at_ = at;
     level_ = Level{};
-    level_.id = unread::id;
+    level_.id.append(unread::id);
     level_.elevation = unread::number;
     const LineCounter::Place place = context_.lines.place_of(at);
     level_.origin = {place.line, place.column, Origin::nowhere, level_count_ - 1};

@@ -149,6 +149,25 @@ TEST_CASE("an unknown key names the nearest known one, or what is known") {
     CHECK(hint("colour").substr(0, 9) == "Known are");
 }
 
+TEST_CASE("what is not JSON is told with what was likely meant") {
+    const auto hint = [](std::string_view text) {
+        const PlanReading reading = read_plan(text);
+        REQUIRE(reading.problems.size() == 1);
+        CHECK(reading.problems[0].code == ProblemCode::not_json);
+        return reading.problems[0].hint;
+    };
+    CHECK(hint("{\"a\" 1}") == "Is a colon missing before it?");
+    CHECK(hint("[1 [2]]") == "Is a comma missing before it?");
+    CHECK(hint("[1, ]") == "Leave out the comma before it.");
+    CHECK(hint("{title: 1}") == "Keys stand in double quotes.");
+    CHECK(hint("['a']") == "Texts stand in double quotes.");
+    CHECK(hint("# a plan") == "JSON has no comments.");
+    CHECK(hint("[.5]") == "A number begins with a digit or a minus sign.");
+    CHECK(hint("[-Infinity]") == "Infinities and not-a-number cannot be written.");
+    CHECK(hint("[[1, 2") == "2 brackets are still open.");
+    CHECK(hint("").empty());
+}
+
 TEST_CASE("many problems are found in one pass, in the order of the text") {
     const PlanReading reading = read_plan(R"({"runnel": "plan/1", "units": {"length": "m", "force": "kN"},
 "cases": [{"id": "dead", "kind": "ded"}],

@@ -342,6 +342,94 @@ private:
 
 } // namespace
 
+namespace {
+
+template <class T>
+void drop_one(std::vector<T>& list, Random& random) {
+    if (!list.empty()) {
+        list.erase(list.begin() + random.whole(0, static_cast<int>(list.size()) - 1));
+    }
+}
+
+} // namespace
+
+void spoil(Plan& plan, Random& random) {
+    Level& level =
+        plan.levels[static_cast<std::size_t>(random.whole(0, static_cast<int>(plan.levels.size()) - 1))];
+    switch (random.whole(0, 11)) {
+    case 0:
+        drop_one(plan.columns, random);
+        break;
+    case 1:
+        drop_one(level.members, random);
+        break;
+    case 2:
+        drop_one(level.decks, random);
+        break;
+    case 3: {
+        const double size = random.chance(0.5) ? 0.02 : 2;
+        for_each_point(plan, [&](Point& p) {
+            if (random.chance(0.05)) {
+                p = {p.x + random.between(-size, size), p.y + random.between(-size, size)};
+            }
+        });
+        break;
+    }
+    case 4:
+        if (!level.members.empty()) { // drawn twice
+            level.members.push_back(level.members[static_cast<std::size_t>(
+                random.whole(0, static_cast<int>(level.members.size()) - 1))]);
+            level.members.back().id += "twice";
+        }
+        break;
+    case 5:
+        for (Member& member : level.members) {
+            member.role = static_cast<Role>(random.whole(0, 2));
+        }
+        break;
+    case 6:
+        for (Member& member : level.members) {
+            if (random.chance(0.2)) {
+                member.bears_on.push_back(level
+                                              .members[static_cast<std::size_t>(random.whole(
+                                                  0, static_cast<int>(level.members.size()) - 1))]
+                                              .id);
+            }
+        }
+        break;
+    case 7:
+        for (Deck& deck : level.decks) {
+            deck.direction = random.between(-720, 720);
+        }
+        break;
+    case 8:
+        for (Member& member : level.members) {
+            member.cut = random.chance(0.3);
+            member.fixed_from = random.chance(0.1);
+            if (random.chance(0.2)) {
+                member.hinges.push_back(random.between(0.1, 2.9));
+            }
+        }
+        break;
+    case 9:
+        plan.settings.snap = random.chance(0.5) ? 1e-6 : 0.3;
+        break;
+    case 10:
+        for (Deck& deck : level.decks) {
+            if (!deck.outline.empty() && random.chance(0.3)) {
+                deck.outline.insert(deck.outline.begin() + 1, deck.outline.front());
+            }
+        }
+        break;
+    default:
+        for (AreaLoad& load : level.area_loads) {
+            load.outline =
+                random.star({random.between(0, 10), random.between(0, 10)}, 0.5, 8, random.whole(3, 30));
+            load.replaces = random.chance(0.5);
+        }
+    }
+}
+
 Plan random_building(std::uint64_t seed, const Placing& placing) {
     return Builder(seed, placing).build();
 }

@@ -19,4 +19,31 @@ struct Placing {
 /// building, however it is placed.
 [[nodiscard]] runnel::Plan random_building(std::uint64_t seed, const Placing& placing = {});
 
+/// Calls f with every point of columns, members and decks, to change it.
+template <class F>
+void for_each_point(runnel::Plan& plan, F f) {
+    for (runnel::Column& column : plan.columns) {
+        f(column.at);
+    }
+    for (runnel::Level& level : plan.levels) {
+        for (runnel::Member& member : level.members) {
+            f(member.from);
+            f(member.to);
+        }
+        for (runnel::Deck& deck : level.decks) {
+            for (runnel::Point& p : deck.outline) {
+                f(p);
+            }
+            for (runnel::Ring& opening : deck.openings) {
+                for (runnel::Point& p : opening) {
+                    f(p);
+                }
+            }
+        }
+    }
+}
+
+/// Does to a plan what a tired hand does: drops, doubles, moves or turns something.
+void spoil(runnel::Plan& plan, Random& random);
+
 } // namespace support
