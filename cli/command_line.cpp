@@ -57,7 +57,7 @@ class CommandLine {
 public:
     CommandLine() : app_("Carries the gravity loads of floors down to the foundations.", "runnel") {
         app_.require_subcommand(1);
-        app_.set_version_flag("--version", "runnel " + std::string(runnel::version()));
+        add_version(app_);
         app_.set_help_flag("--help,-h", "Print this and end");
         app_.footer("Exit status: 0 done, 1 the input has errors or a balance does not close, 2 wrong usage, "
                     "3 a file cannot be read or written.");
@@ -71,7 +71,11 @@ public:
     }
 
     int run(int count, char** arguments) {
-        if (count > 1 && !known(arguments[1])) {
+        if (count < 2) {
+            complain("a command is wanted: " + all_commands() + "; see runnel --help");
+            return wrong_usage;
+        }
+        if (!known(arguments[1])) {
             return unknown_command(arguments[1]);
         }
         try {
@@ -85,7 +89,9 @@ public:
 private:
     void add_check() {
         CLI::App& command = add("check", "Read and check plans; print their problems");
-        command.add_option("PLAN", request_.files, "Plan files; - is standard input")->required();
+        command.add_option("PLAN", request_.files, "Plan files; - is standard input")
+            ->required()
+            ->type_name("");
         add_format(command, {"text", "json"});
         add_common(command);
     }
@@ -97,7 +103,8 @@ private:
         add_plan(command);
         add_format(command, {"text", "json", "csv"});
         command.add_option("--table", words_.table, "Of --format csv: which table (reactions)")
-            ->check(CLI::IsMember(names_in(tables)));
+            ->check(CLI::IsMember(names_in(tables)))
+            ->type_name("TABLE");
         command
             .add_option("-o,--output", request_.folder, "Also write result, tables and drawings into FOLDER")
             ->type_name("FOLDER");
@@ -116,25 +123,35 @@ private:
         CLI::App& command = add("schema", "Print the JSON Schema of a document");
         command.add_option("DOCUMENT", words_.document, "plan, result or frame")
             ->required()
-            ->check(CLI::IsMember(names_in(documents)));
+            ->check(CLI::IsMember(names_in(documents)))
+            ->type_name("");
     }
 
     void add_later(const char* name, const char* what) { add(name, what).allow_extras(); }
 
     CLI::App& add(const char* name, const char* what) {
         CLI::App& command = *app_.add_subcommand(name, what);
-        command.set_version_flag("--version", "runnel " + std::string(runnel::version()));
+        add_version(command);
         names_.push_back(name);
         return command;
     }
 
+    static void add_version(CLI::App& command) {
+        command.set_version_flag("--version", "runnel " + std::string(runnel::version()),
+                                 "Print the version and end");
+    }
+
     void add_plan(CLI::App& command) {
-        command.add_option("PLAN", request_.files, "Plan file; - is standard input")->required()->expected(1);
+        command.add_option("PLAN", request_.files, "Plan file; - is standard input")
+            ->required()
+            ->expected(1)
+            ->type_name("");
     }
 
     void add_format(CLI::App& command, const std::vector<std::string>& formats) {
         command.add_option("--format", request_.format, "Form of the answer (" + formats.front() + ")")
-            ->check(CLI::IsMember(formats));
+            ->check(CLI::IsMember(formats))
+            ->type_name("FORM");
     }
 
     void add_common(CLI::App& command) {
@@ -142,40 +159,52 @@ private:
             .add_option(
                 "--share", words_.share,
                 "Use this instead of the plan's setting and its decks' (lever, continuous: not built yet)")
-            ->check(CLI::IsMember(names_in(shares)));
+            ->check(CLI::IsMember(names_in(shares)))
+            ->type_name("SHARE");
         command.add_option("--units", words_.units, "Units of the output, for example m,kN or ft,kip")
             ->type_name("LENGTH,FORCE")
             ->check(units_are_wrong);
         command
             .add_option("--threads", request_.threads,
                         "For levels side by side; the answer is the same with any number")
-            ->check(CLI::Range(1U, most_threads));
+            ->check(CLI::Range(1U, most_threads))
+            ->type_name("N");
     }
 
     [[nodiscard]] bool known(const std::string& word) const {
-        return word.starts_with('-') || std::find(names_.begin(), names_.end(), word) != names_.end();
+        return word == "-h" || word == "--help" || word == "--version" ||
+               std::find(names_.begin(), names_.end(), word) != names_.end();
     }
 
     [[nodiscard]] int unknown_command(const std::string& word) const {
         const std::string meant = nearest(word, names_);
+        complain(
+            "there is no command \"" + word + "\"" +
+            (meant.empty() ? "; the commands are " + all_commands() : "; did you mean \"" + meant + "\"?"));
+        return wrong_usage;
+    }
+
+    [[nodiscard]] std::string all_commands() const {
         std::string all;
         for (const std::string& name : names_) {
             all += all.empty() ? name : ", " + name;
         }
-        complain("there is no command \"" + word + "\"" +
-                 (meant.empty() ? "; the commands are " + all : "; did you mean \"" + meant + "\"?"));
-        return wrong_usage;
+        return all;
     }
 
     [[nodiscard]] int answer(const CLI::ParseError& error) const {
         std::ostringstream out;
         std::ostringstream problem;
         if (app_.exit(error, out, problem) == 0) {
+            const std::string text = out.str();
             Output output = Output::standard();
-            output.sink()(out.str());
+            output.sink()(text);
+            output.sink()(text.ends_with('\n') ? "" : "\n");
             return output.close() ? done : file_trouble;
         }
-        complain(std::string(error.what()) + meant_option() + "; see runnel --help");
+        const std::vector<CLI::App*> commands = app_.get_subcommands();
+        complain(std::string(error.what()) + meant_option() + "; see runnel " +
+                 (commands.empty() ? "" : commands.front()->get_name() + ' ') + "--help");
         return wrong_usage;
     }
 

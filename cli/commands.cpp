@@ -51,29 +51,24 @@ runnel::ReportOptions report_options(const Request& request, const Input& input)
     return options;
 }
 
-/// The takedown of a plan; one without results where the plan cannot be used.
-runnel::Takedown take_down(const Input& input, const Request& request) {
+/// The takedown of a plan, with what reading it found among its problems; one without results where the plan
+/// cannot be used.
+runnel::Takedown take_down(Input& input, const Request& request) {
     runnel::Takedown takedown;
     if (input.usable()) {
         const Progress progress("taking the loads down");
-        takedown = runnel::take_down(input.reading.plan, takedown_options(request));
+        takedown = runnel::take_down(std::move(input.reading.plan), takedown_options(request));
         runnel::locate_problems(input.text, takedown.problems);
     } else {
-        takedown.plan = input.reading.plan;
+        takedown.plan = std::move(input.reading.plan);
     }
+    const std::vector<runnel::Problem>& read = input.reading.problems;
+    takedown.problems.insert(takedown.problems.begin(), read.begin(), read.end());
     return takedown;
 }
 
-std::vector<runnel::Problem> together(const std::vector<runnel::Problem>& first,
-                                      const std::vector<runnel::Problem>& then) {
-    std::vector<runnel::Problem> all = first;
-    all.insert(all.end(), then.begin(), then.end());
-    return all;
-}
-
-void complain_of(const Input& input, const std::vector<runnel::Problem>& problems) {
-    runnel::write_problems(problems, input.file, input.reading.plan.units, colour_on(stderr),
-                           standard_error());
+void complain_of(const std::string& file, runnel::Units units, const std::vector<runnel::Problem>& problems) {
+    runnel::write_problems(problems, file, units, colour_on(stderr), standard_error());
 }
 
 std::string counted(std::size_t count, const std::string& what) {
@@ -99,51 +94,51 @@ Status worse(Status a, Status b) {
 } // namespace
 
 Status check(const Request& request) {
+    struct Checked {
+        std::string file;
+        runnel::Units units;
+        std::vector<runnel::Problem> problems;
+    };
     Status status = done;
-    std::vector<Input> inputs;
-    std::vector<std::vector<runnel::Problem>> problems;
+    std::vector<Checked> plans;
     for (const std::string& file : request.files) {
         std::optional<Input> input = read_input(file, request);
         if (!input) {
             status = worse(status, file_trouble);
             continue;
         }
-        problems.push_back(together(input->reading.problems, take_down(*input, request).problems));
-        inputs.push_back(std::move(*input));
-        if (runnel::has_errors(problems.back())) {
-            status = worse(status, input_errors);
-        }
+        runnel::Takedown takedown = take_down(*input, request);
+        status = worse(status, runnel::has_errors(takedown.problems) ? input_errors : done);
+        plans.push_back({input->file, takedown.plan.units, std::move(takedown.problems)});
     }
     Output output = Output::standard();
     if (request.format == "json") {
         std::vector<runnel::FileProblems> files;
-        for (std::size_t i = 0; i < inputs.size(); ++i) {
-            files.push_back({request.files.size() > 1 ? inputs[i].file : std::string{},
-                             request.units.value_or(inputs[i].reading.plan.units), problems[i]});
+        for (const Checked& plan : plans) {
+            files.push_back({request.files.size() > 1 ? plan.file : std::string{},
+                             request.units.value_or(plan.units), plan.problems});
         }
         runnel::write_problems_json(files, output.sink());
     } else {
-        for (std::size_t i = 0; i < inputs.size(); ++i) {
-            runnel::write_problems(problems[i], inputs[i].file, inputs[i].reading.plan.units,
-                                   colour_on(stdout), output.sink());
-            output.sink()(inputs[i].file + ": " + summary(problems[i]) + '\n');
+        for (const Checked& plan : plans) {
+            runnel::write_problems(plan.problems, plan.file, plan.units, colour_on(stdout), output.sink());
+            output.sink()(plan.file + ": " + summary(plan.problems) + '\n');
         }
     }
     return output.close() ? status : file_trouble;
 }
 
 Status takedown(const Request& request) {
-    const std::optional<Input> input = read_input(request.files.front(), request);
+    std::optional<Input> input = read_input(request.files.front(), request);
     if (!input) {
         return file_trouble;
     }
     const runnel::Takedown takedown = take_down(*input, request);
-    const std::vector<runnel::Problem>& read = input->reading.problems;
     const runnel::ReportOptions options = report_options(request, *input);
 
     Output output = Output::standard();
     if (request.format == "json") {
-        runnel::write_result(takedown, read, options, output.sink());
+        runnel::write_result(takedown, {}, options, output.sink());
     } else if (takedown.complete && request.format == "csv") {
         runnel::write_table(takedown, request.table.value_or(runnel::Table::reactions), options,
                             output.sink());
@@ -152,15 +147,15 @@ Status takedown(const Request& request) {
     }
     bool written = output.close();
     if (request.format != "json") {
-        complain_of(*input, together(read, takedown.problems));
+        complain_of(input->file, takedown.plan.units, takedown.problems);
     }
     if (!request.folder.empty()) {
-        written = write_folder(request.folder, takedown, read, options) && written;
+        written = write_folder(request.folder, takedown, options) && written;
     }
     if (!written) {
         return file_trouble;
     }
-    return runnel::has_errors(read) || runnel::has_errors(takedown.problems) ? input_errors : done;
+    return runnel::has_errors(takedown.problems) ? input_errors : done;
 }
 
 namespace {
@@ -242,12 +237,13 @@ Status regions(const Request& request) {
         split = split_decks(input->reading.plan, request, view.level);
         runnel::locate_problems(input->text, split.problems);
     }
-    const std::vector<runnel::Problem> problems = together(input->reading.problems, split.problems);
+    std::vector<runnel::Problem> problems = input->reading.problems;
+    problems.insert(problems.end(), split.problems.begin(), split.problems.end());
     Output output = Output::standard();
     runnel::write_regions(input->reading.plan, split.framing, split.sharings, problems, view,
                           report_options(request, *input), output.sink());
     if (view.format == runnel::RegionFormat::svg) {
-        complain_of(*input, problems);
+        complain_of(input->file, input->reading.plan.units, problems);
     }
     if (!output.close()) {
         return file_trouble;

@@ -47,10 +47,22 @@ constexpr std::array<std::pair<const char*, runnel::Table>, 4> tables{
      {"rundowns.csv", runnel::Table::rundowns},
      {"foundations.csv", runnel::Table::foundations}}};
 
+/// A plan with errors gives no tables; those that lie there could be taken for its own.
+void warn_of_earlier_tables(const std::filesystem::path& path) {
+    for (const auto& table : tables) {
+        std::error_code trouble;
+        if (std::filesystem::exists(path / table.first, trouble)) {
+            complain("the plan has errors: tables and drawings in " + path.string() +
+                     " are of an earlier run");
+            return;
+        }
+    }
+}
+
 } // namespace
 
 bool write_folder(const std::string& folder, const runnel::Takedown& takedown,
-                  std::span<const runnel::Problem> reading_problems, const runnel::ReportOptions& options) {
+                  const runnel::ReportOptions& options) {
     const std::filesystem::path path(folder);
     std::error_code trouble;
     std::filesystem::create_directories(path, trouble);
@@ -59,9 +71,10 @@ bool write_folder(const std::string& folder, const runnel::Takedown& takedown,
         return false;
     }
     bool written = write_file(path / "result.json", [&](const runnel::TextSink& sink) {
-        runnel::write_result(takedown, reading_problems, options, sink);
+        runnel::write_result(takedown, {}, options, sink);
     });
     if (!takedown.complete) {
+        warn_of_earlier_tables(path);
         return written;
     }
     for (const auto& table : tables) {

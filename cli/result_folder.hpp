@@ -2,7 +2,6 @@
 
 #include <runnel/report.hpp>
 
-#include <span>
 #include <string>
 
 namespace runnel_cli {
@@ -11,7 +10,6 @@ namespace runnel_cli {
 /// there. Of a plan with errors, the result alone. False, with a sentence on standard error, where something
 /// cannot be written.
 [[nodiscard]] bool write_folder(const std::string& folder, const runnel::Takedown& takedown,
-                                std::span<const runnel::Problem> reading_problems,
                                 const runnel::ReportOptions& options);
 
 } // namespace runnel_cli

@@ -228,6 +228,13 @@ class Documents(unittest.TestCase):
 
 
 class Texts(unittest.TestCase):
+    def test_the_account_counts_all_problems(self):
+        for plan in SAMPLES:
+            done = runnel("takedown", plan)
+            for severity in ("error", "warning", "note"):
+                count = len(re.findall(rf"^{severity} ", done.stderr.decode(), re.M))
+                self.assertRegex(done.stdout.decode(), rf"\b{count} {severity}s?\b")
+
     def test_the_account_fits_a_page_of_100_columns(self):
         for plan in SAMPLES:
             for units in ("m,kN", "mm,N", "in,lbf", "ft,kip", "cm,MN"):
@@ -339,6 +346,16 @@ class Folder(unittest.TestCase):
                              runnel("takedown", sample("workshop"), "--format", "json").stdout)
             self.assertEqual((target / "reactions.csv").read_bytes(),
                              runnel("takedown", sample("workshop"), "--format", "csv").stdout)
+
+    def test_a_plan_with_errors_leaves_its_problems_and_a_word_about_what_is_older(self):
+        with tempfile.TemporaryDirectory() as folder:
+            self.assertEqual(runnel("takedown", sample("shelter"), "-o", folder).returncode, 0)
+            done = runnel("takedown", "-", "-o", folder, text=as_text(BAD_PLAN))
+            self.assertEqual(done.returncode, 1)
+            self.assertIn(b"are of an earlier run", done.stderr)
+            result = json.loads((pathlib.Path(folder) / "result.json").read_text())
+            self.assertIn("unknown-key", [problem["code"] for problem in result["problems"]])
+            self.assertNotIn("foundations", result)
 
     def test_ids_make_safe_file_names_that_differ(self):
         plan = plan_of("shelter")
