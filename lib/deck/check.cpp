@@ -26,8 +26,8 @@ struct Beside {
 class StripProbe {
 public:
     StripProbe(const Plan& plan, const FramedLevel& level, const FramedDeck& deck, const Sharing& sharing,
-               const StripAxes& axes)
-        : axes_(axes) {
+               const StripAxes& axes, double noise)
+        : axes_(axes), noise_(noise) {
         add_edges(deck.outline);
         for (const Ring& opening : deck.openings) {
             add_edges(opening);
@@ -126,10 +126,17 @@ private:
         return line.a.x + (line.b.x - line.a.x) * ((across - line.a.y) / (line.b.y - line.a.y));
     }
 
-    static void decide(const Beside& low, const Beside& high, double margin, Answer& answer) {
-        // A carrier on the deck's edge carries it: it counts as before the edge.
-        const bool low_first = low.carrier <= low.edge + margin && low.number != none;
-        const bool high_first = high.carrier <= high.edge + margin && high.number != none;
+    void decide(const Beside& low, const Beside& high, double margin, Answer& answer) const {
+        // A carrier on the deck's edge carries it: it counts as before the edge. One a little behind it may
+        // have been fitted to it or not.
+        const auto behind = [&](const Beside& side) {
+            return side.carrier > side.edge + noise_ && side.carrier <= side.edge + margin;
+        };
+        if (behind(low) || behind(high)) {
+            return;
+        }
+        const bool low_first = low.carrier <= low.edge + noise_ && low.number != none;
+        const bool high_first = high.carrier <= high.edge + noise_ && high.number != none;
         const bool tie = (low_first && high_first && std::abs(low.carrier - high.carrier) <= 2 * margin) ||
                          (low_first && low.second - low.carrier <= margin) ||
                          (high_first && high.second - high.carrier <= margin) || low.edge <= margin ||
@@ -146,6 +153,7 @@ private:
     }
 
     const StripAxes& axes_;
+    double noise_;
     std::vector<Line> edges_;
     std::vector<Line> carriers_;
 };
@@ -210,7 +218,8 @@ std::vector<Problem> check_owners(const Plan& plan, const Framing& framing, std:
     const auto cells = Grouped<std::uint32_t>::from_pairs(level.decks.size(), std::move(by_deck));
     // Points nearer than this to a border are left out: rounding, or fitting carriers to edges within `snap`,
     // may put them on either side.
-    const double margin = 4 * noise_of(framing.largest_coordinate) + 2 * plan.settings.snap;
+    const double noise = 4 * noise_of(framing.largest_coordinate);
+    const double margin = noise + 2 * plan.settings.snap;
     std::mt19937_64 random(seed);
     std::vector<Problem> problems;
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
@@ -219,7 +228,7 @@ std::vector<Problem> check_owners(const Plan& plan, const Framing& framing, std:
             continue;
         }
         const StripAxes& axes = sharing.axes[sharing.cells[cells[d].front()].axes];
-        const StripProbe probe(plan, level, deck, sharing, axes);
+        const StripProbe probe(plan, level, deck, sharing, axes, noise);
         std::vector<Box> boxes;
         Box extent = box_of(sharing.cells[cells[d].front()]);
         for (const std::uint32_t c : cells[d]) {
