@@ -60,7 +60,8 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(too_few_bearings, "too-few-bearings", error, "A member with too few bearings to stand.")               \
     X(mechanism, "mechanism", error, "A member that its hinges leave free to move.")                         \
     X(near_miss, "near-miss", warning, "An end, column or wall that misses a carrier by little.")            \
-    X(carries_nothing, "carries-nothing", warning, "A column or wall on which nothing bears at a level.")    \
+    X(carries_nothing, "carries-nothing", warning,                                                           \
+      "A column, wall or joist that carries nothing where it could.")                                        \
     X(points_merged, "points-merged", note, "Points within `snap` of each other were taken as one.")         \
     X(joist_left_out, "joist-left-out", note, "A joist of a field that lies along a member or a wall.")      \
     X(continuous_as_drawn, "continuous-as-drawn", note, "Members that run on over bearings.")                \
@@ -68,6 +69,7 @@ enum class Severity : std::uint8_t { error, warning, note };
     /* decks and loads */                                                                                    \
     X(strip_unsupported, "strip-unsupported", error, "Strips of a deck that no carrier crosses.")            \
     X(strip_cantilevers, "strip-cantilevers", warning, "Strips on one carrier, or with a long overhang.")    \
+    X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
     X(load_off_decks, "load-off-decks", error, "A line or point load that stands on nothing.")               \
     X(zone_off_decks, "zone-off-decks", note,                                                                \
       "Part of an area load lies off every deck and is not carried.")                                        \

@@ -1,3 +1,4 @@
+#include "deck/doubtful.hpp"
 #include "deck/one_way.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/box_tree.hpp"
@@ -78,6 +79,7 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
         find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
     }
+    find_doubtful_members(plan, level, sharing);
     return sharing;
 }
 

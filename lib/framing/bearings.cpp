@@ -222,7 +222,9 @@ private:
                                   "The " + std::string(name_of(role(meeting.a))) + ' ' + a + " ends on the " +
                                       std::string(name_of(role(meeting.b))) + ' ' + b + " at " +
                                       place_text(draft_.plan, at) + " and bears on it.",
-                                  "If that is meant, give " + b + " the higher role.", {a, b}, at);
+                                  "Is a column missing there? If it is meant, let " + a + " name " + b +
+                                      " in `bears_on`.",
+                                  {a, b}, at);
         });
     }
 

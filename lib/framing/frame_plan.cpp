@@ -29,6 +29,38 @@ void start_level(LevelDraft& draft, std::uint32_t number) {
     set_supports(draft.plan, draft.framing, draft.level);
 }
 
+/// A joist's id may read like one that the plan gave: "J.2" beside a field J. Ids without a dot cannot.
+void refuse_taken_ids(LevelDraft& draft) {
+    const auto has_dot = [](const std::string& id) { return id.find('.') != std::string::npos; };
+    bool any = false;
+    std::unordered_set<std::string_view> taken;
+    for (const std::uint32_t c : draft.level.columns) {
+        taken.insert(draft.plan.columns[c].id);
+        any = any || has_dot(draft.plan.columns[c].id);
+    }
+    for (const std::uint32_t w : draft.level.walls) {
+        taken.insert(draft.plan.walls[w].id);
+        any = any || has_dot(draft.plan.walls[w].id);
+    }
+    for (const Listed<Member>& member : draft.lists.members) {
+        any = any || has_dot(member.what->id);
+    }
+    for (const Listed<JoistField>& field : draft.lists.joist_fields) {
+        any = any || has_dot(field.what->id);
+    }
+    for (std::uint32_t m = 0; any && m < draft.level.members.size(); ++m) {
+        const FramedMember& member = draft.level.members[m];
+        if (!taken.insert(member.id).second && member.from_field) {
+            draft.problems.add(ProblemCode::duplicate_id, [&] {
+                return member_problem(draft, ProblemCode::duplicate_id, m,
+                                      "Level " + draft.level.id + ": the joist " + member.id +
+                                          " of this field has the id of another carrier.",
+                                      "Give that carrier or the field another id.", {member.id}, member.from);
+            });
+        }
+    }
+}
+
 /// One floor, from the plan's lists to bearings and order. `room`: how many members the plan may still have.
 void frame_level(LevelDraft& draft, std::uint32_t number, std::size_t& room) {
     start_level(draft, number);
@@ -43,6 +75,7 @@ void frame_level(LevelDraft& draft, std::uint32_t number, std::size_t& room) {
     refuse_overlaps(draft);
 
     make_members(draft, room);
+    refuse_taken_ids(draft);
     node_decks(draft);
     note_moves(draft);
 

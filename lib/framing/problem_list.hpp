@@ -4,6 +4,7 @@
 
 #include <array>
 #include <cstddef>
+#include <map>
 #include <string>
 #include <utility>
 #include <vector>
@@ -43,10 +44,50 @@ public:
                 problems_.push_back(std::move(more));
             }
         }
+        join_joists_of_fields();
         return std::move(problems_);
     }
 
 private:
+    /// Joists of one field that share a fault share its problem: thirteen joists drawn too short are one
+    /// mistake.
+    void join_joists_of_fields() {
+        struct Joined {
+            std::size_t place = 0;
+            std::size_t more = 0;
+            std::string named;
+        };
+        constexpr std::size_t named_at_most = 8;
+        std::map<std::pair<ProblemCode, std::string>, Joined> by_field;
+        std::vector<Problem> kept;
+        for (Problem& problem : problems_) {
+            if (problem.pointer.find("/joist_fields/") == std::string::npos || problem.ids.empty()) {
+                kept.push_back(std::move(problem));
+                continue;
+            }
+            const auto [it, is_new] =
+                by_field.try_emplace({problem.code, problem.pointer}, Joined{kept.size(), 0, {}});
+            if (is_new) {
+                kept.push_back(std::move(problem));
+                continue;
+            }
+            Joined& joined = it->second;
+            ++joined.more;
+            if (joined.more <= named_at_most) {
+                joined.named += (joined.named.empty() ? "" : ", ") + problem.ids.front();
+                kept[joined.place].ids.push_back(problem.ids.front());
+            }
+        }
+        for (const auto& [key, joined] : by_field) {
+            if (joined.more > 0) {
+                kept[joined.place].message += " So with " + std::to_string(joined.more) +
+                                              " more of the field: " + joined.named +
+                                              (joined.more > named_at_most ? ", ..." : "") + '.';
+            }
+        }
+        problems_ = std::move(kept);
+    }
+
     std::size_t limit_;
     std::vector<std::size_t> counts_;
     std::vector<Problem> problems_;

@@ -1,6 +1,7 @@
 #include "path/parallel.hpp"
 #include "path/path.hpp"
 
+#include <algorithm>
 #include <iterator>
 #include <utility>
 
@@ -31,6 +32,12 @@ Takedown stopped(Plan plan, Framing framing, std::vector<Problem> problems) {
     return takedown;
 }
 
+/// Whether a deck's rule is not built yet: what stands on it would look as if it stood on nothing.
+bool is_refused(const Sharing& sharing) {
+    return std::any_of(sharing.problems.begin(), sharing.problems.end(),
+                       [](const Problem& problem) { return problem.code == ProblemCode::not_supported_yet; });
+}
+
 /// Splits and loads every level; levels know nothing of each other here. Problems come out in the order of
 /// phases, then of levels, whatever the number of threads.
 std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, unsigned threads,
@@ -47,7 +54,9 @@ std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, un
             broken[l] = check_cover(framing, level, input.sharing[l]);
         }
         input.areas[l] = areas_of(input.sharing[l]);
-        input.loads[l] = load_carriers(plan, framing, level, input.sharing[l]);
+        if (!is_refused(input.sharing[l])) {
+            input.loads[l] = load_carriers(plan, framing, level, input.sharing[l]);
+        }
     });
     std::vector<Problem> problems;
     for (std::size_t l = 0; l < levels; ++l) {
