@@ -116,6 +116,7 @@ struct Uplift {
     std::uint32_t bearing = none; ///< index within the member
     Carrier on;                   ///< the carrier it lifts from; for a foundation, what stands there
     double value = 0;             ///< kN, negative: all cases together, factor 1
+    Carrier upper; ///< where `member` is `none` on a level: the column or wall whose foot lifts
 };
 
 /// Everything the takedown found. Levels are as in Framing.

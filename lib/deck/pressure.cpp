@@ -44,7 +44,11 @@ Grouped<std::uint32_t> area_loads_by_deck(const FramedLevel& level, double noise
         const AreaLoad& load = level.area_loads[i];
         if (!load.decks.empty()) {
             for (const std::string& id : load.decks) {
-                if (const auto it = by_id.find(id); it != by_id.end()) {
+                // "LEVEL/ID" means the deck here, also where another level repeats the load.
+                const std::size_t slash = id.rfind('/');
+                const auto it =
+                    by_id.find(std::string_view(id).substr(slash == std::string::npos ? 0 : slash + 1));
+                if (it != by_id.end()) {
                     pairs.emplace_back(it->second, i);
                 }
             }
@@ -61,6 +65,25 @@ Grouped<std::uint32_t> area_loads_by_deck(const FramedLevel& level, double noise
     }
     std::sort(pairs.begin(), pairs.end());
     pairs.erase(std::unique(pairs.begin(), pairs.end()), pairs.end());
+    return Grouped<std::uint32_t>::from_pairs(level.decks.size(), std::move(pairs));
+}
+
+Grouped<std::uint32_t> outlines_over_decks(const FramedLevel& level, double noise) {
+    std::vector<Box> boxes;
+    for (const FramedDeck& deck : level.decks) {
+        boxes.push_back(box_of(deck.outline));
+    }
+    const BoxFinder finder(std::move(boxes));
+    std::vector<std::pair<std::uint32_t, std::uint32_t>> pairs;
+    std::vector<std::uint32_t> found;
+    for (std::uint32_t i = 0; i < level.area_loads.size(); ++i) {
+        if (!level.area_loads[i].outline.empty()) {
+            finder.find(box_of(level.area_loads[i].outline).grown(noise), found);
+            for (const std::uint32_t d : found) {
+                pairs.emplace_back(d, i);
+            }
+        }
+    }
     return Grouped<std::uint32_t>::from_pairs(level.decks.size(), std::move(pairs));
 }
 

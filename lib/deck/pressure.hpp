@@ -62,6 +62,9 @@ private:
 /// The area loads that may act on each deck, rising, by their `decks` lists and their outlines' boxes.
 [[nodiscard]] Grouped<std::uint32_t> area_loads_by_deck(const FramedLevel& level, double noise);
 
+/// The area loads with outlines that reach over each deck, whether they are meant for it or not.
+[[nodiscard]] Grouped<std::uint32_t> outlines_over_decks(const FramedLevel& level, double noise);
+
 /// The ring itself where it is convex (turned counter-clockwise), else its convex pieces.
 [[nodiscard]] std::vector<Convex> convex_zone(Ring ring, double noise);
 

@@ -52,6 +52,13 @@ private:
     }
 
     void mark_carriers() {
+        for (const PointLoad& load : draft_.level.point_loads) {
+            for (const std::uint32_t column : draft_.level.columns) {
+                if (distance(draft_.plan.columns[column].at, load.at) <= draft_.reach()) {
+                    column_carries_[column] = true;
+                }
+            }
+        }
         for (const Bearing& bearing : draft_.level.bearings.items()) {
             mark(bearing.on);
         }

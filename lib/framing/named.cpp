@@ -25,11 +25,24 @@ Names names_of(const LevelDraft& draft) {
     return names;
 }
 
-/// "LEVEL/ID" is understood where the level is this one.
-std::string_view without_level(std::string_view name, std::string_view level) {
-    return name.size() > level.size() && name.substr(0, level.size()) == level && name[level.size()] == '/'
-               ? name.substr(level.size() + 1)
-               : name;
+/// "LEVEL/ID" is understood where the level is this one, or one that it repeats.
+std::string_view without_level(std::string_view name, const LevelDraft& draft) {
+    const std::size_t slash = name.find('/');
+    if (slash == std::string_view::npos) {
+        return name;
+    }
+    const std::string_view level = name.substr(0, slash);
+    const std::vector<Level>& levels = draft.plan.levels;
+    const Level* here = &levels[draft.level.plan_level];
+    for (std::size_t steps = 0; here != nullptr && steps <= levels.size(); ++steps) {
+        if (here->id == level) {
+            return name.substr(slash + 1);
+        }
+        const auto next = std::find_if(levels.begin(), levels.end(),
+                                       [here](const Level& other) { return other.id == here->like; });
+        here = here->like.empty() || next == levels.end() ? nullptr : &*next;
+    }
+    return name;
 }
 
 bool stands_here(const FramedLevel& level, Carrier carrier) {
@@ -69,7 +82,7 @@ NamedCarriers::NamedCarriers(LevelDraft& draft) : draft_(draft), list_of_(draft.
         const Listed<Member>& member = draft.lists.members[draft.lines[draft.line_of[list.member]].source];
         for (std::uint32_t i = 0; i < member.what->bears_on.size(); ++i) {
             const std::string& name = member.what->bears_on[i];
-            const auto found = names.find(without_level(name, draft.level.id));
+            const auto found = names.find(without_level(name, draft));
             if (found == names.end()) {
                 draft.problems.add(ProblemCode::unknown_id, [&] {
                     return problem_inside(ProblemCode::unknown_id, member.origin, "members", place_in_list(i),

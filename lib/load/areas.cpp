@@ -318,18 +318,15 @@ void note_zones_off_decks(const Plan& plan, const Framing& framing, std::uint32_
                           Collector& collector) {
     const FramedLevel& level = framing.levels[level_index];
     const double noise = collector.noise();
-    const Grouped<std::uint32_t> acting = area_loads_by_deck(level, noise);
+    const Grouped<std::uint32_t> over = outlines_over_decks(level, noise);
     std::vector<Sum> on_decks(level.area_loads.size());
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
         const StripAxes plain{deck.outline.front(), 1, 0};
         std::vector<Convex> pieces; // of the deck, made when a zone needs them
         std::vector<Ring> openings;
-        for (const std::uint32_t i : acting[d]) {
+        for (const std::uint32_t i : over[d]) {
             const AreaLoad& load = level.area_loads[i];
-            if (load.outline.empty()) {
-                continue;
-            }
             if (pieces.empty()) {
                 for (const Ring& opening : deck.openings) {
                     openings.push_back(to_strip(plain, opening));

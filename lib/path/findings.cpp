@@ -74,6 +74,39 @@ void gather_foundations(Takedown& takedown) {
     }
 }
 
+namespace {
+
+/// What a column or wall brings to its foot, by case.
+std::span<const double> total_at_foot(const Takedown& takedown, Carrier upper) {
+    if (upper.kind == CarrierKind::column) {
+        const std::vector<Lift>& lifts = takedown.columns[upper.index].lifts;
+        return lifts.empty() ? std::span<const double>{} : std::span<const double>(lifts.back().total);
+    }
+    const std::vector<WallLift>& lifts = takedown.walls[upper.index].lifts;
+    return lifts.empty() ? std::span<const double>{} : std::span<const double>(lifts.back().total);
+}
+
+/// Columns and walls that stand on a level's carriers and lift off them; a wall once, with what it lifts off
+/// first.
+void find_lifting_feet(Takedown& takedown) {
+    for (std::uint32_t l = 0; l < takedown.levels.size(); ++l) {
+        Carrier last;
+        for (const Foot& foot : takedown.framing.levels[l].feet) {
+            if (foot.upper == last) {
+                continue;
+            }
+            last = foot.upper;
+            const std::span<const double> total = total_at_foot(takedown, foot.upper);
+            const double value = sum_of(total);
+            if (value < -rounding * magnitude_of_all(total)) {
+                takedown.uplift.push_back({l, none, none, foot.lower, value, foot.upper});
+            }
+        }
+    }
+}
+
+} // namespace
+
 void find_uplift(Takedown& takedown) {
     const std::size_t cases = takedown.plan.cases.size();
     for (std::uint32_t l = 0; l < takedown.levels.size(); ++l) {
@@ -86,15 +119,20 @@ void find_uplift(Takedown& takedown) {
             for (std::uint32_t b = 0; b < bearings.size(); ++b) {
                 const double value = sum_of(own.subspan(b * cases, cases));
                 if (value < -noise) {
-                    takedown.uplift.push_back({l, m, b, bearings[b].on, value});
+                    takedown.uplift.push_back({l, m, b, bearings[b].on, value, {}});
                 }
             }
         }
     }
+    find_lifting_feet(takedown);
+    double all = 0; // what the ground carries in all measures the rounding under each of its parts
+    for (const Foundation& foundation : takedown.foundations) {
+        all += magnitude_of_all(foundation.reactions);
+    }
     for (const Foundation& foundation : takedown.foundations) {
         const double value = sum_of(foundation.reactions);
-        if (value < -rounding * magnitude_of_all(foundation.reactions)) {
-            takedown.uplift.push_back({none, none, none, foundation.under, value});
+        if (value < -rounding * all) {
+            takedown.uplift.push_back({none, none, none, foundation.under, value, {}});
         }
     }
 }

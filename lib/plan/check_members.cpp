@@ -54,6 +54,13 @@ void check_hinges(CheckContext& context, const Member& member, const Subject& su
                            "A hinge of " + subject.name() + " is at station " + context.lengths(hinge) +
                                ", outside its length of " + context.lengths(length) + '.');
         }
+        if ((member.fixed_from && std::abs(hinge) <= context.snap) ||
+            (member.fixed_to && std::abs(hinge - length) <= context.snap)) {
+            context.report(subject, ProblemCode::conflicting_keys, inside,
+                           "A hinge of " + subject.name() + " is at station " + context.lengths(hinge) +
+                               ", where `fixed_ends` builds it in.",
+                           "Take one of them out.");
+        }
     }
 }
 

@@ -280,6 +280,7 @@ AreaLoad read_area_load(ObjectReader& object) {
     load.decks = object.texts("decks");
     load.replaces = object.boolean("replaces", false);
     load.allowance = object.text("allowance");
+    note_without_effect(object.value("allowance"));
     return load;
 }
 

@@ -67,8 +67,8 @@ void note_without_effect(const std::optional<JsonValue>& value) {
         return;
     }
     const std::string_view key = value->place.key;
-    constexpr std::array<std::string_view, 5> keys{"reducible", "pattern", "category", "one_of",
-                                                   "base_fixity"};
+    constexpr std::array<std::string_view, 6> keys{"reducible", "pattern",     "category",
+                                                   "one_of",    "base_fixity", "allowance"};
     const auto* const known = std::find(keys.begin(), keys.end(), key);
     if (known != keys.end() && value->context->note_once(*known)) {
         value->report(ProblemCode::not_supported_yet,

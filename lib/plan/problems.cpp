@@ -89,6 +89,10 @@ std::string force_text(double kilonewtons, Units units) {
 
 std::string point_text(Point point, Units units) {
     const double scale = si_per_unit(units, dimension::length);
+    // What is far below anything that can be built is rounding of zero.
+    constexpr double nothing = 1e-9; // m
+    point.x = std::abs(point.x) < nothing ? 0 : point.x;
+    point.y = std::abs(point.y) < nothing ? 0 : point.y;
     return '(' + text_of(point.x / scale) + ", " + text_of(point.y / scale) + ')';
 }
 

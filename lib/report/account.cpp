@@ -105,6 +105,13 @@ void Account::uplift() {
                         indent);
             continue;
         }
+        if (uplift.member == none) {
+            page_.alarm("uplift of " + amount + ": " +
+                            fit(names_.carrier(uplift.level, uplift.upper), id_width) + " lifts off " +
+                            fit(names_.carrier_anywhere(uplift.level, uplift.on), id_width),
+                        indent);
+            continue;
+        }
         const Bearing& bearing =
             takedown_.framing.levels[uplift.level].bearings[uplift.member][uplift.bearing];
         const Carrier member{CarrierKind::member, uplift.member};

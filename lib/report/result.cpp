@@ -102,6 +102,10 @@ void ResultWriter::uplift() {
         if (uplift.level == none) {
             json_.key("bearing").text(names_.carrier(0, uplift.on));
             json_.key("on").text("ground");
+        } else if (uplift.member == none) {
+            json_.key("bearing").text(names_.carrier(uplift.level, uplift.upper));
+            json_.key("on").text(names_.carrier_anywhere(uplift.level, uplift.on));
+            json_.key("level").text(takedown_.framing.levels[uplift.level].id);
         } else {
             const std::span<const Bearing> bearings =
                 takedown_.framing.levels[uplift.level].bearings[uplift.member];
