@@ -93,6 +93,26 @@ std::vector<runnel::Problem> together(const std::vector<runnel::Problem>& read,
     return all;
 }
 
+/// Own weight must go somewhere, or the phases after reading could not be gone through: where reading refused
+/// the plan for want of a dead case, it gets one for as long as they last.
+runnel::Takedown take_down_beside_errors(runnel::PlanReading& reading,
+                                         const runnel::TakedownOptions& options) {
+    const bool lent =
+        std::any_of(reading.problems.begin(), reading.problems.end(),
+                    [](const runnel::Problem& p) { return p.code == runnel::ProblemCode::no_dead_case; });
+    if (lent) {
+        runnel::LoadCase dead;
+        dead.id = "dead";
+        dead.kind = runnel::CaseKind::dead;
+        reading.plan.cases.push_back(std::move(dead));
+    }
+    runnel::Takedown takedown = runnel::take_down(std::move(reading.plan), options);
+    if (lent) {
+        takedown.plan.cases.pop_back();
+    }
+    return takedown;
+}
+
 /// The takedown of a plan, with what reading it found among its problems; one without results where the plan
 /// has errors. Where they leave its values whole, framing, sharing and loads are gone through all the same
 /// for their problems.
@@ -100,7 +120,7 @@ runnel::Takedown take_down(Input& input, const Request& request) {
     runnel::Takedown takedown;
     if (input.whole()) {
         const Progress progress("taking the loads down");
-        takedown = runnel::take_down(std::move(input.reading.plan), takedown_options(request));
+        takedown = take_down_beside_errors(input.reading, takedown_options(request));
         runnel::locate_problems(input.text, takedown.problems);
     } else {
         takedown.plan = std::move(input.reading.plan);
