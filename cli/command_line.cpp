@@ -203,9 +203,22 @@ private:
             return output.close() ? done : file_trouble;
         }
         const std::vector<CLI::App*> commands = app_.get_subcommands();
-        complain(std::string(error.what()) + meant_option() + "; see runnel " +
+        complain(sentence_of(error) + meant_option() + "; see runnel " +
                  (commands.empty() ? "" : commands.front()->get_name() + ' ') + "--help");
         return wrong_usage;
+    }
+
+    [[nodiscard]] static std::string sentence_of(const CLI::ParseError& error) {
+        const std::string text = error.what();
+        const bool mismatch = dynamic_cast<const CLI::ArgumentMismatch*>(&error) != nullptr;
+        const std::string name = text.substr(0, text.find(':'));
+        if (!mismatch || name == text) {
+            return text;
+        }
+        if (name.starts_with('-')) {
+            return name + " wants one value after it";
+        }
+        return "one " + name + " is wanted, and more are given";
     }
 
     /// Where an option is mistyped, the one that was likely meant.
@@ -243,8 +256,8 @@ private:
         if (command == "schema") {
             return schema(request_);
         }
-        complain("not-supported-yet: the command \"" + command + "\" is not built yet");
-        return input_errors;
+        complain("the command \"" + command + "\" is not built yet");
+        return wrong_usage;
     }
 
     /// Words to values. What is wrong with them together, or nothing.

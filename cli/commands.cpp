@@ -8,10 +8,19 @@
 #include <runnel/takedown.hpp>
 
 #include <algorithm>
+#include <iterator>
+#include <tuple>
 
 namespace runnel_cli {
 
 namespace {
+
+/// Errors beside which the rest of the plan can still be gone through.
+bool leaves_values(runnel::ProblemCode code) {
+    using Code = runnel::ProblemCode;
+    return code == Code::unknown_key || code == Code::duplicate_key || code == Code::not_supported_yet ||
+           code == Code::no_dead_case || code == Code::conflicting_keys;
+}
 
 /// A plan's text and what reading it gave.
 struct Input {
@@ -20,6 +29,12 @@ struct Input {
     runnel::PlanReading reading;
 
     [[nodiscard]] bool usable() const { return !runnel::has_errors(reading.problems); }
+    /// True where its errors left the plan's values whole: nothing that was understood is missing.
+    [[nodiscard]] bool whole() const {
+        return std::all_of(reading.problems.begin(), reading.problems.end(), [](const runnel::Problem& p) {
+            return p.severity != runnel::Severity::error || leaves_values(p.code);
+        });
+    }
 };
 
 std::optional<Input> read_input(const std::string& file, const Request& request) {
@@ -32,6 +47,14 @@ std::optional<Input> read_input(const std::string& file, const Request& request)
     if (request.share) {
         std::vector<std::string>& defaults = input.reading.plan.defaults_used;
         defaults.erase(std::remove(defaults.begin(), defaults.end(), "share"), defaults.end());
+        // The plan's own shares do not count then, so that one not built yet is no reason to refuse it.
+        std::vector<runnel::Problem>& problems = input.reading.problems;
+        problems.erase(std::remove_if(problems.begin(), problems.end(),
+                                      [](const runnel::Problem& p) {
+                                          return p.code == runnel::ProblemCode::not_supported_yet &&
+                                                 p.pointer.ends_with("/share");
+                                      }),
+                       problems.end());
     }
     return input;
 }
@@ -51,25 +74,76 @@ runnel::ReportOptions report_options(const Request& request, const Input& input)
     return options;
 }
 
+/// Whether a later phase refuses what reading refused already: the deck of a key, or the share of all decks.
+bool repeats(const runnel::Problem& later, const std::vector<runnel::Problem>& read, const Request& request) {
+    constexpr runnel::ProblemCode refused = runnel::ProblemCode::not_supported_yet;
+    return later.code == refused && std::any_of(read.begin(), read.end(), [&](const runnel::Problem& one) {
+               const bool of_all = one.pointer == "/settings/share" && !request.share;
+               return one.code == refused && (of_all || one.pointer == later.pointer ||
+                                              one.pointer.starts_with(later.pointer + '/'));
+           });
+}
+
+/// Problems of reading and of the phases after it. With errors among the first they are put in the order of
+/// the text, those without a place last.
+std::vector<runnel::Problem> together(const std::vector<runnel::Problem>& read,
+                                      std::vector<runnel::Problem> later, const Request& request) {
+    later.erase(std::remove_if(later.begin(), later.end(),
+                               [&](const runnel::Problem& p) { return repeats(p, read, request); }),
+                later.end());
+    std::vector<runnel::Problem> all = read;
+    all.insert(all.end(), std::make_move_iterator(later.begin()), std::make_move_iterator(later.end()));
+    if (runnel::has_errors(read)) {
+        std::stable_sort(all.begin(), all.end(), [](const runnel::Problem& a, const runnel::Problem& b) {
+            return std::tuple(a.line == 0, a.line, a.column) < std::tuple(b.line == 0, b.line, b.column);
+        });
+    }
+    return all;
+}
+
+/// Own weight must go somewhere, or the phases after reading could not be gone through: where reading refused
+/// the plan for want of a dead case, it gets one for as long as they last.
+runnel::Takedown take_down_beside_errors(runnel::PlanReading& reading,
+                                         const runnel::TakedownOptions& options) {
+    const bool lent =
+        std::any_of(reading.problems.begin(), reading.problems.end(),
+                    [](const runnel::Problem& p) { return p.code == runnel::ProblemCode::no_dead_case; });
+    if (lent) {
+        runnel::LoadCase dead;
+        dead.id = "dead";
+        dead.kind = runnel::CaseKind::dead;
+        reading.plan.cases.push_back(std::move(dead));
+    }
+    runnel::Takedown takedown = runnel::take_down(std::move(reading.plan), options);
+    if (lent) {
+        takedown.plan.cases.pop_back();
+    }
+    return takedown;
+}
+
 /// The takedown of a plan, with what reading it found among its problems; one without results where the plan
-/// cannot be used.
+/// has errors. Where they leave its values whole, framing, sharing and loads are gone through all the same
+/// for their problems.
 runnel::Takedown take_down(Input& input, const Request& request) {
     runnel::Takedown takedown;
-    if (input.usable()) {
+    if (input.whole()) {
         const Progress progress("taking the loads down");
-        takedown = runnel::take_down(std::move(input.reading.plan), takedown_options(request));
+        takedown = take_down_beside_errors(input.reading, takedown_options(request));
         runnel::locate_problems(input.text, takedown.problems);
     } else {
         takedown.plan = std::move(input.reading.plan);
     }
-    const std::vector<runnel::Problem>& read = input.reading.problems;
-    takedown.problems.insert(takedown.problems.begin(), read.begin(), read.end());
+    const bool errors_of_reading = !input.usable();
+    takedown.problems = together(input.reading.problems, std::move(takedown.problems), request);
+    takedown.complete = takedown.complete && !errors_of_reading;
     return takedown;
 }
 
 void complain_of(const std::string& file, runnel::Units units, const std::vector<runnel::Problem>& problems) {
     runnel::write_problems(problems, file, units, colour_on(stderr), standard_error());
 }
+
+constexpr const char* not_gone_through = "Framing and loads are not checked until these are mended.\n";
 
 std::string counted(std::size_t count, const std::string& what) {
     return std::to_string(count) + ' ' + what + (count == 1 ? "" : "s");
@@ -98,6 +172,7 @@ Status check(const Request& request) {
         std::string file;
         runnel::Units units;
         std::vector<runnel::Problem> problems;
+        bool whole;
     };
     Status status = done;
     std::vector<Checked> plans;
@@ -109,7 +184,7 @@ Status check(const Request& request) {
         }
         runnel::Takedown takedown = take_down(*input, request);
         status = worse(status, runnel::has_errors(takedown.problems) ? input_errors : done);
-        plans.push_back({input->file, takedown.plan.units, std::move(takedown.problems)});
+        plans.push_back({input->file, takedown.plan.units, std::move(takedown.problems), input->whole()});
     }
     Output output = Output::standard();
     if (request.format == "json") {
@@ -123,6 +198,7 @@ Status check(const Request& request) {
         for (const Checked& plan : plans) {
             runnel::write_problems(plan.problems, plan.file, plan.units, colour_on(stdout), output.sink());
             output.sink()(plan.file + ": " + summary(plan.problems) + '\n');
+            output.sink()(plan.whole ? "" : not_gone_through);
         }
     }
     return output.close() ? status : file_trouble;
@@ -148,6 +224,7 @@ Status takedown(const Request& request) {
     bool written = output.close();
     if (request.format != "json") {
         complain_of(input->file, takedown.plan.units, takedown.problems);
+        standard_error()(input->whole() ? "" : not_gone_through);
     }
     if (!request.folder.empty()) {
         written = write_folder(request.folder, takedown, options) && written;

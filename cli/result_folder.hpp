@@ -7,8 +7,9 @@
 namespace runnel_cli {
 
 /// Writes the result, its tables and a drawing of each level into a folder, which is made where it is not
-/// there. Of a plan with errors, the result alone. False, with a sentence on standard error, where something
-/// cannot be written.
+/// there, and says on standard error which files it wrote. Files of earlier runs are removed before; nothing
+/// else is. Of a plan with errors, the result alone. False, with a sentence on standard error, where
+/// something cannot be written.
 [[nodiscard]] bool write_folder(const std::string& folder, const runnel::Takedown& takedown,
                                 const runnel::ReportOptions& options);
 

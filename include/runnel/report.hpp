@@ -65,8 +65,8 @@ RUNNEL_EXPORT void write_regions(const Plan& plan, const Framing& framing, std::
 RUNNEL_EXPORT void draw_level(const Plan& plan, const Framing& framing, std::uint32_t level,
                               const Sharing& sharing, const ReportOptions& options, const TextSink& sink);
 
-/// Problems for people, one block each: severity, code, place, sentence, hint. `file` stands before line and
-/// column.
+/// Problems for people, one block each: severity, code, place, sentence, hint; errors first, then warnings,
+/// then notes. `file` stands before line and column.
 RUNNEL_EXPORT void write_problems(std::span<const Problem> problems, std::string_view file, Units units,
                                   bool colour, const TextSink& sink);
 

@@ -13,10 +13,7 @@ namespace {
 constexpr std::size_t indent = 2;
 constexpr std::size_t id_width = 18; ///< columns for an id in a table
 
-// The columns of the members' table, one value of 16 columns and the gaps fit the page.
 constexpr std::size_t on_width = 14;
-constexpr std::size_t role_width = 6;
-constexpr std::size_t number_width = 10;
 
 using Align = PageTable::Align;
 
@@ -49,10 +46,6 @@ int length_decimals(LengthUnit unit) {
         return 0;
     }
     return 2;
-}
-
-std::string counted(std::size_t count, std::string_view what) {
-    return std::to_string(count) + ' ' + std::string(what) + (count == 1 ? "" : "s");
 }
 
 } // namespace
@@ -89,77 +82,6 @@ void Account::head() {
     if (!takedown_.complete) {
         page_.alarm("Nothing is computed: the plan has errors.", 0);
         page_.blank();
-    }
-}
-
-void Account::uplift() {
-    page_.heading("Uplift");
-    if (takedown_.uplift.empty()) {
-        page_.line("none: no bearing lifts with all cases together", indent);
-    }
-    for (const Uplift& uplift : takedown_.uplift) {
-        const std::string amount = force(-uplift.value) + ' ' + unit_text(scale_.units, dimension::force);
-        if (uplift.level == none) {
-            page_.alarm("uplift of " + amount + " at the foundation under " +
-                            fit(names_.carrier(0, uplift.on), id_width * 2),
-                        indent);
-            continue;
-        }
-        if (uplift.member == none) {
-            page_.alarm("uplift of " + amount + ": " +
-                            fit(names_.carrier(uplift.level, uplift.upper), id_width) + " lifts off " +
-                            fit(names_.carrier_anywhere(uplift.level, uplift.on), id_width),
-                        indent);
-            continue;
-        }
-        const Bearing& bearing =
-            takedown_.framing.levels[uplift.level].bearings[uplift.member][uplift.bearing];
-        const Carrier member{CarrierKind::member, uplift.member};
-        page_.alarm("uplift of " + amount + ": " +
-                        fit(names_.carrier_anywhere(uplift.level, member), id_width) + " lifts off " +
-                        fit(names_.carrier_anywhere(uplift.level, uplift.on), id_width) + " at station " +
-                        length(bearing.station),
-                    indent);
-    }
-    page_.blank();
-}
-
-void Account::balance() {
-    constexpr std::size_t most_levels = 30;
-    page_.heading("Balance");
-    PageTable table;
-    table.describe("of", Align::left, id_width);
-    table.describe("case", Align::left, id_width);
-    for (const std::string_view heading : {"applied", "shared", "arrived"}) {
-        table.values(with_unit(heading, dimension::force));
-    }
-    table.values("per deck area");
-    table.values("closes");
-    balance_rows(table, "building", takedown_.balance);
-    const std::size_t shown = std::min(most_levels, takedown_.level_balance.size());
-    for (std::size_t l = 0; l < shown; ++l) {
-        balance_rows(table, takedown_.framing.levels[l].id, takedown_.level_balance[l]);
-    }
-    table.print(page_, indent);
-    if (shown < takedown_.level_balance.size()) {
-        page_.line(counted(takedown_.level_balance.size() - shown, "more level") + " in the result document",
-                   indent);
-    }
-    page_.line("per deck area in " + unit_text(scale_.units, dimension::area_load), indent);
-    page_.blank();
-}
-
-void Account::balance_rows(PageTable& table, std::string_view where,
-                           std::span<const Balance> balances) const {
-    for (const Balance& balance : balances) {
-        const bool first = &balance == balances.data();
-        const double per_area =
-            balance.area > 0 ? balance.applied.force / balance.area / scale_.area_load : 0;
-        constexpr int area_load_decimals = 2;
-        table.add_row(
-            {std::string(first ? where : ""), takedown_.plan.cases[balance.load_case].id,
-             force(balance.applied.force), force(balance.shared.force), force(balance.arrived.force),
-             balance.area > 0 ? figure(per_area, area_load_decimals) : "", balance.closes ? "yes" : "NO"});
     }
 }
 
@@ -254,12 +176,12 @@ void Account::level_members(std::uint32_t level, std::size_t most) {
                   std::string(name_of(scale_.units.length)) + "; reactions in " +
                   std::string(name_of(scale_.units.force)));
     PageTable table;
-    table.describe("member", Align::left, id_width);
-    table.describe("role", Align::left, role_width);
-    table.describe(with_unit("length", dimension::length), Align::right, number_width);
-    table.describe(with_unit("area", dimension::area), Align::right, number_width);
-    table.describe("on", Align::left, on_width);
-    table.describe("station", Align::right, number_width);
+    table.names("member", id_width);
+    table.describe("role", Align::left);
+    table.describe(with_unit("length", dimension::length), Align::right);
+    table.describe("area, " + area_unit(), Align::right);
+    table.names("on", on_width);
+    table.describe("station", Align::right);
     case_headings(table);
     std::size_t shown = 0;
     for (const Alike& group : heaviest_members(level, most)) {
@@ -357,9 +279,34 @@ std::string Account::length(double metres) const {
     return figure(metres / scale_.length, length_decimals(scale_.units.length));
 }
 
+namespace {
+
+/// Areas and pressures are read in m2 or ft2, whatever the unit of lengths: a floor has millions of mm2.
+Units for_areas(LengthUnit length) {
+    const bool feet = length == LengthUnit::ft || length == LengthUnit::in;
+    return feet ? Units{LengthUnit::ft, ForceUnit::lbf} : Units{LengthUnit::m, ForceUnit::kN};
+}
+
+} // namespace
+
 std::string Account::area(double square_metres) const {
     constexpr int decimals = 1;
-    return figure(square_metres / scale_.area, decimals);
+    const Units units = for_areas(scale_.units.length);
+    return figure(square_metres / si_per_unit(units, dimension::area), decimals);
+}
+
+std::string Account::area_unit() const {
+    return unit_text(for_areas(scale_.units.length), dimension::area);
+}
+
+std::string Account::area_load(double kilonewtons_per_square_metre) const {
+    const Units units = for_areas(scale_.units.length);
+    return three_figures(kilonewtons_per_square_metre / si_per_unit(units, dimension::area_load));
+}
+
+std::string Account::area_load_unit() const {
+    const Units units = for_areas(scale_.units.length);
+    return unit_text(units, dimension::area_load) + (units.length == LengthUnit::ft ? " (psf)" : "");
 }
 
 RUNNEL_NAMESPACE_END

@@ -13,6 +13,11 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
+/// "3 rows"
+inline std::string counted(std::size_t count, std::string_view what) {
+    return std::to_string(count) + ' ' + std::string(what) + (count == 1 ? "" : "s");
+}
+
 /// The parts of the short account, in their order.
 class Account {
 public:
@@ -31,7 +36,11 @@ private:
     void warnings();
     void cautions();
 
-    void balance_rows(PageTable& table, std::string_view where, std::span<const Balance> balances) const;
+    void uplift_of_some_cases();
+    [[nodiscard]] std::string uplift_text(const Uplift& uplift) const;
+    std::size_t balance_rows(PageTable& table, std::string_view where, std::span<const Balance> balances,
+                             bool all) const;
+    bool support_rows(PageTable& table) const;
     /// Joists of one field that read the same stand in one row, under the first one's id.
     struct Alike {
         std::uint32_t first = 0; ///< member
@@ -53,7 +62,11 @@ private:
     /// A reaction: uplift is named in words.
     [[nodiscard]] std::string reaction(double kilonewtons) const;
     [[nodiscard]] std::string length(double metres) const;
+    /// In m2 or ft2, whatever the document's units; pressures likewise in kN/m2 or lbf/ft2.
     [[nodiscard]] std::string area(double square_metres) const;
+    [[nodiscard]] std::string area_unit() const;
+    [[nodiscard]] std::string area_load(double kilonewtons_per_square_metre) const;
+    [[nodiscard]] std::string area_load_unit() const;
 
     const Takedown& takedown_;
     Scale scale_;

@@ -50,11 +50,11 @@ std::vector<double> weights_of(const Supports& supports) {
 void Account::rundowns() {
     page_.heading("Rundowns, each lift at its foot, " + unit_text(scale_.units, dimension::force));
     PageTable table;
-    table.describe("column, wall", Align::left, id_width);
-    table.describe("level", Align::left, id_width - 4);
-    table.describe(with_unit("area", dimension::area), Align::right, 10);
-    table.describe("in all", Align::right, 10);
-    table.describe("own weight", Align::right, 10);
+    table.names("column, wall", id_width);
+    table.names("level", id_width - 4);
+    table.describe("area, " + area_unit(), Align::right);
+    table.describe("in all", Align::right);
+    table.describe("own weight", Align::right);
     case_headings(table);
     const std::vector<std::size_t> columns = heaviest(weights_of(takedown_.columns));
     const std::vector<std::size_t> walls = heaviest(weights_of(takedown_.walls));
@@ -92,9 +92,9 @@ void Account::lift_rows(PageTable& table, std::string_view id, std::span<const A
 void Account::foundations() {
     page_.heading("Foundations, " + unit_text(scale_.units, dimension::force));
     PageTable table;
-    table.describe("under", Align::left, id_width);
-    table.describe("kind", Align::left, 6);
-    table.describe("at", Align::left, 2 * id_width);
+    table.names("under", id_width);
+    table.describe("kind", Align::left);
+    table.describe("at", Align::left);
     case_headings(table);
     table.values("all");
     std::vector<double> weights;

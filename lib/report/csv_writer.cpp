@@ -1,7 +1,6 @@
 #include "report/csv_writer.hpp"
 
-#include <array>
-#include <charconv>
+#include "report/number_text.hpp"
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -31,12 +30,10 @@ CsvWriter& CsvWriter::text(std::string_view value) {
     return *this;
 }
 
-CsvWriter& CsvWriter::number(double value) {
+CsvWriter& CsvWriter::number(double value, double scale) {
     separate();
-    std::array<char, 32> digits;
-    const auto [end, error] =
-        std::to_chars(digits.data(), digits.data() + digits.size(), value == 0 ? 0.0 : value);
-    buffer_.append(digits.data(), end);
+    NumberBuffer digits;
+    buffer_ += number_text(value, scale, digits);
     return *this;
 }
 

@@ -14,7 +14,8 @@ public:
     explicit CsvWriter(const TextSink& sink) : sink_(sink) {}
 
     CsvWriter& text(std::string_view value);
-    CsvWriter& number(double value);
+    /// An SI value in units of `scale` SI units.
+    CsvWriter& number(double value, double scale = 1);
     void end_row();
     void finish();
 

@@ -1,4 +1,5 @@
 #include "geometry/basic.hpp"
+#include "report/drawing_marks.hpp"
 #include "report/names.hpp"
 #include "report/page.hpp"
 #include "report/region_tints.hpp"
@@ -6,6 +7,7 @@
 #include "report/svg_text.hpp"
 
 #include <runnel/report.hpp>
+#include <runnel/version.hpp>
 
 #include <algorithm>
 #include <array>
@@ -25,18 +27,6 @@ constexpr double small_letter = 10.5;
 constexpr double column_side = 11;
 constexpr double least_gap_for_labels = 14; ///< between joists, or their labels would overlap
 
-struct Tint {
-    std::string_view paper, line;
-    int angle; ///< of the hatching, degrees
-};
-constexpr std::array<Tint, tint_count> tints{{{"#e9eef2", "#7c93a6", 25},
-                                              {"#f4ead9", "#b99a63", 65},
-                                              {"#e6efe1", "#86a678", 115},
-                                              {"#f2e4e1", "#b98579", 155},
-                                              {"#ece6f1", "#9484ab", 5},
-                                              {"#e2efee", "#6fa09c", 90},
-                                              {"#efefe3", "#a3a16a", 45}}};
-
 class LevelDrawing {
 public:
     LevelDrawing(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
@@ -49,6 +39,7 @@ public:
         open_sheet();
         regions();
         decks();
+        grid();
         walls();
         members();
         columns();
@@ -83,10 +74,29 @@ private:
         if (low_.x > high_.x) {
             low_ = high_ = {0, 0};
         }
+        find_grid();
         const double side = std::max(high_.x - low_.x, high_.y - low_.y);
         per_metre_ = side > 0 ? sheet_side / side : 1;
         width_ = std::max((high_.x - low_.x) * per_metre_ + 2 * margin, least_width);
         height_ = (high_.y - low_.y) * per_metre_ + 2 * margin + title_height + scale_bar_height;
+    }
+
+    /// Grid lines as far as they are near the level; they may run on beyond it a little.
+    void find_grid() {
+        constexpr double beyond = 0.06; // of the longer side
+        const double margin_around = beyond * std::max(high_.x - low_.x, high_.y - low_.y);
+        const Point low{low_.x - margin_around, low_.y - margin_around};
+        const Point high{high_.x + margin_around, high_.y + margin_around};
+        for (const GridLine& line : plan_.grid) {
+            const auto part = part_within(line.from, line.to, low, high);
+            if (part && line.from != line.to) {
+                grid_.push_back({line.id, part->first, part->second});
+                low_ = {std::min({low_.x, part->first.x, part->second.x}),
+                        std::min({low_.y, part->first.y, part->second.y})};
+                high_ = {std::max({high_.x, part->first.x, part->second.x}),
+                         std::max({high_.y, part->first.y, part->second.y})};
+            }
+        }
     }
 
     /// North is up: y turns round.
@@ -97,37 +107,21 @@ private:
     void open_sheet() {
         svg_.add("<svg xmlns=\"http://www.w3.org/2000/svg\" viewBox=\"0 0 ").number(width_).add(" ");
         svg_.number(height_).add("\" width=\"").number(width_).add("\" height=\"").number(height_);
-        svg_.add("\" font-family=\"sans-serif\" font-size=\"").number(letter).add("\">\n<title>");
-        svg_.text(plan_.title).add(plan_.title.empty() ? "" : ": ").text(level_.id).add("</title>\n<defs>\n");
-        for (std::size_t t = 0; t < tints.size(); ++t) {
-            svg_.add("<pattern id=\"tint").count(t).add("\" width=\"7\" height=\"7\" patternUnits=\"");
-            svg_.add("userSpaceOnUse\" patternTransform=\"rotate(")
-                .count(static_cast<std::size_t>(tints[t].angle));
-            svg_.add(")\"><rect width=\"7\" height=\"7\" fill=\"").add(tints[t].paper);
-            svg_.add("\"/><line x1=\"0\" y1=\"0\" x2=\"7\" y2=\"0\" stroke=\"").add(tints[t].line);
-            svg_.add("\" stroke-width=\"0.9\"/></pattern>\n");
-        }
-        svg_.add("</defs>\n<style>\n"
-                 ".region{stroke:#5d6b75;stroke-width:.6;fill-rule:evenodd}\n"
-                 ".deck{fill:none;stroke:#39434b;stroke-width:1.2;stroke-dasharray:9 4}\n"
-                 ".opening{fill:#fff;stroke:#39434b;stroke-width:1}\n"
-                 ".cross{stroke:#39434b;stroke-width:.8}\n"
-                 ".member{stroke:#12303f;stroke-linecap:butt}\n"
-                 ".joist{stroke-width:1.1}.beam{stroke-width:2.6}.girder{stroke-width:4.4}\n"
-                 ".wall{stroke:#4a3b30;stroke-width:9;stroke-opacity:.75}\n"
-                 ".column{fill:#8c1c13;stroke:#fff;stroke-width:1}\n"
-                 ".label{fill:#12303f;text-anchor:middle;paint-order:stroke;stroke:#fff;stroke-width:3.2;"
-                 "stroke-linejoin:round}\n"
-                 ".of-column{fill:#8c1c13;text-anchor:start}.of-deck{font-style:italic;fill:#39434b}\n"
-                 "</style>\n<rect width=\"100%\" height=\"100%\" fill=\"#fff\"/>\n");
+        svg_.add("\" font-family=\"sans-serif\" font-size=\"").number(letter).add("\">\n");
+        // Tells the program's own drawings from others.
+        svg_.add("<!-- runnel ").add(version()).add(" -->\n<title>");
+        svg_.text(plan_.title).add(plan_.title.empty() ? "" : ": ").text(level_.id).add("</title>\n");
+        drawing_style(svg_);
+        svg_.add("<rect width=\"100%\" height=\"100%\" fill=\"#fff\"/>\n");
         svg_.add("<text x=\"")
             .number(margin)
             .add("\" y=\"")
             .number(margin * 0.75)
             .add("\" font-size=\"18\">");
-        constexpr std::size_t longest = 80;
-        svg_.text(fit(plan_.title, longest)).add(plan_.title.empty() ? "" : ", ");
-        svg_.text(fit(level_.id, longest / 2)).add("</text>\n");
+        const std::string title = plan_.title.empty() ? level_.id : level_.id + ": " + plan_.title;
+        constexpr double letter_width = 11; // at 18
+        svg_.text(fit(title, static_cast<std::size_t>((width_ - 2 * margin) / letter_width)))
+            .add("</text>\n");
     }
 
     void ring_path(const Ring& ring) {
@@ -188,6 +182,26 @@ private:
         svg_.add("\" y2=\"").number(b.y).add("\"");
     }
 
+    /// A thin line of dashes and dots, with its id in a ring beyond its `from` end.
+    void grid() {
+        constexpr double radius = 12;
+        constexpr std::size_t longest = 5; // characters in the ring
+        svg_.add("<g>\n");
+        for (const GridPart& part : grid_) {
+            svg_.add("<line class=\"grid\" data-id=\"").text(part.id).add("\"");
+            line(part.from, part.to);
+            svg_.add("/>\n");
+            const Point end = on_sheet(part.from);
+            const Point run = on_sheet(part.to) - end;
+            const Point ring = end - (radius / norm(run)) * run;
+            svg_.add("<circle class=\"grid-mark\" cx=\"").number(ring.x).add("\" cy=\"").number(ring.y);
+            svg_.add("\" r=\"").number(radius).add("\"/>\n");
+            label({ring.x, ring.y + 0.35 * small_letter}, 0, fit(part.id, longest), "label of-grid",
+                  small_letter);
+        }
+        svg_.add("</g>\n");
+    }
+
     void walls() {
         svg_.add("<g>\n");
         for (const std::uint32_t w : level_.walls) {
@@ -231,6 +245,9 @@ private:
     void labels() {
         svg_.add("<g>\n");
         for (const FramedDeck& deck : level_.decks) {
+            if (deck.span == SpanKind::one_way) {
+                span_arrow(deck);
+            }
             label(label_place(deck), 0, deck.id, "label of-deck", letter);
         }
         for (const FramedMember& member : level_.members) {
@@ -244,8 +261,9 @@ private:
         }
         for (const std::uint32_t c : level_.columns) {
             Point p = on_sheet(plan_.columns[c].at);
-            label({p.x + column_side, p.y + column_side * 1.7}, 0, plan_.columns[c].id, "label of-column",
-                  letter);
+            const double half_width = 0.5 * label_width(plan_.columns[c].id, letter);
+            label({p.x + column_side + half_width, p.y + column_side * 1.7}, 0, plan_.columns[c].id,
+                  "label of-column", letter);
         }
         svg_.add("</g>\n");
     }
@@ -268,6 +286,26 @@ private:
         return on_sheet({low.x + aside * (high.x - low.x), low.y + aside * (high.y - low.y)});
     }
 
+    /// Along the strips, below the deck's label.
+    void span_arrow(const FramedDeck& deck) {
+        constexpr double longest = 24;
+        constexpr double share = 0.15; // of the deck's shorter side
+        const Ring& ring = deck.outline;
+        const auto by_x = [](Point a, Point b) { return a.x < b.x; };
+        const auto by_y = [](Point a, Point b) { return a.y < b.y; };
+        const auto [left, right] = std::minmax_element(ring.begin(), ring.end(), by_x);
+        const auto [bottom, top] = std::minmax_element(ring.begin(), ring.end(), by_y);
+        const double side = std::min(right->x - left->x, top->y - bottom->y) * per_metre_;
+        const double half_length = std::min(longest, share * side);
+        const double angle = deck.direction * std::acos(0.0) / 90;
+        const Point along{std::cos(angle), -std::sin(angle)};
+        const Point at = label_place(deck);
+        const double below = 0.6 * letter + half_length * std::abs(along.y);
+        svg_.add("<path class=\"span\" data-deck=\"").text(deck.id).add("\" d=\"");
+        double_arrow(svg_, {at.x, at.y + below}, along, half_length);
+        svg_.add("\"/>\n");
+    }
+
     void label_along(Point from, Point to, std::string_view id, double size) {
         constexpr double lift = 5; // clear of the line
         const Point a = on_sheet(from);
@@ -286,15 +324,28 @@ private:
               size);
     }
 
+    static constexpr std::size_t longest_label = 24; ///< columns
+
+    /// About: letters differ.
+    [[nodiscard]] static double label_width(std::string_view id, double size) {
+        constexpr double of_letter = 0.62;
+        return of_letter * size * static_cast<double>(columns_of(fit(id, longest_label)));
+    }
+
+    /// `at`: the middle of the line that the letters stand on.
     void label(Point at, double angle, std::string_view id, std::string_view css_class, double size) {
+        const double width = label_width(id, size);
+        // The letters' middle lies above the line they stand on.
+        constexpr double rise_of_middle = 0.35;
+        const Point rise{rise_of_middle * size * std::sin(angle), -rise_of_middle * size * std::cos(angle)};
+        at = kept_on_sheet(at + rise, width, size, angle, {width_, height_}) - rise;
         svg_.add("<text class=\"").add(css_class).add("\" x=\"").number(at.x).add("\" y=\"").number(at.y);
         svg_.add("\" font-size=\"").number(size).add("\"");
         if (angle != 0) {
             svg_.add(" transform=\"rotate(").number(angle * 90 / std::acos(0.0)).add(" ").number(at.x);
             svg_.add(" ").number(at.y).add(")\"");
         }
-        constexpr std::size_t longest = 24;
-        svg_.add(">").text(fit(id, longest)).add("</text>\n");
+        svg_.add(">").text(fit(id, longest_label)).add("</text>\n");
     }
 
     /// A round length of about a fifth of the drawing.
@@ -319,6 +370,11 @@ private:
     Names names_;
     Scale scale_;
     SvgText svg_;
+    struct GridPart {
+        std::string_view id;
+        Point from, to;
+    };
+    std::vector<GridPart> grid_;
     Point low_, high_;
     double per_metre_ = 1;
     double width_ = 0, height_ = 0;

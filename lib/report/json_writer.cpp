@@ -1,9 +1,8 @@
 #include "report/json_writer.hpp"
 
+#include "report/number_text.hpp"
 #include "report/utf8.hpp"
 
-#include <array>
-#include <charconv>
 #include <cmath>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -52,16 +51,14 @@ JsonWriter& JsonWriter::text(std::string_view value) {
     return *this;
 }
 
-JsonWriter& JsonWriter::number(double value) {
+JsonWriter& JsonWriter::number(double value, double scale) {
     before_value();
     if (!std::isfinite(value)) {
         buffer_ += "null"; // JSON has no word for it; no engine that keeps its laws gives one
         return *this;
     }
-    std::array<char, 32> digits;
-    const auto [end, error] =
-        std::to_chars(digits.data(), digits.data() + digits.size(), value == 0 ? 0.0 : value);
-    buffer_.append(digits.data(), end);
+    NumberBuffer digits;
+    buffer_ += number_text(value, scale, digits);
     return *this;
 }
 
@@ -77,8 +74,8 @@ JsonWriter& JsonWriter::truth(bool value) {
     return *this;
 }
 
-JsonWriter& JsonWriter::pair(double first, double second) {
-    return open_array().number(first).number(second).close_array();
+JsonWriter& JsonWriter::pair(double first, double second, double scale) {
+    return open_array().number(first, scale).number(second, scale).close_array();
 }
 
 void JsonWriter::finish() {

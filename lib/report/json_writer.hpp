@@ -11,8 +11,8 @@ RUNNEL_NAMESPACE_BEGIN
 
 /// Writes JSON (RFC 8259, UTF-8) as it goes, without holding the document: text is handed on in large parts.
 ///
-/// Numbers are the shortest text that reads back to the same double; text that is not UTF-8 gets U+FFFD for
-/// each byte that is wrong. Call finish() at the end.
+/// Numbers are the shortest text that reads back to the same double (see number_text); text that is not UTF-8
+/// gets U+FFFD for each byte that is wrong. Call finish() at the end.
 class JsonWriter {
 public:
     /// An object or array either stands on one line or has each of its entries on a line of its own.
@@ -26,11 +26,12 @@ public:
     JsonWriter& close_array() { return close(']'); }
     JsonWriter& key(std::string_view name);
     JsonWriter& text(std::string_view value);
-    JsonWriter& number(double value);
+    /// An SI value in units of `scale` SI units.
+    JsonWriter& number(double value, double scale = 1);
     JsonWriter& count(std::uint64_t value);
     JsonWriter& truth(bool value);
     /// Two numbers in an array.
-    JsonWriter& pair(double first, double second);
+    JsonWriter& pair(double first, double second, double scale = 1);
 
     void finish();
 

@@ -121,6 +121,27 @@ std::string figure(double value, int decimals) {
     return result;
 }
 
+std::string three_figures(double value) {
+    constexpr double widest = 1e6; // beyond these in powers of ten
+    constexpr double finest = 1e-4;
+    constexpr int after_the_first = 2;
+    if (value == 0) {
+        return "0";
+    }
+    std::array<char, 32> digits;
+    const auto text = [&](std::chars_format format, int precision) {
+        const auto [end, error] =
+            std::to_chars(digits.data(), digits.data() + digits.size(), value, format, precision);
+        return std::string(digits.data(), end);
+    };
+    const std::string rounded = text(std::chars_format::scientific, after_the_first);
+    if (!(std::abs(value) < widest) || std::abs(value) < finest) {
+        return rounded;
+    }
+    const int exponent = std::stoi(rounded.substr(rounded.find('e') + 1));
+    return text(std::chars_format::fixed, std::max(0, after_the_first - exponent));
+}
+
 void Page::styled(std::string_view style, std::string_view text, std::size_t indent) {
     std::string out(indent, ' ');
     const std::string body = fit(text, page_width - indent);
@@ -175,24 +196,31 @@ void Page::paragraph(std::string_view text, std::size_t indent) {
     end_line();
 }
 
-void PageTable::describe(std::string_view heading, Align align, std::size_t most) {
-    columns_.push_back({std::string(heading), align, most});
+void PageTable::names(std::string_view heading, std::size_t most) {
+    columns_.push_back({std::string(heading), Align::left, most});
+    ++describing_;
+}
+
+void PageTable::describe(std::string_view heading, Align align) {
+    columns_.push_back({std::string(heading), align, 0});
     ++describing_;
 }
 
 void PageTable::values(std::string_view heading) {
     constexpr std::size_t most = 16; // ten characters of a number and a word
-    columns_.push_back({fit(heading, most), Align::right, most});
+    columns_.push_back({fit(heading, most), Align::right, 0});
 }
 
 void PageTable::add_row(std::vector<std::string> cells) {
     for (std::size_t c = 0; c < cells.size(); ++c) {
-        cells[c] = fit(cells[c], columns_[c].most);
+        cells[c] = columns_[c].most > 0 ? fit(cells[c], columns_[c].most) : printable(cells[c]);
     }
     rows_.push_back(std::move(cells));
 }
 
-std::vector<std::size_t> PageTable::widths() const {
+/// What the columns take; where describing columns and the widest one of values do not fit the page together,
+/// the widest names give way.
+std::vector<std::size_t> PageTable::widths(std::size_t indent) const {
     std::vector<std::size_t> widths;
     for (const Column& column : columns_) {
         widths.push_back(columns_of(column.heading));
@@ -202,11 +230,28 @@ std::vector<std::size_t> PageTable::widths() const {
             widths[c] = std::max(widths[c], columns_of(row[c]));
         }
     }
+    const auto values = widths.begin() + static_cast<std::ptrdiff_t>(describing_);
+    std::size_t needed = indent + (values == widths.end() ? 0 : *std::max_element(values, widths.end()));
+    for (std::size_t c = 0; c < describing_; ++c) {
+        needed += widths[c] + gap;
+    }
+    for (; needed > page_width; --needed) {
+        std::size_t widest = columns_.size();
+        for (std::size_t c = 0; c < describing_; ++c) {
+            if (columns_[c].most > 0 && (widest == columns_.size() || widths[c] > widths[widest])) {
+                widest = c;
+            }
+        }
+        if (widest == columns_.size() || widths[widest] <= 1) {
+            break;
+        }
+        --widths[widest];
+    }
     return widths;
 }
 
 void PageTable::print(Page& page, std::size_t indent) const {
-    const std::vector<std::size_t> all = widths();
+    const std::vector<std::size_t> all = widths(indent);
     std::size_t next = describing_;
     do {
         std::vector<std::size_t> chosen;
@@ -229,19 +274,28 @@ void PageTable::print(Page& page, std::size_t indent) const {
 
 void PageTable::print_columns(Page& page, std::size_t indent, const std::vector<std::size_t>& chosen,
                               const std::vector<std::size_t>& widths) const {
+    std::vector<std::string> headings;
+    for (const Column& column : columns_) {
+        headings.push_back(column.heading);
+    }
+    print_line(page, indent, chosen, widths, headings);
+    for (const std::vector<std::string>& row : rows_) {
+        print_line(page, indent, chosen, widths, row);
+    }
+}
+
+void PageTable::print_line(Page& page, std::size_t indent, const std::vector<std::size_t>& chosen,
+                           const std::vector<std::size_t>& widths,
+                           const std::vector<std::string>& cells) const {
     std::string text;
     for (const std::size_t c : chosen) {
-        text += padded(columns_[c].heading, widths[c], columns_[c].align) + std::string(gap, ' ');
+        if (c != chosen.front()) {
+            text += std::string(gap, ' ');
+        }
+        const std::string cell = c < cells.size() ? cells[c] : std::string{};
+        text += padded(columns_[c].most > 0 ? fit(cell, widths[c]) : cell, widths[c], columns_[c].align);
     }
     page.line(text, indent);
-    for (const std::vector<std::string>& row : rows_) {
-        text.clear();
-        for (const std::size_t c : chosen) {
-            text += padded(c < row.size() ? row[c] : std::string{}, widths[c], columns_[c].align) +
-                    std::string(gap, ' ');
-        }
-        page.line(text, indent);
-    }
 }
 
 RUNNEL_NAMESPACE_END

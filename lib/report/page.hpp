@@ -24,6 +24,9 @@ inline constexpr std::size_t page_width = 100; ///< columns that no line of text
 /// characters.
 [[nodiscard]] std::string figure(double value, int decimals);
 
+/// A number for reading to three significant figures; whole ones are not rounded to tens.
+[[nodiscard]] std::string three_figures(double value);
+
 /// A page of text: headings, paragraphs broken at spaces, tables. No line is wider than the page.
 class Page {
 public:
@@ -44,13 +47,16 @@ private:
 };
 
 /// A table for reading. Columns that describe the row stand on the left; those of values come after them and
-/// are broken into several tables, one below the other, where the page is too narrow.
+/// are broken into several tables, one below the other, where the page is too narrow. Names may be shortened
+/// to fit, numbers never are.
 class PageTable {
 public:
     enum class Align : bool { left, right };
 
-    /// `most`: columns that the cells may take.
-    void describe(std::string_view heading, Align align, std::size_t most);
+    /// A describing column of ids; `most`: columns that they may take.
+    void names(std::string_view heading, std::size_t most);
+    /// A describing column of numbers or of words that are never shortened.
+    void describe(std::string_view heading, Align align);
     void values(std::string_view heading);
     void add_row(std::vector<std::string> cells);
     void print(Page& page, std::size_t indent) const;
@@ -59,11 +65,13 @@ private:
     struct Column {
         std::string heading;
         Align align;
-        std::size_t most;
+        std::size_t most; ///< that names may take; 0: numbers, which take what they need
     };
-    [[nodiscard]] std::vector<std::size_t> widths() const;
+    [[nodiscard]] std::vector<std::size_t> widths(std::size_t indent) const;
     void print_columns(Page& page, std::size_t indent, const std::vector<std::size_t>& chosen,
                        const std::vector<std::size_t>& widths) const;
+    void print_line(Page& page, std::size_t indent, const std::vector<std::size_t>& chosen,
+                    const std::vector<std::size_t>& widths, const std::vector<std::string>& cells) const;
 
     std::vector<Column> columns_;
     std::size_t describing_ = 0;

@@ -19,7 +19,7 @@ void write_problem(JsonWriter& json, const Problem& problem, const Scale& scale,
     json.key("line").count(problem.line);
     json.key("column").count(problem.column);
     if (problem.point) {
-        json.key("point").pair(problem.point->x / scale.length, problem.point->y / scale.length);
+        json.key("point").pair(problem.point->x, problem.point->y, scale.length);
     }
     json.key("ids").open_array();
     for (const std::string& id : problem.ids) {

@@ -4,6 +4,8 @@
 
 #include <runnel/report.hpp>
 
+#include <vector>
+
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
@@ -34,11 +36,26 @@ std::string_view style_of(Severity severity) {
     return {};
 }
 
+/// What stops the work first; within a severity as they came.
+std::vector<const Problem*> by_severity(std::span<const Problem> problems) {
+    std::vector<const Problem*> sorted;
+    sorted.reserve(problems.size());
+    for (const Severity severity : {Severity::error, Severity::warning, Severity::note}) {
+        for (const Problem& problem : problems) {
+            if (problem.severity == severity) {
+                sorted.push_back(&problem);
+            }
+        }
+    }
+    return sorted;
+}
+
 } // namespace
 
 void write_problems(std::span<const Problem> problems, std::string_view file, Units units, bool colour,
                     const TextSink& sink) {
-    for (const Problem& problem : problems) {
+    for (const Problem* const next : by_severity(problems)) {
+        const Problem& problem = *next;
         std::string text;
         if (colour) {
             text += style_of(problem.severity);

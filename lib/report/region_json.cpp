@@ -14,10 +14,10 @@ using Layout = JsonWriter::Layout;
 void write_ring(JsonWriter& json, const Ring& ring, const Scale& scale, bool closed) {
     json.open_array();
     for (const Point& point : ring) {
-        json.pair(point.x / scale.length, point.y / scale.length);
+        json.pair(point.x, point.y, scale.length);
     }
     if (closed && !ring.empty()) {
-        json.pair(ring.front().x / scale.length, ring.front().y / scale.length);
+        json.pair(ring.front().x, ring.front().y, scale.length);
     }
     json.close_array();
 }
@@ -109,7 +109,7 @@ private:
             json_.key("deck").text(framing_.levels[level].decks[region.deck].id);
             json_.key("carrier").text(names_.carrier(level, carrier));
             json_.key("kind").text(Names::kind(carrier.kind));
-            json_.key("area").number(region.area / scale_.area);
+            json_.key("area").number(region.area, scale_.area);
             json_.close_object();
             json_.key("geometry").open_object();
             json_.key("type").text("MultiPolygon");
@@ -142,8 +142,8 @@ void write_region(JsonWriter& json, const Region& region, const Sharing& sharing
     json.key("deck").text(framing.levels[level].decks[region.deck].id);
     json.key("carrier").text(names.carrier(level, carrier));
     json.key("kind").text(Names::kind(carrier.kind));
-    json.key("area").number(region.area / scale.area);
-    json.key("centroid").pair(region.centroid.x / scale.length, region.centroid.y / scale.length);
+    json.key("area").number(region.area, scale.area);
+    json.key("centroid").pair(region.centroid.x, region.centroid.y, scale.length);
     json.key("rings").open_array();
     for (const Ring& ring : region.rings) {
         write_ring(json, ring, scale, false);

@@ -65,8 +65,8 @@ void ResultWriter::settings() {
     const Settings& settings = takedown_.plan.settings;
     json_.key("settings").open_object();
     json_.key("share").text(name_of(settings.share));
-    json_.key("snap").number(settings.snap / scale_.length);
-    json_.key("ground_elevation").number(settings.ground_elevation / scale_.length);
+    json_.key("snap").number(settings.snap, scale_.length);
+    json_.key("ground_elevation").number(settings.ground_elevation, scale_.length);
     if (takedown_.self_weight_case < takedown_.plan.cases.size()) {
         json_.key("self_weight_case").text(case_id(takedown_.self_weight_case));
     } else if (!settings.self_weight_case.empty()) {
@@ -113,10 +113,10 @@ void ResultWriter::uplift() {
                 names_.carrier_anywhere(uplift.level, {CarrierKind::member, uplift.member}));
             json_.key("on").text(names_.carrier_anywhere(uplift.level, uplift.on));
             json_.key("level").text(takedown_.framing.levels[uplift.level].id);
-            json_.key("station").number(bearings[uplift.bearing].station / scale_.length);
+            json_.key("station").number(bearings[uplift.bearing].station, scale_.length);
         }
         json_.key("combination").text("all");
-        json_.key("value").number(uplift.value / scale_.force);
+        json_.key("value").number(uplift.value, scale_.force);
         json_.close_object();
     }
     json_.close_array();
@@ -127,10 +127,10 @@ void ResultWriter::balances(std::span<const Balance> balances, bool per_area) {
     for (const Balance& balance : balances) {
         json_.open_object();
         json_.key("case").text(case_id(balance.load_case));
-        json_.key("applied").number(balance.applied.force / scale_.force);
-        json_.key("shared").number(balance.shared.force / scale_.force);
-        json_.key("arrived").number(balance.arrived.force / scale_.force);
-        json_.key("difference").number(balance.difference / scale_.force);
+        json_.key("applied").number(balance.applied.force, scale_.force);
+        json_.key("shared").number(balance.shared.force, scale_.force);
+        json_.key("arrived").number(balance.arrived.force, scale_.force);
+        json_.key("difference").number(balance.difference, scale_.force);
         json_.key("applied_moment");
         moment(balance.applied.moment);
         json_.key("shared_moment");
@@ -141,7 +141,7 @@ void ResultWriter::balances(std::span<const Balance> balances, bool per_area) {
         moment(balance.moment_difference);
         json_.key("closes").truth(balance.closes);
         if (per_area && balance.area > 0) {
-            json_.key("per_area").number(balance.applied.force / balance.area / scale_.area_load);
+            json_.key("per_area").number(balance.applied.force / balance.area, scale_.area_load);
         }
         json_.close_object();
     }
@@ -151,17 +151,17 @@ void ResultWriter::balances(std::span<const Balance> balances, bool per_area) {
 void ResultWriter::by_case(std::span<const double> values, double scale) {
     json_.open_object();
     for (std::uint32_t c = 0; c < values.size(); ++c) {
-        json_.key(case_id(c)).number(values[c] / scale);
+        json_.key(case_id(c)).number(values[c], scale);
     }
     json_.close_object();
 }
 
 void ResultWriter::point(Point point) {
-    json_.pair(point.x / scale_.length, point.y / scale_.length);
+    json_.pair(point.x, point.y, scale_.length);
 }
 
 void ResultWriter::moment(Point moment) {
-    json_.pair(moment.x / scale_.moment, moment.y / scale_.moment);
+    json_.pair(moment.x, moment.y, scale_.moment);
 }
 
 RUNNEL_NAMESPACE_END

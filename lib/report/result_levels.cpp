@@ -31,17 +31,17 @@ std::size_t coefficients_of(const LinePiece& piece) {
 } // namespace
 
 void ResultWriter::line_piece(const LinePiece& piece) {
-    json_.key("from").number(piece.from / scale_.length);
-    json_.key("to").number(piece.to / scale_.length);
-    json_.key("start").number(piece.at(piece.from) / scale_.line_load);
-    json_.key("end").number(piece.at(piece.to) / scale_.line_load);
+    json_.key("from").number(piece.from, scale_.length);
+    json_.key("to").number(piece.to, scale_.length);
+    json_.key("start").number(piece.at(piece.from), scale_.line_load);
+    json_.key("end").number(piece.at(piece.to), scale_.line_load);
     const std::size_t coefficients = coefficients_of(piece);
     constexpr std::size_t linear = 2;
     if (coefficients > linear) {
         json_.key("curve").open_array();
         double power = 1;
         for (std::size_t i = 0; i < coefficients; ++i, power *= scale_.length) {
-            json_.number(piece.c[i] * power / scale_.line_load);
+            json_.number(piece.c[i] * power, scale_.line_load);
         }
         json_.close_array();
     }
@@ -59,7 +59,7 @@ void ResultWriter::level(std::uint32_t level) {
     const FramedLevel& framed = takedown_.framing.levels[level];
     json_.open_object(JsonWriter::Layout::block);
     json_.key("id").text(framed.id);
-    json_.key("elevation").number(framed.elevation / scale_.length);
+    json_.key("elevation").number(framed.elevation, scale_.length);
     json_.key("balance");
     balances(takedown_.level_balance[level], true);
     decks(level);
@@ -77,7 +77,7 @@ void ResultWriter::decks(std::uint32_t level) {
         json_.key("id").text(framed.decks[d].id);
         json_.key("span").text(name_of(framed.decks[d].span));
         json_.key("share").text(name_of(framed.decks[d].share));
-        json_.key("area").number(sharing.deck_area[d] / scale_.area);
+        json_.key("area").number(sharing.deck_area[d], scale_.area);
         json_.close_object();
     }
     json_.close_array();
@@ -111,9 +111,9 @@ void ResultWriter::member(std::uint32_t level, std::uint32_t member) {
     point(framed.from);
     json_.key("to");
     point(framed.to);
-    json_.key("length").number(framed.length / scale_.length);
-    json_.key("region_area").number(result.region_area[member] / scale_.area);
-    json_.key("tributary_area").number(result.tributary_area[member] / scale_.area);
+    json_.key("length").number(framed.length, scale_.length);
+    json_.key("region_area").number(result.region_area[member], scale_.area);
+    json_.key("tributary_area").number(result.tributary_area[member], scale_.area);
     bearings(level, member);
     loads(level, member);
     spans(level, member);
@@ -130,11 +130,11 @@ void ResultWriter::bearings(std::uint32_t level, std::uint32_t member) {
     for (std::size_t b = 0; b < bearings.size(); ++b) {
         const Bearing& bearing = bearings[b];
         json_.open_object();
-        json_.key("station").number(bearing.station / scale_.length);
+        json_.key("station").number(bearing.station, scale_.length);
         json_.key("on").text(names_.carrier(level, bearing.on));
         json_.key("kind").text(Names::kind(bearing.on.kind));
         if (bearing.on.kind != CarrierKind::column) {
-            json_.key("on_station").number(bearing.on_station / scale_.length);
+            json_.key("on_station").number(bearing.on_station, scale_.length);
         }
         const std::size_t row = (first + b) * cases;
         json_.key("reactions");
@@ -183,14 +183,14 @@ void ResultWriter::loads(std::uint32_t level, std::uint32_t member) {
         for (const CarrierPoint& point : points) {
             if (point.load_case == c) {
                 json_.open_object();
-                json_.key("station").number(point.station / scale_.length);
-                json_.key("p").number(point.p / scale_.force);
+                json_.key("station").number(point.station, scale_.length);
+                json_.key("p").number(point.p, scale_.force);
                 json_.key("source").text(names_.source(level, point.source));
                 json_.close_object();
             }
         }
         json_.close_array();
-        json_.key("total").number(total.value() / scale_.force);
+        json_.key("total").number(total.value(), scale_.force);
         json_.close_object();
         pieces_[c].clear();
     }
@@ -201,8 +201,8 @@ void ResultWriter::spans(std::uint32_t level, std::uint32_t member) {
     json_.key("spans").open_array();
     for (const Span& span : takedown_.levels[level].spans[member]) {
         json_.open_object();
-        json_.key("from").number(span.from / scale_.length);
-        json_.key("to").number(span.to / scale_.length);
+        json_.key("from").number(span.from, scale_.length);
+        json_.key("to").number(span.to, scale_.length);
         json_.key("kind").text(span.overhang ? "overhang" : "span");
         json_.close_object();
     }

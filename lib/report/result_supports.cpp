@@ -22,8 +22,8 @@ void ResultWriter::columns() {
 void ResultWriter::lift(const Lift& lift) {
     json_.open_object();
     json_.key("level").text(takedown_.framing.levels[lift.level].id);
-    json_.key("tributary_area").number(lift.tributary_area / scale_.area);
-    json_.key("area_total").number(lift.area_total / scale_.area);
+    json_.key("tributary_area").number(lift.tributary_area, scale_.area);
+    json_.key("area_total").number(lift.area_total, scale_.area);
     json_.key("floors").count(lift.floors);
     json_.key("added");
     by_case(lift.added, scale_.force);
@@ -32,11 +32,11 @@ void ResultWriter::lift(const Lift& lift) {
         json_.open_object();
         json_.key("source").text(names_.source_anywhere(lift.level, load.source));
         json_.key("case").text(case_id(load.load_case));
-        json_.key("p").number(load.p / scale_.force);
+        json_.key("p").number(load.p, scale_.force);
         json_.close_object();
     }
     json_.close_array();
-    json_.key("self_weight").number(lift.self_weight / scale_.force);
+    json_.key("self_weight").number(lift.self_weight, scale_.force);
     json_.key("total");
     by_case(lift.total, scale_.force);
     json_.close_object();
@@ -51,10 +51,10 @@ void ResultWriter::walls() {
         for (const WallLift& lift : takedown_.walls[i].lifts) {
             json_.open_object();
             json_.key("level").text(takedown_.framing.levels[lift.level].id);
-            json_.key("tributary_area").number(lift.tributary_area / scale_.area);
-            json_.key("area_total").number(lift.area_total / scale_.area);
+            json_.key("tributary_area").number(lift.tributary_area, scale_.area);
+            json_.key("area_total").number(lift.area_total, scale_.area);
             json_.key("floors").count(lift.floors);
-            json_.key("self_weight").number(lift.self_weight / scale_.force);
+            json_.key("self_weight").number(lift.self_weight, scale_.force);
             json_.key("total");
             by_case(lift.total, scale_.force);
             wall_lines_and_points(lift);
@@ -78,8 +78,8 @@ void ResultWriter::wall_lines_and_points(const WallLift& lift) {
     for (const CarrierPoint& point : lift.point) {
         json_.open_object();
         json_.key("case").text(case_id(point.load_case));
-        json_.key("station").number(point.station / scale_.length);
-        json_.key("p").number(point.p / scale_.force);
+        json_.key("station").number(point.station, scale_.length);
+        json_.key("p").number(point.p, scale_.force);
         json_.key("source").text(names_.source_anywhere(lift.level, point.source));
         json_.close_object();
     }

@@ -57,8 +57,8 @@ private:
         csv_.text(framed.id).text(member.id).text(name_of(member.role));
         point(member.from);
         point(member.to);
-        csv_.number(member.length / scale_.length);
-        csv_.number(result.region_area[m] / scale_.area).number(result.tributary_area[m] / scale_.area);
+        csv_.number(member.length, scale_.length);
+        csv_.number(result.region_area[m], scale_.area).number(result.tributary_area[m], scale_.area);
         csv_.number(static_cast<double>(framed.bearings[m].size()));
         std::vector<Sum> totals(cases_);
         for (const CarrierLine& line : result.lines[m]) {
@@ -68,7 +68,7 @@ private:
             totals[one.load_case].add(one.p);
         }
         for (const Sum& total : totals) {
-            csv_.number(total.value() / scale_.force);
+            csv_.number(total.value(), scale_.force);
         }
         csv_.end_row();
     }
@@ -110,12 +110,12 @@ private:
         const Bearing& bearing = framed.bearings[member][b];
         const std::size_t row = (framed.bearings.first(member) + b) * cases_;
         csv_.text(framed.id).text(framed.members[member].id).number(static_cast<double>(b + 1));
-        csv_.number(bearing.station / scale_.length);
+        csv_.number(bearing.station, scale_.length);
         csv_.text(names_.carrier(level, bearing.on)).text(Names::kind(bearing.on.kind));
         if (bearing.on.kind == CarrierKind::column) {
             csv_.text("");
         } else {
-            csv_.number(bearing.on_station / scale_.length);
+            csv_.number(bearing.on_station, scale_.length);
         }
         point(bearing.at);
         const std::span<const double> values = std::span(result.reactions).subspan(row, cases_);
@@ -161,8 +161,8 @@ private:
     template <class AnyLift>
     void lift_start(std::string_view id, CarrierKind kind, const AnyLift& lift) {
         csv_.text(id).text(Names::kind(kind)).text(takedown_.framing.levels[lift.level].id);
-        csv_.number(lift.tributary_area / scale_.area).number(lift.area_total / scale_.area);
-        csv_.number(lift.floors).number(lift.self_weight / scale_.force);
+        csv_.number(lift.tributary_area, scale_.area).number(lift.area_total, scale_.area);
+        csv_.number(lift.floors).number(lift.self_weight, scale_.force);
     }
 
     template <class AnyLift>
@@ -177,7 +177,7 @@ private:
         for (std::size_t c = 0; c < cases_; ++c) {
             const double own = c == takedown_.self_weight_case ? lift.self_weight : 0;
             const double before = above != nullptr ? above->total[c] : 0;
-            csv_.number((lift.total[c] - before - own) / scale_.force);
+            csv_.number(lift.total[c] - before - own, scale_.force);
         }
     }
 
@@ -202,7 +202,7 @@ private:
             for (const double value : foundation.reactions) {
                 all.add(value);
             }
-            csv_.number(all.value() / scale_.force);
+            csv_.number(all.value(), scale_.force);
             note(foundation.reactions);
             csv_.end_row();
         }
@@ -226,10 +226,10 @@ private:
             heading(std::string(before) + load_case.id, dimension);
         }
     }
-    void point(Point p) { csv_.number(p.x / scale_.length).number(p.y / scale_.length); }
+    void point(Point p) { csv_.number(p.x, scale_.length).number(p.y, scale_.length); }
     void numbers(std::span<const double> values, double scale) {
         for (const double value : values) {
-            csv_.number(value / scale);
+            csv_.number(value, scale);
         }
     }
     /// Names the cases that lift.

@@ -52,7 +52,7 @@ TEST_CASE("a table that is too wide goes on below, with its describing columns a
     const std::string text = written([](const TextSink& sink) {
         Page page(false, sink);
         PageTable table;
-        table.describe("member", PageTable::Align::left, 20);
+        table.names("member", 20);
         for (int i = 0; i < 30; ++i) {
             table.values("case " + std::to_string(i));
         }
