@@ -86,15 +86,74 @@ class Statuses(unittest.TestCase):
 
     def test_what_is_not_built_yet_says_so(self):
         for arguments in (["frame", "f.json"], ["explain", "p.json", "G1"], ["compare", "a.json", "b.json"]):
-            done = self.status(1, *arguments)
+            done = self.status(2, *arguments)
             self.assertEqual(done.stdout, b"")
-            self.assertIn(b"not-supported-yet", done.stderr)
+            self.assertIn(b"is not built yet", done.stderr)
             self.assertEqual(done.stderr.count(b"\n"), 1)
+
+    def test_too_many_plans_are_refused_in_plain_words(self):
+        done = self.status(2, "takedown", sample("shelter"), sample("workshop"))
+        self.assertIn(b"one PLAN is wanted, and more are given", done.stderr)
+        self.assertIn(b"--format wants one value", self.status(2, "takedown", sample("shelter"), "--format").stderr)
 
     def test_a_mistyped_word_gets_the_nearest(self):
         self.assertIn(b'did you mean "takedown"?', self.status(2, "takdown", sample("shelter")).stderr)
         self.assertIn(b"did you mean --format?", self.status(2, "takedown", sample("shelter"), "--fromat", "json").stderr)
         self.assertIn(b'did you mean "roof"?', self.status(2, "regions", sample("shelter"), "--level", "rof").stderr)
+
+
+class OnePass(unittest.TestCase):
+    """Mistakes of the text beside mistakes of the building."""
+
+    def problems(self, plan, command="check", *more):
+        done = runnel(command, "-", "--format", "json", *more, text=as_text(plan))
+        self.assertEqual(done.returncode, 1, done.stderr)
+        document = json.loads(done.stdout)
+        self.assertNotIn("foundations", document)
+        return document["problems"]
+
+    def test_a_typo_does_not_hide_a_missing_column(self):
+        plan = plan_of("shelter")
+        plan["columns"].pop()
+        plan["levels"][0]["colour"] = "red"
+        for command in ("check", "takedown"):
+            found = self.problems(plan, command)
+            self.assertTrue({"unknown-key", "too-few-bearings"} <= {problem["code"] for problem in found})
+            places = [(problem["line"], problem["column"]) for problem in found if problem["line"]]
+            self.assertEqual(places, sorted(places))
+        text = runnel("check", "-", text=as_text(plan)).stdout
+        self.assertNotIn(b"are not checked until", text)
+
+    def test_nor_does_a_missing_dead_case(self):
+        plan = shelter_without("columns")
+        plan["cases"] = plan["cases"][1:]
+        codes = {problem["code"] for problem in self.problems(plan)}
+        self.assertTrue({"no-dead-case", "too-few-bearings"} <= codes)
+
+    def test_what_is_not_supported_is_said_once(self):
+        plan = plan_of("shelter")
+        plan["levels"][0]["decks"][0]["share"] = "lever"
+        self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
+        plan = plan_of("shelter")
+        plan["settings"] = {"share": "lever"}
+        self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
+
+    def test_where_values_are_missing_framing_waits_and_says_so(self):
+        plan = shelter_without("columns")
+        plan["levels"][0]["area_loads"][0]["q"] = "much"
+        line = b"Framing and loads are not checked until these are mended.\n"
+        done = runnel("check", "-", text=as_text(plan))
+        self.assertNotIn(b"too-few-bearings", done.stdout)
+        self.assertTrue(done.stdout.endswith(line))
+        self.assertTrue(runnel("takedown", "-", text=as_text(plan)).stderr.endswith(line))
+
+    def test_errors_stand_before_notes_in_the_text(self):
+        plan = plan_of("workshop")
+        plan["columns"].pop()
+        done = runnel("check", "-", text=as_text(plan)).stdout.decode()
+        severities = re.findall(r"^(error|warning|note) ", done, re.M)
+        self.assertEqual(severities, sorted(severities, key=["error", "warning", "note"].index))
+        self.assertGreater(len(set(severities)), 1)
 
 
 class Streams(unittest.TestCase):
@@ -205,6 +264,12 @@ class Documents(unittest.TestCase):
         kilonewtons = si["foundations"][0]["reactions"]["snow"]
         self.assertAlmostEqual(us["foundations"][0]["reactions"]["snow"], kilonewtons / 0.0044482216152605, places=9)
         self.assertAlmostEqual(us["levels"][0]["members"][0]["length"], 6 / 0.3048, places=12)
+
+    def test_elevations_in_feet_come_back_as_given(self):
+        plan = plan_of("five-storey")
+        result = json.loads(runnel("takedown", sample("five-storey"), "--format", "json").stdout)
+        self.assertEqual([level["elevation"] for level in result["levels"]],
+                         [level["elevation"] for level in plan["levels"]])
 
     def test_ids_on_several_levels_are_written_with_their_level(self):
         result = json.loads(runnel("takedown", sample("five-storey"), "--format", "json").stdout)
@@ -347,15 +412,31 @@ class Folder(unittest.TestCase):
             self.assertEqual((target / "reactions.csv").read_bytes(),
                              runnel("takedown", sample("workshop"), "--format", "csv").stdout)
 
-    def test_a_plan_with_errors_leaves_its_problems_and_a_word_about_what_is_older(self):
+    def test_a_plan_with_errors_leaves_its_problems_and_nothing_of_earlier_runs(self):
         with tempfile.TemporaryDirectory() as folder:
             self.assertEqual(runnel("takedown", sample("shelter"), "-o", folder).returncode, 0)
             done = runnel("takedown", "-", "-o", folder, text=as_text(BAD_PLAN))
             self.assertEqual(done.returncode, 1)
-            self.assertIn(b"are of an earlier run", done.stderr)
+            self.assertEqual([path.name for path in pathlib.Path(folder).iterdir()], ["result.json"])
             result = json.loads((pathlib.Path(folder) / "result.json").read_text())
             self.assertIn("unknown-key", [problem["code"] for problem in result["problems"]])
             self.assertNotIn("foundations", result)
+
+    def test_only_files_of_its_own_are_removed(self):
+        with tempfile.TemporaryDirectory() as name:
+            folder = pathlib.Path(name)
+            runnel("takedown", sample("workshop"), "-o", folder)
+            others = {"plan-mine.svg": "<svg/>", "notes.txt": "keep", "members.csv.bak": "keep", "plan-floor.png": "keep"}
+            for other, text in others.items():
+                (folder / other).write_text(text)
+            (folder / "plan-roof.svg.d").mkdir()
+            done = runnel("takedown", sample("shelter"), "-o", folder)
+            self.assertIn(b"result.json, members.csv, reactions.csv, rundowns.csv, foundations.csv, plan-roof.svg",
+                          done.stderr)
+            self.assertFalse((folder / "plan-floor.svg").exists())
+            self.assertTrue((folder / "plan-roof.svg.d").is_dir())
+            for other, text in others.items():
+                self.assertEqual((folder / other).read_text(), text)
 
     def test_ids_make_safe_file_names_that_differ(self):
         plan = plan_of("shelter")

@@ -38,7 +38,7 @@ class Readme(unittest.TestCase):
         calls = [words[1:] for words in lines if words and words[0] == "runnel"]
         self.assertGreater(len(calls), 3)
         with tempfile.TemporaryDirectory() as folder:
-            stands_for = {"plan.json": str(sample("workshop")), "FOLDER": folder}
+            stands_for = {"FOLDER": folder}
             for call in calls:
                 done = runnel(*[stands_for.get(word, word) for word in call])
                 self.assertEqual(done.returncode, 0, (call, done.stderr))

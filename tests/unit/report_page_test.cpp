@@ -48,6 +48,16 @@ TEST_CASE("nothing that moves the cursor or turns the reading direction is print
     CHECK(printable("\xFF") == "?");
 }
 
+TEST_CASE("three figures are shown whatever the size, but whole ones stay whole") {
+    CHECK(three_figures(0) == "0");
+    CHECK(three_figures(0.80034) == "0.800");
+    CHECK(three_figures(9.9961) == "10.0");
+    CHECK(three_figures(-57.912) == "-57.9");
+    CHECK(three_figures(1234.4) == "1234");
+    CHECK(three_figures(0.000912) == "0.000912");
+    CHECK(three_figures(3.4e-9) == "3.40e-09");
+}
+
 TEST_CASE("a table that is too wide goes on below, with its describing columns again") {
     const std::string text = written([](const TextSink& sink) {
         Page page(false, sink);

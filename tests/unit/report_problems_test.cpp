@@ -2,6 +2,8 @@
 
 #include <doctest/doctest.h>
 
+#include <algorithm>
+
 using namespace runnel;
 using support::written;
 
@@ -31,6 +33,23 @@ TEST_CASE("a problem says where it is, what is wrong, and what would mend it") {
     CHECK(text == "warning strip-cantilevers  plan.json:12:7, at (10, 0)\n"
                   "  4.2 m2 of deck D lie on one carrier.\n"
                   "  Hint: Is a beam missing?\n");
+}
+
+TEST_CASE("errors come first, then warnings, then notes, each as they came") {
+    std::vector<Problem> problems;
+    for (const Severity severity : {Severity::note, Severity::error, Severity::warning, Severity::error}) {
+        Problem problem = forgotten_beam();
+        problem.severity = severity;
+        problem.line = static_cast<std::uint32_t>(problems.size() + 1);
+        problems.push_back(problem);
+    }
+    const std::string text =
+        written([&](const TextSink& sink) { write_problems(problems, "p", {}, false, sink); });
+    const std::vector<std::size_t> places{
+        text.find("error strip-cantilevers  p:2:"), text.find("error strip-cantilevers  p:4:"),
+        text.find("warning strip-cantilevers  p:3:"), text.find("note strip-cantilevers  p:1:")};
+    CHECK(places.back() != std::string::npos);
+    CHECK(std::is_sorted(places.begin(), places.end()));
 }
 
 TEST_CASE("a problem of a plan built in code is placed by its pointer") {
