@@ -6,6 +6,8 @@
 
 #include <runnel/deck.hpp>
 
+#include <algorithm>
+
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
@@ -79,7 +81,12 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
         find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
     }
-    find_doubtful_members(plan, level, sharing);
+    const bool refused =
+        std::any_of(sharing.problems.begin(), sharing.problems.end(),
+                    [](const Problem& problem) { return problem.code == ProblemCode::not_supported_yet; });
+    if (!refused) { // a deck that gives nothing to anybody would raise doubts about its joists
+        find_doubtful_members(plan, level, sharing);
+    }
     return sharing;
 }
 
