@@ -118,7 +118,7 @@ std::vector<Convex> convex_zone(Ring ring, double noise) {
 namespace {
 
 void add_uniform(std::vector<DeckPressure::Uniform>& uniform, std::uint32_t load_case, double q) {
-    if (q == 0) {
+    if (q == 0 || load_case == none) { // no case: an error already, which read_plan and check_plan have told
         return;
     }
     for (DeckPressure::Uniform& u : uniform) {
@@ -143,6 +143,9 @@ DeckPressure::DeckPressure(const Plan& plan, const FramedLevel& level, std::uint
         const AreaLoad& load = level.area_loads[index];
         Zone zone;
         zone.load_case = case_index(plan, load.case_id);
+        if (zone.load_case == none) {
+            continue;
+        }
         zone.q = load.q;
         zone.everywhere = load.outline.empty();
         if (load.replaces) {

@@ -32,6 +32,9 @@ Point Collector::at(std::uint32_t carrier, double station) const {
 }
 
 void Collector::put_line(std::uint32_t carrier, std::uint32_t deck, const CarrierLine& line) {
+    if (line.load_case == none) {
+        return; // an error already, which read_plan and check_plan have told
+    }
     const double force = line.piece.total();
     const Point moment =
         force * at(carrier, line.piece.from) + line.piece.first_moment() * axes_[carrier].direction;
@@ -40,12 +43,18 @@ void Collector::put_line(std::uint32_t carrier, std::uint32_t deck, const Carrie
 }
 
 void Collector::put_point(std::uint32_t carrier, std::uint32_t deck, const CarrierPoint& point) {
+    if (point.load_case == none) {
+        return;
+    }
     shared_[row(deck, point.load_case)].add(point.p, point.p * at(carrier, point.station), std::abs(point.p));
     points_.emplace_back(carrier, point);
 }
 
 void Collector::applied(std::uint32_t deck, std::uint32_t load_case, double force, Point moment,
                         double magnitude) {
+    if (load_case == none) {
+        return;
+    }
     applied_[row(deck, load_case)].add(force, moment, magnitude);
 }
 
