@@ -312,10 +312,11 @@ private:
         const Point b = on_sheet(to);
         double angle = std::atan2(b.y - a.y, b.x - a.x);
         const double quarter = std::acos(0.0);
+        constexpr double upright = 1e-6; // radians: a vertical line's direction up to rounding
         // Text is read from below or from the right.
-        if (angle > quarter - 1e-6) {
+        if (angle > quarter - upright) {
             angle -= 2 * quarter;
-        } else if (angle <= -quarter - 1e-6) {
+        } else if (angle <= -quarter - upright) {
             angle += 2 * quarter;
         }
         constexpr double clear_of_columns = 0.42; // which stand at halves and thirds

@@ -126,7 +126,8 @@ TEST_CASE("columns count bytes, not characters") {
     const std::string text = plan_with(R"([{"id": "Stra)"
                                        "\u00df"
                                        R"(e", "elevation": true}])");
-    const Problem* problem = find(read_plan(text), ProblemCode::wrong_type);
+    const PlanReading reading = read_plan(text);
+    const Problem* problem = find(reading, ProblemCode::wrong_type);
     REQUIRE(problem != nullptr);
     CHECK(problem->line == 1);
     CHECK(problem->column == text.find("true") + 1);

@@ -377,7 +377,7 @@ const std::vector<Row>& rows() {
          {}},
         // Coefficients with three digits: 0.3 %. The largest hogging moment at the second bearing.
         {"three spans of 7.2, 51.84 on all and 54 on the first two",
-         "university lecture example (pattern loading)",
+         "university teaching example (pattern loading)",
          21.6,
          {{0}, {7.2}, {14.4}, {21.6}},
          {{0, 14.4, 105.84, 105.84}, {14.4, 21.6, 51.84, 51.84}},
