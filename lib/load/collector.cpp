@@ -107,13 +107,27 @@ LevelLoads Collector::finish() {
         loads.lines.end_group();
     }
 
-    loads.points = Grouped<CarrierPoint>::from_pairs(carriers, std::move(points_));
+    auto points = Grouped<CarrierPoint>::from_pairs(carriers, std::move(points_));
+    loads.points.reserve(carriers, points.items().size());
+    const auto point_key = [](const CarrierPoint& p) {
+        return std::tuple(p.load_case, static_cast<int>(p.source.kind), p.source.index);
+    };
     for (std::size_t c = 0; c < carriers; ++c) {
-        const std::span<CarrierPoint> own = loads.points[c];
-        std::stable_sort(own.begin(), own.end(), [](const CarrierPoint& l, const CarrierPoint& r) {
-            return std::tuple(l.load_case, static_cast<int>(l.source.kind), l.source.index, l.station) <
-                   std::tuple(r.load_case, static_cast<int>(r.source.kind), r.source.index, r.station);
+        const std::span<CarrierPoint> own = points[c];
+        std::stable_sort(own.begin(), own.end(), [&](const CarrierPoint& l, const CarrierPoint& r) {
+            return std::pair(point_key(l), l.station) < std::pair(point_key(r), r.station);
         });
+        // What one source brings to one place from the bays on both sides is one load.
+        for (std::size_t i = 0; i < own.size();) {
+            CarrierPoint sum = own[i++];
+            for (; i < own.size() && point_key(own[i]) == point_key(sum) &&
+                   own[i].station - sum.station <= noise_;
+                 ++i) {
+                sum.p += own[i].p;
+            }
+            loads.points.push(sum);
+        }
+        loads.points.end_group();
     }
 
     for (std::uint32_t d = 0; d <= decks_; ++d) {
