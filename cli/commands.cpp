@@ -8,18 +8,45 @@
 #include <runnel/takedown.hpp>
 
 #include <algorithm>
+#include <initializer_list>
 #include <iterator>
+#include <string>
+#include <string_view>
 #include <tuple>
 
 namespace runnel_cli {
 
 namespace {
 
-/// Errors beside which the rest of the plan can still be gone through.
-bool leaves_values(runnel::ProblemCode code) {
+/// Whether the last key of a pointer is one of a list.
+bool ends_in(const std::string& pointer, std::initializer_list<std::string_view> keys) {
+    const std::size_t slash = pointer.rfind('/');
+    const std::string_view key = std::string_view(pointer).substr(slash == std::string::npos ? 0 : slash + 1);
+    return std::find(keys.begin(), keys.end(), key) != keys.end();
+}
+
+/// Errors beside which the rest of the plan can still be gone through: they take nothing from it that
+/// framing, decks and the places of loads need.
+bool leaves_values(const runnel::Problem& problem) {
     using Code = runnel::ProblemCode;
-    return code == Code::unknown_key || code == Code::duplicate_key || code == Code::not_supported_yet ||
-           code == Code::no_dead_case || code == Code::conflicting_keys;
+    switch (problem.code) {
+    case Code::unknown_key:
+    case Code::duplicate_key:
+    case Code::not_supported_yet:
+    case Code::no_dead_case:
+    case Code::conflicting_keys:
+        return true;
+    case Code::unknown_id:
+        return ends_in(problem.pointer, {"case", "section", "build"});
+    case Code::wrong_type:
+    case Code::bad_quantity:
+    case Code::wrong_dimension:
+    case Code::out_of_range:
+        return ends_in(problem.pointer,
+                       {"q", "w", "w_from", "w_to", "p", "self_weight", "E", "I", "A", "depth", "density"});
+    default:
+        return false;
+    }
 }
 
 /// A plan's text and what reading it gave.
@@ -32,7 +59,7 @@ struct Input {
     /// True where its errors left the plan's values whole: nothing that was understood is missing.
     [[nodiscard]] bool whole() const {
         return std::all_of(reading.problems.begin(), reading.problems.end(), [](const runnel::Problem& p) {
-            return p.severity != runnel::Severity::error || leaves_values(p.code);
+            return p.severity != runnel::Severity::error || leaves_values(p);
         });
     }
 };

@@ -130,6 +130,15 @@ class OnePass(unittest.TestCase):
         codes = {problem["code"] for problem in self.problems(plan)}
         self.assertTrue({"no-dead-case", "too-few-bearings"} <= codes)
 
+    def test_nor_does_a_wrong_load(self):
+        for key, value, code in (("q", "much", "bad-quantity"), ("q", "3 m", "wrong-dimension"),
+                                 ("q", True, "wrong-type"), ("case", "sno", "unknown-id")):
+            plan = shelter_without("columns")
+            plan["levels"][0]["area_loads"][0][key] = value
+            plan["levels"][0]["point_loads"] = [{"case": "snow", "p": 1, "at": [90, 90]}]
+            codes = {problem["code"] for problem in self.problems(plan)}
+            self.assertTrue({code, "too-few-bearings", "load-off-decks"} <= codes, (value, codes))
+
     def test_what_is_not_supported_is_said_once(self):
         plan = plan_of("shelter")
         plan["levels"][0]["decks"][0]["share"] = "lever"
@@ -140,7 +149,7 @@ class OnePass(unittest.TestCase):
 
     def test_where_values_are_missing_framing_waits_and_says_so(self):
         plan = shelter_without("columns")
-        plan["levels"][0]["area_loads"][0]["q"] = "much"
+        plan["levels"][0]["joist_fields"][0]["spacing"] = "wide"
         line = b"Framing and loads are not checked until these are mended.\n"
         done = runnel("check", "-", text=as_text(plan))
         self.assertNotIn(b"too-few-bearings", done.stdout)
