@@ -52,18 +52,29 @@ private:
     }
 
     void mark_carriers() {
-        for (const PointLoad& load : draft_.level.point_loads) {
-            for (const std::uint32_t column : draft_.level.columns) {
-                if (distance(draft_.plan.columns[column].at, load.at) <= draft_.reach()) {
-                    column_carries_[column] = true;
-                }
-            }
-        }
+        mark_columns_under_point_loads();
         for (const Bearing& bearing : draft_.level.bearings.items()) {
             mark(bearing.on);
         }
         for (const Foot& foot : draft_.level.feet) {
             mark(foot.lower);
+        }
+    }
+
+    void mark_columns_under_point_loads() {
+        std::vector<Box> boxes;
+        for (const PointLoad& load : draft_.level.point_loads) {
+            boxes.push_back(box_of(load.at, load.at).grown(draft_.reach()));
+        }
+        const BoxFinder finder(std::move(boxes));
+        std::vector<std::uint32_t> found;
+        for (const std::uint32_t column : draft_.level.columns) {
+            const Point at = draft_.plan.columns[column].at;
+            finder.find(box_of(at, at), found);
+            column_carries_[column] =
+                column_carries_[column] || std::any_of(found.begin(), found.end(), [&](std::uint32_t i) {
+                    return distance(draft_.level.point_loads[i].at, at) <= draft_.reach();
+                });
         }
     }
 

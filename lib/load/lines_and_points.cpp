@@ -34,7 +34,8 @@ public:
     LoadPlacer(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
                Collector& collector)
         : plan_(plan), level_(framing.levels[level]), sharing_(sharing), collector_(collector),
-          bays_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)) {
+          bays_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
+          columns_(boxes_of_columns()) {
         for (std::uint32_t i = 0; i < axes_.size(); ++i) {
             by_id_.emplace(axes_[i].id, i);
         }
@@ -92,6 +93,15 @@ private:
         boxes.reserve(axes.size());
         for (const Axis& axis : axes) {
             boxes.push_back(box_of(axis.from, axis.to));
+        }
+        return boxes;
+    }
+
+    [[nodiscard]] std::vector<Box> boxes_of_columns() const {
+        std::vector<Box> boxes;
+        boxes.reserve(level_.columns.size());
+        for (const std::uint32_t c : level_.columns) {
+            boxes.push_back(box_of(plan_.columns[c].at, plan_.columns[c].at));
         }
         return boxes;
     }
@@ -325,7 +335,9 @@ private:
     /// it.
     bool place_on_what_is_there(std::uint32_t index) {
         const PointLoad& load = level_.point_loads[index];
-        for (const std::uint32_t c : level_.columns) {
+        columns_.find(box_of(load.at, load.at).grown(snap()), near_);
+        for (const std::uint32_t i : near_) {
+            const std::uint32_t c = level_.columns[i];
             if (distance(plan_.columns[c].at, load.at) <= snap()) {
                 collector_.put_point(
                     sharing_.number_of({CarrierKind::column, c}), none,
@@ -380,6 +392,7 @@ private:
     BayFinder bays_;
     std::vector<Axis> axes_;
     BoxTree tree_;
+    BoxFinder columns_; ///< by their place in the level's list
     std::map<std::string_view, std::uint32_t> by_id_;
     std::vector<std::uint32_t> near_;
 };

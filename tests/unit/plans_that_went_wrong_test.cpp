@@ -173,3 +173,14 @@ TEST_CASE("a hinge where the end is built in contradicts it") {
     CHECK(outcome_of(floor_plan(framed_floor(R"("area_loads":[])", member, "")))
               .count(ProblemCode::conflicting_keys) == 1);
 }
+
+TEST_CASE("a point load over a column goes to it whole and not through the joist that ends there") {
+    const std::string loads = R"("area_loads":[],"point_loads":[{"case":"live","p":12,"at":[8,6]}])";
+    const Outcome outcome = outcome_of(floor_plan(framed_floor(loads)));
+    REQUIRE_MESSAGE(outcome.takedown.complete, support::texts_of_errors(outcome.problems));
+    const Lift& lift = outcome.takedown.columns[3].lifts.front();
+    CHECK(std::any_of(lift.from.begin(), lift.from.end(), [](const LiftLoad& load) {
+        return load.source.kind == SourceKind::point_load && load.source.index == 0 && load.p == 12;
+    }));
+    CHECK(lift.total[1] == Approx(12.0));
+}
