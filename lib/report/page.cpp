@@ -134,7 +134,7 @@ std::string three_figures(double value) {
             std::to_chars(digits.data(), digits.data() + digits.size(), value, format, precision);
         return std::string(digits.data(), end);
     };
-    const std::string rounded = text(std::chars_format::scientific, after_the_first);
+    std::string rounded = text(std::chars_format::scientific, after_the_first);
     if (!(std::abs(value) < widest) || std::abs(value) < finest) {
         return rounded;
     }
