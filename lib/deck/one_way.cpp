@@ -211,7 +211,7 @@ private:
 void push_sliver(Sharing& sharing, Bay& bay, std::span<const Transfer> transfers) {
     sharing.cells.push_back(cell_between(bay, bay.low, bay.high, true));
     sharing.transfers.push_group(transfers);
-    bay.low_carrier = transfers.front().carrier; // line and point loads on it go the same way
+    bay.low_carrier = transfers.front().carrier; // what stands on the sliver goes to the first of them
     bay.low_station_from = transfers.front().station_from;
     bay.low_station_to = transfers.front().station_to;
 }

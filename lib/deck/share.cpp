@@ -1,12 +1,11 @@
 #include "deck/doubtful.hpp"
 #include "deck/one_way.hpp"
+#include "deck/refused.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/box_tree.hpp"
 #include "plan/problems.hpp"
 
 #include <runnel/deck.hpp>
-
-#include <algorithm>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -81,10 +80,7 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
         find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
     }
-    const bool refused =
-        std::any_of(sharing.problems.begin(), sharing.problems.end(),
-                    [](const Problem& problem) { return problem.code == ProblemCode::not_supported_yet; });
-    if (!refused) { // a deck that gives nothing to anybody would raise doubts about its joists
+    if (!is_refused(sharing)) { // a deck that gives nothing to anybody would raise doubts about its joists
         find_doubtful_members(plan, level, sharing);
     }
     return sharing;

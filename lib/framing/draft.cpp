@@ -139,6 +139,21 @@ std::string label_of(const LevelDraft& draft, Carrier carrier) {
     return {};
 }
 
+Problem level_problem(const LevelDraft& draft, ProblemCode code, std::string message, std::string hint,
+                      std::vector<std::string> ids) {
+    Problem problem;
+    problem.code = code;
+    problem.severity = kind_of(code).severity;
+    problem.message = std::move(message);
+    problem.hint = std::move(hint);
+    problem.ids = std::move(ids);
+    const Origin& origin = draft.plan.levels[draft.level.plan_level].origin;
+    problem.pointer = "/levels/" + std::to_string(draft.level.plan_level);
+    problem.line = origin.line;
+    problem.column = origin.column;
+    return problem;
+}
+
 Problem member_problem(const LevelDraft& draft, ProblemCode code, std::uint32_t member, std::string message,
                        std::string hint, std::vector<std::string> ids, Point point) {
     const FramedMember& m = draft.level.members[member];

@@ -139,6 +139,10 @@ struct LevelDraft {
     }
 };
 
+/// A problem of the level as a whole, at its place in the plan.
+[[nodiscard]] Problem level_problem(const LevelDraft& draft, ProblemCode code, std::string message,
+                                    std::string hint, std::vector<std::string> ids);
+
 /// An id as messages give it: "LEVEL/ID" where several levels use it.
 [[nodiscard]] std::string label_of(const LevelDraft& draft, std::uint32_t member);
 [[nodiscard]] std::string label_of(const LevelDraft& draft, Carrier carrier);

@@ -288,19 +288,12 @@ void note_moves(LevelDraft& draft) {
         return;
     }
     draft.problems.add(ProblemCode::points_merged, [&] {
-        Problem problem;
-        problem.code = ProblemCode::points_merged;
-        problem.severity = kind_of(problem.code).severity;
-        const Origin& origin = draft.plan.levels[draft.level.plan_level].origin;
-        problem.pointer = "/levels/" + std::to_string(draft.level.plan_level);
-        problem.line = origin.line;
-        problem.column = origin.column;
-        problem.message = "On level " + draft.level.id + ' ' +
-                          counted(draft.points_moved, "point was", "points were") + " moved, by " +
-                          length_text(draft.largest_move, draft.plan.units) + " at most (snap is " +
-                          length_text(draft.tolerance.snap, draft.plan.units) + ").";
-        problem.ids = {draft.level.id};
-        return problem;
+        return level_problem(draft, ProblemCode::points_merged,
+                             "On level " + draft.level.id + ' ' +
+                                 counted(draft.points_moved, "point was", "points were") + " moved, by " +
+                                 length_text(draft.largest_move, draft.plan.units) + " at most (snap is " +
+                                 length_text(draft.tolerance.snap, draft.plan.units) + ").",
+                             {}, {draft.level.id});
     });
 }
 

@@ -244,20 +244,14 @@ void note_continuous(LevelDraft& draft) {
         return;
     }
     draft.problems.add(ProblemCode::continuous_as_drawn, [&] {
-        Problem problem;
-        problem.code = ProblemCode::continuous_as_drawn;
-        problem.severity = kind_of(problem.code).severity;
-        const Origin& origin = draft.plan.levels[draft.level.plan_level].origin;
-        problem.pointer = "/levels/" + std::to_string(draft.level.plan_level);
-        problem.line = origin.line;
-        problem.column = origin.column;
-        problem.message = "On level " + draft.level.id + ", " + counted(count, "member runs", "members run") +
-                          " on over inner bearings and " + (count == 1 ? "is" : "are") +
-                          " taken as continuous, as drawn: " + listed(ids, ids.size(), count) + '.';
-        problem.hint = "Pieces that are lapped or laid end to end load their bearings otherwise: `cut` or "
-                       "`hinges` say so.";
-        problem.ids = std::move(ids);
-        return problem;
+        return level_problem(draft, ProblemCode::continuous_as_drawn,
+                             "On level " + draft.level.id + ", " +
+                                 counted(count, "member runs", "members run") +
+                                 " on over inner bearings and " + (count == 1 ? "is" : "are") +
+                                 " taken as continuous, as drawn: " + listed(ids, ids.size(), count) + '.',
+                             "Pieces that are lapped or laid end to end load their bearings otherwise: `cut` "
+                             "or `hinges` say so.",
+                             ids);
     });
 }
 

@@ -4,6 +4,7 @@
 #include "path/member_names.hpp"
 #include "path/member_path.hpp"
 #include "path/places.hpp"
+#include "path/uplift.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
@@ -14,9 +15,6 @@
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-/// Rounding of a reaction beside the loads that made it, after as many sums as a building has.
-constexpr double rounding = 4096 * std::numeric_limits<double>::epsilon();
 
 /// Ids that a note lists; the rest is counted.
 constexpr std::size_t ids_listed = 20;
@@ -74,67 +72,8 @@ void gather_foundations(Takedown& takedown) {
     }
 }
 
-namespace {
-
-/// What a column or wall brings to its foot, by case.
-std::span<const double> total_at_foot(const Takedown& takedown, Carrier upper) {
-    if (upper.kind == CarrierKind::column) {
-        const std::vector<Lift>& lifts = takedown.columns[upper.index].lifts;
-        return lifts.empty() ? std::span<const double>{} : std::span<const double>(lifts.back().total);
-    }
-    const std::vector<WallLift>& lifts = takedown.walls[upper.index].lifts;
-    return lifts.empty() ? std::span<const double>{} : std::span<const double>(lifts.back().total);
-}
-
-/// Columns and walls that stand on a level's carriers and lift off them; a wall once, with what it lifts off
-/// first.
-void find_lifting_feet(Takedown& takedown) {
-    for (std::uint32_t l = 0; l < takedown.levels.size(); ++l) {
-        Carrier last;
-        for (const Foot& foot : takedown.framing.levels[l].feet) {
-            if (foot.upper == last) {
-                continue;
-            }
-            last = foot.upper;
-            const std::span<const double> total = total_at_foot(takedown, foot.upper);
-            const double value = sum_of(total);
-            if (value < -rounding * magnitude_of_all(total)) {
-                takedown.uplift.push_back({l, none, none, foot.lower, value, foot.upper});
-            }
-        }
-    }
-}
-
-} // namespace
-
 void find_uplift(Takedown& takedown) {
-    const std::size_t cases = takedown.plan.cases.size();
-    for (std::uint32_t l = 0; l < takedown.levels.size(); ++l) {
-        const FramedLevel& framed = takedown.framing.levels[l];
-        const std::span<const double> reactions = takedown.levels[l].reactions;
-        for (std::uint32_t m = 0; m < framed.members.size(); ++m) {
-            const std::span<const Bearing> bearings = framed.bearings[m];
-            const auto own = reactions.subspan(framed.bearings.first(m) * cases, bearings.size() * cases);
-            const double noise = rounding * magnitude_of_all(own);
-            for (std::uint32_t b = 0; b < bearings.size(); ++b) {
-                const double value = sum_of(own.subspan(b * cases, cases));
-                if (value < -noise) {
-                    takedown.uplift.push_back({l, m, b, bearings[b].on, value, {}});
-                }
-            }
-        }
-    }
-    find_lifting_feet(takedown);
-    double all = 0; // what the ground carries in all measures the rounding under each of its parts
-    for (const Foundation& foundation : takedown.foundations) {
-        all += magnitude_of_all(foundation.reactions);
-    }
-    for (const Foundation& foundation : takedown.foundations) {
-        const double value = sum_of(foundation.reactions);
-        if (value < -rounding * all) {
-            takedown.uplift.push_back({none, none, none, foundation.under, value, {}});
-        }
-    }
+    takedown.uplift = lifts_by(takedown, sum_of);
 }
 
 void warn_of_fixed_moments(Takedown& takedown) {

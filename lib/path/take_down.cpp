@@ -1,7 +1,7 @@
+#include "deck/refused.hpp"
 #include "path/parallel.hpp"
 #include "path/path.hpp"
 
-#include <algorithm>
 #include <iterator>
 #include <utility>
 
@@ -30,12 +30,6 @@ Takedown stopped(Plan plan, Framing framing, std::vector<Problem> problems) {
     takedown.framing = std::move(framing);
     takedown.problems = std::move(problems);
     return takedown;
-}
-
-/// Whether a deck's rule is not built yet: what stands on it would look as if it stood on nothing.
-bool is_refused(const Sharing& sharing) {
-    return std::any_of(sharing.problems.begin(), sharing.problems.end(),
-                       [](const Problem& problem) { return problem.code == ProblemCode::not_supported_yet; });
 }
 
 /// Splits and loads every level; levels know nothing of each other here. Problems come out in the order of

@@ -292,14 +292,23 @@ UnitScales::UnitScales(Units document) {
     }
 }
 
+namespace {
+bool read_number(Scanner& scanner, std::string& digits, long& exponent, QuantityReading& reading) {
+    scanner.skip_spaces();
+    const bool there = scanner.number(digits, exponent);
+    if (!there) {
+        reading.fault = QuantityFault::no_number;
+    }
+    return there;
+}
+} // namespace
+
 QuantityReading read_quantity(std::string_view text, Dimension dimension) {
     QuantityReading reading;
     Scanner scanner(text);
     std::string digits;
     long exponent = 0;
-    scanner.skip_spaces();
-    if (!scanner.number(digits, exponent)) {
-        reading.fault = QuantityFault::no_number;
+    if (!read_number(scanner, digits, exponent, reading)) {
         return reading;
     }
     Product product;
@@ -319,9 +328,7 @@ QuantityReading read_angle(std::string_view text) {
     Scanner scanner(text);
     std::string digits;
     long exponent = 0;
-    scanner.skip_spaces();
-    if (!scanner.number(digits, exponent)) {
-        reading.fault = QuantityFault::no_number;
+    if (!read_number(scanner, digits, exponent, reading)) {
         return reading;
     }
     scanner.skip_spaces();

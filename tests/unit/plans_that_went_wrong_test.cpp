@@ -1,5 +1,6 @@
 // Small plans that a reader of the formats wrote and that once came out wrong, each a sentence.
 
+#include "report/some_cases.hpp"
 #include "support/problem_support.hpp"
 
 #include <runnel/plan.hpp>
@@ -183,4 +184,25 @@ TEST_CASE("a point load over a column goes to it whole and not through the joist
         return load.source.kind == SourceKind::point_load && load.source.index == 0 && load.p == 12;
     }));
     CHECK(lift.total[1] == Approx(12.0));
+}
+
+TEST_CASE("a column that one variable case alone lifts off its beam is told, though all cases together hold "
+          "it down") {
+    const std::string level = framed_floor(R"("area_loads":[{"case":"live","q":1}])");
+    const std::string above =
+        R"(,{"id":"h","elevation":6,"members":[{"id":"U","role":"beam","from":[2,0],"to":[6,0]}],
+        "point_loads":[{"case":"dead","p":5,"at":[2,0],"on":"U"},{"case":"live","p":-7,"at":[2,0],"on":"U"},
+                       {"case":"snow","p":10,"at":[2,0],"on":"U"}]})";
+    std::string text = floor_plan(
+        level, R"(,{"id":"T1","at":[2,0],"base":"f","top":"h"},{"id":"T2","at":[6,0],"base":"f","top":"h"})",
+        above);
+    text.replace(text.find(R"({"id":"live")"), 0, R"({"id":"snow","kind":"snow"},)");
+    const Outcome outcome = outcome_of(text);
+    REQUIRE_MESSAGE(outcome.takedown.complete, support::texts_of_errors(outcome.problems));
+    CHECK(outcome.takedown.uplift.empty());
+    const std::vector<Uplift> lifts = lifts_with_some_cases(outcome.takedown);
+    CHECK(std::any_of(lifts.begin(), lifts.end(), [&](const Uplift& lift) {
+        return lift.member == none && lift.level == 0 && lift.upper.kind == CarrierKind::column &&
+               outcome.takedown.plan.columns[lift.upper.index].id == "T1" && lift.value == Approx(-2.0);
+    }));
 }
