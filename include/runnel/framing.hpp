@@ -51,7 +51,8 @@ struct FramedDeck {
     Ring outline;               ///< counter-clockwise, snapped, noded by the ends of members that meet it
     std::vector<Ring> openings; ///< clockwise, snapped
     SpanKind span = SpanKind::one_way;
-    Share share = Share::half;
+    Share share = Share::half; ///< what counts on one-way decks
+    CornerAngles corner_angles = CornerAngles::equal;
     double direction = 0;  ///< degrees
     double own_weight = 0; ///< kN/m2: `q` and build together
     Origin origin;

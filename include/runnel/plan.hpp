@@ -156,15 +156,20 @@ struct JoistField {
     Origin origin;
 };
 
+/// How two carrying edges of a two-way deck's convex bay divide the corner between them: by halves, or at 60
+/// degrees from an edge over which the deck continues and 30 from a simply supported one.
+enum class CornerAngles : std::uint8_t { equal, by_fixity };
+
 struct Deck {
     std::string id;
     Ring outline;
     std::vector<Ring> openings;
     SpanKind span = SpanKind::one_way;
-    std::optional<double> direction; ///< degrees: along the strips; required for one-way
-    std::optional<Share> share;      ///< else the plan's
-    std::optional<double> q;         ///< own weight, kN/m2
-    std::string build;               ///< empty: none
+    std::optional<double> direction;                  ///< degrees: along the strips; required for one-way
+    std::optional<Share> share;                       ///< else the plan's
+    std::optional<double> q;                          ///< own weight, kN/m2
+    std::string build;                                ///< empty: none
+    CornerAngles corner_angles = CornerAngles::equal; ///< two-way decks only
     Origin origin;
 };
 
@@ -176,10 +181,10 @@ struct PlaneOfLoad {
 
 struct AreaLoad {
     std::string case_id;
-    double q = 0;                     ///< kN/m2, where `plane` is not given
-    std::optional<PlaneOfLoad> plane; ///< an engine that comes later; refused until then
-    Ring outline;                     ///< empty: the decks named, or all
-    std::vector<std::string> decks;   ///< empty: the outline, or all
+    double q = 0; ///< kN/m2, where `plane` is not given
+    std::optional<PlaneOfLoad> plane;
+    Ring outline;                   ///< empty: the decks named, or all
+    std::vector<std::string> decks; ///< empty: the outline, or all
     bool replaces = false;
     std::string allowance; ///< empty: none
     Origin origin;

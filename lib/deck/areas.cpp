@@ -24,16 +24,16 @@ CarrierAreas areas_of(const Sharing& sharing) {
         const double stretch = std::abs(transfer.station_to - transfer.station_from);
         if (!(stretch > 0)) {
             pieces.push_back(
-                {transfer.carrier, {transfer.station_from, transfer.station_from, whole, whole}});
+                {transfer.carrier, {transfer.station_from, transfer.station_from, whole, whole, 0}});
             continue;
         }
         const double scale = (cell.to - cell.from) / stretch;
         if (transfer.station_from < transfer.station_to) {
-            pieces.push_back(
-                {transfer.carrier, {transfer.station_from, transfer.station_to, start * scale, end * scale}});
+            pieces.push_back({transfer.carrier,
+                              {transfer.station_from, transfer.station_to, start * scale, end * scale, 0}});
         } else {
-            pieces.push_back(
-                {transfer.carrier, {transfer.station_to, transfer.station_from, end * scale, start * scale}});
+            pieces.push_back({transfer.carrier,
+                              {transfer.station_to, transfer.station_from, end * scale, start * scale, 0}});
         }
     }
     CarrierAreas result;

@@ -94,14 +94,14 @@ Cell cell_between(const Bay& bay, const Border& low, const Border& high, bool ov
 void push_to_low(Sharing& sharing, const Bay& bay, Cell cell) {
     cell.carrier_side = Cell::CarrierSide::low;
     sharing.cells.push_back(cell);
-    sharing.transfers.push({bay.low_carrier, bay.low_station_from, bay.low_station_to, {1, 0, 0, 0}});
+    sharing.transfers.push({bay.low_carrier, bay.low_station_from, bay.low_station_to, 1});
     sharing.transfers.end_group();
 }
 
 void push_to_high(Sharing& sharing, const Bay& bay, Cell cell) {
     cell.carrier_side = Cell::CarrierSide::high;
     sharing.cells.push_back(cell);
-    sharing.transfers.push({bay.high_carrier, bay.high_station_from, bay.high_station_to, {1, 0, 0, 0}});
+    sharing.transfers.push({bay.high_carrier, bay.high_station_from, bay.high_station_to, 1});
     sharing.transfers.end_group();
 }
 
@@ -166,7 +166,7 @@ public:
             const bool there = std::any_of(transfers.begin(), transfers.end(),
                                            [&](const Transfer& t) { return t.carrier == carrier; });
             if (!there) {
-                transfers.push_back({carrier, station, station, {1, 0, 0, 0}});
+                transfers.push_back({carrier, station, station, 1});
             }
         };
         const auto below = std::lower_bound(by_to_.begin(), by_to_.end(), sliver.from - snap_,
@@ -190,7 +190,7 @@ public:
         std::sort(transfers.begin(), transfers.end(),
                   [](const Transfer& l, const Transfer& r) { return l.carrier < r.carrier; });
         for (Transfer& transfer : transfers) {
-            transfer.weight[0] = 1 / static_cast<double>(transfers.size());
+            transfer.weight = 1 / static_cast<double>(transfers.size());
         }
         return transfers;
     }

@@ -270,7 +270,7 @@ Region region_of(const Sharing& sharing, std::span<const std::uint32_t> cells, d
 
 } // namespace
 
-std::vector<Region> regions_of(const Sharing& sharing) {
+std::vector<Region> regions_of(const Sharing& sharing, [[maybe_unused]] double chord_error) {
     std::vector<std::uint32_t> order;
     order.reserve(sharing.cells.size());
     for (std::uint32_t c = 0; c < sharing.cells.size(); ++c) {

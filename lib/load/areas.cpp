@@ -6,7 +6,6 @@
 
 #include <algorithm>
 #include <array>
-#include <cassert>
 #include <string>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -15,16 +14,6 @@ namespace {
 
 /// Coefficients of a polynomial of degree four at most.
 using Polynomial = std::array<double, 5>;
-
-Polynomial product(const Polynomial& p, const Polynomial& q) {
-    Polynomial result{};
-    for (std::size_t i = 0; i < p.size(); ++i) {
-        for (std::size_t k = 0; i + k < p.size(); ++k) {
-            result[i + k] += p[i] * q[k];
-        }
-    }
-    return result;
-}
 
 /// What one unit of pressure on a cell brings to its carrier, as a line along it: the weight integrated over
 /// the cell's breadth.
@@ -36,22 +25,12 @@ LinePiece line_of_unit_pressure(const Cell& cell, const Transfer& transfer) {
     const double bulge = cell.high.bulge - cell.low.bulge;
     // Breadth over x = (station - from) / stretch: start + (end - start) x - bulge x (1 - x).
     const Polynomial breadth{start, end - start - bulge, bulge, 0, 0};
-    Polynomial line{};
-    Polynomial power = breadth;
-    for (std::size_t k = 0; k < transfer.weight.size(); ++k) {
-        if (k > 0) {
-            power = product(power, breadth);
-        }
-        for (std::size_t i = 0; i < line.size(); ++i) {
-            line[i] += transfer.weight[k] / static_cast<double>(k + 1) * power[i];
-        }
-    }
     LinePiece piece;
     piece.from = std::min(transfer.station_from, transfer.station_to);
     piece.to = std::max(transfer.station_from, transfer.station_to);
     double scale = (cell.to - cell.from) / stretch; // of the cell's levels to the carrier's stations
-    for (std::size_t i = 0; i < line.size(); ++i) {
-        piece.c[i] = line[i] * scale;
+    for (std::size_t i = 0; i < breadth.size(); ++i) {
+        piece.c[i] = transfer.weight * breadth[i] * scale;
         scale /= stretch;
     }
     return piece;
@@ -87,7 +66,6 @@ Extent extent_at(const Convex& polygon, double across) {
 /// corners.
 void lines_of_part(const Cell& cell, const Transfer& transfer, const Convex& part, double q, double noise,
                    std::vector<LinePiece>& pieces) {
-    assert(transfer.weight[1] == 0 && transfer.weight[2] == 0 && transfer.weight[3] == 0);
     std::vector<double> levels;
     for (const Point& p : part) {
         levels.push_back(p.y);
@@ -150,7 +128,7 @@ void put_cell_as_points(const Sharing& sharing, std::size_t c, double q, double 
     for (const Transfer& transfer : sharing.transfers[c]) {
         collector.put_point(
             transfer.carrier, deck,
-            {load_case, {SourceKind::deck, deck}, transfer.station_from, transfer.weight[0] * q * area});
+            {load_case, {SourceKind::deck, deck}, transfer.station_from, transfer.weight * q * area});
     }
 }
 
