@@ -280,16 +280,41 @@ void RingArea::find_crossings(const StripPiece& strip) {
     crossings_.resize(kept);
 }
 
+/// How many rings deep a strip is at its low border. Asked in the widest gap between crossings, where nothing
+/// is near: what lies on each other but for rounding may come in either order.
+int RingArea::depth_at_low(const StripPiece& strip, const StripAxes& axes) const {
+    if (crossings_.size() == 1) {
+        return crossings_.front().edge->step < 0 ? 1 : 0;
+    }
+    double before = strip.low.at(0.5);
+    double widest = -1;
+    double middle = before;
+    int steps = 0; // up to the widest gap
+    int so_far = 0;
+    const auto offer = [&](double along) {
+        if (along - before > widest) {
+            widest = along - before;
+            middle = before + widest / 2;
+            steps = so_far;
+        }
+        before = along;
+    };
+    for (const Crossing& crossing : crossings_) {
+        offer(crossing.along);
+        so_far += crossing.edge->step;
+    }
+    offer(strip.high.at(0.5));
+    return (contains(axes.to_plan({middle, (strip.from + strip.to) / 2})) ? 1 : 0) - steps;
+}
+
 void RingArea::clip_strip(const StripPiece& strip, const StripAxes& axes, std::vector<Part>& parts) {
     find_crossings(strip);
-    const double middle = (strip.from + strip.to) / 2;
     const double low = strip.low.at(0.5);
     const double high = strip.high.at(0.5);
     if (!(high > low)) {
         return;
     }
-    bool inside = crossings_.empty() ? contains(axes.to_plan({(low + high) / 2, middle}))
-                                     : crossings_.front().edge->step < 0;
+    int depth = depth_at_low(strip, axes);
     const std::size_t first = parts.size();
     Border start = strip.low;
     double start_along = low;
@@ -305,21 +330,20 @@ void RingArea::clip_strip(const StripPiece& strip, const StripAxes& axes, std::v
         const Border border{crossing.edge->at(strip.from), crossing.edge->at(strip.to), 0};
         const bool on_low = std::abs(crossing.along - low) <= noise_;
         const bool on_high = std::abs(crossing.along - high) <= noise_;
-        if (crossing.edge->step > 0 && !inside) {
+        const bool was_inside = depth > 0;
+        depth += crossing.edge->step;
+        const bool is_inside = depth > 0;
+        if (!was_inside && is_inside) {
             const bool exact = std::abs(crossing.along - low) <= rounding_;
             start = exact ? strip.low : border;
             start_along = on_high ? high : crossing.along;
             out += on_low ? 0 : crossing.along - left_at;
-            inside = !on_high;
-        } else if (crossing.edge->step < 0 && inside) {
+        } else if (was_inside && !is_inside && !on_low) {
             const bool exact = std::abs(crossing.along - high) <= rounding_;
-            if (!on_low) {
-                close(exact ? strip.high : border, crossing.along);
-            }
-            inside = false;
+            close(exact ? strip.high : border, crossing.along);
         }
     }
-    if (inside) {
+    if (depth > 0) {
         close(strip.high, high);
     } else {
         out += high - left_at;

@@ -81,6 +81,7 @@ private:
     void find_edges(const StripPiece& piece, const StripAxes& axes, const Box& box);
     void find_levels(const StripPiece& piece);
     void find_crossings(const StripPiece& strip);
+    [[nodiscard]] int depth_at_low(const StripPiece& strip, const StripAxes& axes) const;
     void clip_strip(const StripPiece& strip, const StripAxes& axes, std::vector<Part>& parts);
     void stop_at_edges(Point a, Point b);
 

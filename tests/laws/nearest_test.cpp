@@ -394,7 +394,8 @@ TEST_CASE("decks that span to the nearest carrier: cover, disjoint, owner and mo
         CHECK(tally.wrong == 0);
         CHECK(far_tally.wrong == 0);
         CHECK(far_tally.holders_wrong == 0);
-        CHECK(tally.station <= 1e-9);
+        // Where a side ends and the zone of its end begins may be off by what rounding to the grid moves.
+        CHECK(tally.station <= 1e-8);
         MESSAGE(std::string(on_columns ? "on columns: " : "two-way: ")
                 << decks << " decks; largest relative error of area " << cover << " (" << loose
                 << " beyond 1e-12), 1000 km away " << cover_far << "; " << tally.checked + far_tally.checked

@@ -207,3 +207,33 @@ TEST_CASE("a way across an opening is measured, along its edge it stays inside")
     CHECK(area.shared_with({0, 5.01}, {9, 5.01}, 1e-3).along_edge == 0);
     CHECK(area.shared_with({3, 5}, {3, 9}, 1e-3).inside == doctest::Approx(0));
 }
+
+// Seen all but level, edges that lie on each other come in either order; what is inside must not turn on it.
+TEST_CASE("openings that touch along an edge are clipped from any side") {
+    for (const double degrees : {0.0, 89.75, -89.75, 89.9982, -89.9982, 90.0, 17.0}) {
+        CAPTURE(degrees);
+        const double a = degrees * std::numbers::pi / 180;
+        const auto turned = [&](Ring ring) {
+            for (Point& p : ring) {
+                p = {p.x * std::cos(a) - p.y * std::sin(a), p.x * std::sin(a) + p.y * std::cos(a)};
+            }
+            return ring;
+        };
+        RingArea area({turned({{-4, -3}, {4, -3}, {4, 3}, {-4, 3}}),
+                       turned({{-1, -1}, {-1, 1}, {0.5, 1}, {0.5, -1}}),
+                       turned({{0.5, -0.5}, {0.5, 0.5}, {1.5, 0.5}, {1.5, -0.5}})},
+                      1e-13, 0);
+        std::vector<RingArea::Part> parts;
+        for (const double middle : {-2.0, 0.0, 0.1, 3.0}) {
+            double found = 0;
+            for (const StripPiece& piece : {StripPiece{-9, middle, {-9, -9, 0}, {9, 9, 0}},
+                                            StripPiece{middle, 9, {-9, -9, 0}, {9, 9, 0}}}) {
+                area.clip(piece, StripAxes{}, Box{{-9, piece.from}, {9, piece.to}}, parts);
+                for (const RingArea::Part& part : parts) {
+                    found += area_of(part.piece);
+                }
+            }
+            CHECK(found == doctest::Approx(44).epsilon(1e-13));
+        }
+    }
+}
