@@ -78,7 +78,10 @@ enum class Severity : std::uint8_t { error, warning, note };
     /* load path and laws */                                                                                 \
     X(moment_not_carried_down, "moment-not-carried-down", warning, "A fixed end's moment leaves the path.")  \
     X(cover_broken, "cover-broken", error, "Regions do not add up to their deck.")                           \
+    X(cells_overlap, "cells-overlap", error, "Two regions of a deck share area.")                            \
     X(owner_broken, "owner-broken", error, "A part of a deck has a carrier that its rule does not give it.") \
+    X(force_broken, "force-broken", error, "A deck's carriers get another load than was put on it.")         \
+    X(moment_broken, "moment-broken", error, "A deck's load lost its place where its rule keeps it.")        \
     X(balance_open, "balance-open", error, "A balance does not close.")
 
 enum class ProblemCode : std::uint8_t {
