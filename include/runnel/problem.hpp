@@ -70,9 +70,13 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(strip_unsupported, "strip-unsupported", error, "Strips of a deck that no carrier crosses.")            \
     X(strip_cantilevers, "strip-cantilevers", warning, "Strips on one carrier, or with a long overhang.")    \
     X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
+    X(share_has_no_effect, "share-has-no-effect", warning,                                                   \
+      "A deck names a share that only one-way decks follow.")                                                \
     X(load_off_decks, "load-off-decks", error, "A line or point load that stands on nothing.")               \
     X(zone_off_decks, "zone-off-decks", note,                                                                \
       "Part of an area load lies off every deck and is not carried.")                                        \
+    X(pressure_below_zero, "pressure-below-zero", warning,                                                   \
+      "A plane of pressure that falls below zero within its zone.")                                          \
     X(load_off_its_carrier, "load-off-its-carrier", warning, "A load `on` a carrier stands beside it.")      \
     X(load_beyond_its_carrier, "load-beyond-its-carrier", error, "A load `on` a carrier reaches past it.")   \
     /* load path and laws */                                                                                 \
