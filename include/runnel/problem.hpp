@@ -72,6 +72,8 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
     X(share_has_no_effect, "share-has-no-effect", warning,                                                   \
       "A deck names a share that only one-way decks follow.")                                                \
+    X(way_leaves_deck, "way-leaves-deck", warning,                                                           \
+      "Area whose straight way to its carrier leaves the deck.")                                             \
     X(load_off_decks, "load-off-decks", error, "A line or point load that stands on nothing.")               \
     X(zone_off_decks, "zone-off-decks", note,                                                                \
       "Part of an area load lies off every deck and is not carried.")                                        \
