@@ -431,7 +431,7 @@ TEST_CASE("a zone drawn along a deck's edge on the outside puts nothing on it, n
     f.add_member(move({0, 0}), move({0, 4}));
     f.add_member(move({6, 0}), move({6, 4}));
     f.add_deck(move(rectangle(0, 0, 6, 4)), 31);
-    f.add_area_load("live", 1, move(rectangle(6, 0, 9, 4)));
+    f.add_area_load("live", 1, move(rectangle(6, -1, 9, 5)));
     const LevelLoads loads = loaded(f);
     CHECK(loads.balance.empty());
     CHECK(loads.lines[0].empty());
