@@ -50,6 +50,9 @@ struct DeckBalance {
     std::uint32_t load_case = 0;
     ForceSum applied; ///< from zones and decks, without looking at carriers
     ForceSum shared;  ///< from the loads on carriers
+    /// Under lever and continuous: a bound, kNm, of what the drawing's being off by no more than `snap` moved
+    /// (slivers whose load goes to a point, lone strips as narrow as that). 0 where all is by statics.
+    double moved = 0;
 };
 
 /// All loads of a level on its carriers before anything is passed on. Carriers are numbered as in Sharing.
