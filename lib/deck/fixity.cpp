@@ -59,12 +59,6 @@ private:
     std::vector<std::vector<Stretch>> left_, right_; ///< by carrier
 };
 
-/// A panel that the rule does not fit.
-struct Misfit {
-    Point place; ///< in the plan
-    const char* why = "";
-};
-
 /// The panels of a deck with their sides, weighted.
 class FixityPanels {
 public:
@@ -75,21 +69,17 @@ public:
           inside_(deck.openings.empty() ? panels_ : divide_into_panels(deck, carriers, tolerance),
                   carriers.size()) {}
 
-    /// Shapes all panels; stops at the first that does not fit. One that lies in openings is no panel.
-    [[nodiscard]] std::optional<Misfit> shape() {
+    /// Shapes all panels; stops at the first that is not fit and returns its place, in the plan. A panel that
+    /// lies in openings is none.
+    [[nodiscard]] std::optional<Point> shape() {
         for (const Panel& panel : panels_.panels) {
             PanelShape shape = shape_of(panel, deck_.tolerance.snap);
             const bool carried = std::any_of(shape.sides.begin(), shape.sides.end(),
                                              [](const PanelSide& side) { return side.carries; });
-            if ((shape.not_convex || !carried) && !is_nothing(panel)) {
-                if (shape.not_convex) {
-                    return Misfit{panels_.origin + *shape.not_convex,
-                                  "is not convex there, or a member or wall ends in it"};
-                }
-                return Misfit{panels_.origin + panel.outer.front().from,
-                              "has no member or wall along its sides"};
-            }
             if (shape.not_convex || !carried) {
+                if (!is_nothing(panel)) {
+                    return panels_.origin + shape.not_convex.value_or(panel.outer.front().from);
+                }
                 shape.sides.clear();
             }
             for (PanelSide& side : shape.sides) {
@@ -98,6 +88,14 @@ public:
             shapes_.push_back(std::move(shape));
         }
         return std::nullopt;
+    }
+
+    /// Whether a carrier lies along any panel or stands in it.
+    [[nodiscard]] bool any_carrier() const {
+        const auto carries = [](const PanelEdge& edge) { return edge.carrier != none; };
+        return std::any_of(panels_.panels.begin(), panels_.panels.end(), [&](const Panel& panel) {
+            return !panel.holes.empty() || std::any_of(panel.outer.begin(), panel.outer.end(), carries);
+        });
     }
 
     void share(Sharing& sharing) const {
@@ -188,15 +186,17 @@ bool share_by_fixity(const Plan& plan, const Framing& framing, std::uint32_t lev
     const FramedDeck& deck = level.decks[index];
     FixityPanels panels(deck, index, carriers, beside,
                         {noise_of(framing.largest_coordinate), plan.settings.snap});
-    if (const std::optional<Misfit> misfit = panels.shape()) {
+    if (!panels.any_carrier()) {
+        return false;
+    }
+    if (const std::optional<Point> misfit = panels.shape()) {
         Problem problem = problem_at(
             ProblemCode::fixity_set_aside, deck.origin, "decks",
             "Level " + level.id + ", deck " + deck.id +
-                ": corner angles by fixity need convex panels; the one at " +
-                point_text(misfit->place, plan.units) + ' ' + misfit->why +
-                ". The whole deck goes to the nearest lines instead.",
+                ": corner angles by fixity need convex panels, and at " + point_text(*misfit, plan.units) +
+                " one is not, or a member or wall ends inside it. The whole deck goes to the nearest lines.",
             "Complete the members around the panel, or use \"corner_angles\": \"equal\".", {deck.id});
-        problem.point = misfit->place;
+        problem.point = *misfit;
         sharing.problems.push_back(std::move(problem));
         return false;
     }

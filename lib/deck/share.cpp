@@ -1,4 +1,5 @@
 #include "deck/doubtful.hpp"
+#include "deck/fixity.hpp"
 #include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
 #include "deck/refused.hpp"
@@ -7,6 +8,8 @@
 #include "plan/problems.hpp"
 
 #include <runnel/deck.hpp>
+
+#include <optional>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -61,6 +64,7 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
 
     std::vector<std::uint32_t> near;
     std::vector<LineCarrier> beside;
+    std::optional<DecksBeside> decks_beside; // for decks whose corners are divided by fixity
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
         sharing.deck_area.push_back(area_of(deck));
@@ -68,14 +72,18 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
             refuse(level, deck, "share " + std::string(name_of(deck.share)), sharing);
             continue;
         }
-        if (deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity) {
-            refuse(level, deck, "corner_angles by-fixity", sharing);
-            continue;
-        }
         tree.find(box_of(deck.outline).grown(plan.settings.snap), near);
         beside.clear();
         for (const std::uint32_t i : near) {
             beside.push_back(carriers[i]);
+        }
+        if (deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity) {
+            if (!decks_beside) {
+                decks_beside.emplace(level, plan.settings.snap);
+            }
+            if (share_by_fixity(plan, framing, level_index, d, beside, *decks_beside, sharing)) {
+                continue;
+            }
         }
         if (deck.span != SpanKind::one_way) {
             share_nearest(plan, framing, level_index, d, beside, sharing);

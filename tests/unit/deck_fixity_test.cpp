@@ -213,11 +213,14 @@ TEST_CASE("panels that the rule does not fit are told with their place, and noth
         CHECK(!shared.fits);
         CHECK(shared.sharing.cells.empty());
     }
-    SUBCASE("no beam around it") {
-        HandFramed f;
-        f.add_deck(panel_6_by_4, 0);
-        check_sorry(share_by_fixity(f), {0, 0});
-    }
+}
+
+TEST_CASE("a deck that no beam touches is left to the nearest line, which says so") {
+    HandFramed f;
+    f.add_deck(panel_6_by_4, 0);
+    const FixityShared shared = share_by_fixity(f);
+    CHECK(!shared.fits);
+    CHECK(shared.sharing.problems.empty());
 }
 
 TEST_CASE("beams a little off the deck's edge, and a strip of deck thinner than snap, are no obstacle") {
