@@ -1,5 +1,9 @@
+#include "support/building_support.hpp"
 #include "support/fixity_support.hpp"
+#include "support/problem_support.hpp"
 #include "support/random_support.hpp"
+
+#include <runnel/takedown.hpp>
 
 #include <doctest/doctest.h>
 
@@ -313,4 +317,53 @@ TEST_CASE("corner angles by fixity: cover on decks of many panels, turned, with 
     }
     CHECK(worst <= 1e-12);
     MESSAGE("areas close within " << worst);
+}
+
+TEST_CASE("corner angles by fixity in random buildings: all is carried, wherever they stand") {
+    const std::uint64_t seed = support::seed_of_run(20261205);
+    MESSAGE("seed " << seed);
+    std::size_t decks = 0;
+    std::size_t set_aside = 0;
+    double motion = 0;
+    for (int i = 0; i < 60; ++i) {
+        const std::uint64_t own = seed + static_cast<std::uint64_t>(i);
+        CAPTURE(own);
+        const auto taken_down = [&](const support::Placing& placing) {
+            Plan plan = support::random_building(own, placing);
+            for (Level& level : plan.levels) {
+                for (Deck& deck : level.decks) {
+                    deck.span = SpanKind::two_way;
+                    deck.corner_angles = CornerAngles::by_fixity;
+                    deck.direction.reset();
+                }
+            }
+            Takedown takedown = take_down(std::move(plan));
+            REQUIRE_MESSAGE(takedown.complete, support::texts_of_errors(takedown.problems));
+            CHECK(check_balance(takedown).empty());
+            return takedown;
+        };
+        const Takedown plain = taken_down({});
+        support::Placing away;
+        away.degrees = Random(own).between(-89, 89);
+        away.shift = {-3e4, 5e4};
+        const Takedown moved = taken_down(away);
+        REQUIRE(plain.foundations.size() == moved.foundations.size());
+        for (std::size_t k = 0; k < plain.foundations.size(); ++k) {
+            for (std::size_t c = 0; c < plain.foundations[k].reactions.size(); ++c) {
+                motion = std::max(
+                    motion, std::abs(plain.foundations[k].reactions[c] - moved.foundations[k].reactions[c]));
+            }
+        }
+        for (const FramedLevel& level : plain.framing.levels) {
+            decks += level.decks.size();
+        }
+        set_aside += static_cast<std::size_t>(
+            std::count_if(plain.problems.begin(), plain.problems.end(), [](const Problem& problem) {
+                return problem.code == ProblemCode::fixity_set_aside;
+            }));
+    }
+    CHECK(motion <= 1e-6);
+    CHECK(set_aside < decks / 2);
+    MESSAGE(set_aside << " of " << decks << " decks fell back; foundation loads differ by " << motion
+                      << " kN turned and moved");
 }

@@ -215,6 +215,23 @@ TEST_CASE("panels that the rule does not fit are told with their place, and noth
     }
 }
 
+TEST_CASE("a deck with a panel that is not convex goes to the nearest lines, as with equal corner angles") {
+    const auto shared = [](CornerAngles angles) {
+        HandFramed f;
+        const Ring ell{{0, 0}, {6, 0}, {6, 3}, {3, 3}, {3, 6}, {0, 6}};
+        support::add_beams_around(f, ell);
+        f.add_deck(ell, 0);
+        f.level().decks[0].span = SpanKind::two_way;
+        f.level().decks[0].corner_angles = angles;
+        return f.share();
+    };
+    const Sharing fallen_back = shared(CornerAngles::by_fixity);
+    REQUIRE(fallen_back.problems.size() == 1);
+    CHECK(fallen_back.problems[0].code == ProblemCode::fixity_set_aside);
+    CHECK(shared(CornerAngles::equal).problems.empty());
+    CHECK(areas_of(fallen_back).area == areas_of(shared(CornerAngles::equal)).area);
+}
+
 TEST_CASE("a deck that no beam touches is left to the nearest line, which says so") {
     HandFramed f;
     f.add_deck(panel_6_by_4, 0);
