@@ -1,6 +1,5 @@
 #include "deck/convex_panel.hpp"
 
-#include "geometry/box_tree.hpp"
 #include "geometry/strip_piece.hpp"
 #include "geometry/strip_sweep.hpp"
 
@@ -211,11 +210,10 @@ public:
     CellMaker(const PanelDeck& deck, const Panel& panel, CarrierAxes& axes, Sharing& sharing)
         : deck_(deck), panel_(panel), axes_(axes), sharing_(sharing) {
         const Convex ring = ring_of(panel);
-        const Box box = box_of(std::span<const Point>(ring));
-        for (const Ring& opening : deck.openings) {
-            if (box_of(std::span<const Point>(opening)).meets(box)) {
-                openings_.push_back(&opening);
-            }
+        std::vector<std::uint32_t> near;
+        deck.opening_finder.find(box_of(std::span<const Point>(ring)), near);
+        for (const std::uint32_t opening : near) {
+            openings_.push_back(&deck.openings[opening]);
         }
     }
 
@@ -391,12 +389,15 @@ PanelDeck::PanelDeck(const FramedDeck& of_deck, std::uint32_t deck_index,
                      std::span<const LineCarrier> line_carriers, Point panel_origin, Tolerance deck_tolerance)
     : deck(of_deck), index(deck_index), carriers(line_carriers), origin(panel_origin),
       tolerance(deck_tolerance) {
+    std::vector<Box> boxes;
     for (const Ring& opening : of_deck.openings) {
         openings.emplace_back();
         for (const Point& p : opening) {
             openings.back().push_back(p - origin);
         }
+        boxes.push_back(box_of(std::span<const Point>(openings.back())));
     }
+    opening_finder = BoxFinder(std::move(boxes));
 }
 
 PanelShape shape_of(const Panel& panel, double snap) {
@@ -434,21 +435,6 @@ void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<con
     for (SideRegion& region : regions_of(ring_of(panel), sides, deck.tolerance.noise)) {
         cells.add(sides[region.side], std::move(region.where));
     }
-}
-
-double area_without_openings(const PanelDeck& deck, const Panel& panel) {
-    Sum area;
-    for (const Gap& gap : sweep_strips(ring_of(panel), deck.openings, {}, deck.tolerance.noise).gaps) {
-        area.add((gap.to - gap.from) * (gap.high_start - gap.low_start + gap.high_end - gap.low_end) / 2);
-    }
-    for (const std::vector<PanelEdge>& hole : panel.holes) {
-        Ring ring;
-        for (const PanelEdge& edge : hole) {
-            ring.push_back(edge.from);
-        }
-        area.add(signed_area(ring));
-    }
-    return area.value();
 }
 
 RUNNEL_NAMESPACE_END

@@ -1,6 +1,7 @@
 #pragma once
 
 #include "deck/panels.hpp"
+#include "geometry/box_tree.hpp"
 #include "geometry/convex.hpp"
 
 #include <runnel/deck.hpp>
@@ -57,6 +58,7 @@ struct PanelDeck {
     std::span<const LineCarrier> carriers;
     Point origin;               ///< Panels::origin
     std::vector<Ring> openings; ///< from origin
+    BoxFinder opening_finder;
     Tolerance tolerance;
 
     PanelDeck(const FramedDeck& of_deck, std::uint32_t deck_index, std::span<const LineCarrier> line_carriers,
@@ -73,8 +75,5 @@ struct PanelDeck {
 /// bays have.
 void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<const PanelSide> sides,
                         CarrierAxes& axes, Sharing& sharing);
-
-/// Area of a panel that was made without the deck's openings, less what of them lies in it.
-[[nodiscard]] double area_without_openings(const PanelDeck& deck, const Panel& panel);
 
 RUNNEL_NAMESPACE_END
