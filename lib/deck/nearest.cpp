@@ -206,7 +206,7 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
         return;
     }
     // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
-    constexpr double closed = 1e-11; // relative
+    constexpr double closed = 1e-10; // of the area: rounding alone leaves less
     NearestCells best;
     double least = std::numeric_limits<double>::infinity();
     for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
