@@ -38,8 +38,7 @@ struct PanelSide {
     std::size_t edge_count =
         0;                ///< of the panel's outer border, which goes on from its last edge to its first
     bool carries = false; ///< a carrier lies along some of it
-    bool carries_whole = false; ///< carriers lie along all of it
-    double weight = 1;          ///< distances from it are divided by this before they are compared
+    double weight = 1;    ///< distances from it are divided by this before they are compared
 };
 
 /// The sides of a convex panel, counter-clockwise; or the place (from Panels::origin) where it is not convex
