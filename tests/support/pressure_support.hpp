@@ -173,11 +173,13 @@ inline long double force_on(const runnel::FramedDeck& deck, std::span<const runn
     return force;
 }
 
-/// Area loads as they come: uniform or over a plane, everywhere or in a zone of any shape, and some replace.
-inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double reach) {
+/// Area loads as they come: uniform or over a plane, everywhere or in a zone of any shape, and some replace,
+/// not more than `most_replacing`, since the oracle goes through all their subsets.
+inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double reach, int most = 5,
+                                                       int most_replacing = 3) {
     std::vector<runnel::AreaLoad> loads;
     int replacing = 0;
-    for (int i = random.whole(1, 5); i > 0; --i) {
+    for (int i = random.whole(1, most); i > 0; --i) {
         runnel::AreaLoad load;
         load.case_id = random.chance(0.6) ? "live" : "dead";
         load.q = random.chance(0.15) ? 0 : random.between(-1, 5);
@@ -206,7 +208,7 @@ inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double re
                 std::reverse(load.outline.begin(), load.outline.end());
             }
         }
-        load.replaces = replacing < 3 && random.chance(0.35);
+        load.replaces = replacing < most_replacing && random.chance(0.35);
         replacing += load.replaces ? 1 : 0;
         loads.push_back(std::move(load));
     }
