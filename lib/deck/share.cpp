@@ -1,4 +1,5 @@
 #include "deck/doubtful.hpp"
+#include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
 #include "deck/refused.hpp"
 #include "geometry/basic.hpp"
@@ -63,18 +64,22 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
         sharing.deck_area.push_back(area_of(deck));
-        if (deck.span != SpanKind::one_way) {
-            refuse(level, deck, "span " + std::string(name_of(deck.span)), sharing);
+        if (deck.span == SpanKind::one_way && deck.share != Share::half) {
+            refuse(level, deck, "share " + std::string(name_of(deck.share)), sharing);
             continue;
         }
-        if (deck.share != Share::half) {
-            refuse(level, deck, "share " + std::string(name_of(deck.share)), sharing);
+        if (deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity) {
+            refuse(level, deck, "corner_angles by-fixity", sharing);
             continue;
         }
         tree.find(box_of(deck.outline).grown(plan.settings.snap), near);
         beside.clear();
         for (const std::uint32_t i : near) {
             beside.push_back(carriers[i]);
+        }
+        if (deck.span != SpanKind::one_way) {
+            share_nearest(plan, framing, level_index, d, beside, sharing);
+            continue;
         }
         const std::size_t first_bay = sharing.bays.size();
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
