@@ -200,7 +200,7 @@ void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level
         return;
     }
     // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
-    constexpr double closed = 1e-11; // relative
+    constexpr double closed = 1e-10; // of the area: rounding alone leaves less
     const double whole = sharing.deck_area[deck_index];
     NearestCells best;
     double least = std::numeric_limits<double>::infinity();
