@@ -35,7 +35,7 @@ public:
     LoadPlacer(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
                Collector& collector)
         : plan_(plan), level_(framing.levels[level]), sharing_(sharing), collector_(collector),
-          bays_(level_, sharing), cells_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
+          parts_(level_, sharing), cells_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
           columns_(boxes_of_columns()) {
         for (std::uint32_t i = 0; i < axes_.size(); ++i) {
             by_id_.emplace(axes_[i].id, i);
@@ -197,16 +197,16 @@ private:
         }
     }
 
-    /// The bays of one-way decks and the cells of others that a line runs over.
+    /// The parts of one-way decks and the cells of others that a line runs over.
     struct Under {
-        std::vector<BayFinder::Hit> bays;
+        std::vector<DeckPartFinder::Hit> parts;
         std::vector<CellFinder::Hit> cells;
     };
     [[nodiscard]] Under what_lies_under(const LineLoad& load, double margin) {
-        return {bays_.over(load.from, load.to, margin), cells_.over(load.from, load.to, margin)};
+        return {parts_.over(load.from, load.to, margin), cells_.over(load.from, load.to, margin)};
     }
 
-    /// Borders of neighbouring bays or cells differ by rounding; a stretch of that size, by fractions of the
+    /// Borders of neighbouring parts or cells differ by rounding; a stretch of that size, by fractions of the
     /// line, belongs to either.
     [[nodiscard]] double tolerance_on(const LineLoad& load) const {
         return 4 * collector_.noise() / distance(load.from, load.to);
@@ -219,9 +219,9 @@ private:
         const Source source{SourceKind::line_load, index};
         const auto at = [&load](double t) { return between(load.from, load.to, t); };
         const auto w = [&load](double t) { return (1 - t) * load.w_from + t * load.w_to; };
-        for (const BayFinder::Hit& hit : under.bays) {
+        for (const DeckPartFinder::Hit& hit : under.parts) {
             take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
-                share_line(sharing_, sharing_.bays[hit.bay], at(t.from), at(t.to), w(t.from), w(t.to), snap(),
+                share_line(sharing_, hit.part, at(t.from), at(t.to), w(t.from), w(t.to), snap(),
                            load_case, source, collector_);
             });
         }
@@ -233,10 +233,10 @@ private:
         }
     }
 
-    /// Whether bays and cells cover all that is left.
+    /// Whether parts and cells cover all that is left.
     [[nodiscard]] bool cover(const Under& under, const LineLoad& load, std::vector<Interval> left) const {
         const double tolerance = tolerance_on(load);
-        for (const BayFinder::Hit& hit : under.bays) {
+        for (const DeckPartFinder::Hit& hit : under.parts) {
             take(left, {hit.from, hit.to}, tolerance, [](Interval) {});
         }
         for (const CellFinder::Hit& hit : under.cells) {
@@ -393,8 +393,8 @@ private:
         const std::uint32_t load_case = case_index(plan_, load.case_id);
         const Source source{SourceKind::point_load, index};
         for (const double margin : {collector_.noise(), snap()}) {
-            if (const std::uint32_t bay = bays_.under(load.at, margin); bay != none) {
-                share_point(sharing_, sharing_.bays[bay], load.at, load.p, load_case, source, collector_);
+            if (const std::optional<DeckPart> part = parts_.under(load.at, margin)) {
+                share_point(sharing_, *part, load.at, load.p, load_case, source, collector_);
                 return;
             }
             if (const std::uint32_t cell = cells_.under(load.at, margin); cell != none) {
@@ -415,7 +415,7 @@ private:
     const FramedLevel& level_;
     const Sharing& sharing_;
     Collector& collector_;
-    BayFinder bays_;
+    DeckPartFinder parts_;
     CellFinder cells_;
     std::vector<Axis> axes_;
     BoxTree tree_;
