@@ -221,8 +221,8 @@ private:
         const auto w = [&load](double t) { return (1 - t) * load.w_from + t * load.w_to; };
         for (const DeckPartFinder::Hit& hit : under.parts) {
             take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
-                share_line(sharing_, hit.part, at(t.from), at(t.to), w(t.from), w(t.to), snap(),
-                           load_case, source, collector_);
+                share_line(sharing_, hit.part, at(t.from), at(t.to), w(t.from), w(t.to), snap(), load_case,
+                           source, collector_);
             });
         }
         for (const CellFinder::Hit& hit : under.cells) {

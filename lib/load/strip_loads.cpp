@@ -31,7 +31,8 @@ class StripLoader {
 public:
     StripLoader(const StripAtLevels& strip, double noise) : strip_(strip), noise_(noise) {}
 
-    /// Calls put(carrier, line) for what a pressure on a piece of the strip brings each carrier.
+    /// Calls put(carrier, line) for what a pressure on a piece of the strip brings each carrier. A line
+    /// without length is a force: its first coefficient.
     template <class Put>
     void carry(const StripPiece& piece, const Intensity& intensity, Put put) {
         std::vector<double> levels{piece.from};
@@ -137,8 +138,14 @@ private:
                 const std::size_t carrier = window.first + i;
                 const double at_from = strip_.station(carrier, from);
                 const double at_to = strip_.station(carrier, to);
-                const double rate = (to - from) / std::abs(at_to - at_from);
+                const double stretch = std::abs(at_to - at_from);
                 Quartic c = piece.c[i];
+                if (!(stretch > 0)) { // levels apart by rounding alone: no line, but its force
+                    const double force = (to - from) * (c[0] + c[1] / 2 + c[2] / 3 + c[3] / 4 + c[4] / 5);
+                    put(strip_.carrier(carrier), {at_from, at_from, {force, 0, 0, 0, 0}});
+                    continue;
+                }
+                const double rate = (to - from) / stretch;
                 for (double& k : c) {
                     k *= rate;
                 }
@@ -184,6 +191,16 @@ double way_to_lone_carrier(const StripAtLevels& strip, const StripPiece& whole) 
         way = std::max(way, std::abs(corner.x - strip.along(0, corner.y)));
     }
     return strip.alone() ? way : 0;
+}
+
+/// A line of a strip's deck, or the force of one without length.
+void put_on_carrier(std::uint32_t carrier, const CarrierLine& line, Collector& collector) {
+    const std::uint32_t deck = line.source.index;
+    if (line.piece.to > line.piece.from) {
+        collector.put_line(carrier, deck, line);
+    } else {
+        collector.put_point(carrier, deck, {line.load_case, line.source, line.piece.from, line.piece.c[0]});
+    }
 }
 
 /// All load of a cell that goes to points of its carriers.
@@ -235,7 +252,7 @@ void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure&
                 for (double& c : line.c) {
                     c *= u.q;
                 }
-                collector.put_line(carrier, strip.deck, {u.load_case, source, line});
+                put_on_carrier(carrier, {u.load_case, source, line}, collector);
                 collector.note_moved(strip.deck, u.load_case, way * std::abs(u.q * area_of(whole)));
             }
         });
@@ -246,7 +263,7 @@ void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure&
         pressure.zones_over(whole, sharing.axes[strip.axes], zones);
         for (const DeckPressure::Piece& zone : zones) {
             loader.carry(zone.where, zone.intensity, [&](std::uint32_t carrier, const LinePiece& line) {
-                collector.put_line(carrier, strip.deck, {zone.load_case, source, line});
+                put_on_carrier(carrier, {zone.load_case, source, line}, collector);
             });
             collector.note_moved(strip.deck, zone.load_case, way * most_force(zone.where, zone.intensity));
         }
