@@ -40,11 +40,16 @@ public:
             add_crossings(strip_, piece, piece.high, levels);
             std::sort(levels.begin(), levels.end());
         }
-        levels.push_back(piece.to);
-        for (std::size_t i = 0; i + 1 < levels.size(); ++i) {
-            if (levels[i + 1] > levels[i]) {
-                carry_smooth(between_levels(piece, levels[i], levels[i + 1]), intensity, put);
+        // A level within noise of the last one, or of the end, is that level.
+        double from = piece.from;
+        for (const double level : levels) {
+            if (level - from > noise_ && piece.to - level > noise_) {
+                carry_smooth(between_levels(piece, from, level), intensity, put);
+                from = level;
             }
+        }
+        if (piece.to > from) {
+            carry_smooth(between_levels(piece, from, piece.to), intensity, put);
         }
     }
 
@@ -137,7 +142,11 @@ private:
                 const std::size_t carrier = window.first + i;
                 const double at_from = strip_.station(carrier, from);
                 const double at_to = strip_.station(carrier, to);
-                const double rate = (to - from) / std::abs(at_to - at_from);
+                const double stretch = std::abs(at_to - at_from);
+                if (!(stretch > 0)) {
+                    continue; // a piece as thin as rounding
+                }
+                const double rate = (to - from) / stretch;
                 Quartic c = piece.c[i];
                 for (double& k : c) {
                     k *= rate;
