@@ -141,10 +141,7 @@ class OnePass(unittest.TestCase):
 
     def test_what_is_not_supported_is_said_once(self):
         plan = plan_of("shelter")
-        plan["levels"][0]["decks"][0]["share"] = "lever"
-        self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
-        plan = plan_of("shelter")
-        plan["settings"] = {"share": "lever"}
+        plan["combinations"] = [{"preset": "en1990-6.10"}, {"preset": "asce7-22-strength"}]
         self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
 
     def test_where_values_are_missing_framing_waits_and_says_so(self):
@@ -295,10 +292,17 @@ class Documents(unittest.TestCase):
         self.assertNotIn("share", result["settings"]["defaults"])
         self.assertEqual({deck["share"] for level in result["levels"] for deck in level["decks"]}, {"half"})
 
-    def test_a_share_that_is_not_built_yet_is_refused(self):
-        done = runnel("takedown", sample("shelter"), "--format", "json", "--share", "lever")
-        self.assertEqual(done.returncode, 1)
-        self.assertIn("not-supported-yet", [problem["code"] for problem in json.loads(done.stdout)["problems"]])
+    def test_every_share_can_be_asked_for(self):
+        forces = []
+        for share in ("half", "lever", "continuous"):
+            done = runnel("takedown", sample("shelter"), "--format", "json", "--share", share)
+            self.assertEqual(done.returncode, 0, done.stderr)
+            result = json.loads(done.stdout)
+            self.assertEqual({deck["share"] for level in result["levels"] for deck in level["decks"]}, {share})
+            forces.append([row["arrived"] for row in result["balance"]])
+        for other in forces[1:]:
+            for force, same in zip(forces[0], other, strict=True):
+                self.assertAlmostEqual(force, same, places=6)
 
 
 class Texts(unittest.TestCase):
