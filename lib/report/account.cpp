@@ -164,9 +164,10 @@ bool Account::alike(std::uint32_t level, std::uint32_t a, std::uint32_t b) const
         }
     }
     const std::vector<double>& areas = takedown_.levels[level].tributary_area;
+    const std::vector<double>& influence = takedown_.levels[level].influence_area;
     const std::span<const double> x = reaction_rows(level, a);
     const std::span<const double> y = reaction_rows(level, b);
-    return same(first.length, other.length) && same(areas[a], areas[b]) &&
+    return same(first.length, other.length) && same(areas[a], areas[b]) && same(influence[a], influence[b]) &&
            std::equal(x.begin(), x.end(), y.begin(), same);
 }
 
@@ -180,6 +181,7 @@ void Account::level_members(std::uint32_t level, std::size_t most) {
     table.describe("role", Align::left);
     table.describe(with_unit("length", dimension::length), Align::right);
     table.describe("area, " + area_unit(), Align::right);
+    table.describe("influence", Align::right);
     table.names("on", on_width);
     table.describe("station", Align::right);
     case_headings(table);
@@ -206,11 +208,11 @@ void Account::member_rows(PageTable& table, std::uint32_t level, const Alike& gr
     const std::span<const Bearing> bearings = framed.bearings[group.first];
     const std::span<const double> reactions = reaction_rows(level, group.first);
     for (std::size_t b = 0; b < bearings.size(); ++b) {
-        std::vector<std::string> row(4);
+        std::vector<std::string> row(5);
         if (b == 0) {
             const FramedMember& one = framed.members[group.first];
             row = {named(one.id, group.count), std::string(name_of(one.role)), length(one.length),
-                   area(result.tributary_area[group.first])};
+                   area(result.tributary_area[group.first]), area(result.influence_area[group.first])};
         }
         row.emplace_back(names_.carrier(level, bearings[b].on));
         row.push_back(length(bearings[b].station));

@@ -114,6 +114,7 @@ void ResultWriter::member(std::uint32_t level, std::uint32_t member) {
     json_.key("length").number(framed.length, scale_.length);
     json_.key("region_area").number(result.region_area[member], scale_.area);
     json_.key("tributary_area").number(result.tributary_area[member], scale_.area);
+    json_.key("influence_area").number(result.influence_area[member], scale_.area);
     bearings(level, member);
     loads(level, member);
     spans(level, member);

@@ -1,0 +1,234 @@
+#include "support/building_support.hpp"
+#include "support/deck_support.hpp"
+#include "support/framing_support.hpp"
+
+#include <runnel/takedown.hpp>
+
+#include <doctest/doctest.h>
+
+#include <string>
+
+using namespace runnel;
+using doctest::Approx;
+using framing_support::PlanBuilder;
+using framing_support::rectangle;
+
+namespace {
+
+/// Columns on a grid of 6 by 8, 4 bays by 3; girders along x over each line of columns, joists 2 apart along
+/// y from girder to girder, a one-way deck along x over all. The deck reaches `beyond` past the first line of
+/// columns on both sides, there with girders and joists that run on.
+struct RegularGrid {
+    static constexpr double a = 6, b = 8, spacing = 1.5;
+    static constexpr int nx = 4, ny = 3;
+    PlanBuilder builder;
+    double beyond_x = 0, beyond_y = 0;
+
+    explicit RegularGrid(double past_x = 0, double past_y = 0) : beyond_x(past_x), beyond_y(past_y) {
+        for (int j = 0; j <= ny; ++j) {
+            for (int i = 0; i <= nx; ++i) {
+                builder.column(name("C", i, j), {a * i, b * j});
+            }
+            // Past the last joist, which would else carry the girder's end.
+            const double end = beyond_x > 0 ? beyond_x + 0.25 : 0;
+            builder.girder("G" + std::to_string(j), {-end, b * j}, {a * nx, b * j});
+        }
+        const int joists = static_cast<int>(a / spacing) * nx;
+        const int before = static_cast<int>(beyond_x / spacing);
+        for (int k = -before; k <= joists; ++k) {
+            builder.joist(name("J", k + before, 0), {spacing * k, -beyond_y}, {spacing * k, b * ny});
+        }
+    }
+    static std::string name(const std::string& letter, int i, int j) {
+        return letter + std::to_string(i) + '_' + std::to_string(j);
+    }
+    void one_deck() { builder.deck("D", rectangle(-beyond_x, -beyond_y, a * nx, b * ny)).direction = 0; }
+    void deck_bay_by_bay() {
+        for (int j = 0; j < ny; ++j) {
+            for (int i = 0; i < nx; ++i) {
+                builder.deck(name("D", i, j), rectangle(a * i, b * j, a * (i + 1), b * (j + 1))).direction =
+                    0;
+            }
+        }
+    }
+    [[nodiscard]] Takedown take_down() const {
+        Takedown takedown = runnel::take_down(builder.plan);
+        for (const Problem& problem : takedown.problems) {
+            INFO(problem.message);
+            CHECK(problem.severity != Severity::error);
+        }
+        REQUIRE(takedown.complete);
+        return takedown;
+    }
+};
+
+const Lift& lift_of(const Takedown& takedown, const std::string& id) {
+    for (std::size_t c = 0; c < takedown.plan.columns.size(); ++c) {
+        if (takedown.plan.columns[c].id == id) {
+            return takedown.columns[c].lifts.front();
+        }
+    }
+    FAIL("no column ", id);
+    return takedown.columns.front().lifts.front();
+}
+
+struct Areas {
+    double region = 0, tributary = 0, influence = 0;
+};
+
+Areas areas_of(const Takedown& takedown, const std::string& member) {
+    const std::uint32_t m = framing_support::member_index(takedown.framing.levels[0], member);
+    const LevelTakedown& level = takedown.levels[0];
+    return {level.region_area[m], level.tributary_area[m], level.influence_area[m]};
+}
+
+double ratio(const Lift& lift) {
+    return lift.influence_area / lift.tributary_area;
+}
+
+} // namespace
+
+// K_LL: ASCE/SEI 7-16, table 4.7-1. It is the ratio of influence to tributary area, rounded down.
+TEST_CASE("columns of a regular grid have the published ratios of influence to tributary area") {
+    RegularGrid grid;
+    grid.one_deck();
+    const Takedown t = grid.take_down();
+    CHECK(lift_of(t, "C2_1").tributary_area == Approx(48));
+    CHECK(ratio(lift_of(t, "C2_1")) == Approx(4)); // interior
+    CHECK(ratio(lift_of(t, "C2_0")) == Approx(4)); // exterior, without cantilever slab
+    CHECK(ratio(lift_of(t, "C0_1")) == Approx(4));
+    CHECK(ratio(lift_of(t, "C0_0")) == Approx(4)); // corner
+}
+
+TEST_CASE("floors that cantilever half a bay give edge columns 3 and corner columns no less than 2") {
+    RegularGrid grid(RegularGrid::a / 2, RegularGrid::b / 2);
+    grid.one_deck();
+    const Takedown t = grid.take_down();
+    CHECK(ratio(lift_of(t, "C2_0")) == Approx(3)); // edge column, with cantilever slab
+    CHECK(ratio(lift_of(t, "C0_1")) == Approx(3));
+    CHECK(ratio(lift_of(t, "C2_1")) == Approx(4));
+    CHECK(lift_of(t, "C0_0").influence_area == Approx((3 + 6) * (4 + 8)));
+    CHECK(ratio(lift_of(t, "C0_0")) == Approx(2.25));
+}
+
+TEST_CASE("interior beams have twice their tributary area, and edge beams without cantilever too") {
+    RegularGrid grid;
+    grid.one_deck();
+    const Takedown t = grid.take_down();
+    const Areas inner = areas_of(t, "J4_0");
+    CHECK(inner.influence / inner.tributary == Approx(2));
+    const Areas edge = areas_of(t, "J0_0");
+    CHECK(edge.influence == Approx(1.5 * 24));
+    CHECK(edge.influence / edge.tributary == Approx(2));
+    // A girder: its joists' spans on both sides, and what joists share counts once.
+    CHECK(areas_of(t, "G1").influence == Approx(24 * 16));
+    CHECK(areas_of(t, "G0").influence == Approx(24 * 8));
+}
+
+TEST_CASE("influence areas do not depend on how decks are outlined") {
+    RegularGrid whole;
+    whole.one_deck();
+    RegularGrid bays;
+    bays.deck_bay_by_bay();
+    const Takedown a = whole.take_down();
+    const Takedown b = bays.take_down();
+    const std::vector<double>& one = a.levels[0].influence_area;
+    const std::vector<double>& many = b.levels[0].influence_area;
+    REQUIRE(one.size() == many.size());
+    for (std::size_t c = 0; c < one.size(); ++c) {
+        CAPTURE(c);
+        CHECK(many[c] == Approx(one[c]).epsilon(1e-12));
+    }
+}
+
+namespace {
+
+/// Marks the carriers that feel a load at a station of one: upwards from the load, the other way round than
+/// the library goes. A member passes it to the bearings at both ends of its span.
+void mark_felt(const FramedLevel& framed, const Sharing& sharing, std::uint32_t carrier, double station,
+               std::vector<bool>& felt) {
+    felt[carrier] = true;
+    if (carrier >= sharing.members) {
+        return;
+    }
+    const std::span<const Bearing> bearings = framed.bearings[carrier];
+    for (std::size_t b = 0; b < bearings.size(); ++b) {
+        const bool after_last = b > 0 && station <= bearings[b - 1].station;
+        const bool before_next = b + 1 < bearings.size() && station >= bearings[b + 1].station;
+        if (!after_last && !before_next) {
+            mark_felt(framed, sharing, sharing.number_of(bearings[b].on), bearings[b].on_station, felt);
+        }
+    }
+}
+
+std::vector<bool> felt_from(const FramedLevel& framed, const Sharing& sharing, const Bay& bay, double x) {
+    std::vector<bool> felt(sharing.carrier_count());
+    if (bay.low_carrier != none) {
+        mark_felt(framed, sharing, bay.low_carrier, (1 - x) * bay.low_station_from + x * bay.low_station_to,
+                  felt);
+    }
+    if (bay.high_carrier != none) {
+        mark_felt(framed, sharing, bay.high_carrier,
+                  (1 - x) * bay.high_station_from + x * bay.high_station_to, felt);
+    }
+    return felt;
+}
+
+} // namespace
+
+TEST_CASE("an influence area is the floor from which loads reach the carrier, looked for point by point") {
+    constexpr std::uint64_t buildings = 40;
+    for (std::uint64_t seed = 1; seed <= buildings; ++seed) {
+        CAPTURE(seed);
+        const Takedown t = runnel::take_down(support::random_building(seed));
+        REQUIRE(t.complete);
+        for (std::size_t l = 0; l < t.levels.size(); ++l) {
+            const FramedLevel& framed = t.framing.levels[l];
+            const LevelTakedown& level = t.levels[l];
+            const Sharing& sharing = level.sharing;
+            // Slices of each bay, each taken by its middle: what is wrong is at most a slice at each change.
+            constexpr int slices = 200;
+            std::vector<double> expected(sharing.carrier_count());
+            std::vector<double> slack(sharing.carrier_count(), 1e-9);
+            for (const Bay& bay : sharing.bays) {
+                std::vector<bool> before;
+                for (int i = 0; i < slices; ++i) {
+                    const double x = (i + 0.5) / slices;
+                    const double slice = (bay.to - bay.from) / slices * (bay.high.at(x) - bay.low.at(x));
+                    const std::vector<bool> felt = felt_from(framed, sharing, bay, x);
+                    for (std::uint32_t c = 0; c < felt.size(); ++c) {
+                        expected[c] += felt[c] ? slice : 0;
+                        slack[c] += i > 0 && felt[c] != before[c] ? slice : 0;
+                    }
+                    before = felt;
+                }
+            }
+            for (std::uint32_t c = 0; c < expected.size(); ++c) {
+                CAPTURE(c);
+                CHECK(std::abs(level.influence_area[c] - expected[c]) <= 1.5 * slack[c] + 1e-9 * expected[c]);
+                CHECK(level.tributary_area[c] <= level.influence_area[c] * (1 + 1e-12) + 1e-9);
+            }
+        }
+    }
+}
+
+TEST_CASE("turning, moving and renumbering a building changes no influence area") {
+    for (std::uint64_t seed = 1; seed <= 20; ++seed) {
+        CAPTURE(seed);
+        const Takedown t = runnel::take_down(support::random_building(seed));
+        const Takedown moved = runnel::take_down(support::random_building(seed, {33, {4000, -700}, true}));
+        REQUIRE(t.complete);
+        REQUIRE(moved.complete);
+        for (std::size_t c = 0; c < t.columns.size(); ++c) {
+            const auto same =
+                std::find_if(moved.plan.columns.begin(), moved.plan.columns.end(),
+                             [&](const Column& column) { return column.id == t.plan.columns[c].id; });
+            const auto& lifts =
+                moved.columns[static_cast<std::size_t>(same - moved.plan.columns.begin())].lifts;
+            REQUIRE(lifts.size() == t.columns[c].lifts.size());
+            for (std::size_t l = 0; l < lifts.size(); ++l) {
+                CHECK(lifts[l].influence_area == Approx(t.columns[c].lifts[l].influence_area).epsilon(1e-9));
+            }
+        }
+    }
+}
