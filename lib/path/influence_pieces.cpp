@@ -1,5 +1,10 @@
 #include "path/influence_pieces.hpp"
 
+#include "deck/panels.hpp"
+#include "geometry/box_tree.hpp"
+
+#include <algorithm>
+#include <optional>
 #include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -15,25 +20,140 @@ double FloorPieces::area_between(std::uint32_t piece, double from, double to) co
                     stretch_of(shape.high, from, to)});
 }
 
-FloorPieces floor_pieces(const Sharing& sharing) {
-    FloorPieces pieces;
-    std::vector<std::pair<std::uint32_t, Beside>> beside;
-    pieces.shapes.reserve(sharing.bays.size());
-    pieces.areas.reserve(sharing.bays.size());
-    beside.reserve(2 * sharing.bays.size());
-    for (const Bay& bay : sharing.bays) {
-        const auto piece = static_cast<std::uint32_t>(pieces.shapes.size());
-        pieces.shapes.push_back({bay.from, bay.to, bay.low, bay.high});
-        pieces.areas.push_back(area_of(pieces.shapes.back()));
-        if (bay.low_carrier != none) {
-            beside.push_back({bay.low_carrier, {piece, bay.low_station_from, bay.low_station_to, false}});
+namespace {
+
+class PieceMaker {
+public:
+    PieceMaker(const Plan& plan, const FramedLevel& framed, const Sharing& sharing, Tolerance tolerance)
+        : plan_(plan), framed_(framed), sharing_(sharing), tolerance_(tolerance) {}
+
+    FloorPieces make() {
+        add_bays();
+        for (std::uint32_t d = 0; d < framed_.decks.size(); ++d) {
+            if (framed_.decks[d].span == SpanKind::two_way) {
+                add_panels(framed_.decks[d]);
+            }
         }
-        if (bay.high_carrier != none) {
-            beside.push_back({bay.high_carrier, {piece, bay.high_station_from, bay.high_station_to, false}});
+        add_cells_of_columns();
+        pieces_.beside = Grouped<Beside>::from_pairs(sharing_.carrier_count(), std::move(beside_));
+        return std::move(pieces_);
+    }
+
+private:
+    void add_bays() {
+        pieces_.shapes.reserve(sharing_.bays.size());
+        pieces_.areas.reserve(sharing_.bays.size());
+        beside_.reserve(2 * sharing_.bays.size());
+        for (const Bay& bay : sharing_.bays) {
+            pieces_.shapes.push_back({bay.from, bay.to, bay.low, bay.high});
+            const std::uint32_t piece = add_piece(area_of(pieces_.shapes.back()));
+            if (bay.low_carrier != none) {
+                beside_.push_back(
+                    {bay.low_carrier, {piece, bay.low_station_from, bay.low_station_to, false}});
+            }
+            if (bay.high_carrier != none) {
+                beside_.push_back(
+                    {bay.high_carrier, {piece, bay.high_station_from, bay.high_station_to, false}});
+            }
         }
     }
-    pieces.beside = Grouped<Beside>::from_pairs(sharing.carrier_count(), std::move(beside));
-    return pieces;
+
+    std::uint32_t add_piece(double area) {
+        pieces_.areas.push_back(area);
+        return static_cast<std::uint32_t>(pieces_.areas.size() - 1);
+    }
+
+    void add_panels(const FramedDeck& deck) {
+        const std::vector<LineCarrier> carriers = carriers_near(deck);
+        for (const Panel& panel : divide_into_panels(deck, carriers, tolerance_).panels) {
+            const std::uint32_t piece = add_piece(panel.area);
+            const auto lay_beside = [&](const std::vector<PanelEdge>& border) {
+                for (const PanelEdge& edge : border) {
+                    if (edge.carrier != none) {
+                        beside_.push_back({carriers[edge.carrier].number,
+                                           {piece, edge.station_from, edge.station_to, true}});
+                    }
+                }
+            };
+            lay_beside(panel.outer);
+            std::for_each(panel.holes.begin(), panel.holes.end(), lay_beside);
+        }
+    }
+
+    /// Members and walls of the level that may carry a deck.
+    std::vector<LineCarrier> carriers_near(const FramedDeck& deck) {
+        if (!tree_) {
+            find_carriers();
+        }
+        std::vector<std::uint32_t> near;
+        tree_->find(box_of(deck.outline).grown(tolerance_.snap), near);
+        std::vector<LineCarrier> carriers;
+        for (const std::uint32_t i : near) {
+            carriers.push_back(carriers_[i]);
+        }
+        return carriers;
+    }
+
+    void find_carriers() {
+        for (std::uint32_t m = 0; m < framed_.members.size(); ++m) {
+            if (framed_.members[m].carries_deck) {
+                carriers_.push_back({m, framed_.members[m].from, framed_.members[m].to});
+            }
+        }
+        for (const std::uint32_t w : framed_.walls) {
+            carriers_.push_back(
+                {sharing_.number_of({CarrierKind::wall, w}), plan_.walls[w].from, plan_.walls[w].to});
+        }
+        std::vector<Box> boxes;
+        boxes.reserve(carriers_.size());
+        for (const LineCarrier& carrier : carriers_) {
+            boxes.push_back(box_of(carrier.from, carrier.to));
+        }
+        tree_.emplace(boxes);
+    }
+
+    void add_cells_of_columns() {
+        std::vector<Sum> brought(sharing_.carrier_count());
+        double floor = 0;
+        for (std::uint32_t d = 0; d < framed_.decks.size(); ++d) {
+            floor += framed_.decks[d].span == SpanKind::columns ? sharing_.deck_area[d] : 0;
+        }
+        if (floor <= 0) {
+            return;
+        }
+        for (std::size_t c = 0; c < sharing_.cells.size(); ++c) {
+            const Cell& cell = sharing_.cells[c];
+            if (framed_.decks[cell.deck].span == SpanKind::columns && !sharing_.transfers[c].empty()) {
+                const double area = area_of(StripPiece{cell.from, cell.to, cell.low, cell.high});
+                brought[sharing_.transfers[c].front().carrier].add(area);
+            }
+        }
+        for (std::uint32_t carrier = 0; carrier < brought.size(); ++carrier) {
+            if (brought[carrier].value() > 0) {
+                // On a regular grid: full spans to the next columns on four sides, or to both sides of a
+                // wall.
+                const double full = sharing_.carrier(carrier).kind == CarrierKind::column ? 2.0 * 2.0 : 2.0;
+                const double area = std::min(full * brought[carrier].value(), floor);
+                beside_.push_back({carrier, {add_piece(area), 0, 0, true}});
+            }
+        }
+    }
+
+    const Plan& plan_;
+    const FramedLevel& framed_;
+    const Sharing& sharing_;
+    Tolerance tolerance_;
+    std::vector<LineCarrier> carriers_;
+    std::optional<BoxTree> tree_; ///< of the carriers; built when first asked
+    FloorPieces pieces_;
+    std::vector<std::pair<std::uint32_t, Beside>> beside_;
+};
+
+} // namespace
+
+FloorPieces floor_pieces(const Plan& plan, const FramedLevel& framed, const Sharing& sharing,
+                         Tolerance tolerance) {
+    return PieceMaker(plan, framed, sharing, tolerance).make();
 }
 
 RUNNEL_NAMESPACE_END

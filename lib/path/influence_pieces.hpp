@@ -1,5 +1,6 @@
 #pragma once
 
+#include "geometry/basic.hpp"
 #include "geometry/strip_piece.hpp"
 
 #include <runnel/deck.hpp>
@@ -20,8 +21,9 @@ struct Beside {
 /// The floor of a level in pieces that do not overlap, and which of them lie beside each carrier: the one
 /// thing that influence areas ask of decks. A load anywhere on a piece is felt by the carriers beside it.
 ///
-/// One-way decks: the bays, from carrier to carrier, or from the last carrier to the edge. Decks on columns:
-/// see influence_columns.hpp.
+/// One-way decks: the bays, from carrier to carrier, or from the last carrier to the edge. Two-way decks: the
+/// panels between carriers, whole. Decks on columns: four times a column's cell and twice a wall's, as on a
+/// regular grid, though never more than the deck; these are no places on the floor.
 struct FloorPieces {
     std::vector<StripPiece> shapes; ///< of the first pieces; those after them count whole
     std::vector<double> areas;      ///< by piece, m2
@@ -31,6 +33,7 @@ struct FloorPieces {
     [[nodiscard]] double area_between(std::uint32_t piece, double from, double to) const;
 };
 
-[[nodiscard]] FloorPieces floor_pieces(const Sharing& sharing);
+[[nodiscard]] FloorPieces floor_pieces(const Plan& plan, const FramedLevel& framed, const Sharing& sharing,
+                                       Tolerance tolerance);
 
 RUNNEL_NAMESPACE_END

@@ -208,9 +208,9 @@ void pass_areas_and_lifts(Takedown& takedown, std::uint32_t level_index, const L
     const FramedLevel& framed = takedown.framing.levels[level_index];
     LevelTakedown& level = takedown.levels[level_index];
     const Sharing& sharing = level.sharing;
-    level.influence_area =
-        influence_areas(framed, sharing, path, floor_pieces(sharing),
-                        {noise_of(takedown.framing.largest_coordinate), takedown.plan.settings.snap});
+    const Tolerance tolerance{noise_of(takedown.framing.largest_coordinate), takedown.plan.settings.snap};
+    const FloorPieces pieces = floor_pieces(takedown.plan, framed, sharing, tolerance);
+    level.influence_area = influence_areas(framed, sharing, path, pieces, tolerance);
     for (const std::uint32_t column : framed.columns) {
         add_column_lift(takedown, level_index, column,
                         arrived[sharing.number_of({CarrierKind::column, column})]);

@@ -1,3 +1,4 @@
+#include "path/influence.hpp"
 #include "support/building_support.hpp"
 #include "support/deck_support.hpp"
 #include "support/framing_support.hpp"
@@ -231,4 +232,66 @@ TEST_CASE("turning, moving and renumbering a building changes no influence area"
             }
         }
     }
+}
+
+namespace {
+
+/// Influence areas of the first level, by carrier, from the framing alone: what is neither bay nor cell.
+std::vector<double> influence_of_panels(const Plan& plan, const Framing& framing) {
+    Sharing sharing;
+    sharing.members = static_cast<std::uint32_t>(framing.levels[0].members.size());
+    sharing.walls = static_cast<std::uint32_t>(plan.walls.size());
+    sharing.columns = static_cast<std::uint32_t>(plan.columns.size());
+    const Tolerance tolerance{noise_of(framing.largest_coordinate), plan.settings.snap};
+    return influence_areas(framing.levels[0], sharing, find_landings(framing.levels[0], sharing),
+                           floor_pieces(plan, framing.levels[0], sharing, tolerance), tolerance);
+}
+
+} // namespace
+
+// K_LL 4 for columns and 2 for beams as above: the tributary areas are a bay, half a bay and a quarter for
+// columns, and for a beam of one span a quarter of the panel on each side.
+TEST_CASE("on two-way panels a column feels the panels around it, a beam those on both sides") {
+    constexpr double a = 6, b = 8;
+    PlanBuilder builder;
+    for (int j = 0; j <= 2; ++j) {
+        for (int i = 0; i <= 3; ++i) {
+            builder.column(RegularGrid::name("C", i, j), {a * i, b * j});
+        }
+        builder.girder("X" + std::to_string(j), {0, b * j}, {3 * a, b * j});
+    }
+    for (int i = 0; i <= 3; ++i) {
+        for (int j = 0; j < 2; ++j) {
+            builder.girder(RegularGrid::name("Y", i, j), {a * i, b * j}, {a * i, b * (j + 1)});
+        }
+    }
+    builder.deck("D", rectangle(0, 0, 3 * a, 2 * b)).span = SpanKind::two_way;
+    const auto check = [&] {
+        const Framing framing = frame_plan(builder.plan);
+        const std::vector<double> areas = influence_of_panels(builder.plan, framing);
+        const std::size_t members = framing.levels[0].members.size();
+        const auto of_column = [&](int i, int j) {
+            return areas[members + static_cast<std::size_t>(4 * j + i)];
+        };
+        CHECK(of_column(1, 1) == Approx(4 * a * b));
+        CHECK(of_column(1, 0) == Approx(2 * a * b));
+        CHECK(of_column(0, 1) == Approx(2 * a * b));
+        CHECK(of_column(3, 2) == Approx(a * b));
+        const auto of_member = [&](const std::string& id) {
+            return areas[framing_support::member_index(framing.levels[0], id)];
+        };
+        CHECK(of_member("Y1_0") == Approx(2 * a * b));
+        CHECK(of_member("Y0_0") == Approx(a * b));
+        CHECK(of_member("X1") == Approx(6 * a * b));
+        CHECK(of_member("X0") == Approx(3 * a * b));
+    };
+    check();
+    builder.floor().decks.clear(); // the same floor, outlined panel by panel
+    for (int j = 0; j < 2; ++j) {
+        for (int i = 0; i < 3; ++i) {
+            builder.deck(RegularGrid::name("D", i, j), rectangle(a * i, b * j, a * (i + 1), b * (j + 1)))
+                .span = SpanKind::two_way;
+        }
+    }
+    check();
 }
