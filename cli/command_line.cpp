@@ -108,6 +108,9 @@ private:
         command
             .add_option("-o,--output", request_.folder, "Also write result, tables and drawings into FOLDER")
             ->type_name("FOLDER");
+        command.add_flag("--compare-shares", request_.compare_shares,
+                         "Also show what carriers get under half, lever and continuous; with --format text "
+                         "or json");
         add_common(command);
     }
 
@@ -278,6 +281,9 @@ private:
             if (request_.format != "csv") {
                 return "--table goes with --format csv";
             }
+        }
+        if (request_.compare_shares && request_.format == "csv") {
+            return "--compare-shares goes with --format text or json";
         }
         if (std::count(request_.files.begin(), request_.files.end(), "-") > 1) {
             return "standard input can be read once only";

@@ -166,6 +166,16 @@ runnel::Takedown take_down(Input& input, const Request& request) {
     return takedown;
 }
 
+runnel::ShareComparison compare_shares(const Input& input, const runnel::Takedown& takedown,
+                                       const Request& request) {
+    const Progress progress("comparing the shares");
+    runnel::ShareComparison shares = runnel::compare_shares(takedown, takedown_options(request));
+    for (runnel::ShareRun& run : shares.runs) {
+        runnel::locate_problems(input.text, run.problems);
+    }
+    return shares;
+}
+
 void complain_of(const std::string& file, runnel::Units units, const std::vector<runnel::Problem>& problems) {
     runnel::write_problems(problems, file, units, colour_on(stderr), standard_error());
 }
@@ -237,7 +247,12 @@ Status takedown(const Request& request) {
         return file_trouble;
     }
     const runnel::Takedown takedown = take_down(*input, request);
-    const runnel::ReportOptions options = report_options(request, *input);
+    runnel::ReportOptions options = report_options(request, *input);
+    runnel::ShareComparison shares;
+    if (request.compare_shares && input->usable()) {
+        shares = compare_shares(*input, takedown, request);
+        options.shares = &shares;
+    }
 
     Output output = Output::standard();
     if (request.format == "json") {
@@ -245,7 +260,7 @@ Status takedown(const Request& request) {
     } else if (takedown.complete && request.format == "csv") {
         runnel::write_table(takedown, request.table.value_or(runnel::Table::reactions), options,
                             output.sink());
-    } else if (takedown.complete) {
+    } else if (takedown.complete || options.shares != nullptr) {
         runnel::write_account(takedown, options, output.sink());
     }
     bool written = output.close();

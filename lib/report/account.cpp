@@ -1,8 +1,10 @@
 #include "report/account.hpp"
+#include "report/deck_shares.hpp"
 
 #include <runnel/version.hpp>
 
 #include <algorithm>
+#include <array>
 #include <cmath>
 #include <map>
 
@@ -55,7 +57,7 @@ void write_account(const Takedown& takedown, const ReportOptions& options, const
 }
 
 Account::Account(const Takedown& takedown, const ReportOptions& options, const TextSink& sink)
-    : takedown_(takedown), scale_(options.units.value_or(takedown.plan.units)),
+    : takedown_(takedown), shares_(options.shares), scale_(options.units.value_or(takedown.plan.units)),
       names_(takedown.plan, takedown.framing), page_(options.colour, sink) {}
 
 void Account::write() {
@@ -67,6 +69,7 @@ void Account::write() {
         rundowns();
         foundations();
     }
+    shares();
     warnings();
     cautions();
 }
@@ -75,14 +78,36 @@ void Account::head() {
     page_.heading(takedown_.plan.title.empty() ? "Plan without a title" : takedown_.plan.title);
     page_.paragraph("Takedown by runnel " + std::string(version()) + ", characteristic values by case, in " +
                         std::string(name_of(scale_.units.length)) + " and " +
-                        std::string(name_of(scale_.units.force)) + ", decks shared by `" +
-                        std::string(name_of(takedown_.plan.settings.share)) + "` unless they say otherwise.",
+                        std::string(name_of(scale_.units.force)) + ". " + shares_used(),
                     0);
     page_.blank();
     if (!takedown_.complete) {
         page_.alarm("Nothing is computed: the plan has errors.", 0);
         page_.blank();
     }
+}
+
+/// "Decks shared by `half`; by `lever`: D1, D4." Decks are named where they differ from the plan's setting.
+std::string Account::shares_used() const {
+    constexpr std::size_t most = 8; // decks that are named
+    constexpr std::array<Share, 3> shares{Share::half, Share::lever, Share::continuous};
+    const Share usual = takedown_.plan.settings.share;
+    std::string text = "Decks shared by `" + std::string(name_of(usual)) + '`';
+    for (const Share share : shares) {
+        std::string decks;
+        std::size_t count = 0;
+        for (const auto& [level, deck] : decks_shared_otherwise(takedown_)) {
+            if (takedown_.framing.levels[level].decks[deck].share == share && ++count <= most) {
+                decks += (decks.empty() ? "" : ", ") +
+                         fit(names_.source_anywhere(level, {SourceKind::deck, deck}), id_width);
+            }
+        }
+        if (count > 0) {
+            text += "; by `" + std::string(name_of(share)) + "`: " + decks +
+                    (count > most ? " and " + std::to_string(count - most) + " more" : "");
+        }
+    }
+    return text + '.';
 }
 
 void Account::members() {
