@@ -30,7 +30,7 @@ void refuse(const FramedLevel& level, const FramedDeck& deck, std::string_view w
     sharing.problems.push_back(problem_at(ProblemCode::not_supported_yet, deck.origin, "decks",
                                           "Level " + level.id + ", deck " + deck.id + ": " +
                                               std::string(what) + " is not supported yet.",
-                                          "Use \"span\": \"one-way\" with \"share\": \"half\".", {deck.id}));
+                                          "Use \"span\": \"one-way\".", {deck.id}));
 }
 
 double area_of(const FramedDeck& deck) {
@@ -65,10 +65,6 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
         sharing.deck_area.push_back(area_of(deck));
         if (deck.span != SpanKind::one_way) {
             refuse(level, deck, "span " + std::string(name_of(deck.span)), sharing);
-            continue;
-        }
-        if (deck.share != Share::half) {
-            refuse(level, deck, "share " + std::string(name_of(deck.share)), sharing);
             continue;
         }
         tree.find(box_of(deck.outline).grown(plan.settings.snap), near);

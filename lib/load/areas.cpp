@@ -2,6 +2,7 @@
 
 #include "deck/pressure.hpp"
 #include "geometry/line_pieces.hpp"
+#include "load/strip_loads.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
@@ -278,7 +279,11 @@ void load_areas(const Plan& plan, const Framing& framing, std::uint32_t level_in
             const DeckPressure pressure(plan, level, d, acting[d], sharing.axes[sharing.cells[first].axes],
                                         noise);
             raw.clear();
-            gather_cells(sharing, first, last, pressure, d, collector, raw);
+            if (level.decks[d].span == SpanKind::one_way && level.decks[d].share != Share::half) {
+                load_strips(sharing, d, first, last, pressure, collector);
+            } else {
+                gather_cells(sharing, first, last, pressure, d, collector, raw);
+            }
             for (std::size_t i = 0; i < raw.size();) {
                 std::size_t end = i + 1;
                 while (end < raw.size() && raw[end].carrier == raw[i].carrier) {

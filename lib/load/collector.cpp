@@ -138,6 +138,7 @@ LevelLoads Collector::finish() {
             }
         }
     }
+    loads.curve_error = curve_error_;
     loads.problems = std::move(problems);
     return loads;
 }

@@ -34,7 +34,7 @@ public:
     LoadPlacer(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
                Collector& collector)
         : plan_(plan), level_(framing.levels[level]), sharing_(sharing), collector_(collector),
-          bays_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
+          parts_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
           columns_(boxes_of_columns()) {
         for (std::uint32_t i = 0; i < axes_.size(); ++i) {
             by_id_.emplace(axes_[i].id, i);
@@ -196,16 +196,16 @@ private:
         }
     }
 
-    void take_over_bays(const LineLoad& load, std::uint32_t index, std::span<const BayFinder::Hit> hits,
-                        std::vector<Interval>& left) {
+    void take_over_parts(const LineLoad& load, std::uint32_t index, std::span<const DeckPartFinder::Hit> hits,
+                         std::vector<Interval>& left) {
         // Borders of neighbouring bays differ by rounding; a stretch of that size belongs to either.
         const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
         const std::uint32_t load_case = case_index(plan_, load.case_id);
-        for (const BayFinder::Hit& hit : hits) {
+        for (const DeckPartFinder::Hit& hit : hits) {
             take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
                 const double w_a = (1 - t.from) * load.w_from + t.from * load.w_to;
                 const double w_b = (1 - t.to) * load.w_from + t.to * load.w_to;
-                share_line(sharing_, sharing_.bays[hit.bay], between(load.from, load.to, t.from),
+                share_line(sharing_, hit.part, between(load.from, load.to, t.from),
                            between(load.from, load.to, t.to), w_a, w_b, snap(), load_case,
                            {SourceKind::line_load, index}, collector_);
             });
@@ -213,10 +213,10 @@ private:
     }
 
     /// Whether the hits cover all that is left.
-    [[nodiscard]] bool cover(const LineLoad& load, std::span<const BayFinder::Hit> hits,
+    [[nodiscard]] bool cover(const LineLoad& load, std::span<const DeckPartFinder::Hit> hits,
                              std::vector<Interval> left) const {
         const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
-        for (const BayFinder::Hit& hit : hits) {
+        for (const DeckPartFinder::Hit& hit : hits) {
             take(left, {hit.from, hit.to}, tolerance, [](Interval) {});
         }
         return left.empty();
@@ -227,13 +227,13 @@ private:
         std::vector<Interval> left{{0, 1}};
         take_along_axes(load, index, left);
         if (!left.empty()) {
-            take_over_bays(load, index, bays_.over(load.from, load.to, collector_.noise()), left);
+            take_over_parts(load, index, parts_.over(load.from, load.to, collector_.noise()), left);
         }
         if (!left.empty()) {
             // What is drawn beside the deck by no more than `snap` stands on it.
-            const std::vector<BayFinder::Hit> hits = bays_.over(load.from, load.to, snap());
+            const std::vector<DeckPartFinder::Hit> hits = parts_.over(load.from, load.to, snap());
             if (cover(load, hits, left)) {
-                take_over_bays(load, index, hits, left);
+                take_over_parts(load, index, hits, left);
             }
         }
         double off = 0;
@@ -367,12 +367,12 @@ private:
         if (place_on_what_is_there(index)) {
             return;
         }
-        std::uint32_t bay = bays_.under(load.at, collector_.noise());
-        if (bay == none) {
-            bay = bays_.under(load.at, snap());
+        std::optional<DeckPart> part = parts_.under(load.at, collector_.noise());
+        if (!part) {
+            part = parts_.under(load.at, snap());
         }
-        if (bay != none) {
-            share_point(sharing_, sharing_.bays[bay], load.at, load.p, case_index(plan_, load.case_id),
+        if (part) {
+            share_point(sharing_, *part, load.at, load.p, case_index(plan_, load.case_id),
                         {SourceKind::point_load, index}, collector_);
             return;
         }
@@ -389,7 +389,7 @@ private:
     const FramedLevel& level_;
     const Sharing& sharing_;
     Collector& collector_;
-    BayFinder bays_;
+    DeckPartFinder parts_;
     std::vector<Axis> axes_;
     BoxTree tree_;
     BoxFinder columns_; ///< by their place in the level's list

@@ -1,0 +1,273 @@
+#include "load/strip_loads.hpp"
+
+#include "geometry/strip_piece.hpp"
+#include "load/fit.hpp"
+#include "load/strip_loads_window.hpp"
+
+#include <algorithm>
+#include <array>
+#include <cmath>
+#include <optional>
+#include <vector>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+/// The levels at which a border passes from one stretch of a strip to the next.
+void add_crossings(const StripAtLevels& strip, const StripPiece& piece, const Border& border,
+                   std::vector<double>& levels) {
+    const std::size_t at_from = strip.carriers_below(border.start, piece.from);
+    const std::size_t at_to = strip.carriers_below(border.end, piece.to);
+    for (std::size_t i = std::min(at_from, at_to); i < std::max(at_from, at_to); ++i) {
+        for (const double x : crossings_of(border, strip.along(i, piece.from), strip.along(i, piece.to))) {
+            levels.push_back((1 - x) * piece.from + x * piece.to);
+        }
+    }
+}
+
+/// Turns what presses on pieces of a strip into lines on its carriers.
+class StripLoader {
+public:
+    StripLoader(const StripAtLevels& strip, double noise) : strip_(strip), noise_(noise) {}
+
+    /// Calls put(carrier, line) for what a pressure on a piece of the strip brings each carrier.
+    template <class Put>
+    void carry(const StripPiece& piece, const Intensity& intensity, Put put) {
+        std::vector<double> levels{piece.from};
+        if (strip_.bends()) {
+            add_crossings(strip_, piece, piece.low, levels);
+            add_crossings(strip_, piece, piece.high, levels);
+            std::sort(levels.begin(), levels.end());
+        }
+        levels.push_back(piece.to);
+        for (std::size_t i = 0; i + 1 < levels.size(); ++i) {
+            if (levels[i + 1] > levels[i]) {
+                carry_smooth(between_levels(piece, levels[i], levels[i + 1]), intensity, put);
+            }
+        }
+    }
+
+    [[nodiscard]] double curve_error() const { return curve_error_; }
+
+private:
+    /// Where the borders stay in their stretches, so that what the carriers take is smooth.
+    template <class Put>
+    void carry_smooth(const StripPiece& part, const Intensity& intensity, Put& put) {
+        const double middle = (part.from + part.to) / 2;
+        const CarrierWindow window = window_around(strip_, part.low.at(0.5), part.high.at(0.5), middle);
+        const Functions taken = [&](double y, std::span<double> values) {
+            const double level = (1 - y) * part.from + y * part.to;
+            const double low = part.low.at(y);
+            const double high = part.high.at(y);
+            set_beam(beam_, strip_, window, level, places_);
+            beam_.add_line(low, high, intensity.at({low, level}), intensity.at({high, level}));
+            beam_.reactions(values);
+        };
+        const std::optional<std::size_t> degree = degree_of(part, intensity, window);
+        const QuarticFit fit =
+            degree ? exact_quartics(window.size(), *degree, taken) : fit_quartics(window.size(), taken);
+        put_fit(part, window, fit, put);
+    }
+
+    /// Degree of what the carriers take as a function of the level; nothing where that is no polynomial, or
+    /// none of degree four at most.
+    [[nodiscard]] std::optional<std::size_t> degree_of(const StripPiece& part, const Intensity& intensity,
+                                                       const CarrierWindow& window) {
+        const bool even = intensity.by_along == 0 && intensity.by_across == 0;
+        if (strip_.alone()) {
+            return even ? 1 : 2;
+        }
+        // Distances from the first carrier at both levels: if they grow in one ratio, so that every part
+        // stays what it is, the pressure alone varies.
+        const Distances carriers = distances(part, window);
+        const bool similar =
+            carriers.similar && keeps_place(part.low, carriers) && keeps_place(part.high, carriers);
+        if (similar) {
+            return carriers.parallel || even ? 1 : 2;
+        }
+        if (!carriers.parallel) {
+            return std::nullopt;
+        }
+        if (!strip_.bends()) {
+            return even ? 2 : 3;
+        }
+        return even ? std::optional<std::size_t>(4) : std::nullopt;
+    }
+
+    struct Distances {
+        Border first;                  ///< along of the window's first carrier, over the part's levels
+        double at_from = 0, at_to = 0; ///< from the first carrier to the last
+        bool similar = true, parallel = true;
+    };
+
+    [[nodiscard]] Distances distances(const StripPiece& part, const CarrierWindow& window) const {
+        Distances d;
+        d.first = {strip_.along(window.first, part.from), strip_.along(window.first, part.to), 0};
+        d.at_from = strip_.along(window.last - 1, part.from) - d.first.start;
+        d.at_to = strip_.along(window.last - 1, part.to) - d.first.end;
+        for (std::size_t i = window.first; i < window.last; ++i) {
+            const Border along{strip_.along(i, part.from), strip_.along(i, part.to), 0};
+            d.similar = d.similar && keeps_place(along, d);
+            d.parallel = d.parallel &&
+                         std::abs((along.end - d.first.end) - (along.start - d.first.start)) <= 2 * noise_;
+        }
+        return d;
+    }
+
+    [[nodiscard]] bool keeps_place(const Border& border, const Distances& d) const {
+        const double off = (border.start - d.first.start) * d.at_to - (border.end - d.first.end) * d.at_from;
+        return std::abs(off) <= 2 * noise_ * std::max(d.at_from, d.at_to);
+    }
+
+    template <class Put>
+    void put_fit(const StripPiece& part, const CarrierWindow& window, const QuarticFit& fit, Put& put) {
+        constexpr double worth_counting = 1e-17;
+        for (const QuarticFit::Piece& piece : fit.pieces) {
+            const double from = (1 - piece.from) * part.from + piece.from * part.to;
+            const double to = (1 - piece.to) * part.from + piece.to * part.to;
+            double largest = 0;
+            for (const Quartic& c : piece.c) {
+                largest = std::max(largest, size_of(c));
+            }
+            for (std::size_t i = 0; i < window.size(); ++i) {
+                if (!(size_of(piece.c[i]) > worth_counting * largest)) {
+                    continue;
+                }
+                const std::size_t carrier = window.first + i;
+                const double at_from = strip_.station(carrier, from);
+                const double at_to = strip_.station(carrier, to);
+                const double rate = (to - from) / std::abs(at_to - at_from);
+                Quartic c = piece.c[i];
+                for (double& k : c) {
+                    k *= rate;
+                }
+                curve_error_ = std::max(curve_error_, fit.error * rate);
+                put(strip_.carrier(carrier), line_between(at_from, at_to, c));
+            }
+        }
+    }
+
+    static double size_of(const Quartic& c) {
+        double size = 0;
+        for (const double k : c) {
+            size = std::max(size, std::abs(k));
+        }
+        return size;
+    }
+
+    const StripAtLevels& strip_;
+    double noise_;
+    StripBeam beam_;
+    std::vector<double> places_;
+    double curve_error_ = 0;
+};
+
+/// What acts on a piece beside the uniform part.
+struct ZonePiece {
+    std::uint32_t load_case = 0;
+    Intensity intensity;
+    StripPiece where;
+};
+
+void zones_over(const DeckPressure& pressure, const StripPiece& area, double noise,
+                std::vector<ZonePiece>& pieces) {
+    pieces.clear();
+    Convex where;
+    for (const Point& p : {Point{area.low.start, area.from}, Point{area.high.start, area.from},
+                           Point{area.high.end, area.to}, Point{area.low.end, area.to}}) {
+        if (where.empty() || distance(p, where.back()) > noise) {
+            where.push_back(p);
+        }
+    }
+    while (where.size() > 1 && distance(where.front(), where.back()) <= noise) {
+        where.pop_back();
+    }
+    if (where.size() < 3) {
+        return;
+    }
+    std::vector<DeckPressure::Piece> parts;
+    pressure.zones_over(where, parts);
+    for (const DeckPressure::Piece& part : parts) {
+        for (const StripPiece& piece : pieces_of(part.where, noise)) {
+            pieces.push_back({part.load_case, {part.q, 0, 0}, piece});
+        }
+    }
+}
+
+/// All load of a cell that goes to points of its carriers.
+void load_sliver(const Sharing& sharing, std::size_t c, const DeckPressure& pressure, std::uint32_t deck,
+                 std::vector<ZonePiece>& zones, Collector& collector) {
+    const Cell& cell = sharing.cells[c];
+    const StripPiece where{cell.from, cell.to, cell.low, cell.high};
+    const auto put = [&](std::uint32_t load_case, double force) {
+        for (const Transfer& transfer : sharing.transfers[c]) {
+            collector.put_point(
+                transfer.carrier, deck,
+                {load_case, {SourceKind::deck, deck}, transfer.station_from, transfer.weight * force});
+        }
+    };
+    for (const DeckPressure::Uniform& u : pressure.uniform()) {
+        put(u.load_case, u.q * area_of(where));
+    }
+    if (pressure.has_zones()) {
+        zones_over(pressure, where, collector.noise(), zones);
+        for (const ZonePiece& zone : zones) {
+            put(zone.load_case, moments_of(zone.where, zone.intensity).area);
+        }
+    }
+}
+
+void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure& pressure,
+                std::vector<ZonePiece>& zones, Collector& collector) {
+    const Strip& strip = sharing.strips[index];
+    const Source source{SourceKind::deck, strip.deck};
+    const StripPiece whole{strip.from, strip.to, strip.low, strip.high};
+    const StripAtLevels levels(sharing, index);
+    if (!pressure.uniform().empty()) {
+        StripLoader loader(levels, collector.noise());
+        double largest = 0;
+        loader.carry(whole, {1, 0, 0}, [&](std::uint32_t carrier, const LinePiece& unit) {
+            for (const DeckPressure::Uniform& u : pressure.uniform()) {
+                largest = std::max(largest, std::abs(u.q));
+                LinePiece line = unit;
+                for (double& c : line.c) {
+                    c *= u.q;
+                }
+                collector.put_line(carrier, strip.deck, {u.load_case, source, line});
+            }
+        });
+        collector.note_curve_error(largest * loader.curve_error());
+    }
+    if (pressure.has_zones()) {
+        StripLoader loader(levels, collector.noise());
+        zones_over(pressure, whole, collector.noise(), zones);
+        for (const ZonePiece& zone : zones) {
+            loader.carry(zone.where, zone.intensity, [&](std::uint32_t carrier, const LinePiece& line) {
+                collector.put_line(carrier, strip.deck, {zone.load_case, source, line});
+            });
+        }
+        collector.note_curve_error(loader.curve_error());
+    }
+}
+
+} // namespace
+
+void load_strips(const Sharing& sharing, std::uint32_t deck, std::size_t first_cell, std::size_t last_cell,
+                 const DeckPressure& pressure, Collector& collector) {
+    std::vector<ZonePiece> zones;
+    const auto first = std::lower_bound(sharing.strips.begin(), sharing.strips.end(), deck,
+                                        [](const Strip& strip, std::uint32_t d) { return strip.deck < d; });
+    for (auto it = first; it != sharing.strips.end() && it->deck == deck; ++it) {
+        load_strip(sharing, static_cast<std::uint32_t>(it - sharing.strips.begin()), pressure, zones,
+                   collector);
+    }
+    for (std::size_t c = first_cell; c < last_cell; ++c) {
+        const std::span<const Transfer> transfers = sharing.transfers[c];
+        if (!transfers.empty() && transfers.front().station_from == transfers.front().station_to) {
+            load_sliver(sharing, c, pressure, deck, zones, collector);
+        }
+    }
+}
+
+RUNNEL_NAMESPACE_END
