@@ -159,9 +159,8 @@ private:
 
     void add_common(CLI::App& command) {
         command
-            .add_option(
-                "--share", words_.share,
-                "Use this instead of the plan's setting and its decks' (lever, continuous: not built yet)")
+            .add_option("--share", words_.share,
+                        "Share one-way decks so, instead of by the plan's setting and its decks'")
             ->check(CLI::IsMember(names_in(shares)))
             ->type_name("SHARE");
         command.add_option("--units", words_.units, "Units of the output, for example m,kN or ft,kip")

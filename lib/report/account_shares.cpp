@@ -9,6 +9,7 @@ namespace {
 
 constexpr std::size_t indent = 2;
 constexpr std::size_t id_width = 22;
+constexpr std::size_t case_width = 14;
 constexpr std::size_t most_groups = 20; ///< of carriers that a table lists
 
 std::string_view name_of_run(const ShareRun& run) {
@@ -49,7 +50,7 @@ void Account::shares() {
     page_.paragraph("%: difference from " +
                         (own.share ? '`' + std::string(name_of_run(own)) + "`, which this plan uses"
                                    : std::string("the plan's own shares, which are not all alike")) +
-                        "; the most different first",
+                        "; carriers and cases that differ, the most different first",
                     indent);
     for (const ShareRun& run : shares_->runs) {
         if (!run.complete) {
@@ -119,7 +120,7 @@ void Account::compared(std::string_view heading, const std::vector<ComparedCarri
     page_.line(heading, indent);
     PageTable table;
     table.names("of", id_width);
-    table.names("case", id_width / 2);
+    table.names("case", case_width);
     table.values(name_of_run(shares_->runs[shares_->own]));
     for (std::size_t r = 0; r < shares_->runs.size(); ++r) {
         if (r != shares_->own && shares_->runs[r].complete) {
@@ -129,20 +130,27 @@ void Account::compared(std::string_view heading, const std::vector<ComparedCarri
     }
     const std::vector<ComparedGroup> groups = differing(carriers, values);
     std::size_t differ = 0;
+    std::size_t shown = 0;
     for (std::size_t g = 0; g < groups.size(); ++g) {
         differ += groups[g].count;
         if (g < most_groups) {
             compared_rows(table, groups[g], values);
+            shown = differ;
         }
     }
     if (!groups.empty()) {
         table.print(page_, 2 * indent);
     }
-    if (groups.size() > most_groups) {
-        page_.line("and others that differ less: all stand in the result document", 2 * indent);
+    if (differ > shown) {
+        page_.line("and " + std::to_string(differ - shown) +
+                       " more that differ less: all stand in the result document",
+                   2 * indent);
     }
-    page_.line(differ == 0 ? "none differs" : std::to_string(carriers.size() - differ) + " do not differ",
-               2 * indent);
+    if (differ < carriers.size()) {
+        page_.line(differ == 0 ? "none differs"
+                               : std::to_string(carriers.size() - differ) + " others do not differ",
+                   2 * indent);
+    }
     page_.blank();
 }
 
@@ -164,15 +172,16 @@ void Account::compared_rows(PageTable& table, const ComparedGroup& group, Values
             row.push_back(lifts ? reaction(value) : force(value));
         };
         add(shares_->own);
-        bool nothing = std::abs(all[shares_->own * shares_->cases + c]) <= shares_->noise;
+        bool differs = false;
         for (std::size_t r = 0; r < shares_->runs.size(); ++r) {
             if (r != shares_->own && shares_->runs[r].complete) {
-                nothing = nothing && std::abs(all[r * shares_->cases + c]) <= shares_->noise;
+                const std::optional<double> percent = shares_->percent(all, r, c);
+                differs = differs || !percent || *percent != 0;
                 add(r);
-                row.push_back(percent_text(shares_->percent(all, r, c)));
+                row.push_back(percent_text(percent));
             }
         }
-        if (!nothing) {
+        if (differs) {
             table.add_row(std::move(row));
             first = false;
         }

@@ -62,6 +62,9 @@ void ResultWriter::level(std::uint32_t level) {
     json_.key("elevation").number(framed.elevation, scale_.length);
     json_.key("balance");
     balances(takedown_.level_balance[level], true);
+    if (const double off = takedown_.levels[level].loads.curve_error; off > 0) {
+        json_.key("curve_error").number(off, scale_.line_load);
+    }
     decks(level);
     regions(level);
     members(level);

@@ -313,10 +313,14 @@ class Documents(unittest.TestCase):
         account = runnel(*arguments[:-2]).stdout.decode()
         self.assertIn("Shares compared, kN\n  %: difference from `half`, which this plan uses", account)
 
-    def test_a_share_that_is_not_built_yet_is_refused(self):
-        done = runnel("takedown", sample("shelter"), "--format", "json", "--share", "lever")
-        self.assertEqual(done.returncode, 1)
-        self.assertIn("not-supported-yet", [problem["code"] for problem in json.loads(done.stdout)["problems"]])
+    def test_a_share_is_chosen_for_all_decks_and_named(self):
+        plan = plan_of("shelter")
+        plan["levels"][0]["decks"][0]["share"] = "lever"
+        own = json.loads(runnel("takedown", "-", "--format", "json", text=as_text(plan)).stdout)
+        self.assertEqual(own["settings"]["deck_shares"], [{"deck": "D", "share": "lever"}])
+        chosen = json.loads(runnel("takedown", "-", "--format", "json", "--share", "continuous",
+                                   text=as_text(plan)).stdout)
+        self.assertEqual((chosen["settings"]["share"], chosen["settings"]["deck_shares"]), ("continuous", []))
 
 
 class Texts(unittest.TestCase):
