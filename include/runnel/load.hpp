@@ -76,4 +76,16 @@ struct LevelLoads {
 [[nodiscard]] RUNNEL_EXPORT LevelLoads load_carriers(const Plan& plan, const Framing& framing,
                                                      std::uint32_t level, const Sharing& sharing);
 
+/// Law checkers: recomputed from the loads on carriers. Empty: the law holds.
+/// Force: by deck and case, what carriers get is what was put on, within `relative` of the sum of |P|.
+[[nodiscard]] RUNNEL_EXPORT std::vector<Problem> check_force(const Plan& plan, const Framing& framing,
+                                                             std::uint32_t level, const Sharing& sharing,
+                                                             const LevelLoads& loads, double relative = 1e-9);
+/// Moment: the same for first moments, within `relative` of the sum of |P| times the deck's size, on one-way
+/// decks under `lever` and `continuous`. The other rules shift loads to carriers by their nature.
+[[nodiscard]] RUNNEL_EXPORT std::vector<Problem> check_moment(const Plan& plan, const Framing& framing,
+                                                              std::uint32_t level, const Sharing& sharing,
+                                                              const LevelLoads& loads,
+                                                              double relative = 1e-9);
+
 RUNNEL_NAMESPACE_END

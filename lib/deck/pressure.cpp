@@ -1,10 +1,10 @@
 #include "deck/pressure.hpp"
 
 #include "geometry/basic.hpp"
+#include "geometry/strip_sweep.hpp"
 
 #include <algorithm>
 #include <cmath>
-#include <iterator>
 #include <map>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -115,6 +115,42 @@ std::vector<Convex> convex_zone(Ring ring, double noise) {
     return convex_pieces(ring, {}, noise);
 }
 
+std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& axes, double noise) {
+    std::vector<Ring> openings;
+    openings.reserve(deck.openings.size());
+    for (const Ring& opening : deck.openings) {
+        openings.push_back(to_strip(axes, opening));
+    }
+    std::vector<StripPiece> pieces;
+    for (const Gap& gap : sweep_strips(to_strip(axes, deck.outline), openings, {}, noise).gaps) {
+        pieces.push_back(
+            {gap.from, gap.to, {gap.low_start, gap.low_end, 0}, {gap.high_start, gap.high_end, 0}});
+    }
+    return pieces;
+}
+
+Plane::Plane(const AreaLoad& load) : q(load.q) {
+    if (!load.plane) {
+        return;
+    }
+    const auto& [points, values] = *load.plane;
+    at = points[0];
+    q = values[0];
+    const Point a = points[1] - points[0];
+    const Point b = points[2] - points[0];
+    const double rise_a = values[1] - values[0];
+    const double rise_b = values[2] - values[0];
+    const double twice_area = cross(a, b);
+    if (twice_area != 0) { // else check_plan has refused it
+        slope = {(rise_a * b.y - rise_b * a.y) / twice_area, (rise_b * a.x - rise_a * b.x) / twice_area};
+    }
+}
+
+Intensity Plane::in(const StripAxes& axes) const {
+    return {q + dot(slope, axes.origin - at), slope.x * axes.cosine + slope.y * axes.sine,
+            slope.y * axes.cosine - slope.x * axes.sine};
+}
+
 namespace {
 
 void add_uniform(std::vector<DeckPressure::Uniform>& uniform, std::uint32_t load_case, double q) {
@@ -130,106 +166,169 @@ void add_uniform(std::vector<DeckPressure::Uniform>& uniform, std::uint32_t load
     uniform.push_back({load_case, q});
 }
 
+/// From one pair of axes to another, by way of no far origin: differences of coordinates only.
+class Turning {
+public:
+    Turning(const StripAxes& from, const StripAxes& to)
+        : shift_(to.to_strip(from.origin)), cosine_(from.cosine * to.cosine + from.sine * to.sine),
+          sine_(from.sine * to.cosine - from.cosine * to.sine),
+          none_(from.origin == to.origin && from.cosine == to.cosine && from.sine == to.sine) {}
+
+    [[nodiscard]] bool is_none() const { return none_; }
+    Point operator()(Point p) const {
+        return {shift_.x + p.x * cosine_ - p.y * sine_, shift_.y + p.x * sine_ + p.y * cosine_};
+    }
+    [[nodiscard]] Box box_around(const Box& box) const {
+        Box turned = box_of((*this)(box.low), (*this)(box.high));
+        turned.add((*this)({box.low.x, box.high.y}));
+        turned.add((*this)({box.high.x, box.low.y}));
+        return turned;
+    }
+
+private:
+    Point shift_;
+    double cosine_, sine_;
+    bool none_;
+};
+
 } // namespace
 
 DeckPressure::DeckPressure(const Plan& plan, const FramedLevel& level, std::uint32_t deck_index,
                            std::span<const std::uint32_t> acting, const StripAxes& axes, double noise)
-    : noise_(noise) {
-    const FramedDeck& deck = level.decks[deck_index];
-    add_uniform(uniform_, own_weight_case(plan), deck.own_weight);
+    : home_(axes), noise_(noise) {
+    add_uniform(uniform_, own_weight_case(plan), level.decks[deck_index].own_weight);
+    add_zones(plan, level, acting);
 
-    std::vector<Zone> zones;
-    for (const std::uint32_t index : acting) {
-        const AreaLoad& load = level.area_loads[index];
-        Zone zone;
-        zone.load_case = case_index(plan, load.case_id);
-        if (zone.load_case == none) {
-            continue;
+    // What covers the whole deck evenly and nothing replaces needs no cutting; what has no load matters only
+    // as a replacer.
+    std::vector<std::size_t> replaced_before(plan.cases.size(), 0); // by case: zones up to here are replaced
+    for (std::size_t z = 0; z < zones_.size(); ++z) {
+        if (zones_[z].replaces) {
+            replaced_before[zones_[z].load_case] = z;
         }
-        zone.q = load.q;
-        zone.everywhere = load.outline.empty();
-        if (load.replaces) {
-            const auto self = static_cast<std::uint32_t>(zones.size());
-            for (Zone& earlier : zones) {
-                if (earlier.load_case == zone.load_case) {
-                    earlier.replaced_by.push_back(self);
-                }
-            }
-        }
-        if (!zone.everywhere) {
-            zone.pieces = convex_zone(to_strip(axes, load.outline), noise);
-            std::vector<Box> boxes;
-            for (const Convex& piece : zone.pieces) {
-                boxes.push_back(box_of(piece));
-            }
-            zone.finder = BoxFinder(std::move(boxes));
-        }
-        zones.push_back(std::move(zone));
     }
-
-    // What covers the whole deck and nothing replaces needs no cutting; a zone without load matters only as a
-    // replacer.
     bool any_left = false;
-    for (Zone& zone : zones) {
-        if (zone.everywhere && zone.replaced_by.empty()) {
-            add_uniform(uniform_, zone.load_case, zone.q);
-            zone.q = 0;
+    for (std::size_t z = 0; z < zones_.size(); ++z) {
+        Zone& zone = zones_[z];
+        if (zone.everywhere && zone.plane.is_uniform() && z >= replaced_before[zone.load_case]) {
+            add_uniform(uniform_, zone.load_case, zone.plane.q);
+            zone.plane.q = 0;
         }
-        any_left = any_left || zone.q != 0;
+        any_left = any_left || !zone.plane.is_nothing();
     }
-    if (any_left) {
-        zones_ = std::move(zones);
-    }
-}
-
-void DeckPressure::carve_out(const Zone& by, std::vector<Convex>& parts) const {
-    if (by.everywhere) {
-        parts.clear();
+    if (!any_left) {
+        zones_.clear();
         return;
     }
-    std::vector<std::uint32_t> found;
-    std::vector<Convex> kept;
-    for (Convex& part : parts) {
-        by.finder.find(box_of(part), found);
-        std::vector<Convex> rest;
-        rest.push_back(std::move(part));
-        for (const std::uint32_t i : found) {
-            std::vector<Convex> outside;
-            for (Convex& piece : rest) {
-                carve(std::move(piece), by.pieces[i], noise_, outside);
-            }
-            rest.swap(outside);
+
+    std::vector<Box> boxes;
+    for (std::uint32_t z = 0; z < zones_.size(); ++z) {
+        if (zones_[z].everywhere && !zones_[z].plane.is_nothing()) {
+            everywhere_.push_back(z);
         }
-        std::move(rest.begin(), rest.end(), std::back_inserter(kept));
+        for (std::uint32_t i = zones_[z].first; i < zones_[z].last; ++i) {
+            boxes.push_back(box_of(outlines_[i]));
+            zone_of_.push_back(z);
+        }
     }
-    parts.swap(kept);
+    finder_ = BoxFinder(std::move(boxes));
 }
 
-void DeckPressure::zones_over(const Convex& area, std::vector<Piece>& pieces) const {
-    pieces.clear();
-    const Box box = box_of(area);
-    std::vector<std::uint32_t> found;
-    for (const Zone& zone : zones_) {
-        if (zone.q == 0) {
+void DeckPressure::add_zones(const Plan& plan, const FramedLevel& level,
+                             std::span<const std::uint32_t> acting) {
+    // A load that replaces everywhere leaves nothing of the earlier ones of its case.
+    std::vector<std::uint32_t> first_left(plan.cases.size(), 0);
+    for (const std::uint32_t index : acting) {
+        const AreaLoad& load = level.area_loads[index];
+        const std::uint32_t load_case = case_index(plan, load.case_id);
+        if (load_case != none && load.replaces && load.outline.empty()) {
+            first_left[load_case] = index;
+        }
+    }
+    for (const std::uint32_t index : acting) {
+        const AreaLoad& load = level.area_loads[index];
+        const std::uint32_t load_case = case_index(plan, load.case_id);
+        if (load_case == none || index < first_left[load_case]) {
             continue;
         }
-        std::vector<Convex> parts;
+        Zone zone{load_case, Plane(load), load.outline.empty(), load.replaces && !load.outline.empty(), 0, 0};
+        if (!zone.everywhere) {
+            zone.first = static_cast<std::uint32_t>(outlines_.size());
+            for (Convex& piece : convex_zone(to_strip(home_, load.outline), noise_)) {
+                outlines_.push_back(std::move(piece));
+            }
+            zone.last = static_cast<std::uint32_t>(outlines_.size());
+        }
+        zones_.push_back(zone);
+    }
+}
+
+DeckPressure::Surroundings DeckPressure::zones_near(const StripPiece& area, const StripAxes& axes) const {
+    const Turning here(home_, axes);
+    std::vector<std::uint32_t> found;
+    const Box box = box_of(area);
+    finder_.find(here.is_none() ? box : Turning(axes, home_).box_around(box).grown(noise_), found);
+
+    Surroundings near;
+    near.turned.reserve(here.is_none() ? 0 : found.size());
+    auto everywhere = everywhere_.begin(); // both rise
+    auto window = found.begin();
+    while (everywhere != everywhere_.end() || window != found.end()) {
+        const bool is_outline =
+            window != found.end() && (everywhere == everywhere_.end() || zone_of_[*window] < *everywhere);
+        Near zone{is_outline ? zone_of_[*window] : *everywhere++, near.windows.size(), 0};
+        for (; is_outline && window != found.end() && zone_of_[*window] == zone.index; ++window) {
+            const Convex* outline = &outlines_[*window];
+            if (!here.is_none()) {
+                Convex turned(outline->size());
+                std::transform(outline->begin(), outline->end(), turned.begin(), here);
+                near.turned.push_back(std::move(turned));
+                outline = &near.turned.back();
+            }
+            near.windows.push_back(outline);
+        }
+        zone.last = near.windows.size();
+        near.zones.push_back(zone);
+    }
+    return near;
+}
+
+void DeckPressure::zones_over(const StripPiece& area, const StripAxes& axes,
+                              std::vector<Piece>& pieces) const {
+    pieces.clear();
+    if (zones_.empty()) {
+        return;
+    }
+    const Surroundings near = zones_near(area, axes);
+    std::vector<StripPiece> parts;
+    std::vector<StripPiece> outside;
+    for (std::size_t i = 0; i < near.zones.size(); ++i) {
+        const Zone& zone = zones_[near.zones[i].index];
+        if (zone.plane.is_nothing()) {
+            continue;
+        }
+        parts.clear();
         if (zone.everywhere) {
             parts.push_back(area);
-        } else {
-            zone.finder.find(box, found);
-            for (const std::uint32_t i : found) {
-                Convex inside = clipped(area, zone.pieces[i], noise_);
-                if (!inside.empty()) {
-                    parts.push_back(std::move(inside));
+        }
+        for (std::size_t w = near.zones[i].first; w < near.zones[i].last; ++w) {
+            divide(area, *near.windows[w], noise_, &parts, nullptr);
+        }
+        for (std::size_t k = i + 1; k < near.zones.size(); ++k) {
+            const Zone& later = zones_[near.zones[k].index];
+            if (!later.replaces || later.load_case != zone.load_case) {
+                continue;
+            }
+            for (std::size_t w = near.zones[k].first; w < near.zones[k].last; ++w) {
+                outside.clear();
+                for (const StripPiece& part : parts) {
+                    divide(part, *near.windows[w], noise_, nullptr, &outside);
                 }
+                parts.swap(outside);
             }
         }
-        for (const std::uint32_t by : zone.replaced_by) {
-            carve_out(zones_[by], parts);
-        }
-        for (Convex& part : parts) {
-            pieces.push_back({zone.load_case, zone.q, std::move(part)});
+        for (const StripPiece& part : parts) {
+            pieces.push_back({zone.load_case, zone.plane.in(axes), part});
         }
     }
 }

@@ -172,16 +172,13 @@ std::string loads_text(const Plan& plan, const FramedLevel& level, std::uint32_t
         if (!is_unsupported(bay)) {
             continue;
         }
-        const Convex where{{bay.low.start, bay.from},
-                           {bay.high.start, bay.from},
-                           {bay.high.end, bay.to},
-                           {bay.low.end, bay.to}};
+        const StripPiece where{bay.from, bay.to, bay.low, bay.high};
         for (const DeckPressure::Uniform& u : pressure.uniform()) {
-            lost[u.load_case] += u.q * moments_of(where, where.front()).area;
+            lost[u.load_case] += u.q * area_of(where);
         }
-        pressure.zones_over(where, pieces);
+        pressure.zones_over(where, axes, pieces);
         for (const DeckPressure::Piece& piece : pieces) {
-            lost[piece.load_case] += piece.q * moments_of(piece.where, where.front()).area;
+            lost[piece.load_case] += moments_of(piece.where, piece.intensity).area;
         }
     }
     std::string text;

@@ -163,41 +163,9 @@ private:
     double curve_error_ = 0;
 };
 
-/// What acts on a piece beside the uniform part.
-struct ZonePiece {
-    std::uint32_t load_case = 0;
-    Intensity intensity;
-    StripPiece where;
-};
-
-void zones_over(const DeckPressure& pressure, const StripPiece& area, double noise,
-                std::vector<ZonePiece>& pieces) {
-    pieces.clear();
-    Convex where;
-    for (const Point& p : {Point{area.low.start, area.from}, Point{area.high.start, area.from},
-                           Point{area.high.end, area.to}, Point{area.low.end, area.to}}) {
-        if (where.empty() || distance(p, where.back()) > noise) {
-            where.push_back(p);
-        }
-    }
-    while (where.size() > 1 && distance(where.front(), where.back()) <= noise) {
-        where.pop_back();
-    }
-    if (where.size() < 3) {
-        return;
-    }
-    std::vector<DeckPressure::Piece> parts;
-    pressure.zones_over(where, parts);
-    for (const DeckPressure::Piece& part : parts) {
-        for (const StripPiece& piece : pieces_of(part.where, noise)) {
-            pieces.push_back({part.load_case, {part.q, 0, 0}, piece});
-        }
-    }
-}
-
 /// All load of a cell that goes to points of its carriers.
 void load_sliver(const Sharing& sharing, std::size_t c, const DeckPressure& pressure, std::uint32_t deck,
-                 std::vector<ZonePiece>& zones, Collector& collector) {
+                 std::vector<DeckPressure::Piece>& zones, Collector& collector) {
     const Cell& cell = sharing.cells[c];
     const StripPiece where{cell.from, cell.to, cell.low, cell.high};
     const auto put = [&](std::uint32_t load_case, double force) {
@@ -211,15 +179,15 @@ void load_sliver(const Sharing& sharing, std::size_t c, const DeckPressure& pres
         put(u.load_case, u.q * area_of(where));
     }
     if (pressure.has_zones()) {
-        zones_over(pressure, where, collector.noise(), zones);
-        for (const ZonePiece& zone : zones) {
+        pressure.zones_over(where, sharing.axes[cell.axes], zones);
+        for (const DeckPressure::Piece& zone : zones) {
             put(zone.load_case, moments_of(zone.where, zone.intensity).area);
         }
     }
 }
 
 void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure& pressure,
-                std::vector<ZonePiece>& zones, Collector& collector) {
+                std::vector<DeckPressure::Piece>& zones, Collector& collector) {
     const Strip& strip = sharing.strips[index];
     const Source source{SourceKind::deck, strip.deck};
     const StripPiece whole{strip.from, strip.to, strip.low, strip.high};
@@ -241,8 +209,8 @@ void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure&
     }
     if (pressure.has_zones()) {
         StripLoader loader(levels, collector.noise());
-        zones_over(pressure, whole, collector.noise(), zones);
-        for (const ZonePiece& zone : zones) {
+        pressure.zones_over(whole, sharing.axes[strip.axes], zones);
+        for (const DeckPressure::Piece& zone : zones) {
             loader.carry(zone.where, zone.intensity, [&](std::uint32_t carrier, const LinePiece& line) {
                 collector.put_line(carrier, strip.deck, {zone.load_case, source, line});
             });
@@ -255,7 +223,7 @@ void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure&
 
 void load_strips(const Sharing& sharing, std::uint32_t deck, std::size_t first_cell, std::size_t last_cell,
                  const DeckPressure& pressure, Collector& collector) {
-    std::vector<ZonePiece> zones;
+    std::vector<DeckPressure::Piece> zones;
     const auto first = std::lower_bound(sharing.strips.begin(), sharing.strips.end(), deck,
                                         [](const Strip& strip, std::uint32_t d) { return strip.deck < d; });
     for (auto it = first; it != sharing.strips.end() && it->deck == deck; ++it) {
