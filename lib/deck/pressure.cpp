@@ -129,6 +129,40 @@ std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& 
     return pieces;
 }
 
+std::vector<std::uint32_t> really_acting(const FramedLevel& level, std::span<const std::uint32_t> acting,
+                                         const std::vector<StripPiece>& pieces, const StripAxes& axes,
+                                         double noise) {
+    std::vector<Box> boxes;
+    for (const StripPiece& piece : pieces) {
+        boxes.push_back(box_of(piece));
+    }
+    const BoxFinder finder(std::move(boxes));
+    std::vector<std::uint32_t> near;
+    std::vector<StripPiece> inside;
+    const auto lies_on_deck = [&](const AreaLoad& load) {
+        for (const Convex& zone : convex_zone(to_strip(axes, load.outline), noise)) {
+            finder.find(box_of(zone), near);
+            for (const std::uint32_t i : near) {
+                inside.clear();
+                divide(pieces[i], zone, noise, &inside, nullptr);
+                for (const StripPiece& part : inside) {
+                    if (std::max(part.high.start - part.low.start, part.high.end - part.low.end) > noise) {
+                        return true;
+                    }
+                }
+            }
+        }
+        return false;
+    };
+    std::vector<std::uint32_t> really;
+    for (const std::uint32_t index : acting) {
+        if (level.area_loads[index].outline.empty() || lies_on_deck(level.area_loads[index])) {
+            really.push_back(index);
+        }
+    }
+    return really;
+}
+
 Plane::Plane(const AreaLoad& load) : q(load.q) {
     if (!load.plane) {
         return;

@@ -95,6 +95,13 @@ private:
 /// The area loads that may act on each deck, rising, by their `decks` lists and their outlines' boxes.
 [[nodiscard]] Grouped<std::uint32_t> area_loads_by_deck(const FramedLevel& level, double noise);
 
+/// Those of the loads acting on a deck that lie on it by more than rounding: a zone that is drawn along its
+/// edge, on the outside, does not act. `pieces`: the deck's area in `axes`.
+[[nodiscard]] std::vector<std::uint32_t> really_acting(const FramedLevel& level,
+                                                       std::span<const std::uint32_t> acting,
+                                                       const std::vector<StripPiece>& pieces,
+                                                       const StripAxes& axes, double noise);
+
 /// The area loads with outlines that reach over each deck, whether they are meant for it or not.
 [[nodiscard]] Grouped<std::uint32_t> outlines_over_decks(const FramedLevel& level, double noise);
 

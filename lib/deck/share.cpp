@@ -1,11 +1,14 @@
 #include "deck/doubtful.hpp"
+#include "deck/fixity.hpp"
+#include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
-#include "deck/refused.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/box_tree.hpp"
 #include "plan/problems.hpp"
 
 #include <runnel/deck.hpp>
+
+#include <optional>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -24,13 +27,6 @@ std::vector<LineCarrier> line_carriers(const Plan& plan, const FramedLevel& leve
         carriers.push_back({sharing.number_of({CarrierKind::wall, w}), plan.walls[w].from, plan.walls[w].to});
     }
     return carriers;
-}
-
-void refuse(const FramedLevel& level, const FramedDeck& deck, std::string_view what, Sharing& sharing) {
-    sharing.problems.push_back(problem_at(ProblemCode::not_supported_yet, deck.origin, "decks",
-                                          "Level " + level.id + ", deck " + deck.id + ": " +
-                                              std::string(what) + " is not supported yet.",
-                                          "Use \"span\": \"one-way\".", {deck.id}));
 }
 
 double area_of(const FramedDeck& deck) {
@@ -60,25 +56,32 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
 
     std::vector<std::uint32_t> near;
     std::vector<LineCarrier> beside;
+    std::optional<DecksBeside> decks_beside;
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
         sharing.deck_area.push_back(area_of(deck));
-        if (deck.span != SpanKind::one_way) {
-            refuse(level, deck, "span " + std::string(name_of(deck.span)), sharing);
-            continue;
-        }
         tree.find(box_of(deck.outline).grown(plan.settings.snap), near);
         beside.clear();
         for (const std::uint32_t i : near) {
             beside.push_back(carriers[i]);
         }
+        if (deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity) {
+            if (!decks_beside) {
+                decks_beside.emplace(level, plan.settings.snap);
+            }
+            if (share_by_fixity(plan, framing, level_index, d, beside, *decks_beside, sharing)) {
+                continue;
+            }
+        }
+        if (deck.span != SpanKind::one_way) {
+            share_nearest(plan, framing, level_index, d, beside, sharing);
+            continue;
+        }
         const std::size_t first_bay = sharing.bays.size();
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
         find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
     }
-    if (!is_refused(sharing)) { // a deck that gives nothing to anybody would raise doubts about its joists
-        find_doubtful_members(plan, level, sharing);
-    }
+    find_doubtful_members(plan, level, sharing);
     return sharing;
 }
 

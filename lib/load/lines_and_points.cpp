@@ -2,6 +2,7 @@
 
 #include "deck/pressure.hpp"
 #include "load/standing.hpp"
+#include "load/standing_nearest.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
@@ -34,7 +35,7 @@ public:
     LoadPlacer(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
                Collector& collector)
         : plan_(plan), level_(framing.levels[level]), sharing_(sharing), collector_(collector),
-          parts_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
+          parts_(level_, sharing), cells_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
           columns_(boxes_of_columns()) {
         for (std::uint32_t i = 0; i < axes_.size(); ++i) {
             by_id_.emplace(axes_[i].id, i);
@@ -196,27 +197,49 @@ private:
         }
     }
 
-    void take_over_parts(const LineLoad& load, std::uint32_t index, std::span<const DeckPartFinder::Hit> hits,
-                         std::vector<Interval>& left) {
-        // Borders of neighbouring bays differ by rounding; a stretch of that size belongs to either.
-        const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
+    /// The parts of one-way decks and the cells of others that a line runs over.
+    struct Under {
+        std::vector<DeckPartFinder::Hit> parts;
+        std::vector<CellFinder::Hit> cells;
+    };
+    [[nodiscard]] Under what_lies_under(const LineLoad& load, double margin) {
+        return {parts_.over(load.from, load.to, margin), cells_.over(load.from, load.to, margin)};
+    }
+
+    /// Borders of neighbouring parts or cells differ by rounding; a stretch of that size, by fractions of the
+    /// line, belongs to either.
+    [[nodiscard]] double tolerance_on(const LineLoad& load) const {
+        return 4 * collector_.noise() / distance(load.from, load.to);
+    }
+
+    void take_over(const Under& under, const LineLoad& load, std::uint32_t index,
+                   std::vector<Interval>& left) {
+        const double tolerance = tolerance_on(load);
         const std::uint32_t load_case = case_index(plan_, load.case_id);
-        for (const DeckPartFinder::Hit& hit : hits) {
+        const Source source{SourceKind::line_load, index};
+        const auto at = [&load](double t) { return between(load.from, load.to, t); };
+        const auto w = [&load](double t) { return (1 - t) * load.w_from + t * load.w_to; };
+        for (const DeckPartFinder::Hit& hit : under.parts) {
             take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
-                const double w_a = (1 - t.from) * load.w_from + t.from * load.w_to;
-                const double w_b = (1 - t.to) * load.w_from + t.to * load.w_to;
-                share_line(sharing_, hit.part, between(load.from, load.to, t.from),
-                           between(load.from, load.to, t.to), w_a, w_b, snap(), load_case,
-                           {SourceKind::line_load, index}, collector_);
+                share_line(sharing_, hit.part, at(t.from), at(t.to), w(t.from), w(t.to), snap(),
+                           load_case, source, collector_);
+            });
+        }
+        for (const CellFinder::Hit& hit : under.cells) {
+            take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
+                put_line_on_cell(sharing_, hit.cell, at(t.from), at(t.to), w(t.from), w(t.to), snap(),
+                                 load_case, source, collector_);
             });
         }
     }
 
-    /// Whether the hits cover all that is left.
-    [[nodiscard]] bool cover(const LineLoad& load, std::span<const DeckPartFinder::Hit> hits,
-                             std::vector<Interval> left) const {
-        const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
-        for (const DeckPartFinder::Hit& hit : hits) {
+    /// Whether parts and cells cover all that is left.
+    [[nodiscard]] bool cover(const Under& under, const LineLoad& load, std::vector<Interval> left) const {
+        const double tolerance = tolerance_on(load);
+        for (const DeckPartFinder::Hit& hit : under.parts) {
+            take(left, {hit.from, hit.to}, tolerance, [](Interval) {});
+        }
+        for (const CellFinder::Hit& hit : under.cells) {
             take(left, {hit.from, hit.to}, tolerance, [](Interval) {});
         }
         return left.empty();
@@ -227,13 +250,13 @@ private:
         std::vector<Interval> left{{0, 1}};
         take_along_axes(load, index, left);
         if (!left.empty()) {
-            take_over_parts(load, index, parts_.over(load.from, load.to, collector_.noise()), left);
+            take_over(what_lies_under(load, collector_.noise()), load, index, left);
         }
         if (!left.empty()) {
             // What is drawn beside the deck by no more than `snap` stands on it.
-            const std::vector<DeckPartFinder::Hit> hits = parts_.over(load.from, load.to, snap());
-            if (cover(load, hits, left)) {
-                take_over_parts(load, index, hits, left);
+            const Under under = what_lies_under(load, snap());
+            if (cover(under, load, left)) {
+                take_over(under, load, index, left);
             }
         }
         double off = 0;
@@ -367,14 +390,17 @@ private:
         if (place_on_what_is_there(index)) {
             return;
         }
-        std::optional<DeckPart> part = parts_.under(load.at, collector_.noise());
-        if (!part) {
-            part = parts_.under(load.at, snap());
-        }
-        if (part) {
-            share_point(sharing_, *part, load.at, load.p, case_index(plan_, load.case_id),
-                        {SourceKind::point_load, index}, collector_);
-            return;
+        const std::uint32_t load_case = case_index(plan_, load.case_id);
+        const Source source{SourceKind::point_load, index};
+        for (const double margin : {collector_.noise(), snap()}) {
+            if (const std::optional<DeckPart> part = parts_.under(load.at, margin)) {
+                share_point(sharing_, *part, load.at, load.p, load_case, source, collector_);
+                return;
+            }
+            if (const std::uint32_t cell = cells_.under(load.at, margin); cell != none) {
+                put_point_on_cell(sharing_, cell, load.at, load.p, load_case, source, collector_);
+                return;
+            }
         }
         Problem problem =
             problem_at(ProblemCode::load_off_decks, load.origin, "point_loads",
@@ -390,6 +416,7 @@ private:
     const Sharing& sharing_;
     Collector& collector_;
     DeckPartFinder parts_;
+    CellFinder cells_;
     std::vector<Axis> axes_;
     BoxTree tree_;
     BoxFinder columns_; ///< by their place in the level's list

@@ -163,6 +163,29 @@ private:
     double curve_error_ = 0;
 };
 
+std::array<Point, 4> corners_of(const StripPiece& piece) {
+    return {Point{piece.low.start, piece.from}, Point{piece.high.start, piece.from},
+            Point{piece.high.end, piece.to}, Point{piece.low.end, piece.to}};
+}
+
+/// Bound of the load on a piece, whichever way it acts.
+double most_force(const StripPiece& piece, const Intensity& intensity) {
+    double most = 0;
+    for (const Point& corner : corners_of(piece)) {
+        most = std::max(most, std::abs(intensity.at(corner)));
+    }
+    return most * std::abs(area_of(piece));
+}
+
+/// Of a strip on one carrier alone: the largest way from there to its carrier.
+double way_to_lone_carrier(const StripAtLevels& strip, const StripPiece& whole) {
+    double way = 0;
+    for (const Point& corner : corners_of(whole)) {
+        way = std::max(way, std::abs(corner.x - strip.along(0, corner.y)));
+    }
+    return strip.alone() ? way : 0;
+}
+
 /// All load of a cell that goes to points of its carriers.
 void load_sliver(const Sharing& sharing, std::size_t c, const DeckPressure& pressure, std::uint32_t deck,
                  std::vector<DeckPressure::Piece>& zones, Collector& collector) {
@@ -175,13 +198,22 @@ void load_sliver(const Sharing& sharing, std::size_t c, const DeckPressure& pres
                 {load_case, {SourceKind::deck, deck}, transfer.station_from, transfer.weight * force});
         }
     };
+    double way = 0; // from the farthest corner to the farthest place where its load goes
+    for (const Transfer& transfer : sharing.transfers[c]) {
+        for (const Point& corner : corners_of(where)) {
+            way = std::max(way, distance(sharing.axes[cell.axes].to_plan(corner),
+                                         collector.at(transfer.carrier, transfer.station_from)));
+        }
+    }
     for (const DeckPressure::Uniform& u : pressure.uniform()) {
         put(u.load_case, u.q * area_of(where));
+        collector.note_moved(deck, u.load_case, std::abs(u.q) * area_of(where) * way);
     }
     if (pressure.has_zones()) {
         pressure.zones_over(where, sharing.axes[cell.axes], zones);
         for (const DeckPressure::Piece& zone : zones) {
             put(zone.load_case, moments_of(zone.where, zone.intensity).area);
+            collector.note_moved(deck, zone.load_case, most_force(zone.where, zone.intensity) * way);
         }
     }
 }
@@ -192,6 +224,7 @@ void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure&
     const Source source{SourceKind::deck, strip.deck};
     const StripPiece whole{strip.from, strip.to, strip.low, strip.high};
     const StripAtLevels levels(sharing, index);
+    const double way = way_to_lone_carrier(levels, whole);
     if (!pressure.uniform().empty()) {
         StripLoader loader(levels, collector.noise());
         double largest = 0;
@@ -203,6 +236,7 @@ void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure&
                     c *= u.q;
                 }
                 collector.put_line(carrier, strip.deck, {u.load_case, source, line});
+                collector.note_moved(strip.deck, u.load_case, way * std::abs(u.q * area_of(whole)));
             }
         });
         collector.note_curve_error(largest * loader.curve_error());
@@ -214,6 +248,7 @@ void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure&
             loader.carry(zone.where, zone.intensity, [&](std::uint32_t carrier, const LinePiece& line) {
                 collector.put_line(carrier, strip.deck, {zone.load_case, source, line});
             });
+            collector.note_moved(strip.deck, zone.load_case, way * most_force(zone.where, zone.intensity));
         }
         collector.note_curve_error(loader.curve_error());
     }
