@@ -2,6 +2,7 @@
 
 #include "deck/panels.hpp"
 #include "geometry/box_tree.hpp"
+#include "path/influence_columns.hpp"
 
 #include <algorithm>
 #include <optional>
@@ -29,12 +30,14 @@ public:
 
     FloorPieces make() {
         add_bays();
+        const Grouped<std::uint32_t> on_columns = cells_on_columns();
         for (std::uint32_t d = 0; d < framed_.decks.size(); ++d) {
             if (framed_.decks[d].span == SpanKind::two_way) {
                 add_panels(framed_.decks[d]);
+            } else if (!on_columns[d].empty()) {
+                add_felt_areas(d, on_columns[d]);
             }
         }
-        add_cells_of_columns();
         pieces_.beside = Grouped<Beside>::from_pairs(sharing_.carrier_count(), std::move(beside_));
         return std::move(pieces_);
     }
@@ -112,31 +115,25 @@ private:
         tree_.emplace(boxes);
     }
 
-    void add_cells_of_columns() {
-        std::vector<Sum> brought(sharing_.carrier_count());
-        double floor = 0;
-        for (std::uint32_t d = 0; d < framed_.decks.size(); ++d) {
-            floor += framed_.decks[d].span == SpanKind::columns ? sharing_.deck_area[d] : 0;
-        }
-        if (floor <= 0) {
-            return;
-        }
-        for (std::size_t c = 0; c < sharing_.cells.size(); ++c) {
-            const Cell& cell = sharing_.cells[c];
-            if (framed_.decks[cell.deck].span == SpanKind::columns && !sharing_.transfers[c].empty()) {
-                const double area = area_of(StripPiece{cell.from, cell.to, cell.low, cell.high});
-                brought[sharing_.transfers[c].front().carrier].add(area);
+    void add_felt_areas(std::uint32_t d, std::span<const std::uint32_t> cells) {
+        for (const FeltArea& felt : felt_areas(plan_, framed_.decks[d], sharing_, cells, tolerance_)) {
+            const std::uint32_t piece = add_piece(felt.area);
+            for (const std::uint32_t carrier : felt.carriers) {
+                beside_.push_back({carrier, {piece, 0, 0, true}});
             }
         }
-        for (std::uint32_t carrier = 0; carrier < brought.size(); ++carrier) {
-            if (brought[carrier].value() > 0) {
-                // On a regular grid: full spans to the next columns on four sides, or to both sides of a
-                // wall.
-                const double full = sharing_.carrier(carrier).kind == CarrierKind::column ? 2.0 * 2.0 : 2.0;
-                const double area = std::min(full * brought[carrier].value(), floor);
-                beside_.push_back({carrier, {add_piece(area), 0, 0, true}});
+    }
+
+    /// Cells of decks on columns that go to any, by deck.
+    Grouped<std::uint32_t> cells_on_columns() const {
+        std::vector<std::pair<std::uint32_t, std::uint32_t>> cells;
+        for (std::uint32_t c = 0; c < sharing_.cells.size(); ++c) {
+            const std::uint32_t deck = sharing_.cells[c].deck;
+            if (framed_.decks[deck].span == SpanKind::columns && !sharing_.transfers[c].empty()) {
+                cells.emplace_back(deck, c);
             }
         }
+        return Grouped<std::uint32_t>::from_pairs(framed_.decks.size(), std::move(cells));
     }
 
     const Plan& plan_;

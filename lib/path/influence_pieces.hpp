@@ -22,8 +22,7 @@ struct Beside {
 /// thing that influence areas ask of decks. A load anywhere on a piece is felt by the carriers beside it.
 ///
 /// One-way decks: the bays, from carrier to carrier, or from the last carrier to the edge. Two-way decks: the
-/// panels between carriers, whole. Decks on columns: four times a column's cell and twice a wall's, as on a
-/// regular grid, though never more than the deck; these are no places on the floor.
+/// panels between carriers, whole. Decks on columns: see influence_columns.hpp.
 struct FloorPieces {
     std::vector<StripPiece> shapes; ///< of the first pieces; those after them count whole
     std::vector<double> areas;      ///< by piece, m2

@@ -142,10 +142,10 @@ class OnePass(unittest.TestCase):
 
     def test_what_is_not_supported_is_said_once(self):
         plan = plan_of("shelter")
-        plan["levels"][0]["decks"][0]["share"] = "lever"
+        plan["levels"][0]["moving_point"] = {"case": "snow", "p": 1}
         self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
         plan = plan_of("shelter")
-        plan["settings"] = {"share": "lever"}
+        plan["reductions"] = {"rule": "asce7"}
         self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
 
     def test_where_values_are_missing_framing_waits_and_says_so(self):

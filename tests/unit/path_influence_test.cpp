@@ -1,4 +1,5 @@
 #include "path/influence.hpp"
+#include "path/influence_columns.hpp"
 #include "support/building_support.hpp"
 #include "support/deck_support.hpp"
 #include "support/framing_support.hpp"
@@ -7,6 +8,7 @@
 
 #include <doctest/doctest.h>
 
+#include <numeric>
 #include <string>
 
 using namespace runnel;
@@ -294,4 +296,181 @@ TEST_CASE("on two-way panels a column feels the panels around it, a beam those o
         }
     }
     check();
+}
+
+namespace {
+
+/// A flat slab on columns 6 by 8 apart, 4 bays by 3, that reaches past the first lines of columns on two
+/// sides.
+PlanBuilder flat_slab(double past_x, double past_y) {
+    PlanBuilder builder;
+    for (int j = 0; j <= 3; ++j) {
+        for (int i = 0; i <= 4; ++i) {
+            builder.column(RegularGrid::name("C", i, j), {6.0 * i, 8.0 * j});
+        }
+    }
+    builder.deck("D", rectangle(-past_x, -past_y, 24, 24)).span = SpanKind::columns;
+    return builder;
+}
+
+Takedown completed(const PlanBuilder& builder) {
+    Takedown takedown = runnel::take_down(builder.plan);
+    REQUIRE(takedown.complete);
+    return takedown;
+}
+
+} // namespace
+
+// K_LL: ASCE/SEI 7-16, table 4.7-1.
+TEST_CASE("columns of a flat slab have the published ratios of influence to tributary area") {
+    const Takedown plain = completed(flat_slab(0, 0));
+    for (const char* id : {"C2_1", "C2_0", "C0_1", "C0_0", "C4_3"}) {
+        CAPTURE(id);
+        CHECK(ratio(lift_of(plain, id)) == Approx(4));
+    }
+    const Takedown reaching = completed(flat_slab(3, 4));
+    CHECK(ratio(lift_of(reaching, "C2_1")) == Approx(4));
+    CHECK(ratio(lift_of(reaching, "C2_0")) == Approx(3));
+    CHECK(ratio(lift_of(reaching, "C0_1")) == Approx(3));
+    CHECK(ratio(lift_of(reaching, "C0_0")) == Approx(2.25));
+    // Beside the corner column the slab beyond the edge counts as far as the next columns, and no farther.
+    CHECK(lift_of(reaching, "C1_0").influence_area == Approx(12 * 12));
+}
+
+TEST_CASE(
+    "a flat slab turned and moved, or with a column a hair off its line, has the same influence areas") {
+    const Takedown plain = completed(flat_slab(3, 4));
+    PlanBuilder moved = flat_slab(3, 4);
+    const support::Motion motion{17, {3000, -800}};
+    support::for_each_point(moved.plan, [&](Point& p) { p = motion(p); });
+    const Takedown far = completed(moved);
+    PlanBuilder off = flat_slab(3, 4);
+    for (Column& column : off.plan.columns) {
+        column.at.y += column.id == "C2_0" || column.id == "C1_0" ? 0.002 : 0;
+    }
+    const Takedown near = completed(off);
+    for (std::size_t c = 0; c < plain.columns.size(); ++c) {
+        CAPTURE(plain.plan.columns[c].id);
+        const double area = plain.columns[c].lifts[0].influence_area;
+        CHECK(far.columns[c].lifts[0].influence_area == Approx(area).epsilon(1e-9));
+        CHECK(near.columns[c].lifts[0].influence_area == Approx(area).epsilon(1e-2));
+    }
+}
+
+TEST_CASE("an opening in a flat slab's bay is taken off, and the bay is felt by its columns all the same") {
+    PlanBuilder builder = flat_slab(0, 0);
+    builder.floor().decks[0].openings.push_back({{8, 2}, {10, 2}, {10, 6}, {8, 6}}); // over a bay's middle
+    const Takedown t = completed(builder);
+    CHECK(lift_of(t, "C1_0").influence_area == Approx(2 * 48 - 8));
+    CHECK(lift_of(t, "C1_1").influence_area == Approx(4 * 48 - 8));
+    CHECK(lift_of(t, "C4_3").influence_area == Approx(48));
+}
+
+TEST_CASE("a slab on two columns is felt by both, but for what reaches past one of them") {
+    PlanBuilder builder;
+    builder.column("A", {0, 0}).column("B", {6, 0}).column("C", {6, 20});
+    builder.deck("D", rectangle(-2, -1, 9, 1)).span = SpanKind::columns;
+    const Takedown t = completed(builder);
+    CHECK(lift_of(t, "A").influence_area == Approx(8 * 2));
+    CHECK(lift_of(t, "B").influence_area == Approx(9 * 2));
+}
+
+TEST_CASE("between a wall and the columns next to it a slab is felt by both, from column to column") {
+    PlanBuilder builder;
+    builder.wall("W", {0, 0}, {24, 0});
+    for (int j = 1; j <= 2; ++j) {
+        for (int i = 0; i <= 4; ++i) {
+            builder.column(RegularGrid::name("C", i, j), {6.0 * i, 8.0 * j});
+        }
+    }
+    builder.deck("D", rectangle(0, 0, 24, 16)).span = SpanKind::columns;
+    const Takedown t = completed(builder);
+    CHECK(lift_of(t, "C2_1").influence_area == Approx(12 * 16));
+    CHECK(lift_of(t, "C0_1").influence_area == Approx(6 * 16));
+    CHECK(lift_of(t, "C2_2").influence_area == Approx(12 * 8));
+    CHECK(t.walls[0].lifts[0].influence_area == Approx(24 * 8));
+}
+
+TEST_CASE("around a corner that is not there a flat slab's columns feel no more than the bays that are") {
+    PlanBuilder builder; // an L: 2 by 2 bays less one
+    for (int j = 0; j <= 2; ++j) {
+        for (int i = 0; i <= 2; ++i) {
+            if (i < 2 || j < 2) {
+                builder.column(RegularGrid::name("C", i, j), {6.0 * i, 6.0 * j});
+            }
+        }
+    }
+    builder.deck("D", {{0, 0}, {12, 0}, {12, 6}, {6, 6}, {6, 12}, {0, 12}}).span = SpanKind::columns;
+    const Takedown t = completed(builder);
+    CHECK(lift_of(t, "C1_1").influence_area == Approx(3 * 36));
+    CHECK(lift_of(t, "C2_1").influence_area == Approx(36));
+    CHECK(lift_of(t, "C1_0").influence_area == Approx(2 * 36));
+    CHECK(lift_of(t, "C0_0").influence_area == Approx(36));
+}
+
+TEST_CASE("parts of random slabs felt alike add up to the slab, and no column feels less than its own cell") {
+    const std::uint64_t seed = support::seed_of_run(20261201);
+    MESSAGE("seed ", seed);
+    support::Random random(seed);
+    std::size_t slabs = 0;
+    double worst = 0;
+    for (int trial = 0; trial < 300; ++trial) {
+        CAPTURE(trial);
+        PlanBuilder builder;
+        const Point far{random.between(-1e4, 1e4), random.between(-1e4, 1e4)};
+        const int columns = random.whole(1, 30);
+        const bool on_grid = random.chance(0.3);
+        for (int i = 0; i < columns; ++i) {
+            const Point p = on_grid ? Point{4.0 * random.whole(-4, 4), 4.0 * random.whole(-4, 4)}
+                                    : Point{random.between(-18, 18), random.between(-18, 18)};
+            builder.column("C" + std::to_string(i), p + far);
+        }
+        for (int i = random.whole(-2, 3); i > 0; --i) {
+            const Point p{random.between(-15, 15), random.between(-15, 15)};
+            const Point d{random.between(-8, 8), random.between(-8, 8)};
+            builder.wall("W" + std::to_string(i), p + far, p + d + far);
+        }
+        builder.deck("D", random.star(far, 6, 20, random.whole(3, 12))).span = SpanKind::columns;
+        if (random.chance(0.3)) {
+            builder.floor().decks[0].openings.push_back(random.star(far, 0.5, 2, 5));
+        }
+        if (has_errors(check_plan(builder.plan))) {
+            continue;
+        }
+        const Framing framing = frame_plan(builder.plan);
+        if (has_errors(framing.problems)) {
+            continue;
+        }
+        const Sharing sharing = share_decks(builder.plan, framing, 0);
+        if (has_errors(sharing.problems) || sharing.transfers.items().size() != sharing.cells.size()) {
+            continue;
+        }
+        std::vector<std::uint32_t> cells(sharing.cells.size());
+        std::iota(cells.begin(), cells.end(), 0U);
+        const Tolerance tolerance{noise_of(framing.largest_coordinate), builder.plan.settings.snap};
+        const std::vector<FeltArea> felt =
+            felt_areas(builder.plan, framing.levels[0].decks[0], sharing, cells, tolerance);
+        double sum = 0;
+        std::vector<double> by_carrier(sharing.carrier_count());
+        for (const FeltArea& one : felt) {
+            sum += one.area;
+            CHECK(one.area > -1e-9);
+            for (const std::uint32_t carrier : one.carriers) {
+                by_carrier[carrier] += one.area;
+            }
+        }
+        double whole = 0;
+        for (const Cell& cell : sharing.cells) {
+            whole += area_of(StripPiece{cell.from, cell.to, cell.low, cell.high});
+        }
+        worst = std::max(worst, std::abs(sum - whole) / whole);
+        CHECK(std::abs(sum - whole) <= 1e-9 * whole);
+        const std::vector<double> own = runnel::areas_of(sharing).area;
+        for (std::uint32_t c = 0; c < own.size(); ++c) {
+            CHECK(by_carrier[c] >= own[c] - 1e-9 * sharing.deck_area[0]);
+        }
+        ++slabs;
+    }
+    MESSAGE(slabs, " slabs close within ", worst);
+    CHECK(slabs > 150);
 }
