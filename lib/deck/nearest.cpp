@@ -180,8 +180,14 @@ void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise
 
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
                    std::uint32_t deck_index, std::span<const LineCarrier> near, Sharing& sharing) {
+    share_part_nearest(plan, framing, level_index, deck_index, framing.levels[level_index].decks[deck_index],
+                       sharing.deck_area[deck_index], near, sharing);
+}
+
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
+                        std::uint32_t deck_index, const FramedDeck& deck, double whole,
+                        std::span<const LineCarrier> near, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
-    const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
     const double noise = noise_of(framing.largest_coordinate);
     if (NearestCells bay;
@@ -200,8 +206,7 @@ void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level
         return;
     }
     // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
-    constexpr double closed = 1e-11; // relative
-    const double whole = sharing.deck_area[deck_index];
+    constexpr double closed = 1e-10; // of the area: rounding alone leaves less
     NearestCells best;
     double least = std::numeric_limits<double>::infinity();
     for (const double radians : {0.0, 0.3, 1.0, 2.2}) {

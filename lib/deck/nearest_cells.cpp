@@ -243,7 +243,10 @@ private:
         const Point focus = noded_.nodes[node].place;
         const Point toward_from = (1 / distance(focus, from)) * (from - focus);
         const Point toward_to = (1 / distance(focus, to)) * (to - focus);
-        const NodeOwners::Beside beside = owners_.beside(node, toward_from + toward_to);
+        const Point turn = toward_to - toward_from;
+        const Point middle =
+            dot(toward_from, toward_to) > 0 ? toward_from + toward_to : Point{turn.y, -turn.x};
+        const NodeOwners::Beside beside = owners_.beside(node, middle);
         const auto give = [&](std::uint32_t piece, Point a, Point b) {
             const NodedLines::Piece& owner = noded_.pieces[piece];
             const double station = owner.node_a == node ? owner.from : owner.to;

@@ -330,10 +330,57 @@ DeckPressure::Surroundings DeckPressure::zones_near(const StripPiece& area, cons
 void DeckPressure::zones_over(const StripPiece& area, const StripAxes& axes,
                               std::vector<Piece>& pieces) const {
     pieces.clear();
-    if (zones_.empty()) {
+    if (!zones_.empty()) {
+        add_zones_over(area, axes, {}, pieces);
+    }
+}
+
+namespace {
+
+/// A piece in two halves, across its longer side; both use the same cut.
+std::pair<StripPiece, StripPiece> halves_of(const StripPiece& piece) {
+    const Box box = box_of(piece);
+    if (box.high.y - box.low.y >= box.high.x - box.low.x) {
+        const double middle = (piece.from + piece.to) / 2;
+        return {between_levels(piece, piece.from, middle), between_levels(piece, middle, piece.to)};
+    }
+    const Border middle{(piece.low.start + piece.high.start) / 2, (piece.low.end + piece.high.end) / 2,
+                        (piece.low.bulge + piece.high.bulge) / 2};
+    return {{piece.from, piece.to, piece.low, middle}, {piece.from, piece.to, middle, piece.high}};
+}
+
+/// Leaves of the parts what lies outside a window.
+void carve_out(const Convex& window, double noise, std::vector<StripPiece>& parts,
+               std::vector<StripPiece>& outside) {
+    const Box box = box_of(window);
+    outside.clear();
+    for (const StripPiece& part : parts) {
+        if (box.meets(box_of(part))) {
+            divide(part, window, noise, nullptr, &outside);
+        } else { // else it would only be cut at the window's levels
+            outside.push_back(part);
+        }
+    }
+    parts.swap(outside);
+}
+
+} // namespace
+
+void DeckPressure::add_zones_over(const StripPiece& area, const StripAxes& axes, const Halving& halving,
+                                  std::vector<Piece>& pieces) const {
+    const Surroundings near = zones_near(area, axes);
+    // What replaces is tried on all that lies near, so a large area with many zones is halved first, as long
+    // as that parts them.
+    constexpr std::size_t few = 24;
+    constexpr int tries = 2;
+    const bool parts_them = 4 * near.windows.size() < 3 * halving.windows;
+    const int in_vain = parts_them ? 0 : halving.in_vain + 1;
+    if (near.windows.size() > few && in_vain <= tries) {
+        const auto [first, second] = halves_of(area);
+        add_zones_over(first, axes, {near.windows.size(), in_vain}, pieces);
+        add_zones_over(second, axes, {near.windows.size(), in_vain}, pieces);
         return;
     }
-    const Surroundings near = zones_near(area, axes);
     std::vector<StripPiece> parts;
     std::vector<StripPiece> outside;
     for (std::size_t i = 0; i < near.zones.size(); ++i) {
@@ -348,17 +395,13 @@ void DeckPressure::zones_over(const StripPiece& area, const StripAxes& axes,
         for (std::size_t w = near.zones[i].first; w < near.zones[i].last; ++w) {
             divide(area, *near.windows[w], noise_, &parts, nullptr);
         }
-        for (std::size_t k = i + 1; k < near.zones.size(); ++k) {
+        for (std::size_t k = i + 1; k < near.zones.size() && !parts.empty(); ++k) {
             const Zone& later = zones_[near.zones[k].index];
             if (!later.replaces || later.load_case != zone.load_case) {
                 continue;
             }
             for (std::size_t w = near.zones[k].first; w < near.zones[k].last; ++w) {
-                outside.clear();
-                for (const StripPiece& part : parts) {
-                    divide(part, *near.windows[w], noise_, nullptr, &outside);
-                }
-                parts.swap(outside);
+                carve_out(*near.windows[w], noise_, parts, outside);
             }
         }
         for (const StripPiece& part : parts) {

@@ -79,8 +79,16 @@ private:
         std::vector<Convex> turned; ///< windows, where the axes asked for are others than `home_`
     };
 
+    /// How many windows were near before the last halving, and how many halvings on end parted few of them.
+    struct Halving {
+        std::size_t windows = 0;
+        int in_vain = 0;
+    };
+
     void add_zones(const Plan& plan, const FramedLevel& level, std::span<const std::uint32_t> acting);
     [[nodiscard]] Surroundings zones_near(const StripPiece& area, const StripAxes& axes) const;
+    void add_zones_over(const StripPiece& area, const StripAxes& axes, const Halving& halving,
+                        std::vector<Piece>& pieces) const;
 
     StripAxes home_;
     double noise_ = 0;

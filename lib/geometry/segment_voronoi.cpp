@@ -53,7 +53,8 @@ public:
             const Point a = from - place(site);
             const Point b = to - place(site);
             const double reach = std::sqrt(std::max(dot(a, a), dot(b, b)));
-            return reach > 0 ? cross(a, b) / reach : 0;
+            // What lies beyond the end of a piece goes half around it: no more and no less than straight.
+            return dot(a, b) < 0 ? reach : reach > 0 ? cross(a, b) / reach : 0;
         }
         const AxisLine& axis = line(site);
         const double stretch = dot(to - from, axis.direction);
@@ -132,8 +133,7 @@ private:
             const std::optional<double> t = sites_.is_node(other)
                                                 ? to_point(shared.place, ray, rate, other, guess)
                                                 : to_line(shared.place, ray, rate, other, start);
-            if (t &&
-                is_settled(shared.place + *t * ray, shared.place + guess * ray, *t * rate - guess * rate)) {
+            if (t && is_settled(shared.place + *t * ray, *t * rate, *t * rate - guess * rate)) {
                 return shared.place + *t * ray;
             }
         }
@@ -171,11 +171,12 @@ private:
     }
 
     /// Whether a vertex may be that far from where the grid has it: its distance from the sites may change by
-    /// what rounding them does, with room.
-    [[nodiscard]] bool is_settled(Point placed, Point start, double change) const {
+    /// what rounding them does, with room, and more the farther out it lies.
+    [[nodiscard]] bool is_settled(Point placed, double away, double change) const {
         constexpr double steps = 64;
+        constexpr double part = 1e-3;
         return std::isfinite(placed.x) && std::isfinite(placed.y) &&
-               (std::abs(change) <= steps * grid_.step() || distance(placed, start) <= steps * grid_.step());
+               std::abs(change) <= steps * grid_.step() + part * std::abs(away);
     }
 
     struct Measure {
@@ -217,7 +218,8 @@ private:
             at = at + move;
             const double tiny = 4 * std::numeric_limits<double>::epsilon() * (norm(at) + m0.away);
             if (length <= tiny || (i > 2 && length >= last)) {
-                return is_settled(at, start, measure(vertex.sites[0], at, start).away - before) ? at : start;
+                const double away = measure(vertex.sites[0], at, start).away;
+                return is_settled(at, away, away - before) ? at : start;
             }
             last = length;
         }
@@ -228,11 +230,13 @@ private:
     const Grid& grid_;
 };
 
-/// Draws arcs together that come out backwards or without length.
+/// Draws arcs together that come out backwards or without length. Long ones stay: what is backwards there is
+/// a stretch of next to nothing.
 class Contraction {
 public:
-    Contraction(const Sites& sites, VoronoiDiagram& diagram, double noise)
-        : sites_(sites), diagram_(diagram), noise_(noise), into_(diagram.vertices.size()) {
+    Contraction(const Sites& sites, VoronoiDiagram& diagram, double noise, double step)
+        : sites_(sites), diagram_(diagram), noise_(noise), long_(4096 * step),
+          into_(diagram.vertices.size()) {
         std::iota(into_.begin(), into_.end(), 0U);
     }
 
@@ -268,9 +272,9 @@ private:
         }
         const Point a = diagram_.vertices[arc.from];
         const Point b = diagram_.vertices[arc.to];
-        const bool forwards =
-            distance(a, b) > noise_ && is_forwards(arc.left, a, b) && is_forwards(arc.right, b, a);
-        if (forwards) {
+        const double length = distance(a, b);
+        if (length > long_ ||
+            (length > noise_ && is_forwards(arc.left, a, b) && is_forwards(arc.right, b, a))) {
             return false;
         }
         const std::uint32_t kept = std::min(arc.from, arc.to);
@@ -287,6 +291,7 @@ private:
     const Sites& sites_;
     VoronoiDiagram& diagram_;
     double noise_;
+    double long_; ///< m: beyond what rounding to the grid moves a vertex by
     std::vector<std::uint32_t> into_;
 };
 
@@ -309,7 +314,7 @@ VoronoiDiagram segment_voronoi(std::span<const AxisLine> lines, const NodedLines
         diagram.vertices.push_back(placer.place(vertex));
     }
     diagram.arcs = std::move(built.arcs);
-    Contraction(sites, diagram, noise).run();
+    Contraction(sites, diagram, noise, grid.step()).run();
     return diagram;
 }
 

@@ -502,3 +502,68 @@ TEST_CASE("lever and continuous: force, moment, statics, order and motion on ran
                  << " levels within " << statics << " kN/m of brute force; " << curved
                  << " with curves fitted within " << curve << " of the largest ordinate");
 }
+
+TEST_CASE("decks that no statics holds lose nothing, and those that it holds keep their moment") {
+    const std::uint64_t seed = support::seed_of_run(20261203);
+    MESSAGE("seed " << seed);
+    Random random(seed);
+    Errors near;
+    Errors far;
+    double force = 0;
+    int carried = 0;
+    int held = 0;
+    for (int i = 0; i < 1200; ++i) {
+        CAPTURE(i);
+        Drawing d;
+        d.outline = random.star({0, 0}, 3, 11, random.whole(5, 13));
+        if (random.chance(0.4)) {
+            d.openings.push_back(random.star({0, 0}, 0.3, 1.5, random.whole(3, 7)));
+            std::reverse(d.openings.back().begin(), d.openings.back().end());
+        }
+        if (random.chance(0.7)) {
+            for (std::size_t k = 0; k < d.outline.size(); ++k) {
+                d.members.emplace_back(d.outline[k], d.outline[(k + 1) % d.outline.size()]);
+            }
+        }
+        for (int k = random.whole(2, 10); k > 0; --k) { // crossing each other and the edges as they like
+            const double x = random.between(-9, 9);
+            const double from = random.between(-14, 4);
+            d.members.emplace_back(Point{x, from},
+                                   Point{x + random.between(-3, 3), from + random.between(2, 24)});
+        }
+        d.zones.push_back({{}, {}, 2});
+        d.zones.push_back({random.star({random.between(-4, 4), random.between(-4, 4)}, 1, 6, 6), {}, 3});
+        const Share share = i % 2 == 0 ? Share::lever : Share::continuous;
+        const Motion away{random.between(-180, 180),
+                          {1e6 * random.between(-1, 1), 1e6 * random.between(-1, 1)}};
+        for (const Motion& move : {Motion{}, away}) {
+            const bool here = move.degrees == 0;
+            const HandFramed f = framed(d, share, move);
+            const Sharing sharing = f.share();
+            const LevelLoads loads = f.load(sharing);
+            const auto lines = loads.lines.items();
+            CHECK(std::all_of(lines.begin(), lines.end(), [](const CarrierLine& line) {
+                return std::isfinite(line.piece.total()) && line.piece.to > line.piece.from;
+            }));
+            const bool reached =
+                std::none_of(sharing.problems.begin(), sharing.problems.end(),
+                             [](const Problem& p) { return p.code == ProblemCode::strip_unsupported; });
+            if (!reached) {
+                continue;
+            }
+            const Errors open = open_balance(f, loads);
+            CHECK(open.force <= (here ? 1e-12 : 1e-9));
+            force = std::max(force, here ? open.force : 0);
+            ++carried;
+            if (!has_errors(sharing.problems)) {
+                CHECK(check_moment(f.plan, f.framing, 0, sharing, loads, here ? 1e-12 : 1e-9).empty());
+                (here ? near : far).add(open);
+                ++held;
+            }
+        }
+    }
+    CHECK(carried > 900);
+    CHECK(held > 200);
+    MESSAGE(carried << " decks carried, open force " << force << "; " << held << " held by statics, moment "
+                    << near.moment << "; 1000 km away " << far.force << ", " << far.moment);
+}
