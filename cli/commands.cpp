@@ -74,14 +74,6 @@ std::optional<Input> read_input(const std::string& file, const Request& request)
     if (request.share) {
         std::vector<std::string>& defaults = input.reading.plan.defaults_used;
         defaults.erase(std::remove(defaults.begin(), defaults.end(), "share"), defaults.end());
-        // The plan's own shares do not count then, so that one not built yet is no reason to refuse it.
-        std::vector<runnel::Problem>& problems = input.reading.problems;
-        problems.erase(std::remove_if(problems.begin(), problems.end(),
-                                      [](const runnel::Problem& p) {
-                                          return p.code == runnel::ProblemCode::not_supported_yet &&
-                                                 p.pointer.ends_with("/share");
-                                      }),
-                       problems.end());
     }
     return input;
 }
@@ -101,23 +93,10 @@ runnel::ReportOptions report_options(const Request& request, const Input& input)
     return options;
 }
 
-/// Whether a later phase refuses what reading refused already: the deck of a key, or the share of all decks.
-bool repeats(const runnel::Problem& later, const std::vector<runnel::Problem>& read, const Request& request) {
-    constexpr runnel::ProblemCode refused = runnel::ProblemCode::not_supported_yet;
-    return later.code == refused && std::any_of(read.begin(), read.end(), [&](const runnel::Problem& one) {
-               const bool of_all = one.pointer == "/settings/share" && !request.share;
-               return one.code == refused && (of_all || one.pointer == later.pointer ||
-                                              one.pointer.starts_with(later.pointer + '/'));
-           });
-}
-
 /// Problems of reading and of the phases after it. With errors among the first they are put in the order of
 /// the text, those without a place last.
 std::vector<runnel::Problem> together(const std::vector<runnel::Problem>& read,
-                                      std::vector<runnel::Problem> later, const Request& request) {
-    later.erase(std::remove_if(later.begin(), later.end(),
-                               [&](const runnel::Problem& p) { return repeats(p, read, request); }),
-                later.end());
+                                      std::vector<runnel::Problem> later) {
     std::vector<runnel::Problem> all = read;
     all.insert(all.end(), std::make_move_iterator(later.begin()), std::make_move_iterator(later.end()));
     if (runnel::has_errors(read)) {
@@ -161,7 +140,7 @@ runnel::Takedown take_down(Input& input, const Request& request) {
         takedown.plan = std::move(input.reading.plan);
     }
     const bool errors_of_reading = !input.usable();
-    takedown.problems = together(input.reading.problems, std::move(takedown.problems), request);
+    takedown.problems = together(input.reading.problems, std::move(takedown.problems));
     takedown.complete = takedown.complete && !errors_of_reading;
     return takedown;
 }
