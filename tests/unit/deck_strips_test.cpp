@@ -335,6 +335,25 @@ TEST_CASE("loads that stand on strips follow the strips") {
         CHECK(loads.points[1][0].station == Approx(2.5));
         check_kept(loads);
     }
+    SUBCASE("a line along the strips but for millimetres keeps its moment all the same") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {0.2, 2.5}, {3.6, 2.504}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        // Of the far carrier's part the centre lies within the line; it is lifted.
+        REQUIRE(loads.points[2].size() == 1);
+        CHECK(loads.points[2][0].p < 0);
+        check_kept(loads);
+    }
+    SUBCASE("a part that pushes both ways is two points") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {4, 2.5}, {12, 2.504}, {}, {}});
+        f.level().decks[0].outline = {{0, 0}, {12, 0}, {12, 4}, {0, 4}};
+        const LevelLoads loads = f.load(f.share());
+        check_kept(loads);
+        // The far carrier: -1/16 x 4 from the span, 1/4 x 2 x 8 / 4 from the overhang.
+        REQUIRE(loads.points[0].size() == 2);
+        CHECK(loads.points[0][0].p + loads.points[0][1].p == Approx(-0.25 + 0.5));
+    }
     SUBCASE("a line from corner to corner over lever spans is shared by quadratics") {
         HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::lever);
         f.level().line_loads.push_back({"live", 1, 3, {0.5, 0.5}, {7.5, 3.5}, {}, {}});
