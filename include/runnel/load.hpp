@@ -73,10 +73,12 @@ struct LevelLoads {
 /// Own weight of members counts here (case: the plan's self-weight case); that of columns and walls does not.
 /// Laws (tests/laws/load_test.cpp):
 ///   (1) force     by deck and case, what the carriers get is what was put on
-///   (2) exact     a uniform load on a straight-edged region is linear along its carrier
+///   (2) exact     a uniform load on a straight-edged region is linear along its carrier, a plane of pressure
+///                 between parabolas a quartic (tests/laws/pressure_test.cpp)
 ///   (3) adding    loads of several area loads add up; `replaces` never counts twice
 ///   (4) motion    turning or moving the level changes no load
-/// Problems: load-off-decks, zone-off-decks, load-off-its-carrier, load-beyond-its-carrier.
+/// Problems: load-off-decks, zone-off-decks, pressure-below-zero, load-off-its-carrier,
+/// load-beyond-its-carrier.
 [[nodiscard]] RUNNEL_EXPORT LevelLoads load_carriers(const Plan& plan, const Framing& framing,
                                                      std::uint32_t level, const Sharing& sharing);
 

@@ -71,8 +71,12 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(strip_cantilevers, "strip-cantilevers", warning, "Strips on one carrier, or with a long overhang.")    \
     X(strip_unstable, "strip-unstable", error, "Strips that no statics holds up.")                           \
     X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
+    X(fixity_set_aside, "fixity-set-aside", warning,                                                         \
+      "Corner angles by fixity do not fit panels, which go to the nearest lines.")                           \
     X(share_has_no_effect, "share-has-no-effect", warning,                                                   \
       "A deck names a share that only one-way decks follow.")                                                \
+    X(way_leaves_deck, "way-leaves-deck", warning,                                                           \
+      "Area whose straight way to its carrier leaves the deck.")                                             \
     X(load_off_decks, "load-off-decks", error, "A line or point load that stands on nothing.")               \
     X(zone_off_decks, "zone-off-decks", note,                                                                \
       "Part of an area load lies off every deck and is not carried.")                                        \

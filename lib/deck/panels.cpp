@@ -13,9 +13,10 @@ struct DeckLines {
     std::vector<MapLine> lines;
     std::size_t edges = 0;
 
-    DeckLines(const FramedDeck& deck, std::span<const LineCarrier> carriers, Point origin) {
-        add_ring(deck.outline, false, origin);
-        for (const Ring& opening : deck.openings) {
+    DeckLines(const Ring& outline, std::span<const Ring> openings, std::span<const LineCarrier> carriers,
+              Point origin) {
+        add_ring(outline, false, origin);
+        for (const Ring& opening : openings) {
             add_ring(opening, true, origin);
         }
         edges = lines.size();
@@ -178,10 +179,10 @@ private:
 
 } // namespace
 
-Panels divide_into_panels(const FramedDeck& deck, std::span<const LineCarrier> carriers,
-                          Tolerance tolerance) {
-    const Point origin = deck.outline.front();
-    const DeckLines lines(deck, carriers, origin);
+Panels divide_into_panels(const Ring& outline, std::span<const Ring> openings,
+                          std::span<const LineCarrier> carriers, Tolerance tolerance) {
+    const Point origin = outline.front();
+    const DeckLines lines(outline, openings, carriers, origin);
     const PlanarMap map = map_of(lines.lines, tolerance);
     const DeckFaces faces(map, lines);
     return {origin, PanelMaker(map, lines, faces).make()};

@@ -32,17 +32,21 @@ struct Panels {
     std::vector<Panel> panels;
 };
 
-/// Divides a deck into panels: its outline less its openings, cut by the members and walls that carry it.
-/// They may cross, end inside (which divides nothing: the panel lies on both sides), lie along the deck's
-/// edges and reach beyond them. What is off by no more than `snap` counts as lying along or ending at. Where
-/// several lie along one another, which is refused before, the first counts.
+/// Divides a deck, a ring that may be turned either way, into panels: outline less openings, cut by the
+/// members and walls that carry it. They may cross, end inside (which divides nothing: the panel lies on both
+/// sides), lie along the deck's edges and reach beyond them. What is off by no more than `snap` counts as
+/// lying along or ending at. Where several lie along one another, which is refused before, the first counts.
 ///
 /// Laws (tests/unit/deck_panels_test.cpp):
 ///   (1) cover      panel areas add up to the deck's area less its openings
 ///   (2) adjacency  what lies beyond an edge has the same edge, run the other way, with the same carrier
 ///   (3) order      the panels do not depend on the order of carriers, but for their own order
 /// Cost: O((n + k) log n) for n edges and carriers whose boxes meet k times.
-[[nodiscard]] Panels divide_into_panels(const FramedDeck& deck, std::span<const LineCarrier> carriers,
-                                        Tolerance tolerance);
+[[nodiscard]] Panels divide_into_panels(const Ring& outline, std::span<const Ring> openings,
+                                        std::span<const LineCarrier> carriers, Tolerance tolerance);
+[[nodiscard]] inline Panels divide_into_panels(const FramedDeck& deck, std::span<const LineCarrier> carriers,
+                                               Tolerance tolerance) {
+    return divide_into_panels(deck.outline, deck.openings, carriers, tolerance);
+}
 
 RUNNEL_NAMESPACE_END

@@ -1,0 +1,76 @@
+#pragma once
+
+#include "deck/one_way.hpp"
+#include "geometry/grid_noding.hpp"
+#include "geometry/ring_area.hpp"
+#include "geometry/segment_voronoi.hpp"
+
+#include <runnel/deck.hpp>
+
+#include <span>
+#include <vector>
+
+RUNNEL_NAMESPACE_BEGIN
+
+/// Shares one two-way deck or deck on columns: appends its axes, cells, transfers and problems to `sharing`.
+/// `near`: members and walls whose boxes meet the deck's, rising by number.
+void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
+                   std::span<const LineCarrier> near, Sharing& sharing);
+
+/// The same for a part of deck `deck`, given as a copy of it with the part's outline and openings, of `area`
+/// m2; carriers are those of `near` that share more than a point with the part.
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
+                        const FramedDeck& part, double area, std::span<const LineCarrier> near,
+                        Sharing& sharing);
+
+/// What a deck's points are shared among. Local coordinates: the deck's first corner is the origin, so that
+/// a plan far out loses nothing.
+struct NearestCarriers {
+    Point origin;                            ///< of the local coordinates, in the plan
+    std::vector<LineCarrier> carriers;       ///< as in the plan
+    std::vector<AxisLine> lines;             ///< by carrier, cut to what can matter; stations on the carrier
+    std::vector<Point> points;               ///< columns
+    std::vector<std::uint32_t> point_number; ///< of the columns in Sharing
+};
+
+/// A part of a split that asks for a warning: how much, and where its largest part lies.
+struct DoubtfulArea {
+    double area = 0;
+    double largest = 0;
+    Point place; ///< in the plan
+    std::vector<std::uint32_t> carriers;
+
+    void add(double part, Point where, std::uint32_t carrier);
+};
+
+/// Cells of one deck before they join the level's.
+struct NearestCells {
+    std::vector<StripAxes> axes;
+    std::vector<Cell> cells;         ///< their `axes` count in the list above
+    std::vector<Transfer> transfers; ///< one a cell
+    DoubtfulArea way_leaves;
+
+    [[nodiscard]] double area() const;
+};
+
+/// Turns a Voronoi diagram of the carriers into cells: the pieces between each site and its arcs, clipped by
+/// the deck.
+[[nodiscard]] NearestCells cells_of_diagram(const NearestCarriers& carriers, const NodedLines& noded,
+                                            const VoronoiDiagram& diagram, std::uint32_t deck, double snap,
+                                            RingArea& area);
+
+/// The same for a convex deck without openings whose every edge lies on one carrier and which no other
+/// reaches into, directly by the bisectors of its edges. False: it is no such deck.
+[[nodiscard]] bool share_convex_bay(const FramedDeck& deck, std::uint32_t index,
+                                    std::span<const LineCarrier> near, Tolerance tolerance,
+                                    NearestCells& cells);
+
+/// Problems of a split by the nearest carrier.
+void report_no_carrier(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
+                       Sharing& sharing);
+void report_way_leaves(const Plan& plan, const FramedLevel& level, std::uint32_t deck,
+                       const DoubtfulArea& doubtful, Sharing& sharing);
+void report_idle_members(const FramedLevel& level, std::uint32_t deck, std::span<const std::uint32_t> members,
+                         Sharing& sharing);
+
+RUNNEL_NAMESPACE_END

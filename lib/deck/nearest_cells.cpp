@@ -1,0 +1,357 @@
+#include "deck/nearest.hpp"
+
+#include "geometry/basic.hpp"
+
+#include <algorithm>
+#include <array>
+#include <cmath>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+/// Who takes what is nearest to a node: pieces that end there, in the order of the noding.
+class NodeOwners {
+public:
+    NodeOwners(const NearestCarriers& carriers, const NodedLines& noded)
+        : carriers_(carriers), noded_(noded), column_(noded.nodes.size(), none),
+          first_(noded.nodes.size() + 1, 0) {
+        for (const NodedLines::Piece& piece : noded.pieces) {
+            ++first_[piece.node_a + 1];
+            ++first_[piece.node_b + 1];
+        }
+        for (std::size_t n = 0; n < noded.nodes.size(); ++n) {
+            first_[n + 1] += first_[n];
+        }
+        pieces_.resize(first_.back());
+        std::vector<std::uint32_t> next(first_.begin(), first_.end() - 1);
+        for (std::uint32_t p = 0; p < noded.pieces.size(); ++p) {
+            pieces_[next[noded.pieces[p].node_a]++] = p;
+            pieces_[next[noded.pieces[p].node_b]++] = p;
+        }
+        for (std::size_t c = carriers.points.size(); c-- > 0;) {
+            column_[noded.node_of_point[c]] = carriers.point_number[c];
+        }
+    }
+
+    [[nodiscard]] std::uint32_t column(std::uint32_t node) const { return column_[node]; }
+    [[nodiscard]] std::span<const std::uint32_t> pieces(std::uint32_t node) const {
+        return {pieces_.data() + first_[node], first_[node + 1] - first_[node]};
+    }
+    /// Unit vector from the node along a piece.
+    [[nodiscard]] Point away(std::uint32_t node, std::uint32_t piece) const {
+        const Point d = carriers_.lines[noded_.pieces[piece].line].direction;
+        return noded_.pieces[piece].node_a == node ? d : Point{-d.x, -d.y};
+    }
+
+    /// The two pieces beside a direction from the node: the next one clockwise and the next one
+    /// counter-clockwise.
+    struct Beside {
+        std::uint32_t clockwise = none, counter = none;
+        Point border; ///< unit vector along which they divide what lies beyond both; if they are two
+    };
+    [[nodiscard]] Beside beside(std::uint32_t node, Point direction) const {
+        Beside result;
+        double least = 0;
+        double most = 0;
+        for (const std::uint32_t piece : pieces(node)) {
+            const Point d = away(node, piece);
+            double turn = std::atan2(cross(direction, d), dot(direction, d));
+            turn = turn < 0 ? turn + 8 : turn; // any order that puts clockwise after counter-clockwise
+            if (result.counter == none || turn < least) {
+                least = turn;
+                result.counter = piece;
+            }
+            if (result.clockwise == none || turn > most) {
+                most = turn;
+                result.clockwise = piece;
+            }
+        }
+        if (result.counter != result.clockwise) {
+            const Point u = away(node, result.clockwise);
+            const Point w = away(node, result.counter);
+            const Point difference = u - w;
+            Point border = dot(u, w) > 0 ? u + w : Point{difference.y, -difference.x};
+            border = (dot(border, direction) < 0 ? -1 : 1) / norm(border) * border;
+            result.border = border;
+        }
+        return result;
+    }
+
+private:
+    const NearestCarriers& carriers_;
+    const NodedLines& noded_;
+    std::vector<std::uint32_t> column_;
+    std::vector<std::uint32_t> first_;
+    std::vector<std::uint32_t> pieces_;
+};
+
+/// An arc in strip axes, between two levels.
+struct LevelArc {
+    Point low, high; ///< its ends, by rising across
+    double bulge = 0;
+
+    [[nodiscard]] Border border() const { return {low.x, high.x, bulge}; }
+    [[nodiscard]] LevelArc turned() const { return {high, low, bulge}; }
+};
+
+Border ordered_low(const Border& a, const Border& b) {
+    return a.at(0.5) <= b.at(0.5) ? a : b;
+}
+Border ordered_high(const Border& a, const Border& b) {
+    return a.at(0.5) <= b.at(0.5) ? b : a;
+}
+
+double along_at(Point a, Point b, double across) {
+    return across == a.y ? a.x : across == b.y ? b.x : between(a, b, (across - a.y) / (b.y - a.y)).x;
+}
+
+/// What lies between a point and an arc, in pieces between levels.
+struct FanPieces {
+    std::array<StripPiece, 2> pieces;
+    std::size_t count = 0;
+
+    FanPieces(Point focus, const LevelArc& arc) {
+        const Border whole = arc.border();
+        if (focus.y <= arc.low.y) {
+            const double far = along_at(focus, arc.high, arc.low.y);
+            add(focus.y, arc.low.y, {focus.x, arc.low.x, 0}, {focus.x, far, 0});
+            add(arc.low.y, arc.high.y, whole, {far, arc.high.x, 0});
+        } else if (focus.y >= arc.high.y) {
+            const double far = along_at(arc.low, focus, arc.high.y);
+            add(arc.low.y, arc.high.y, whole, {arc.low.x, far, 0});
+            add(arc.high.y, focus.y, {arc.high.x, focus.x, 0}, {far, focus.x, 0});
+        } else {
+            const double x = (focus.y - arc.low.y) / (arc.high.y - arc.low.y);
+            add(arc.low.y, focus.y, stretch_of(whole, 0, x), {arc.low.x, focus.x, 0});
+            add(focus.y, arc.high.y, stretch_of(whole, x, 1), {focus.x, arc.high.x, 0});
+        }
+    }
+
+private:
+    void add(double from, double to, const Border& a, const Border& b) {
+        if (to > from) {
+            pieces[count++] = {from, to, ordered_low(a, b), ordered_high(a, b)};
+        }
+    }
+};
+
+class CellMaker {
+public:
+    CellMaker(const NearestCarriers& carriers, const NodedLines& noded, std::uint32_t deck, double snap,
+              RingArea& area)
+        : carriers_(carriers), noded_(noded), owners_(carriers, noded), snap_(snap), area_(area),
+          axes_of_line_(carriers.lines.size(), none) {
+        model_.deck = deck;
+    }
+
+    NearestCells run(const VoronoiDiagram& diagram) {
+        const auto pieces = static_cast<std::uint32_t>(noded_.pieces.size());
+        const auto node_of = [&](std::uint32_t site) { return site < pieces ? none : site - pieces; };
+        result_.cells.reserve(2 * diagram.arcs.size());
+        result_.transfers.reserve(2 * diagram.arcs.size());
+        for (const VoronoiDiagram::Arc& arc : diagram.arcs) {
+            const Point from = diagram.vertices[arc.from];
+            const Point to = diagram.vertices[arc.to];
+            const std::uint32_t left = node_of(arc.left);
+            const std::uint32_t right = node_of(arc.right);
+            if (left == none) {
+                add_side(arc.left, from, to, right);
+            } else {
+                add_fan(left, from, to, right == none ? arc.right : none);
+            }
+            if (right == none) {
+                add_side(arc.right, to, from, left);
+            } else {
+                add_fan(right, to, from, left == none ? arc.left : none);
+            }
+        }
+        return std::move(result_);
+    }
+
+private:
+    // ---- axes: of the lines, and plain ones for columns --------------------------------------------------
+
+    [[nodiscard]] StripAxes local_axes(std::uint32_t line) const {
+        const AxisLine& axis = carriers_.lines[line];
+        return {axis.origin, axis.direction.y, -axis.direction.x};
+    }
+    [[nodiscard]] std::uint32_t axes_index(std::uint32_t line) {
+        std::uint32_t& index = line == none ? plain_axes_ : axes_of_line_[line];
+        if (index == none) {
+            index = static_cast<std::uint32_t>(result_.axes.size());
+            StripAxes axes = line == none ? StripAxes{} : local_axes(line);
+            axes.origin = line == none ? carriers_.origin : carriers_.carriers[line].from;
+            result_.axes.push_back(axes);
+        }
+        return index;
+    }
+
+    /// The arc between two points in a line's axes, or straight in plain ones.
+    [[nodiscard]] static LevelArc arc_in(const StripAxes& axes, Point a, Point b, const Point* focus) {
+        LevelArc arc{axes.to_strip(a), axes.to_strip(b), 0};
+        if (arc.high.y < arc.low.y) {
+            arc = arc.turned();
+        }
+        if (focus != nullptr) {
+            const double stretch = arc.high.y - arc.low.y;
+            const double away = axes.to_strip(*focus).x;
+            arc.bulge = away != 0 ? stretch * stretch / (2 * away) : 0;
+        }
+        return arc;
+    }
+
+    // ---- sides of pieces ---------------------------------------------------------------------------------
+
+    void add_side(std::uint32_t piece, Point from, Point to, std::uint32_t focus) {
+        const std::uint32_t line = noded_.pieces[piece].line;
+        const StripAxes axes = local_axes(line);
+        const LevelArc arc = arc_in(axes, from, to, focus == none ? nullptr : &noded_.nodes[focus].place);
+        const bool right = arc.low.x + arc.high.x > 0;
+        const StripPiece whole = right ? StripPiece{arc.low.y, arc.high.y, Border{}, arc.border()}
+                                       : StripPiece{arc.low.y, arc.high.y, arc.border(), Border{}};
+        Box box = box_of(from, to);
+        box.add(axes.to_plan({0, arc.low.y}));
+        box.add(axes.to_plan({0, arc.high.y}));
+        area_.clip(whole, axes, box, parts_);
+        if (parts_.empty()) {
+            return;
+        }
+        const std::uint32_t number = carriers_.carriers[line].number;
+        const double length = distance(carriers_.carriers[line].from, carriers_.carriers[line].to);
+        model_.axes = axes_index(line);
+        model_.carrier_side = right ? Cell::CarrierSide::low : Cell::CarrierSide::high;
+        for (const RingArea::Part& part : parts_) {
+            push(part.piece, {number, std::clamp(part.piece.from, 0.0, length),
+                              std::clamp(part.piece.to, 0.0, length), 1});
+            if ((right ? part.out_below : part.out_above) > snap_) {
+                result_.way_leaves.add(area_of(part.piece), middle_of(part.piece, axes), number);
+            }
+        }
+    }
+
+    // ---- what is nearest to a node -----------------------------------------------------------------------
+
+    void add_fan(std::uint32_t node, Point from, Point to, std::uint32_t directrix) {
+        if (owners_.column(node) != none) {
+            add_fan_of({owners_.column(node), 0, 0, 1}, none, node, from, to, directrix);
+            return;
+        }
+        if (owners_.pieces(node).empty()) {
+            return; // a point that only closes the diagram
+        }
+        const Point focus = noded_.nodes[node].place;
+        const Point toward_from = (1 / distance(focus, from)) * (from - focus);
+        const Point toward_to = (1 / distance(focus, to)) * (to - focus);
+        const Point turn = toward_to - toward_from;
+        const Point middle =
+            dot(toward_from, toward_to) > 0 ? toward_from + toward_to : Point{turn.y, -turn.x};
+        const NodeOwners::Beside beside = owners_.beside(node, middle);
+        const auto give = [&](std::uint32_t piece, Point a, Point b) {
+            const NodedLines::Piece& owner = noded_.pieces[piece];
+            const double station = owner.node_a == node ? owner.from : owner.to;
+            add_fan_of({carriers_.carriers[owner.line].number, station, station, 1}, owner.line, node, a, b,
+                       directrix);
+        };
+        if (noded_.pieces[beside.clockwise].line == noded_.pieces[beside.counter].line) {
+            give(beside.clockwise, from, to);
+        } else if (cross(toward_from, beside.border) <= 0) {
+            give(beside.counter, from, to);
+        } else if (cross(beside.border, toward_to) <= 0) {
+            give(beside.clockwise, from, to);
+        } else {
+            const Point at = meet(focus, beside.border, from, to, directrix);
+            give(beside.clockwise, from, at);
+            give(beside.counter, at, to);
+        }
+    }
+
+    /// Where a ray from a node meets the arc around it.
+    [[nodiscard]] Point meet(Point focus, Point ray, Point from, Point to, std::uint32_t directrix) const {
+        if (directrix == none) {
+            const Point d = to - from;
+            return between(from, to, std::clamp(cross(from - focus, ray) / cross(ray, d), 0.0, 1.0));
+        }
+        // As far from the directrix as from the node.
+        const AxisLine& line = carriers_.lines[noded_.pieces[directrix].line];
+        const double off = line.right_of(focus);
+        const double side = off > 0 ? 1 : -1;
+        const double away = side * off / (1 - side * dot(ray, line.right()));
+        return focus + away * ray;
+    }
+
+    void add_fan_of(const Transfer& transfer, std::uint32_t owner, std::uint32_t node, Point from, Point to,
+                    std::uint32_t directrix) {
+        const Point focus = noded_.nodes[node].place;
+        const std::uint32_t line = directrix != none ? noded_.pieces[directrix].line : owner;
+        const StripAxes axes = line != none ? local_axes(line) : StripAxes{};
+        const LevelArc arc = arc_in(axes, from, to, directrix != none ? &focus : nullptr);
+        Box box = box_of(from, to);
+        box.add(focus);
+        if (directrix != none) { // the arc bulges towards it
+            box.add(axes.to_plan({0, arc.low.y}));
+            box.add(axes.to_plan({0, arc.high.y}));
+        }
+        const FanPieces fan(axes.to_strip(focus), arc);
+        for (std::size_t i = 0; i < fan.count; ++i) {
+            area_.clip(fan.pieces[i], axes, box, parts_);
+            if (parts_.empty()) {
+                continue;
+            }
+            const bool whole = parts_.size() == 1 && area_.place_of(box) == RingArea::Place::inside;
+            model_.axes = axes_index(line);
+            model_.carrier_side = Cell::CarrierSide::neither;
+            for (const RingArea::Part& part : parts_) {
+                push(part.piece, transfer);
+                if (!whole) {
+                    check_way(part.piece, axes, focus, transfer.carrier);
+                }
+            }
+        }
+    }
+
+    /// Judged at the middle of a piece, since ways to a point fan out.
+    void check_way(const StripPiece& piece, const StripAxes& axes, Point focus, std::uint32_t carrier) {
+        const Point middle = axes.to_plan(middle_in(piece));
+        if (area_.length_outside(middle, focus) > snap_) {
+            result_.way_leaves.add(area_of(piece), middle + carriers_.origin, carrier);
+        }
+    }
+
+    static Point middle_in(const StripPiece& piece) {
+        return {(piece.low.at(0.5) + piece.high.at(0.5)) / 2, (piece.from + piece.to) / 2};
+    }
+    [[nodiscard]] Point middle_of(const StripPiece& piece, const StripAxes& axes) const {
+        return axes.to_plan(middle_in(piece)) + carriers_.origin;
+    }
+
+    void push(const StripPiece& piece, const Transfer& transfer) {
+        model_.from = piece.from;
+        model_.to = piece.to;
+        model_.low = piece.low;
+        model_.high = piece.high;
+        result_.cells.push_back(model_);
+        result_.transfers.push_back(transfer);
+    }
+
+    const NearestCarriers& carriers_;
+    const NodedLines& noded_;
+    NodeOwners owners_;
+    double snap_;
+    RingArea& area_;
+    NearestCells result_;
+    Cell model_; ///< what cells of one piece have in common
+    std::vector<std::uint32_t> axes_of_line_;
+    std::uint32_t plain_axes_ = none;
+    std::vector<RingArea::Part> parts_;
+};
+
+} // namespace
+
+NearestCells cells_of_diagram(const NearestCarriers& carriers, const NodedLines& noded,
+                              const VoronoiDiagram& diagram, std::uint32_t deck, double snap,
+                              RingArea& area) {
+    return CellMaker(carriers, noded, deck, snap, area).run(diagram);
+}
+
+RUNNEL_NAMESPACE_END

@@ -1,0 +1,127 @@
+#include "deck/nearest.hpp"
+
+#include "deck/pressure.hpp"
+#include "geometry/basic.hpp"
+#include "plan/problems.hpp"
+
+#include <algorithm>
+#include <string>
+
+RUNNEL_NAMESPACE_BEGIN
+
+namespace {
+
+constexpr std::size_t named_at_most = 12;
+
+std::string id_of(const Plan& plan, const FramedLevel& level, const Sharing& sharing, std::uint32_t number) {
+    const Carrier carrier = sharing.carrier(number);
+    switch (carrier.kind) {
+    case CarrierKind::member:
+        return level.members[carrier.index].id;
+    case CarrierKind::wall:
+        return plan.walls[carrier.index].id;
+    case CarrierKind::column:
+        return plan.columns[carrier.index].id;
+    }
+    return {};
+}
+
+std::string start_of(const FramedLevel& level, const FramedDeck& deck) {
+    return "Level " + level.id + ", deck " + deck.id + ": ";
+}
+
+/// What acts on a whole deck, by case, as text.
+std::string loads_text(const Plan& plan, const FramedLevel& level, std::uint32_t deck, double noise) {
+    StripAxes axes;
+    axes.origin = level.decks[deck].outline.front();
+    const DeckPressure pressure(plan, level, deck, area_loads_by_deck(level, noise)[deck], axes, noise);
+    std::vector<double> lost(plan.cases.size(), 0.0);
+    std::vector<DeckPressure::Piece> pieces;
+    for (const StripPiece& where : pieces_of_deck(level.decks[deck], axes, noise)) {
+        for (const DeckPressure::Uniform& u : pressure.uniform()) {
+            lost[u.load_case] += u.q * area_of(where);
+        }
+        pressure.zones_over(where, axes, pieces);
+        for (const DeckPressure::Piece& piece : pieces) {
+            lost[piece.load_case] += moments_of(piece.where, piece.intensity).area;
+        }
+    }
+    std::string text;
+    for (std::size_t c = 0; c < lost.size(); ++c) {
+        if (lost[c] != 0) {
+            text += (text.empty() ? "" : ", ") + plan.cases[c].id + ' ' + force_text(lost[c], plan.units);
+        }
+    }
+    return text.empty() ? "no load" : text;
+}
+
+} // namespace
+
+void report_no_carrier(const Plan& plan, const Framing& framing, std::uint32_t level_index,
+                       std::uint32_t deck_index, Sharing& sharing) {
+    const FramedLevel& level = framing.levels[level_index];
+    const FramedDeck& deck = level.decks[deck_index];
+    const bool on_columns = deck.span == SpanKind::columns;
+    Problem problem =
+        problem_at(ProblemCode::strip_unsupported, deck.origin, "decks",
+                   start_of(level, deck) + area_text(sharing.deck_area[deck_index], plan.units) +
+                       " have no carrier, since no " +
+                       (on_columns ? "column or wall stands in the deck"
+                                   : "member or wall runs in the deck or along it") +
+                       " (" + loads_text(plan, level, deck_index, noise_of(framing.largest_coordinate)) +
+                       " would be lost), from " + point_text(deck.outline.front(), plan.units) + " on.",
+                   on_columns ? "Columns have to reach up to the level to carry it; a deck on beams is "
+                                "\"two-way\" or \"one-way\"."
+                              : "Draw the members along its edges, or let it span to columns.",
+                   {deck.id});
+    problem.point = deck.outline.front();
+    sharing.problems.push_back(std::move(problem));
+}
+
+void report_way_leaves(const Plan& plan, const FramedLevel& level, std::uint32_t deck_index,
+                       const DoubtfulArea& doubtful, Sharing& sharing) {
+    // Along each way `snap` was let pass; of area, what the drawing may be off by.
+    if (doubtful.area <= plan.settings.snap * plan.settings.snap) {
+        return;
+    }
+    const FramedDeck& deck = level.decks[deck_index];
+    std::vector<std::uint32_t> carriers = doubtful.carriers;
+    std::sort(carriers.begin(), carriers.end());
+    carriers.erase(std::unique(carriers.begin(), carriers.end()), carriers.end());
+    std::vector<std::string> ids{deck.id};
+    for (std::size_t i = 0; i < carriers.size() && i < named_at_most; ++i) {
+        ids.push_back(id_of(plan, level, sharing, carriers[i]));
+    }
+    Problem problem = problem_at(
+        ProblemCode::way_leaves_deck, deck.origin, "decks",
+        start_of(level, deck) + area_text(doubtful.area, plan.units) +
+            " go to a carrier straight across an opening or past the deck's edge, the largest part at " +
+            point_text(doubtful.place, plan.units) + '.',
+        "Draw the members that trim the opening or the corner, or split the deck there.", std::move(ids));
+    problem.point = doubtful.place;
+    sharing.problems.push_back(std::move(problem));
+}
+
+void report_idle_members(const FramedLevel& level, std::uint32_t deck_index,
+                         std::span<const std::uint32_t> members, Sharing& sharing) {
+    const FramedDeck& deck = level.decks[deck_index];
+    std::vector<std::string> ids{deck.id};
+    std::string names;
+    for (std::size_t i = 0; i < members.size() && i < named_at_most; ++i) {
+        ids.push_back(level.members[members[i]].id);
+        names += (i > 0 ? ", " : "") + ids.back();
+    }
+    names += members.size() > named_at_most ? ", ..." : "";
+    Problem problem =
+        problem_at(ProblemCode::carries_nothing, deck.origin, "decks",
+                   start_of(level, deck) + std::to_string(members.size()) +
+                       (members.size() == 1 ? " member takes" : " members take") +
+                       " nothing of it, since it spans to columns and walls: " + names + '.',
+                   "Where members carry the deck, let it span \"two-way\" or \"one-way\".", std::move(ids));
+    problem.severity = Severity::note;
+    const FramedMember& first = level.members[members.front()];
+    problem.point = between(first.from, first.to, 0.5);
+    sharing.problems.push_back(std::move(problem));
+}
+
+RUNNEL_NAMESPACE_END
