@@ -1,5 +1,7 @@
 #include "support/deck_support.hpp"
 
+#include "deck/strips_chains.hpp"
+
 #include <doctest/doctest.h>
 
 #include <algorithm>
@@ -427,4 +429,26 @@ TEST_CASE("a wedge of deck on two joists that meet is held by both up to its tip
         CHECK(loads.lines[0][0].piece.at(std::hypot(2, 4)) == Approx(0).epsilon(1e-12));
         check_kept(loads);
     }
+}
+
+TEST_CASE("a bay that begins beside another cuts its chain there and joins it") {
+    std::vector<Bay> bays(3);
+    bays[0].to = 3;
+    bays[1].from = 1;
+    bays[1].to = 2;
+    bays[2].to = 3;
+    const std::vector<BayMarks> marks{{Gap::edge, 7}, {7, Gap::edge}, {Gap::edge, 4}};
+    struct Found {
+        std::vector<std::uint32_t> bays;
+        double from, to;
+        bool operator==(const Found&) const = default;
+    };
+    std::vector<Found> found;
+    for_chains(bays, marks, [&](const Chain& chain) {
+        CHECK(chain.core == 0);
+        CHECK(chain.core_size == chain.bays.size());
+        found.push_back({{chain.bays.begin(), chain.bays.end()}, chain.from, chain.to});
+    });
+    const std::vector<Found> expected{{{0}, 0, 1}, {{0, 1}, 1, 2}, {{0}, 2, 3}, {{2}, 0, 3}};
+    CHECK(std::is_permutation(found.begin(), found.end(), expected.begin(), expected.end()));
 }
