@@ -1,5 +1,7 @@
 #include "support/deck_support.hpp"
 
+#include "deck/strips_chains.hpp"
+
 #include <doctest/doctest.h>
 
 #include <algorithm>
@@ -335,6 +337,25 @@ TEST_CASE("loads that stand on strips follow the strips") {
         CHECK(loads.points[1][0].station == Approx(2.5));
         check_kept(loads);
     }
+    SUBCASE("a line along the strips but for millimetres keeps its moment all the same") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {0.2, 2.5}, {3.6, 2.504}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        // Of the far carrier's part the centre lies within the line; it is lifted.
+        REQUIRE(loads.points[2].size() == 1);
+        CHECK(loads.points[2][0].p < 0);
+        check_kept(loads);
+    }
+    SUBCASE("a part that pushes both ways is two points") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {4, 2.5}, {12, 2.504}, {}, {}});
+        f.level().decks[0].outline = {{0, 0}, {12, 0}, {12, 4}, {0, 4}};
+        const LevelLoads loads = f.load(f.share());
+        check_kept(loads);
+        // The far carrier: -1/16 x 4 from the span, 1/4 x 2 x 8 / 4 from the overhang.
+        REQUIRE(loads.points[0].size() == 2);
+        CHECK(loads.points[0][0].p + loads.points[0][1].p == Approx(-0.25 + 0.5));
+    }
     SUBCASE("a line from corner to corner over lever spans is shared by quadratics") {
         HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::lever);
         f.level().line_loads.push_back({"live", 1, 3, {0.5, 0.5}, {7.5, 3.5}, {}, {}});
@@ -408,4 +429,26 @@ TEST_CASE("a wedge of deck on two joists that meet is held by both up to its tip
         CHECK(loads.lines[0][0].piece.at(std::hypot(2, 4)) == Approx(0).epsilon(1e-12));
         check_kept(loads);
     }
+}
+
+TEST_CASE("a bay that begins beside another cuts its chain there and joins it") {
+    std::vector<Bay> bays(3);
+    bays[0].to = 3;
+    bays[1].from = 1;
+    bays[1].to = 2;
+    bays[2].to = 3;
+    const std::vector<BayMarks> marks{{Gap::edge, 7}, {7, Gap::edge}, {Gap::edge, 4}};
+    struct Found {
+        std::vector<std::uint32_t> bays;
+        double from, to;
+        bool operator==(const Found&) const = default;
+    };
+    std::vector<Found> found;
+    for_chains(bays, marks, [&](const Chain& chain) {
+        CHECK(chain.core == 0);
+        CHECK(chain.core_size == chain.bays.size());
+        found.push_back({{chain.bays.begin(), chain.bays.end()}, chain.from, chain.to});
+    });
+    const std::vector<Found> expected{{{0}, 0, 1}, {{0, 1}, 1, 2}, {{0}, 2, 3}, {{2}, 0, 3}};
+    CHECK(std::is_permutation(found.begin(), found.end(), expected.begin(), expected.end()));
 }
