@@ -198,8 +198,27 @@ private:
 
     void find_panels() {
         const VoronoiDiagram& diagram = diagram_.voronoi;
-        std::vector<Corners> corners(diagram.vertices.size());
-        for (const VoronoiDiagram::Arc& arc : diagram.arcs) {
+        std::vector<Corners> corners = corners_by_vertex();
+        is_panel_.assign(corners.size(), false);
+        for (std::size_t v = 0; v < corners.size(); ++v) {
+            // What meets off the floor meets over no slab: three columns almost in line along its rim, or
+            // around a corner that is not there.
+            is_panel_[v] = !corners[v].far && !corners[v].sites.empty() && is_on_floor(diagram.vertices[v]);
+        }
+        join_triangles(corners);
+        std::vector<Box> boxes;
+        for (std::size_t v = 0; v < corners.size(); ++v) {
+            if (is_panel_[v] && !corners[v].sites.empty()) {
+                panels_.push_back(panel_of(corners[v].sites));
+                boxes.push_back(box_of(panels_.back().polygon));
+            }
+        }
+        finder_ = BoxFinder(std::move(boxes));
+    }
+
+    [[nodiscard]] std::vector<Corners> corners_by_vertex() const {
+        std::vector<Corners> corners(diagram_.voronoi.vertices.size());
+        for (const VoronoiDiagram::Arc& arc : diagram_.voronoi.arcs) {
             for (const std::uint32_t vertex : {arc.from, arc.to}) {
                 for (const std::uint32_t node : {arc.left, arc.right}) {
                     corners[vertex].far = corners[vertex].far || site_of_[node] == none;
@@ -207,24 +226,45 @@ private:
                 }
             }
         }
-        is_panel_.assign(corners.size(), false);
-        std::vector<Box> boxes;
-        for (std::size_t v = 0; v < corners.size(); ++v) {
-            // What meets off the floor meets over no slab: three columns almost in line along its rim, or
-            // around a corner that is not there.
-            if (corners[v].far || corners[v].sites.empty() || !is_on_floor(diagram.vertices[v])) {
+        for (Corners& at_vertex : corners) {
+            make_set(at_vertex.sites);
+        }
+        return corners;
+    }
+
+    /// Two triangles that share the longest side of both are one bay, whose diagonal that side is: which of
+    /// the two diagonals of a bay that is not quite a rectangle parts it says nothing of who feels a load.
+    /// The bay stands in the place of the first, nothing in that of the other.
+    void join_triangles(std::vector<Corners>& corners) const {
+        for (const VoronoiDiagram::Arc& arc : diagram_.voronoi.arcs) {
+            if (arc.from == arc.to || !is_panel_[arc.from] || !is_panel_[arc.to]) {
                 continue;
             }
-            is_panel_[v] = true;
-            panels_.push_back(panel_of(corners[v].sites));
-            boxes.push_back(box_of(panels_.back().polygon));
+            std::vector<std::uint32_t>& first = corners[arc.from].sites;
+            std::vector<std::uint32_t>& other = corners[arc.to].sites;
+            const std::uint32_t a = site_of_[arc.left];
+            const std::uint32_t b = site_of_[arc.right];
+            if (is_longest_side(a, b, first) && is_longest_side(a, b, other)) {
+                first.insert(first.end(), other.begin(), other.end());
+                make_set(first);
+                other.clear();
+            }
         }
-        finder_ = BoxFinder(std::move(boxes));
+    }
+
+    [[nodiscard]] bool is_longest_side(std::uint32_t a, std::uint32_t b,
+                                       const std::vector<std::uint32_t>& triangle) const {
+        constexpr std::size_t three = 3;
+        const double side = distance(sites_[a].at, sites_[b].at) - tolerance_.snap;
+        return triangle.size() == three &&
+               std::all_of(triangle.begin(), triangle.end(), [&](std::uint32_t c) {
+                   return c == a || c == b ||
+                          (distance(sites_[a].at, sites_[c].at) < side &&
+                           distance(sites_[b].at, sites_[c].at) < side);
+               });
     }
 
     [[nodiscard]] Panel panel_of(std::vector<std::uint32_t> corners) const {
-        std::sort(corners.begin(), corners.end());
-        corners.erase(std::unique(corners.begin(), corners.end()), corners.end());
         Point middle;
         for (const std::uint32_t s : corners) {
             middle = middle + (1.0 / static_cast<double>(corners.size())) * sites_[s].at;
