@@ -297,6 +297,18 @@ class Documents(unittest.TestCase):
         self.assertNotIn("share", result["settings"]["defaults"])
         self.assertEqual({deck["share"] for level in result["levels"] for deck in level["decks"]}, {"half"})
 
+    def test_every_share_can_be_asked_for(self):
+        forces = []
+        for share in ("half", "lever", "continuous"):
+            done = runnel("takedown", sample("shelter"), "--format", "json", "--share", share)
+            self.assertEqual(done.returncode, 0, done.stderr)
+            result = json.loads(done.stdout)
+            self.assertEqual({deck["share"] for level in result["levels"] for deck in level["decks"]}, {share})
+            forces.append([row["arrived"] for row in result["balance"]])
+        for other in forces[1:]:
+            for force, same in zip(forces[0], other, strict=True):
+                self.assertAlmostEqual(force, same, places=6)
+
     def test_shares_are_compared_carrier_by_carrier_with_the_plan_s_own(self):
         arguments = ["takedown", sample("shelter"), "--compare-shares", "--format", "json"]
         result = json.loads(runnel(*arguments).stdout)

@@ -365,3 +365,47 @@ TEST_CASE("continuous: a zone with a slanting border is an exact quartic") {
         CHECK(loads.lines[2][0].piece.at(s) == Approx(z * z * z * z / 4 - z * z / 2).epsilon(1e-11));
     }
 }
+
+TEST_CASE("what the drawing is off by goes to a point of the nearest carrier, and its way is told") {
+    for (const Share share : {Share::lever, Share::continuous}) {
+        HandFramed f;
+        f.add_member({0, 0}, {0, 5});
+        f.add_member({2, 0}, {2, 5});
+        f.add_member({4, 0}, {4, 5});
+        // The edge rises by 3 mm, within `snap`, from joist to joist and past the ends of all.
+        f.add_deck({{0, 0}, {4, 0}, {4, 5}, {2.9, 5.003}, {0, 5}}, 0);
+        f.level().decks[0].share = share;
+        f.add_area_load("live", 2);
+        f.add_area_load("live", 1, Ring{{3, 4}, {5, 4}, {5, 6}, {3, 6}});
+        const Sharing sharing = f.share();
+        CHECK(sharing.problems.empty());
+        const LevelLoads loads = f.load(sharing);
+        const DeckBalance& row = balance_of(loads, 0, live);
+        CHECK(row.shared.force == Approx(row.applied.force).epsilon(1e-14));
+        CHECK(row.moved > 0);
+        CHECK(row.moved < 0.2);               // kNm; of some 40 kN on spans of 2 m
+        REQUIRE(loads.points[1].size() == 1); // of the middle joist, the nearest
+        CHECK(loads.points[1][0].station == Approx(5).epsilon(1e-3));
+        CHECK(loads.points[1][0].p > 0);
+        CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+        CHECK(check_moment(f.plan, f.framing, 0, sharing, loads).empty());
+    }
+}
+
+TEST_CASE("a wedge of deck on two joists that meet is held by both up to its tip") {
+    HandFramed f;
+    f.add_member({0, 0}, {2, 4});
+    f.add_member({4, 0}, {2, 4});
+    f.add_deck({{0, 0}, {4, 0}, {2, 4}}, 0);
+    f.add_area_load("live", 3);
+    f.level().point_loads.push_back({"live", 1, {2, 4 - 1e-12}, {}, {}});
+    for (const Share share : {Share::lever, Share::continuous}) {
+        f.level().decks[0].share = share;
+        const Sharing sharing = f.share();
+        CHECK(sharing.problems.empty());
+        const LevelLoads loads = f.load(sharing);
+        CHECK(support::total(loads.lines[0], live) == Approx(12).epsilon(1e-12));
+        CHECK(loads.lines[0][0].piece.at(std::hypot(2, 4)) == Approx(0).epsilon(1e-12));
+        check_kept(loads);
+    }
+}

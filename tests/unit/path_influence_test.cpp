@@ -533,3 +533,22 @@ TEST_CASE("columns face each other across floor only: the legs of a U do not fee
     CHECK(lift_of(t, "P").influence_area == Approx(2 * 11 + 2 * 1)); // its leg, and A's cell beside that
     CHECK(lift_of(t, "Q").influence_area == Approx(24));
 }
+
+TEST_CASE("under any mixture of rules a tributary area lies in the influence area, and that on the floor") {
+    for (std::uint64_t seed = 1; seed <= 60; ++seed) {
+        CAPTURE(seed);
+        Plan plan = support::random_building(seed);
+        support::mix_rules(plan, seed);
+        const Takedown t = runnel::take_down(plan);
+        REQUIRE(t.complete);
+        for (const LevelTakedown& level : t.levels) {
+            const double floor =
+                std::accumulate(level.sharing.deck_area.begin(), level.sharing.deck_area.end(), 0.0);
+            for (std::size_t c = 0; c < level.influence_area.size(); ++c) {
+                CAPTURE(c);
+                CHECK(level.tributary_area[c] <= level.influence_area[c] + 1e-9 * floor);
+                CHECK(level.influence_area[c] <= floor * (1 + 1e-9));
+            }
+        }
+    }
+}
