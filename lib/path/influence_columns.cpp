@@ -3,133 +3,17 @@
 #include "geometry/box_tree.hpp"
 #include "geometry/convex.hpp"
 #include "geometry/ring_area.hpp"
-#include "geometry/segment_voronoi.hpp"
 #include "geometry/strip_piece.hpp"
+#include "path/influence_sites.hpp"
 
 #include <algorithm>
-#include <array>
+#include <cmath>
 #include <map>
 #include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-/// A column, or a place on a wall, in coordinates from the deck's first corner.
-struct Site {
-    Point at;
-    std::uint32_t carrier = none;
-};
-
-/// A stretch of a wall that cells go to.
-struct WallStretch {
-    std::uint32_t carrier = none;
-    double from = 0, to = 0; ///< stations
-};
-
-struct Supports {
-    std::vector<Site> columns;
-    std::vector<WallStretch> walls;
-};
-
-Supports supports_of(const Plan& plan, const Sharing& sharing, std::span<const std::uint32_t> cells,
-                     Point origin) {
-    std::map<std::uint32_t, WallStretch> stretches; // of columns without length
-    for (const std::uint32_t c : cells) {
-        for (const Transfer& transfer : sharing.transfers[c]) {
-            const double low = std::min(transfer.station_from, transfer.station_to);
-            const double high = std::max(transfer.station_from, transfer.station_to);
-            const auto [it, is_new] =
-                stretches.emplace(transfer.carrier, WallStretch{transfer.carrier, low, high});
-            if (!is_new) {
-                it->second.from = std::min(it->second.from, low);
-                it->second.to = std::max(it->second.to, high);
-            }
-        }
-    }
-    Supports supports;
-    for (const auto& [number, stretch] : stretches) {
-        const Carrier carrier = sharing.carrier(number);
-        if (carrier.kind == CarrierKind::column) {
-            supports.columns.push_back({plan.columns[carrier.index].at - origin, number});
-        } else if (carrier.kind == CarrierKind::wall) {
-            supports.walls.push_back(stretch);
-        }
-    }
-    return supports;
-}
-
-/// Four points far out close the cells of all others.
-std::array<Point, 4> far_points(const Box& box) {
-    const Point middle = between(box.low, box.high, 0.5);
-    constexpr double many = 6;
-    const double away = many * distance(box.low, box.high);
-    return {{middle + Point{away, 0}, middle + Point{0, away}, middle + Point{-away, 0},
-             middle + Point{0, -away}}};
-}
-
-/// The diagram of lines and points; its sites are the nodes after the pieces of lines.
-struct Diagram {
-    NodedLines noded;
-    VoronoiDiagram voronoi;
-
-    Diagram(std::span<const AxisLine> lines, std::vector<Point> points, const Box& box, double noise) {
-        const std::array<Point, 4> guards = far_points(box);
-        points.insert(points.end(), guards.begin(), guards.end());
-        const Grid grid(box_of(points).grown(noise), 0);
-        noded = node_on_grid(lines, points, grid);
-        const std::span<const std::uint32_t> open(
-            noded.node_of_point.data() + noded.node_of_point.size() - guards.size(), guards.size());
-        voronoi = segment_voronoi(lines, noded, grid, open, noise);
-    }
-};
-
-AxisLine line_of(const Wall& wall, const WallStretch& stretch, Point origin) {
-    AxisLine line;
-    line.origin = wall.from - origin;
-    const double length = distance(wall.from, wall.to);
-    line.direction = (1 / length) * (wall.to - wall.from);
-    line.from = stretch.from;
-    line.to = stretch.to;
-    line.a = line.origin + line.from * line.direction;
-    line.b = line.origin + line.to * line.direction;
-    return line;
-}
-
-/// Places on walls: their ends, and where they face a column that no other support lies nearer to.
-void add_places_on_walls(const Plan& plan, const Sharing& sharing, const Supports& supports, Point origin,
-                         const Box& box, Tolerance tolerance, std::vector<Site>& sites) {
-    std::vector<AxisLine> lines;
-    std::vector<Point> points;
-    for (const WallStretch& stretch : supports.walls) {
-        lines.push_back(line_of(plan.walls[sharing.carrier(stretch.carrier).index], stretch, origin));
-        sites.push_back({lines.back().a, stretch.carrier});
-        if (stretch.to - stretch.from > tolerance.snap) {
-            sites.push_back({lines.back().b, stretch.carrier});
-        }
-    }
-    for (const Site& column : supports.columns) {
-        points.push_back(column.at);
-    }
-    const Diagram diagram(lines, points, box, tolerance.noise);
-    const auto pieces = static_cast<std::uint32_t>(diagram.noded.pieces.size());
-    std::vector<std::uint32_t> column_of(diagram.noded.nodes.size(), none);
-    for (std::uint32_t c = 0; c < points.size(); ++c) {
-        column_of[diagram.noded.node_of_point[c]] = c;
-    }
-    for (const VoronoiDiagram::Arc& arc : diagram.voronoi.arcs) {
-        const std::uint32_t piece = std::min(arc.left, arc.right);
-        const std::uint32_t other = std::max(arc.left, arc.right);
-        if (piece >= pieces || other < pieces || column_of[other - pieces] == none) {
-            continue;
-        }
-        const std::uint32_t line = diagram.noded.pieces[piece].line;
-        const double station = lines[line].station_of(points[column_of[other - pieces]]);
-        if (station > lines[line].from + tolerance.snap && station < lines[line].to - tolerance.snap) {
-            sites.push_back({lines[line].at(station), supports.walls[line].carrier});
-        }
-    }
-}
 
 struct Corners {
     std::vector<std::uint32_t> sites;
@@ -198,8 +82,27 @@ private:
 
     void find_panels() {
         const VoronoiDiagram& diagram = diagram_.voronoi;
-        std::vector<Corners> corners(diagram.vertices.size());
-        for (const VoronoiDiagram::Arc& arc : diagram.arcs) {
+        std::vector<Corners> corners = corners_by_vertex();
+        is_panel_.assign(corners.size(), false);
+        for (std::size_t v = 0; v < corners.size(); ++v) {
+            // What meets off the floor meets over no slab: three columns almost in line along its rim, or
+            // around a corner that is not there.
+            is_panel_[v] = !corners[v].far && !corners[v].sites.empty() && is_on_floor(diagram.vertices[v]);
+        }
+        join_triangles(corners);
+        std::vector<Box> boxes;
+        for (std::size_t v = 0; v < corners.size(); ++v) {
+            if (is_panel_[v] && !corners[v].sites.empty()) {
+                panels_.push_back(panel_of(corners[v].sites));
+                boxes.push_back(box_of(panels_.back().polygon));
+            }
+        }
+        finder_ = BoxFinder(std::move(boxes));
+    }
+
+    [[nodiscard]] std::vector<Corners> corners_by_vertex() const {
+        std::vector<Corners> corners(diagram_.voronoi.vertices.size());
+        for (const VoronoiDiagram::Arc& arc : diagram_.voronoi.arcs) {
             for (const std::uint32_t vertex : {arc.from, arc.to}) {
                 for (const std::uint32_t node : {arc.left, arc.right}) {
                     corners[vertex].far = corners[vertex].far || site_of_[node] == none;
@@ -207,24 +110,45 @@ private:
                 }
             }
         }
-        is_panel_.assign(corners.size(), false);
-        std::vector<Box> boxes;
-        for (std::size_t v = 0; v < corners.size(); ++v) {
-            // What meets off the floor meets over no slab: three columns almost in line along its rim, or
-            // around a corner that is not there.
-            if (corners[v].far || corners[v].sites.empty() || !is_on_floor(diagram.vertices[v])) {
+        for (Corners& at_vertex : corners) {
+            make_set(at_vertex.sites);
+        }
+        return corners;
+    }
+
+    /// Two triangles that share the longest side of both are one bay, whose diagonal that side is: which of
+    /// the two diagonals of a bay that is not quite a rectangle parts it says nothing of who feels a load.
+    /// The bay stands in the place of the first, nothing in that of the other.
+    void join_triangles(std::vector<Corners>& corners) const {
+        for (const VoronoiDiagram::Arc& arc : diagram_.voronoi.arcs) {
+            if (arc.from == arc.to || !is_panel_[arc.from] || !is_panel_[arc.to]) {
                 continue;
             }
-            is_panel_[v] = true;
-            panels_.push_back(panel_of(corners[v].sites));
-            boxes.push_back(box_of(panels_.back().polygon));
+            std::vector<std::uint32_t>& first = corners[arc.from].sites;
+            std::vector<std::uint32_t>& other = corners[arc.to].sites;
+            const std::uint32_t a = site_of_[arc.left];
+            const std::uint32_t b = site_of_[arc.right];
+            if (is_longest_side(a, b, first) && is_longest_side(a, b, other)) {
+                first.insert(first.end(), other.begin(), other.end());
+                make_set(first);
+                other.clear();
+            }
         }
-        finder_ = BoxFinder(std::move(boxes));
+    }
+
+    [[nodiscard]] bool is_longest_side(std::uint32_t a, std::uint32_t b,
+                                       const std::vector<std::uint32_t>& triangle) const {
+        constexpr std::size_t three = 3;
+        const double side = distance(sites_[a].at, sites_[b].at) - tolerance_.snap;
+        return triangle.size() == three &&
+               std::all_of(triangle.begin(), triangle.end(), [&](std::uint32_t c) {
+                   return c == a || c == b ||
+                          (distance(sites_[a].at, sites_[c].at) < side &&
+                           distance(sites_[b].at, sites_[c].at) < side);
+               });
     }
 
     [[nodiscard]] Panel panel_of(std::vector<std::uint32_t> corners) const {
-        std::sort(corners.begin(), corners.end());
-        corners.erase(std::unique(corners.begin(), corners.end()), corners.end());
         Point middle;
         for (const std::uint32_t s : corners) {
             middle = middle + (1.0 / static_cast<double>(corners.size())) * sites_[s].at;
@@ -367,7 +291,7 @@ private:
     Tolerance tolerance_;
     RingArea floor_;
     Box box_;
-    Diagram diagram_;
+    ClosedDiagram diagram_;
     std::vector<std::uint32_t> site_of_; ///< by node; none: a far point
     std::vector<bool> is_panel_;         ///< by vertex
     std::vector<Panel> panels_;
@@ -384,15 +308,11 @@ private:
 std::vector<FeltArea> felt_areas(const Plan& plan, const FramedDeck& deck, const Sharing& sharing,
                                  std::span<const std::uint32_t> cells, Tolerance tolerance) {
     const Point origin = deck.outline.front();
-    const Supports supports = supports_of(plan, sharing, cells, origin);
-    std::vector<Site> sites = supports.columns;
-    if (!supports.walls.empty()) {
-        Ring outline = deck.outline;
-        for (Point& p : outline) {
-            p = p - origin;
-        }
-        add_places_on_walls(plan, sharing, supports, origin, box_of(outline), tolerance, sites);
+    Ring outline = deck.outline;
+    for (Point& p : outline) {
+        p = p - origin;
     }
+    std::vector<Site> sites = find_sites(plan, sharing, cells, origin, box_of(outline), tolerance);
     ColumnPanels panels(deck, std::move(sites), origin, tolerance);
     for (const std::uint32_t c : cells) {
         panels.divide_cell(sharing, c);

@@ -20,10 +20,11 @@ struct FeltArea {
 /// the cells' area. `cells`: indices of the deck's cells in `sharing`.
 ///
 /// A panel is the polygon between columns around a point that is equally near to them, and to no other nearer
-/// (Delaunay 1934): on a regular grid the bay between four. A load on it is felt at its corners. What lies
-/// outside of all panels, as a slab that cantilevers beyond the outer columns, is felt by the nearest column
-/// and by those of its neighbours along the floor's rim to whose side it lies. A wall counts by its ends and
-/// by the places that face columns next to it.
+/// (Delaunay 1934): on a regular grid the bay between four. Two triangles that share the longest side of both
+/// are one such bay. A load on a panel is felt at its corners. What lies outside of all panels, as a slab
+/// that cantilevers beyond the outer columns, is felt by the nearest column and by those of its neighbours
+/// along the floor's rim to whose side it lies. A wall counts by its ends and by the places that face columns
+/// next to it.
 ///
 /// Cost: O(n log n + k) for n columns and cells and k cells that meet a panel.
 [[nodiscard]] std::vector<FeltArea> felt_areas(const Plan& plan, const FramedDeck& deck,

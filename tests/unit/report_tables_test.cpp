@@ -42,5 +42,6 @@ TEST_CASE("tables have their units in the head and a row for each thing") {
     CHECK(members.find("\r\nwalk,b,joist,4000,0,4000,2000,2000,8e+06,8e+06,1.6e+07,2,4000,40000\r\n") !=
           std::string::npos);
     const std::string rundowns = table(Table::rundowns);
-    CHECK(rundowns.find("\r\nP,column,walk,4e+06,1.6e+07,4e+06,1,0,2000,22250,2000,22250,\r\n") != std::string::npos);
+    CHECK(rundowns.find("\r\nP,column,walk,4e+06,1.6e+07,4e+06,1,0,2000,22250,2000,22250,\r\n") !=
+          std::string::npos);
 }
