@@ -50,6 +50,10 @@ struct DeckBalance {
     std::uint32_t load_case = 0;
     ForceSum applied; ///< from zones and decks, without looking at carriers
     ForceSum shared;  ///< from the loads on carriers
+    /// Under lever and continuous: a bound, kNm, of what the drawing's being off by no more than `snap` moved
+    /// (slivers whose load goes to a point, lone strips as narrow as that, carriers beside the deck's edge).
+    /// 0 where all is by statics.
+    double moved = 0;
 };
 
 /// All loads of a level on its carriers before anything is passed on. Carriers are numbered as in Sharing.
@@ -58,6 +62,9 @@ struct LevelLoads {
         lines; ///< by carrier; sorted by case, source, station; no two of a case and source overlap
     Grouped<CarrierPoint> points; ///< by carrier
     std::vector<DeckBalance> balance;
+    /// Where a line stands for a curve that no polynomial of degree four is (lever or continuous strips on
+    /// skew carriers), it keeps force and first moment and is off by no more than this, kN/m. 0: all exact.
+    double curve_error = 0;
     std::vector<Problem> problems;
 };
 

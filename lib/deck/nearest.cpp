@@ -156,7 +156,11 @@ void append(NearestCells&& cells, Sharing& sharing) {
         sharing.transfers.push(cells.transfers[c]);
         sharing.transfers.end_group();
     }
-    sharing.cells.insert(sharing.cells.end(), cells.cells.begin(), cells.cells.end());
+    if (sharing.cells.empty()) {
+        sharing.cells = std::move(cells.cells); // of one big deck there are many
+    } else {
+        sharing.cells.insert(sharing.cells.end(), cells.cells.begin(), cells.cells.end());
+    }
 }
 
 void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise, Sharing& sharing) {

@@ -1,11 +1,9 @@
+#include "deck/carrier_finder.hpp"
 #include "deck/doubtful.hpp"
 #include "deck/fixity.hpp"
 #include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
-#include "deck/refused.hpp"
 #include "geometry/basic.hpp"
-#include "geometry/box_tree.hpp"
-#include "plan/problems.hpp"
 
 #include <runnel/deck.hpp>
 
@@ -30,13 +28,6 @@ std::vector<LineCarrier> line_carriers(const Plan& plan, const FramedLevel& leve
     return carriers;
 }
 
-void refuse(const FramedLevel& level, const FramedDeck& deck, std::string_view what, Sharing& sharing) {
-    sharing.problems.push_back(problem_at(ProblemCode::not_supported_yet, deck.origin, "decks",
-                                          "Level " + level.id + ", deck " + deck.id + ": " +
-                                              std::string(what) + " is not supported yet.",
-                                          "Use \"span\": \"one-way\" with \"share\": \"half\".", {deck.id}));
-}
-
 double area_of(const FramedDeck& deck) {
     double area = std::abs(signed_area(deck.outline));
     for (const Ring& opening : deck.openings) {
@@ -55,28 +46,12 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
     sharing.columns = static_cast<std::uint32_t>(plan.columns.size());
 
     const std::vector<LineCarrier> carriers = line_carriers(plan, level, sharing);
-    std::vector<Box> boxes;
-    boxes.reserve(carriers.size());
-    for (const LineCarrier& carrier : carriers) {
-        boxes.push_back(box_of(carrier.from, carrier.to));
-    }
-    const BoxTree tree(boxes);
-
-    std::vector<std::uint32_t> near;
-    std::vector<LineCarrier> beside;
-    std::optional<DecksBeside> decks_beside; // for decks whose corners are divided by fixity
+    CarrierFinder finder(carriers, level.decks.size());
+    std::optional<DecksBeside> decks_beside;
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
         sharing.deck_area.push_back(area_of(deck));
-        if (deck.span == SpanKind::one_way && deck.share != Share::half) {
-            refuse(level, deck, "share " + std::string(name_of(deck.share)), sharing);
-            continue;
-        }
-        tree.find(box_of(deck.outline).grown(plan.settings.snap), near);
-        beside.clear();
-        for (const std::uint32_t i : near) {
-            beside.push_back(carriers[i]);
-        }
+        const std::vector<LineCarrier>& beside = finder.find(deck, plan.settings.snap);
         if (deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity) {
             if (!decks_beside) {
                 decks_beside.emplace(level, plan.settings.snap);
@@ -93,9 +68,7 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
         find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
     }
-    if (!is_refused(sharing)) { // a deck that gives nothing to anybody would raise doubts about its joists
-        find_doubtful_members(plan, level, sharing);
-    }
+    find_doubtful_members(plan, level, sharing);
     return sharing;
 }
 

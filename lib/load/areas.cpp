@@ -2,6 +2,7 @@
 
 #include "deck/pressure.hpp"
 #include "geometry/line_pieces.hpp"
+#include "load/strip_loads.hpp"
 
 #include <algorithm>
 #include <array>
@@ -266,11 +267,15 @@ void load_areas(const Plan& plan, const Framing& framing, std::uint32_t level_in
         const std::vector<std::uint32_t> on_deck = really_acting(level, acting[d], pieces, plain, noise);
         const DeckPressure upright(plan, level, d, on_deck, plain, noise);
         account_applied(level.decks[d], d, upright, plain, pieces, collector);
-        if (last > first && follows_cells(level.decks[d])) {
+        if (last > first) {
             // One-way decks have one pair of axes; in those of others zones are turned as they are asked for.
             const DeckPressure pressure(plan, level, d, on_deck, sharing.axes[sharing.cells[first].axes],
                                         noise);
-            DeckLoader(sharing, d, pressure, plan.cases.size(), collector).load_cells(first, last);
+            if (follows_cells(level.decks[d])) {
+                DeckLoader(sharing, d, pressure, plan.cases.size(), collector).load_cells(first, last);
+            } else {
+                load_strips(sharing, d, first, last, pressure, collector);
+            }
         }
         first = last;
     }

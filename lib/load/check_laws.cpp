@@ -121,7 +121,7 @@ std::vector<Problem> check_moment(const Plan& plan, const Framing& framing, std:
         const Box extent = box_of(deck.outline);
         const double size = distance(extent.low, extent.high);
         const double noise = noise_of(framing.largest_coordinate) * got.magnitude;
-        if (!(norm(arm) <= relative * got.magnitude * size + noise)) {
+        if (!(norm(arm) <= relative * got.magnitude * size + noise + row.moved)) {
             problems.push_back(broken(ProblemCode::moment_broken, plan, level, row,
                                       "its load moved by a moment of " + exact_text(norm(arm)) + " kNm."));
         }

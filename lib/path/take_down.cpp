@@ -1,4 +1,3 @@
-#include "deck/refused.hpp"
 #include "path/parallel.hpp"
 #include "path/path.hpp"
 
@@ -71,9 +70,7 @@ std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, un
             check_split(plan, framing, level, input.sharing[l], broken[l]);
         }
         input.areas[l] = areas_of(input.sharing[l]);
-        if (!is_refused(input.sharing[l])) {
-            input.loads[l] = load_carriers(plan, framing, level, input.sharing[l]);
-        }
+        input.loads[l] = load_carriers(plan, framing, level, input.sharing[l]);
         if (whole && !has_errors(input.loads[l].problems)) {
             check_loads(plan, framing, level, input, broken[l]);
         }

@@ -1,4 +1,5 @@
 #include "support/deck_support.hpp"
+#include "support/nearest_support.hpp"
 #include "support/pressure_support.hpp"
 #include "support/random_support.hpp"
 
@@ -9,35 +10,26 @@
 
 #include <algorithm>
 #include <array>
-#include <map>
 
 using namespace runnel;
 using support::BeamAndColumn;
+using support::between_all;
+using support::far_away;
 using support::HandFramed;
 using support::Motion;
+using support::one_on;
 using support::Random;
+using support::random_nearest;
+using support::rectangle;
+using support::Stretch;
+using support::totals;
+using support::worst_force;
 
 namespace {
 
 const std::array<std::string, 2> case_names{"dead", "live"};
 
-/// 1 kN/m2 on the whole deck: loads that touch a deck by less do not make errors look large.
-double one_on(const Sharing& sharing) {
-    return sharing.deck_area[0];
-}
-
-/// Largest disagreement of what was put on and what the carriers got, over all cases, by the size of the
-/// load.
-double worst_force(const LevelLoads& loads, double least) {
-    double worst = 0;
-    for (const DeckBalance& row : loads.balance) {
-        worst = std::max(worst, std::abs(row.applied.force - row.shared.force) /
-                                    std::max(row.applied.magnitude, least));
-    }
-    return worst;
-}
-
-/// The same of the shared force and that of the oracle.
+/// Largest disagreement of what the carriers got and the oracle, over all cases, by the size of the load.
 double worst_against_oracle(const HandFramed& f, const LevelLoads& loads, double least) {
     double worst = 0;
     for (const DeckBalance& row : loads.balance) {
@@ -52,10 +44,6 @@ double worst_against_oracle(const HandFramed& f, const LevelLoads& loads, double
         worst = std::max(worst, off / std::max(row.applied.magnitude, least));
     }
     return worst;
-}
-
-Ring rectangle(double x0, double y0, double x1, double y1) {
-    return {{x0, y0}, {x1, y0}, {x1, y1}, {x0, y1}};
 }
 
 /// A one-way deck of any shape on two members across all its strips.
@@ -82,29 +70,6 @@ HandFramed random_one_way(Random& random, const Motion& move, std::vector<AreaLo
     loads = support::random_area_loads(random, 6);
     f.level().area_loads = support::moved(loads, move);
     return f;
-}
-
-Motion far_away(Random& random) {
-    return {random.between(-180, 180), {1e6 * random.between(-1, 1), 1e6 * random.between(-1, 1)}};
-}
-
-/// Pieces of a stretch between breakpoints at which something begins or ends; the middles are inside.
-struct Stretch {
-    double from, to;
-    [[nodiscard]] double middle() const { return (from + to) / 2; }
-};
-
-std::vector<Stretch> between_all(std::vector<double> breaks, double from, double to) {
-    breaks.push_back(from);
-    breaks.push_back(to);
-    std::sort(breaks.begin(), breaks.end());
-    std::vector<Stretch> parts;
-    for (std::size_t i = 0; i + 1 < breaks.size(); ++i) {
-        if (breaks[i] >= from && breaks[i + 1] <= to && breaks[i + 1] > breaks[i]) {
-            parts.push_back({breaks[i], breaks[i + 1]});
-        }
-    }
-    return parts;
 }
 
 /// Ordinates at which an upright line crosses a ring.
@@ -186,6 +151,48 @@ TEST_CASE("pressures on one-way decks: what acts is shared, whatever replaces, v
                   << "; against inclusion and exclusion in long double " << oracle);
 }
 
+TEST_CASE(
+    "pressures on decks that load what is nearest: what acts is shared, and goes along when they move") {
+    const std::uint64_t seed = support::seed_of_run(20261206);
+    MESSAGE("seed " << seed);
+    double closing = 0;
+    double closing_far = 0;
+    double oracle = 0;
+    for (std::uint64_t i = 0; i < 1000; ++i) {
+        CAPTURE(i);
+        std::vector<AreaLoad> loads;
+        Random random(seed + i);
+        HandFramed f = random_nearest(random, {}, loads);
+        const bool by_fixity = i % 4 == 0 && f.framing.levels[0].decks[0].span == SpanKind::two_way;
+        const auto corner_angles = by_fixity ? CornerAngles::by_fixity : CornerAngles::equal;
+        f.level().decks[0].corner_angles = corner_angles;
+        const Sharing sharing = f.share();
+        REQUIRE_FALSE(has_errors(sharing.problems));
+        const LevelLoads shared = f.load(sharing);
+        CHECK(worst_force(shared, one_on(sharing)) <= 1e-12);
+        closing = std::max(closing, worst_force(shared, one_on(sharing)));
+        const double off = worst_against_oracle(f, shared, one_on(sharing));
+        CHECK(off <= 1e-11);
+        oracle = std::max(oracle, off);
+
+        Random again(seed + i);
+        HandFramed away = random_nearest(again, far_away(random), loads);
+        away.level().decks[0].corner_angles = corner_angles;
+        const LevelLoads away_shared = away.load(away.share());
+        CHECK(worst_force(away_shared, one_on(sharing)) <= 1e-9);
+        closing_far = std::max(closing_far, worst_force(away_shared, one_on(sharing)));
+        for (std::uint32_t load_case = 0; load_case < 2; ++load_case) {
+            const std::vector<double> here = totals(shared, load_case);
+            const std::vector<double> there = totals(away_shared, load_case);
+            for (std::size_t c = 0; c < here.size(); ++c) {
+                CHECK(std::abs(here[c] - there[c]) <= 1e-6);
+            }
+        }
+    }
+    MESSAGE("force closes within " << closing << ", 1,000 km away " << closing_far
+                                   << "; against inclusion and exclusion in long double " << oracle);
+}
+
 TEST_CASE("pressures between a beam and a column: force, ordinates and the column's share are exact") {
     const std::uint64_t seed = support::seed_of_run(20261203);
     MESSAGE("seed " << seed);
@@ -240,7 +247,8 @@ TEST_CASE(
         Random random(seed + i);
         HandFramed f;
         f.add_deck(rectangle(-20, -20, 20, 20), 0);
-        f.level().area_loads = support::random_area_loads(random, 6);
+        const int most = i % 10 == 0 ? 60 : 5; // many: large pieces are halved until few zones are near
+        f.level().area_loads = support::random_area_loads(random, 6, most, most);
         const auto axes_at = [&random] {
             const double a = random.between(-3.2, 3.2);
             return StripAxes{{random.between(-9, 9), random.between(-9, 9)}, std::cos(a), std::sin(a)};
@@ -282,109 +290,4 @@ TEST_CASE(
         }
     }
     MESSAGE("pressures at points off by " << worst << " kN/m2 at most");
-}
-
-namespace {
-
-/// Fractions of a drawn line at which beam and column change places as the nearest, by halving.
-std::vector<double> changes_of_nearest(const BeamAndColumn& d, Point a, Point b) {
-    constexpr int samples = 4000;
-    std::vector<double> changes;
-    for (int k = 0; k < samples; ++k) {
-        double from = static_cast<double>(k) / samples;
-        double to = static_cast<double>(k + 1) / samples;
-        const bool first = d.beam_is_nearer(between(a, b, from));
-        if (d.beam_is_nearer(between(a, b, to)) == first) {
-            continue;
-        }
-        for (int halving = 0; halving < 60; ++halving) {
-            const double middle = (from + to) / 2;
-            (d.beam_is_nearer(between(a, b, middle)) == first ? from : to) = middle;
-        }
-        changes.push_back(from);
-    }
-    return changes;
-}
-
-} // namespace
-
-TEST_CASE("line and point loads on a deck go to the nearer of beam and column, the line by its stretches") {
-    const std::uint64_t seed = support::seed_of_run(20261205);
-    MESSAGE("seed " << seed);
-    double worst = 0;
-    double worst_place = 0;
-    for (std::uint64_t i = 0; i < 2000; ++i) {
-        CAPTURE(i);
-        Random random(seed + i);
-        BeamAndColumn d = BeamAndColumn::random(random);
-        d.opening_from = d.opening_to = 0; // what stands over an opening is refused
-        const auto inside = [&] { return Point{random.between(0, d.length), random.between(0, d.depth)}; };
-        const Point a = inside();
-        Point b = inside();
-        if (random.chance(0.3)) { // along the beam, or square to it
-            random.chance(0.5) ? b.y = a.y : b.x = a.x;
-        }
-        if (distance(a, b) < 0.1) {
-            continue;
-        }
-        const double w_a = random.between(-1, 4);
-        const double w_b = random.between(-1, 4);
-        const Point stands = inside();
-        const auto load_at = [&](const Motion& move) {
-            HandFramed f = d.framed(move, {});
-            f.level().line_loads.push_back({"live", w_a, w_b, move(a), move(b), {}, {}});
-            f.level().point_loads.push_back({"dead", 7, move(stands), {}, {}});
-            return f.load(d.sharing(move));
-        };
-        const LevelLoads loads = load_at({random.between(-180, 180), {}});
-        CHECK(loads.problems.empty());
-
-        double to_beam = 0;
-        double moment = 0; // about the beam's start, of what goes to the beam
-        for (const Stretch& t : between_all(changes_of_nearest(d, a, b), 0, 1)) {
-            if (!d.beam_is_nearer(between(a, b, t.middle()))) {
-                continue;
-            }
-            const double l = distance(a, b) * (t.to - t.from);
-            const double from = (1 - t.from) * w_a + t.from * w_b;
-            const double to = (1 - t.to) * w_a + t.to * w_b;
-            to_beam += l * (from + to) / 2;
-            moment += l / 6 *
-                      (from * (2 * between(a, b, t.from).x + between(a, b, t.to).x) +
-                       to * (between(a, b, t.from).x + 2 * between(a, b, t.to).x));
-        }
-        double found = 0;
-        double found_moment = 0;
-        for (const CarrierLine& line : loads.lines[0]) {
-            found += line.piece.total();
-            found_moment += line.piece.first_moment() + line.piece.total() * line.piece.from;
-        }
-        for (const CarrierPoint& point : loads.points[0]) {
-            if (point.load_case == 1) {
-                found += point.p;
-                found_moment += point.p * point.station;
-            }
-        }
-        const double size = 4 * distance(a, b);
-        CHECK(std::abs(found - to_beam) <= 1e-9 * size);
-        CHECK(std::abs(found_moment - moment) <= 1e-9 * size * d.length);
-        CHECK(std::abs(support::total(loads.points[1], 1) + to_beam - distance(a, b) * (w_a + w_b) / 2) <=
-              1e-9 * size);
-        worst = std::max(worst, std::abs(found - to_beam) / size);
-        worst_place = std::max(worst_place, std::abs(found_moment - moment) / size / d.length);
-
-        const std::uint32_t nearer = d.beam_is_nearer(stands) ? 0 : 1;
-        CHECK(support::total(loads.points[nearer], 0) == 7);
-        CHECK(support::total(loads.points[1 - nearer], 0) == 0);
-
-        const LevelLoads away = load_at(far_away(random));
-        CHECK(away.problems.empty());
-        CHECK(worst_force(away, size) <= 1e-9);
-        for (std::size_t c = 0; c < 2; ++c) {
-            CHECK(std::abs(support::total(away.points[c], 1) + support::total(away.lines[c], 1) -
-                           support::total(loads.points[c], 1) - support::total(loads.lines[c], 1)) <= 1e-6);
-        }
-    }
-    MESSAGE("the beam's part off by " << worst << ", its place by " << worst_place
-                                      << " of the whole at most");
 }

@@ -173,11 +173,13 @@ inline long double force_on(const runnel::FramedDeck& deck, std::span<const runn
     return force;
 }
 
-/// Area loads as they come: uniform or over a plane, everywhere or in a zone of any shape, and some replace.
-inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double reach) {
+/// Area loads as they come: uniform or over a plane, everywhere or in a zone of any shape, and some replace,
+/// not more than `most_replacing`, since the oracle goes through all their subsets.
+inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double reach, int most = 5,
+                                                       int most_replacing = 3) {
     std::vector<runnel::AreaLoad> loads;
     int replacing = 0;
-    for (int i = random.whole(1, 5); i > 0; --i) {
+    for (int i = random.whole(1, most); i > 0; --i) {
         runnel::AreaLoad load;
         load.case_id = random.chance(0.6) ? "live" : "dead";
         load.q = random.chance(0.15) ? 0 : random.between(-1, 5);
@@ -206,7 +208,7 @@ inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double re
                 std::reverse(load.outline.begin(), load.outline.end());
             }
         }
-        load.replaces = replacing < 3 && random.chance(0.35);
+        load.replaces = replacing < most_replacing && random.chance(0.35);
         replacing += load.replaces ? 1 : 0;
         loads.push_back(std::move(load));
     }
@@ -224,128 +226,5 @@ inline std::vector<runnel::AreaLoad> moved(std::vector<runnel::AreaLoad> loads, 
     }
     return loads;
 }
-
-/// Axes of what goes square to a line: across is the station on it, along the distance to its right.
-inline runnel::StripAxes axes_square_to(runnel::Point from, runnel::Point to) {
-    const double length = std::hypot(to.x - from.x, to.y - from.y);
-    return {from, (to.y - from.y) / length, (from.x - to.x) / length};
-}
-
-/// Adds a cell, in axes already in the sharing, whose load goes to one carrier.
-inline void add_cell(runnel::Sharing& sharing, std::uint32_t axes, const runnel::Cell& shape,
-                     std::uint32_t carrier, double station_from, double station_to) {
-    runnel::Cell cell = shape;
-    cell.deck = 0;
-    cell.axes = axes;
-    sharing.cells.push_back(cell);
-    sharing.transfers.push(runnel::Transfer{carrier, station_from, station_to, 1});
-    sharing.transfers.end_group();
-}
-
-/// A rectangular deck with a wall or beam along one side and a column inside it, shared by what is nearest:
-/// the border is a parabola. Drawn with the beam's start at the origin, along +x, the deck on its left; then
-/// placed.
-struct BeamAndColumn {
-    double length = 8, depth = 5;
-    runnel::Point column;                     ///< as drawn
-    double opening_from = 0, opening_to = 0;  ///< along the beam; equal: none
-    double opening_near = 0, opening_far = 0; ///< off the beam, nearer to it than any border
-
-    static BeamAndColumn random(Random& random) {
-        BeamAndColumn d;
-        d.length = random.between(3, 12);
-        d.depth = random.between(2, 8);
-        d.column = {random.between(-0.2, 1.2) * d.length, random.between(0.05, 1) * d.depth};
-        d.column.x = std::clamp(d.column.x, 0.0, d.length);
-        if (random.chance(0.5)) {
-            d.opening_from = random.between(0.05, 0.5) * d.length;
-            d.opening_to = d.opening_from + random.between(0.05, 0.4) * d.length;
-            d.opening_near = random.between(0.1, 0.4) * d.column.y / 2;
-            d.opening_far = random.between(0.5, 0.9) * d.column.y / 2;
-        }
-        return d;
-    }
-
-    [[nodiscard]] bool has_opening() const { return opening_to > opening_from; }
-    /// Distance from the beam of the points as near to the column, over a station: Galilei's parabola.
-    [[nodiscard]] double border_at(double station) const {
-        const double off = station - column.x;
-        return (off * off + column.y * column.y) / (2 * column.y);
-    }
-    [[nodiscard]] bool beam_is_nearer(runnel::Point drawn) const {
-        return drawn.y < std::hypot(drawn.x - column.x, drawn.y - column.y);
-    }
-
-    [[nodiscard]] HandFramed framed(const Motion& move, const std::vector<runnel::AreaLoad>& loads) const {
-        HandFramed f;
-        f.plan.settings.snap = 1e-4;
-        f.add_member(move({0, 0}), move({length, 0}));
-        runnel::Column support;
-        support.id = "C";
-        support.at = move(column);
-        f.plan.columns.push_back(support);
-        f.level().columns = {0};
-        std::vector<runnel::Ring> openings;
-        if (has_opening()) {
-            openings.push_back(move(runnel::Ring{{opening_from, opening_near},
-                                                 {opening_from, opening_far},
-                                                 {opening_to, opening_far},
-                                                 {opening_to, opening_near}}));
-        }
-        f.add_deck(move(runnel::Ring{{0, 0}, {length, 0}, {length, depth}, {0, depth}}), 0, openings);
-        f.level().decks[0].span = runnel::SpanKind::two_way;
-        f.level().area_loads = moved(loads, move);
-        return f;
-    }
-
-    [[nodiscard]] runnel::Sharing sharing(const Motion& move) const {
-        runnel::Sharing s;
-        s.members = 1;
-        s.columns = 1;
-        s.axes = {axes_square_to(move({0, 0}), move({length, 0}))};
-        std::vector<double> levels{0, length};
-        const double half_chord = std::sqrt(std::max(0.0, 2 * column.y * depth - column.y * column.y));
-        for (const double level : {column.x - half_chord, column.x + half_chord, opening_from, opening_to}) {
-            if (level > 0 && level < length) {
-                levels.push_back(level);
-            }
-        }
-        std::sort(levels.begin(), levels.end());
-        for (std::size_t i = 0; i + 1 < levels.size(); ++i) {
-            add_slab(s, levels[i], levels[i + 1]);
-        }
-        s.deck_area = {length * depth - (opening_to - opening_from) * (opening_far - opening_near)};
-        return s;
-    }
-
-private:
-    /// The deck lies on the beam's left, where distances along are negative.
-    void add_slab(runnel::Sharing& s, double from, double to) const {
-        using Side = runnel::Cell::CarrierSide;
-        const auto cell = [&](const runnel::Border& low, const runnel::Border& high, Side side) {
-            runnel::Cell c;
-            c.from = from;
-            c.to = to;
-            c.low = low;
-            c.high = high;
-            c.carrier_side = side;
-            return c;
-        };
-        const auto straight = [](double off) { return runnel::Border{-off, -off, 0}; };
-        const bool border = border_at((from + to) / 2) < depth;
-        const runnel::Border far = border ? runnel::Border{-border_at(from), -border_at(to),
-                                                           -(to - from) * (to - from) / (2 * column.y)}
-                                          : straight(depth);
-        const bool opening = has_opening() && from < opening_to && to > opening_from;
-        if (opening) {
-            add_cell(s, 0, cell(straight(opening_near), straight(0), Side::high), 0, from, to);
-        }
-        add_cell(s, 0, cell(far, straight(opening ? opening_far : 0), opening ? Side::neither : Side::high),
-                 0, from, to);
-        if (border) {
-            add_cell(s, 0, cell(straight(depth), far, Side::neither), 1, 0, 0);
-        }
-    }
-};
 
 } // namespace support

@@ -1,3 +1,4 @@
+#include "support/nearest_support.hpp"
 #include "support/pressure_support.hpp"
 
 #include <runnel/takedown.hpp>
