@@ -4,7 +4,6 @@
 #include "deck/nearest.hpp"
 #include "deck/panels.hpp"
 #include "geometry/basic.hpp"
-#include "geometry/convex.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
@@ -82,9 +81,14 @@ Ring ring_without_ends(const std::vector<PanelEdge>& border, Point origin) {
             ring.push_back(edge.from);
         }
     }
-    while (ring.size() >= 3 && ring[1] == ring.back()) { // the way there and back that the ring begins with
-        ring.erase(ring.begin());
-        ring.pop_back();
+    // The ring may begin on such a way: at its far end, or where it leaves the border.
+    while (ring.size() >= 3 && (ring[1] == ring.back() || ring.front() == ring[ring.size() - 2])) {
+        if (ring[1] == ring.back()) {
+            ring.erase(ring.begin());
+            ring.pop_back();
+        } else {
+            ring.resize(ring.size() - 2);
+        }
     }
     for (Point& p : ring) {
         p = origin + p;
@@ -98,40 +102,6 @@ bool has_carrier(const Panel& panel) {
            std::any_of(panel.holes.begin(), panel.holes.end(), [&](const std::vector<PanelEdge>& hole) {
                return std::any_of(hole.begin(), hole.end(), carries);
            });
-}
-
-/// A point well inside a panel, from Panels::origin.
-Point point_inside(const Panel& panel, double noise) {
-    std::vector<Ring> holes;
-    for (const std::vector<PanelEdge>& hole : panel.holes) {
-        holes.push_back(ring_without_ends(hole, {}));
-    }
-    Point best = panel.outer.front().from;
-    double largest = 0;
-    for (const Convex& piece : convex_pieces(ring_without_ends(panel.outer, {}), holes, noise)) {
-        const AreaMoments moments = moments_of(piece, Point{});
-        if (moments.area > largest) {
-            largest = moments.area;
-            best = (1 / moments.area) * moments.moment;
-        }
-    }
-    return best;
-}
-
-bool encloses(const std::vector<PanelEdge>& border, Point p) {
-    bool inside = false;
-    for (std::size_t i = 0; i < border.size(); ++i) {
-        Point a = border[i].from;
-        Point b = border[(i + 1) % border.size()].from;
-        if ((a.y > p.y) == (b.y > p.y)) {
-            continue;
-        }
-        if (a.y > b.y) {
-            std::swap(a, b);
-        }
-        inside = inside != (cross(b - a, p - a) > 0);
-    }
-    return inside;
 }
 
 /// Area that goes to the nearest lines although the rule would divide it otherwise, and where.
@@ -148,8 +118,9 @@ public:
                  const DecksBeside& beside, Tolerance tolerance)
         : panels_(divide_into_panels(deck.outline, {}, carriers, tolerance)),
           deck_(deck, index, carriers, panels_.origin, tolerance), beside_(beside),
-          open_(deck.openings.empty() ? panels_ : divide_into_panels(deck, carriers, tolerance)),
-          inside_(open_, carriers.size()), carrier_finder_(boxes_of(carriers, tolerance.snap)) {}
+          inside_(deck.openings.empty() ? panels_ : divide_into_panels(deck, carriers, tolerance),
+                  carriers.size()),
+          carrier_finder_(boxes_of(carriers, tolerance.snap)) {}
 
     /// Shapes all panels and finds those that are not fit. False: a part of the deck touches no carrier, so
     /// that panels do not tell whose it is.
@@ -166,7 +137,7 @@ public:
             shapes_.push_back(std::move(shape));
         }
         return std::all_of(parts_.begin(), parts_.end(),
-                           [](const Panel* part) { return has_carrier(*part); });
+                           [this](const FramedDeck& part) { return touches_carrier(part); });
     }
 
     [[nodiscard]] const SetAside& set_aside() const { return set_aside_; }
@@ -178,8 +149,9 @@ public:
                 share_convex_panel(deck_, panels_.panels[p], shapes_[p].sides, axes, sharing);
             }
         }
-        for (const Panel* part : parts_) {
-            share_part(plan, framing, level, *part, sharing);
+        for (const FramedDeck& part : parts_) {
+            share_part_nearest(plan, framing, level, deck_.index, part, area_of(part),
+                               carriers_near(part.outline), sharing);
         }
     }
 
@@ -193,24 +165,65 @@ private:
         return boxes;
     }
 
-    /// What openings leave of a panel that is not fit.
+    [[nodiscard]] std::vector<LineCarrier> carriers_near(const Ring& ring) const {
+        std::vector<std::uint32_t> found;
+        carrier_finder_.find(box_of(std::span<const Point>(ring)), found);
+        std::vector<LineCarrier> near;
+        for (const std::uint32_t c : found) {
+            near.push_back(deck_.carriers[c]);
+        }
+        return near;
+    }
+
+    static double area_of(const FramedDeck& part) {
+        Sum area;
+        area.add(signed_area(part.outline));
+        for (const Ring& opening : part.openings) {
+            area.add(signed_area(opening)); // clockwise
+        }
+        return area.value();
+    }
+
+    [[nodiscard]] bool touches_carrier(const FramedDeck& part) const {
+        const Panels panels = divide_into_panels(part, carriers_near(part.outline), deck_.tolerance);
+        return std::any_of(panels.panels.begin(), panels.panels.end(), has_carrier);
+    }
+
+    /// A part of the deck as a deck of its own.
+    [[nodiscard]] FramedDeck part_of(const Panel& panel, Point origin) const {
+        FramedDeck part = deck_.deck;
+        part.outline = ring_without_ends(panel.outer, origin);
+        part.openings.clear();
+        for (const std::vector<PanelEdge>& hole : panel.holes) {
+            Ring ring = ring_without_ends(hole, origin);
+            if (ring.size() >= 3) {
+                part.openings.push_back(std::move(ring));
+            }
+        }
+        return part;
+    }
+
+    /// A panel that is not fit, or what openings leave of it. They are cut out of this panel alone, so that
+    /// its border stays what it is to its neighbours.
     void add_parts(const Panel& panel, const PanelShape& shape) {
-        double area = 0;
-        if (deck_.openings.empty()) {
-            parts_.push_back(&panel);
-            area = panel.area;
+        const std::size_t first = parts_.size();
+        FramedDeck whole = part_of(panel, panels_.origin);
+        std::vector<std::uint32_t> near;
+        deck_.opening_finder.find(box_of(ring_without_ends(panel.outer, {})), near);
+        if (near.empty()) {
+            parts_.push_back(std::move(whole));
         } else {
-            if (inside_points_.empty()) {
-                for (const Panel& part : open_.panels) {
-                    inside_points_.push_back(point_inside(part, deck_.tolerance.noise));
-                }
+            for (const std::uint32_t opening : near) {
+                whole.openings.push_back(deck_.deck.openings[opening]);
             }
-            for (std::size_t p = 0; p < open_.panels.size(); ++p) {
-                if (encloses(panel.outer, inside_points_[p])) {
-                    parts_.push_back(&open_.panels[p]);
-                    area += open_.panels[p].area;
-                }
+            const Panels parts = divide_into_panels(whole, {}, deck_.tolerance);
+            for (const Panel& part : parts.panels) {
+                parts_.push_back(part_of(part, parts.origin));
             }
+        }
+        double area = 0;
+        for (std::size_t p = first; p < parts_.size(); ++p) {
+            area += area_of(parts_[p]);
         }
         if (!is_alike(panel, shape.sides)) {
             set_aside_.area += area;
@@ -236,26 +249,6 @@ private:
         return !(least < most);
     }
 
-    void share_part(const Plan& plan, const Framing& framing, std::uint32_t level, const Panel& panel,
-                    Sharing& sharing) const {
-        FramedDeck part = deck_.deck;
-        part.outline = ring_without_ends(panel.outer, panels_.origin);
-        part.openings.clear();
-        for (const std::vector<PanelEdge>& hole : panel.holes) {
-            Ring ring = ring_without_ends(hole, panels_.origin);
-            if (ring.size() >= 3) {
-                part.openings.push_back(std::move(ring));
-            }
-        }
-        std::vector<std::uint32_t> found;
-        carrier_finder_.find(box_of(std::span<const Point>(part.outline)), found);
-        std::vector<LineCarrier> near;
-        for (const std::uint32_t c : found) {
-            near.push_back(deck_.carriers[c]);
-        }
-        share_part_nearest(plan, framing, level, deck_.index, part, panel.area, near, sharing);
-    }
-
     /// Whether the deck, or another, goes on over more than half of a side.
     [[nodiscard]] bool continues(const Panel& panel, const PanelSide& side) const {
         double beyond = 0;
@@ -275,12 +268,10 @@ private:
     Panels panels_; ///< of the outline: openings are cut out of what each side takes
     PanelDeck deck_;
     const DecksBeside& beside_;
-    Panels open_;               ///< of the outline less openings
-    DeckBesideCarriers inside_; ///< where these are
+    DeckBesideCarriers inside_; ///< where outline less openings is
     BoxFinder carrier_finder_;
-    std::vector<PanelShape> shapes_;   ///< by panel; without sides where it is not fit
-    std::vector<const Panel*> parts_;  ///< that go to the nearest lines
-    std::vector<Point> inside_points_; ///< by panel of open_, when needed
+    std::vector<PanelShape> shapes_; ///< by panel; without sides where it is not fit
+    std::vector<FramedDeck> parts_;  ///< of the deck, that go to the nearest lines
     SetAside set_aside_;
 };
 

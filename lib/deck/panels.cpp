@@ -11,11 +11,13 @@ namespace {
 /// The lines that divide a deck: first its edges, run with the deck on their left, then its carriers.
 struct DeckLines {
     std::vector<MapLine> lines;
-    std::size_t edges = 0;
+    std::size_t outline_edges = 0; ///< the first so many
+    std::size_t edges = 0;         ///< and those of openings
 
     DeckLines(const Ring& outline, std::span<const Ring> openings, std::span<const LineCarrier> carriers,
               Point origin) {
         add_ring(outline, false, origin);
+        outline_edges = lines.size();
         for (const Ring& opening : openings) {
             add_ring(opening, true, origin);
         }
@@ -26,6 +28,7 @@ struct DeckLines {
     }
 
     [[nodiscard]] bool is_edge(std::uint32_t line) const { return line < edges; }
+    [[nodiscard]] bool is_outline(std::uint32_t line) const { return line < outline_edges; }
 
 private:
     void add_ring(const Ring& ring, bool clockwise, Point origin) {
@@ -60,11 +63,17 @@ private:
     void look_beside(std::uint32_t piece, const DeckLines& lines) {
         bool off_left = false;
         bool off_right = false;
+        int outline_runs =
+            0; // there less back: a way to an inner ring that is walked both ways bounds nothing
         for (const PlanarMap::LineOnPiece& on : map_.lines[piece]) {
-            if (lines.is_edge(on.line)) {
+            if (lines.is_outline(on.line)) {
+                outline_runs += on.backwards ? -1 : 1;
+            } else if (lines.is_edge(on.line)) {
                 (on.backwards ? off_left : off_right) = true;
             }
         }
+        off_left = off_left || outline_runs < 0;
+        off_right = off_right || outline_runs > 0;
         if (!off_left && !off_right) {
             return;
         }

@@ -76,7 +76,9 @@ public:
 private:
     struct Candidate {
         Point at;
-        int rank = 0;                ///< 0: end of a firm line, 1: on a firm line, 2: elsewhere
+        int rank = 0; ///< 0: end of a firm line, 1: on a firm line, 2: elsewhere
+        bool exact =
+            false; ///< comes together with others only where they are one point: firm lines keep course
         std::uint32_t end = nowhere; ///< 2 line + (0 for its a, 1 for its b); a crossing has none
     };
 
@@ -84,7 +86,8 @@ private:
         for (std::uint32_t i = 0; i < lines_.size(); ++i) {
             for (std::uint32_t e = 0; e < 2; ++e) {
                 const Point p = e == 0 ? lines_[i].a : lines_[i].b;
-                candidates_.push_back(lines_[i].firm ? Candidate{p, 0, 2 * i + e} : settled(p, 2 * i + e));
+                candidates_.push_back(lines_[i].firm ? Candidate{p, 0, true, 2 * i + e}
+                                                     : settled(p, 2 * i + e));
             }
         }
     }
@@ -92,7 +95,7 @@ private:
     /// A point moved on to the nearest firm line within `snap`; one that is on it but for rounding stays.
     Candidate settled(Point p, std::uint32_t end) {
         line_finder_.find(box_of(p, p).grown(snap_), near_);
-        Candidate best{p, 2, end};
+        Candidate best{p, 2, false, end};
         double nearest = snap_;
         for (const std::uint32_t i : near_) {
             if (!lines_[i].firm) {
@@ -105,7 +108,7 @@ private:
                 const double length = distance(a, b);
                 const double t = length > 0 ? std::clamp(station_of(p, a, b) / length, 0.0, 1.0) : 0.0;
                 nearest = off;
-                best = {off <= tiny() ? p : between(a, b, t), 1, end};
+                best = {off <= tiny() ? p : between(a, b, t), 1, false, end};
             }
         }
         return best;
@@ -141,9 +144,9 @@ private:
         if (l.firm) {
             const double la = off(r, l.a);
             const double lb = off(r, l.b);
-            candidates_.push_back({between(l.a, l.b, la / (la - lb)), 1, nowhere});
+            candidates_.push_back({between(l.a, l.b, la / (la - lb)), 1, r.firm, nowhere});
         } else if (r.firm) {
-            candidates_.push_back({between(r.a, r.b, ra / (ra - rb)), 1, nowhere});
+            candidates_.push_back({between(r.a, r.b, ra / (ra - rb)), 1, false, nowhere});
         } else {
             candidates_.push_back(settled(between(r.a, r.b, ra / (ra - rb)), nowhere));
         }
@@ -170,9 +173,8 @@ private:
                     break;
                 }
                 const std::uint32_t n = node_of[other];
-                // Corners of firm lines come together only where they are one point.
                 const double off = distance(nodes[n], candidate.at);
-                if (off <= nearest && (candidate.rank > 0 || off <= noise_)) {
+                if (off <= nearest && (!candidate.exact || off <= noise_)) {
                     nearest = off;
                     node = n;
                 }

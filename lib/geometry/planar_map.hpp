@@ -14,8 +14,7 @@ RUNNEL_NAMESPACE_BEGIN
 /// A straight line to be drawn into a planar map.
 struct MapLine {
     Point a, b;
-    /// Keeps its course: ends and crossings of other lines within `snap` of it come to it. Firm lines are
-    /// thought not to cross each other.
+    /// Keeps its course: ends and crossings of other lines within `snap` of it come to it.
     bool firm = false;
 };
 

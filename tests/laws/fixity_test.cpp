@@ -381,3 +381,36 @@ TEST_CASE("corner angles by fixity in random buildings: all is carried, wherever
     MESSAGE(set_aside << " of " << decks << " decks fell back; foundation loads differ by " << motion
                       << " kN turned and moved");
 }
+
+TEST_CASE(
+    "corner angles by fixity on decks of any shape, with beams and openings anywhere: cover and disjoint") {
+    const std::uint64_t seed = support::seed_of_run(20261206);
+    MESSAGE("seed " << seed);
+    Random random(seed);
+    double worst = 0;
+    for (int i = 0; i < 400; ++i) {
+        CAPTURE(i);
+        HandFramed f;
+        const Ring outline = random.star({0, 0}, 3, 11, random.whole(9, 12));
+        for (std::size_t k = 0; k < outline.size(); ++k) {
+            if (random.chance(0.9)) {
+                f.add_member(outline[k], outline[(k + 1) % outline.size()]);
+            }
+        }
+        for (int k = random.whole(0, 6); k > 0; --k) {
+            const auto any = [&] { return Point{random.between(-9, 9), random.between(-9, 9)}; };
+            f.add_member(any(), any());
+        }
+        Ring opening = random.star({0, 0}, 0.5, 2.0, random.whole(3, 7));
+        std::reverse(opening.begin(), opening.end());
+        f.add_deck(outline, 0, {opening});
+        const FixityShared shared = share_by_fixity(f);
+        if (shared.fits) {
+            const double area = deck_area(f.framing.levels[0].decks[0]);
+            worst = std::max(worst, std::abs(support::covered_area(shared.sharing) - area) / area);
+            CHECK(check_disjoint(f.framing, 0, shared.sharing).empty());
+        }
+    }
+    CHECK(worst <= 1e-10);
+    MESSAGE("areas close within " << worst);
+}
