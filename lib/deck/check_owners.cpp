@@ -6,6 +6,8 @@
 
 #include <runnel/deck.hpp>
 
+#include <algorithm>
+#include <cmath>
 #include <memory>
 #include <random>
 #include <string>
@@ -47,12 +49,14 @@ std::vector<ProbedCarrier> carriers_for(const FramedDeck& deck, const Sharing& s
     return carriers;
 }
 
-bool holds(const Cell& cell, Point p) {
-    if (p.y < cell.from || p.y >= cell.to) {
-        return false;
+/// How far a point lies within a cell, in m; negative outside.
+double depth_in(const Cell& cell, Point p) {
+    const double across = std::min(p.y - cell.from, cell.to - p.y);
+    if (across < 0) {
+        return across;
     }
     const double x = (p.y - cell.from) / (cell.to - cell.from);
-    return p.x >= cell.low.at(x) && p.x < cell.high.at(x);
+    return std::min({across, p.x - cell.low.at(x), cell.high.at(x) - p.x});
 }
 
 /// A point somewhere in a cell.
@@ -82,8 +86,9 @@ std::vector<DeckCells> cells_by_deck(const Sharing& sharing, std::size_t decks) 
 class OwnerChecker {
 public:
     OwnerChecker(const Plan& plan, const FramedLevel& level, const Sharing& sharing, const OwnerProbe& probe,
-                 std::uint32_t deck, DeckCells cells)
-        : plan_(plan), level_(level), sharing_(sharing), probe_(probe), deck_(deck), cells_(cells) {}
+                 std::uint32_t deck, DeckCells cells, double noise)
+        : plan_(plan), level_(level), sharing_(sharing), probe_(probe), deck_(deck), cells_(cells),
+          noise_(noise) {}
 
     void ask(Point p, std::vector<Problem>& problems) const {
         const OwnerProbe::Answer answer = probe_.ask(p);
@@ -94,7 +99,11 @@ public:
         std::uint32_t owner = none;
         for (std::size_t c = cells_.first; c < cells_.last; ++c) {
             const Cell& cell = sharing_.cells[c];
-            if (holds(cell, sharing_.axes[cell.axes].to_strip(p))) {
+            const double depth = depth_in(cell, sharing_.axes[cell.axes].to_strip(p));
+            if (std::abs(depth) <= noise_) {
+                return; // on a border but for rounding
+            }
+            if (depth > 0) {
                 ++holders;
                 owner = sharing_.transfers[c].empty() ? none : sharing_.transfers[c].front().carrier;
             }
@@ -123,6 +132,7 @@ private:
     const OwnerProbe& probe_;
     std::uint32_t deck_;
     DeckCells cells_;
+    double noise_;
 };
 
 /// Half of the samples anywhere around the deck, half in cells: small cells are asked as often as large ones.
@@ -175,7 +185,7 @@ std::vector<Problem> check_owners(const Plan& plan, const Framing& framing, std:
                 ? probe_strips(deck, sharing.axes[sharing.cells[cells[d].first].axes], carriers, tolerance)
                 : probe_nearest(deck, carriers, tolerance);
         sample(deck, sharing, cells[d], samples, random,
-               OwnerChecker(plan, level, sharing, *probe, d, cells[d]), problems);
+               OwnerChecker(plan, level, sharing, *probe, d, cells[d], 8 * tolerance.noise), problems);
     }
     return problems;
 }

@@ -69,7 +69,8 @@ public:
         }
         constexpr double trusted_digits =
             1e-8; // of a deck's size: what an ill-conditioned border may be off by
-        margin_ = trusted_digits * size + 4 * tolerance.noise;
+        // Carriers may have been fitted to deck edges, or edges to carriers, by `snap`.
+        margin_ = trusted_digits * size + 4 * tolerance.noise + tolerance.snap;
         for (const ProbedCarrier& carrier : carriers) {
             add_carrier(deck, carrier);
         }
@@ -118,9 +119,11 @@ private:
                 carriers_.push_back({carrier, off > snap_ - margin_});
             }
         } else if (!carrier.column) {
-            const double length = length_in(edges_, carrier.from, carrier.to, snap_);
-            if (length > snap_ / 2) {
-                carriers_.push_back({carrier, length <= 4 * snap_});
+            // Whether it carries hangs on `snap` alone where a little more or less of it would change that.
+            const double least = length_in(edges_, carrier.from, carrier.to, snap_ / 2);
+            const double most = length_in(edges_, carrier.from, carrier.to, 2 * snap_);
+            if (most > snap_ / 2) {
+                carriers_.push_back({carrier, least <= 4 * snap_});
             }
         }
     }

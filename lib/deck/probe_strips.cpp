@@ -16,6 +16,7 @@ struct Beside {
     double edge = std::numeric_limits<double>::infinity();
     double carrier = std::numeric_limits<double>::infinity();
     double second = std::numeric_limits<double>::infinity(); ///< the next carrier, to see near ties
+    double blur = 0; ///< how far fitting may move the carrier or the edge along the strip
     std::uint32_t number = none;
 };
 
@@ -75,8 +76,12 @@ private:
             }
             if (const auto along = at(line, p.y)) {
                 crossings += *along > p.x ? 1 : 0;
-                double& nearest = *along > p.x ? high.edge : low.edge;
-                nearest = std::min(nearest, std::abs(*along - p.x));
+                Beside& side = *along > p.x ? high : low;
+                const double d = std::abs(*along - p.x);
+                if (d < side.edge) {
+                    side.edge = d;
+                    side.blur = std::max(side.blur, blur_of(line));
+                }
             }
         }
         for (const Line& line : carriers_) {
@@ -90,6 +95,7 @@ private:
                     side.second = side.carrier;
                     side.carrier = d;
                     side.number = line.number;
+                    side.blur = std::max(side.blur, blur_of(line));
                 } else {
                     side.second = std::min(side.second, d);
                 }
@@ -103,6 +109,11 @@ private:
     [[nodiscard]] bool near_end(const Line& line, double across) const {
         return std::abs(line.a.y - across) <= margin_ || std::abs(line.b.y - across) <= margin_;
     }
+    /// A line that meets the strips at a flat angle moves far along them when it moves a little square to
+    /// itself.
+    [[nodiscard]] double blur_of(const Line& line) const {
+        return margin_ * distance(line.a, line.b) / std::abs(line.b.y - line.a.y);
+    }
     static std::optional<double> at(const Line& line, double across) {
         if ((line.a.y > across) == (line.b.y > across)) {
             return std::nullopt;
@@ -114,17 +125,18 @@ private:
         // A carrier on the deck's edge carries it: it counts as before the edge. One a little behind it may
         // have been fitted to it or not.
         const auto behind = [&](const Beside& side) {
-            return side.carrier > side.edge + noise_ && side.carrier <= side.edge + margin_;
+            return side.carrier > side.edge + noise_ && side.carrier <= side.edge + side.blur;
         };
         if (behind(low) || behind(high)) {
             return;
         }
         const bool low_first = low.carrier <= low.edge + noise_ && low.number != none;
         const bool high_first = high.carrier <= high.edge + noise_ && high.number != none;
-        const bool tie = (low_first && high_first && std::abs(low.carrier - high.carrier) <= 2 * margin_) ||
-                         (low_first && low.second - low.carrier <= margin_) ||
-                         (high_first && high.second - high.carrier <= margin_) || low.edge <= margin_ ||
-                         high.edge <= margin_ || low.carrier <= margin_ || high.carrier <= margin_;
+        const bool tie =
+            (low_first && high_first && std::abs(low.carrier - high.carrier) <= low.blur + high.blur) ||
+            (low_first && low.second - low.carrier <= low.blur) ||
+            (high_first && high.second - high.carrier <= high.blur) || low.edge <= low.blur ||
+            high.edge <= high.blur || low.carrier <= low.blur || high.carrier <= high.blur;
         if (tie) {
             return;
         }

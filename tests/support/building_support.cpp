@@ -418,7 +418,7 @@ void drop_one(std::vector<T>& list, Random& random) {
 void spoil(Plan& plan, Random& random) {
     Level& level =
         plan.levels[static_cast<std::size_t>(random.whole(0, static_cast<int>(plan.levels.size()) - 1))];
-    switch (random.whole(0, 11)) {
+    switch (random.whole(0, 13)) {
     case 0:
         drop_one(plan.columns, random);
         break;
@@ -481,6 +481,21 @@ void spoil(Plan& plan, Random& random) {
             if (!deck.outline.empty() && random.chance(0.3)) {
                 deck.outline.insert(deck.outline.begin() + 1, deck.outline.front());
             }
+        }
+        break;
+    case 11:
+        for (Deck& deck : level.decks) {
+            deck.span = static_cast<SpanKind>(random.whole(0, 2));
+            deck.share = static_cast<Share>(random.whole(0, 2));
+            deck.corner_angles = static_cast<CornerAngles>(random.whole(0, 1));
+            deck.direction = random.between(-90, 90);
+        }
+        break;
+    case 12:
+        for (AreaLoad& load : level.area_loads) {
+            load.plane =
+                PlaneOfLoad{{Point{0, 0}, Point{random.between(1, 9), 0}, Point{0, random.between(1, 9)}},
+                            {random.between(-2, 5), random.between(-2, 5), random.between(-2, 5)}};
         }
         break;
     default:

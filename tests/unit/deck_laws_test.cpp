@@ -87,3 +87,26 @@ TEST_CASE("a cell given to the wrong carrier has a wrong owner") {
     sharing.transfers[cell_from(sharing, 0)].front().carrier = 1;
     CHECK(only_code(check_owners(f.plan, f.framing, 0, sharing, 400, 1)) == ProblemCode::owner_broken);
 }
+
+TEST_CASE("a load that is lost or moved on its way is seen") {
+    support::HandFramed f = floor_on_three_beams();
+    f.level().decks[0].share = Share::lever;
+    Sharing sharing = f.share();
+    LevelLoads loads = f.load(sharing);
+    REQUIRE_FALSE(loads.lines[1].empty());
+    loads.lines[1].front().piece.c[0] += 1e-6;
+    CHECK(only_code(check_force(f.plan, f.framing, 0, sharing, loads)) == ProblemCode::force_broken);
+
+    loads = f.load(sharing);
+    loads.lines[0].front().piece.c[0] += 1e-3;
+    loads.lines[2].front().piece.c[0] += 1e-3;
+    loads.lines[1].front().piece.c[0] -= 2e-3;
+    CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+    CHECK(
+        check_moment(f.plan, f.framing, 0, sharing, loads).empty()); // even on both sides: the place is kept
+
+    loads.lines[0].front().piece.c[0] += 1e-3;
+    loads.lines[2].front().piece.c[0] -= 1e-3;
+    CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+    CHECK(only_code(check_moment(f.plan, f.framing, 0, sharing, loads)) == ProblemCode::moment_broken);
+}
