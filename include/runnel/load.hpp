@@ -50,6 +50,10 @@ struct DeckBalance {
     std::uint32_t load_case = 0;
     ForceSum applied; ///< from zones and decks, without looking at carriers
     ForceSum shared;  ///< from the loads on carriers
+    /// Under lever and continuous: a bound, kNm, of what the drawing's being off by no more than `snap` moved
+    /// (slivers whose load goes to a point, lone strips as narrow as that, carriers beside the deck's edge).
+    /// 0 where all is by statics.
+    double moved = 0;
 };
 
 /// All loads of a level on its carriers before anything is passed on. Carriers are numbered as in Sharing.
@@ -58,6 +62,9 @@ struct LevelLoads {
         lines; ///< by carrier; sorted by case, source, station; no two of a case and source overlap
     Grouped<CarrierPoint> points; ///< by carrier
     std::vector<DeckBalance> balance;
+    /// Where a line stands for a curve that no polynomial of degree four is (lever or continuous strips on
+    /// skew carriers), it keeps force and first moment and is off by no more than this, kN/m. 0: all exact.
+    double curve_error = 0;
     std::vector<Problem> problems;
 };
 
@@ -66,11 +73,25 @@ struct LevelLoads {
 /// Own weight of members counts here (case: the plan's self-weight case); that of columns and walls does not.
 /// Laws (tests/laws/load_test.cpp):
 ///   (1) force     by deck and case, what the carriers get is what was put on
-///   (2) exact     a uniform load on a straight-edged region is linear along its carrier
+///   (2) exact     a uniform load on a straight-edged region is linear along its carrier, a plane of pressure
+///                 between parabolas a quartic (tests/laws/pressure_test.cpp)
 ///   (3) adding    loads of several area loads add up; `replaces` never counts twice
 ///   (4) motion    turning or moving the level changes no load
-/// Problems: load-off-decks, zone-off-decks, load-off-its-carrier, load-beyond-its-carrier.
+/// Problems: load-off-decks, zone-off-decks, pressure-below-zero, load-off-its-carrier,
+/// load-beyond-its-carrier.
 [[nodiscard]] RUNNEL_EXPORT LevelLoads load_carriers(const Plan& plan, const Framing& framing,
                                                      std::uint32_t level, const Sharing& sharing);
+
+/// Law checkers: recomputed from the loads on carriers. Empty: the law holds.
+/// Force: by deck and case, what carriers get is what was put on, within `relative` of the sum of |P|.
+[[nodiscard]] RUNNEL_EXPORT std::vector<Problem> check_force(const Plan& plan, const Framing& framing,
+                                                             std::uint32_t level, const Sharing& sharing,
+                                                             const LevelLoads& loads, double relative = 1e-9);
+/// Moment: the same for first moments, within `relative` of the sum of |P| times the deck's size, on one-way
+/// decks under `lever` and `continuous`. The other rules shift loads to carriers by their nature.
+[[nodiscard]] RUNNEL_EXPORT std::vector<Problem> check_moment(const Plan& plan, const Framing& framing,
+                                                              std::uint32_t level, const Sharing& sharing,
+                                                              const LevelLoads& loads,
+                                                              double relative = 1e-9);
 
 RUNNEL_NAMESPACE_END

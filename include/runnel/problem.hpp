@@ -69,18 +69,28 @@ enum class Severity : std::uint8_t { error, warning, note };
     /* decks and loads */                                                                                    \
     X(strip_unsupported, "strip-unsupported", error, "Strips of a deck that no carrier crosses.")            \
     X(strip_cantilevers, "strip-cantilevers", warning, "Strips on one carrier, or with a long overhang.")    \
+    X(strip_unstable, "strip-unstable", error, "Strips that no statics holds up.")                           \
     X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
+    X(fixity_set_aside, "fixity-set-aside", warning,                                                         \
+      "Corner angles by fixity do not fit panels, which go to the nearest lines.")                           \
+    X(share_has_no_effect, "share-has-no-effect", warning,                                                   \
+      "A deck names a share that only one-way decks follow.")                                                \
     X(way_leaves_deck, "way-leaves-deck", warning,                                                           \
       "Area whose straight way to its carrier leaves the deck.")                                             \
     X(load_off_decks, "load-off-decks", error, "A line or point load that stands on nothing.")               \
     X(zone_off_decks, "zone-off-decks", note,                                                                \
       "Part of an area load lies off every deck and is not carried.")                                        \
+    X(pressure_below_zero, "pressure-below-zero", warning,                                                   \
+      "A plane of pressure that falls below zero within its zone.")                                          \
     X(load_off_its_carrier, "load-off-its-carrier", warning, "A load `on` a carrier stands beside it.")      \
     X(load_beyond_its_carrier, "load-beyond-its-carrier", error, "A load `on` a carrier reaches past it.")   \
     /* load path and laws */                                                                                 \
     X(moment_not_carried_down, "moment-not-carried-down", warning, "A fixed end's moment leaves the path.")  \
     X(cover_broken, "cover-broken", error, "Regions do not add up to their deck.")                           \
+    X(cells_overlap, "cells-overlap", error, "Two regions of a deck share area.")                            \
     X(owner_broken, "owner-broken", error, "A part of a deck has a carrier that its rule does not give it.") \
+    X(force_broken, "force-broken", error, "A deck's carriers get another load than was put on it.")         \
+    X(moment_broken, "moment-broken", error, "A deck's load lost its place where its rule keeps it.")        \
     X(balance_open, "balance-open", error, "A balance does not close.")
 
 enum class ProblemCode : std::uint8_t {

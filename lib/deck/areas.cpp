@@ -1,6 +1,7 @@
 #include <runnel/deck.hpp>
 
 #include "geometry/basic.hpp"
+#include "geometry/strip_piece.hpp"
 
 #include <cmath>
 
@@ -19,7 +20,8 @@ CarrierAreas areas_of(const Sharing& sharing) {
         const Transfer& transfer = sharing.transfers[c].front();
         const double start = cell.high.start - cell.low.start;
         const double end = cell.high.end - cell.low.end;
-        const double whole = (cell.to - cell.from) * (start + end) / 2;
+        const double bulge = cell.high.bulge - cell.low.bulge;
+        const double whole = area_of(StripPiece{cell.from, cell.to, cell.low, cell.high});
         area[transfer.carrier].add(whole);
         const double stretch = std::abs(transfer.station_to - transfer.station_from);
         if (!(stretch > 0)) {
@@ -29,11 +31,13 @@ CarrierAreas areas_of(const Sharing& sharing) {
         }
         const double scale = (cell.to - cell.from) / stretch;
         if (transfer.station_from < transfer.station_to) {
-            pieces.push_back({transfer.carrier,
-                              {transfer.station_from, transfer.station_to, start * scale, end * scale, 0}});
+            pieces.push_back(
+                {transfer.carrier,
+                 {transfer.station_from, transfer.station_to, start * scale, end * scale, bulge * scale}});
         } else {
-            pieces.push_back({transfer.carrier,
-                              {transfer.station_to, transfer.station_from, end * scale, start * scale, 0}});
+            pieces.push_back(
+                {transfer.carrier,
+                 {transfer.station_to, transfer.station_from, end * scale, start * scale, bulge * scale}});
         }
     }
     CarrierAreas result;

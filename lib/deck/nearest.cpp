@@ -179,8 +179,14 @@ void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise
 
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
                    std::uint32_t deck_index, std::span<const LineCarrier> near, Sharing& sharing) {
+    share_part_nearest(plan, framing, level_index, deck_index, framing.levels[level_index].decks[deck_index],
+                       sharing.deck_area[deck_index], near, sharing);
+}
+
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
+                        std::uint32_t deck_index, const FramedDeck& deck, double whole,
+                        std::span<const LineCarrier> near, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
-    const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
     const double noise = noise_of(framing.largest_coordinate);
     if (NearestCells bay;
@@ -199,7 +205,6 @@ void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level
         return;
     }
     // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
-    const double whole = sharing.deck_area[deck_index];
     const NearestSplit how{deck_index, whole, snap, noise, deck.span == SpanKind::two_way, {}};
     NearestCells best;
     double least = std::numeric_limits<double>::infinity();

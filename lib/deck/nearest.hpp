@@ -19,6 +19,12 @@ RUNNEL_NAMESPACE_BEGIN
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
                    std::span<const LineCarrier> near, Sharing& sharing);
 
+/// The same for a part of deck `deck`, given as a copy of it with the part's outline and openings, of `area`
+/// m2; carriers are those of `near` that share more than a point with the part.
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
+                        const FramedDeck& part, double area, std::span<const LineCarrier> near,
+                        Sharing& sharing);
+
 /// What a deck's points are shared among. Local coordinates: the deck's first corner is the origin, so that
 /// a plan far out loses nothing.
 struct NearestCarriers {

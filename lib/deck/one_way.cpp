@@ -2,6 +2,7 @@
 
 #include "deck/marks.hpp"
 #include "deck/pressure.hpp"
+#include "deck/strips.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/strip_sweep.hpp"
 
@@ -255,6 +256,7 @@ void share_one_way(const FramedDeck& deck, std::uint32_t index, std::span<const 
     const auto axes_index = static_cast<std::uint32_t>(sharing.axes.size());
     sharing.axes.push_back(axes);
     const std::size_t first_bay = sharing.bays.size();
+    std::vector<BayMarks> marks;
     bool any_bare = false;
     for (const Gap& gap : gaps) {
         const Bay bay = bay_of(gap, index, axes_index, marked);
@@ -264,6 +266,7 @@ void share_one_way(const FramedDeck& deck, std::uint32_t index, std::span<const 
         }
         any_bare = any_bare || is_bare(bay);
         sharing.bays.push_back(bay);
+        marks.push_back({gap.low, gap.high});
     }
     const std::vector<Bay> bays(sharing.bays.begin() +
                                     static_cast<std::ptrdiff_t>(any_bare ? first_bay : sharing.bays.size()),
@@ -278,6 +281,9 @@ void share_one_way(const FramedDeck& deck, std::uint32_t index, std::span<const 
         } else {
             push_sliver(sharing, bay, transfers);
         }
+    }
+    if (deck.share != Share::half) {
+        make_strips(deck.share, first_bay, marks, tolerance.noise, sharing);
     }
 }
 

@@ -12,7 +12,8 @@ struct LineCarrier {
     Point from, to;
 };
 
-/// Shares one one-way deck under `half`: appends its axes, bays, cells and transfers to `sharing`.
+/// Shares one one-way deck: appends its axes, bays, cells and transfers to `sharing`; under `lever` and
+/// `continuous` its strips as well.
 void share_one_way(const FramedDeck& deck, std::uint32_t index, std::span<const LineCarrier> carriers,
                    const Framing& framing, double snap, Sharing& sharing);
 

@@ -1,133 +1,11 @@
 #include "deck/pressure.hpp"
 
 #include "geometry/basic.hpp"
-#include "geometry/strip_sweep.hpp"
 
 #include <algorithm>
-#include <cmath>
-#include <map>
+#include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
-
-std::uint32_t case_index(const Plan& plan, std::string_view id) {
-    for (std::uint32_t i = 0; i < plan.cases.size(); ++i) {
-        if (plan.cases[i].id == id) {
-            return i;
-        }
-    }
-    return none;
-}
-
-std::uint32_t own_weight_case(const Plan& plan) {
-    if (!plan.settings.self_weight_case.empty()) {
-        return case_index(plan, plan.settings.self_weight_case);
-    }
-    for (std::uint32_t i = 0; i < plan.cases.size(); ++i) {
-        if (plan.cases[i].kind == CaseKind::dead) {
-            return i;
-        }
-    }
-    return none;
-}
-
-Grouped<std::uint32_t> area_loads_by_deck(const FramedLevel& level, double noise) {
-    std::vector<Box> boxes;
-    std::map<std::string_view, std::uint32_t> by_id;
-    for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
-        boxes.push_back(box_of(level.decks[d].outline));
-        by_id.emplace(level.decks[d].id, d);
-    }
-    const BoxTree tree(boxes);
-    std::vector<std::pair<std::uint32_t, std::uint32_t>> pairs;
-    std::vector<std::uint32_t> found;
-    for (std::uint32_t i = 0; i < level.area_loads.size(); ++i) {
-        const AreaLoad& load = level.area_loads[i];
-        if (!load.decks.empty()) {
-            for (const std::string& id : load.decks) {
-                // "LEVEL/ID" means the deck here, also where another level repeats the load.
-                const std::size_t slash = id.rfind('/');
-                const auto it =
-                    by_id.find(std::string_view(id).substr(slash == std::string::npos ? 0 : slash + 1));
-                if (it != by_id.end()) {
-                    pairs.emplace_back(it->second, i);
-                }
-            }
-        } else if (load.outline.empty()) {
-            for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
-                pairs.emplace_back(d, i);
-            }
-        } else {
-            tree.find(box_of(load.outline).grown(noise), found);
-            for (const std::uint32_t d : found) {
-                pairs.emplace_back(d, i);
-            }
-        }
-    }
-    std::sort(pairs.begin(), pairs.end());
-    pairs.erase(std::unique(pairs.begin(), pairs.end()), pairs.end());
-    return Grouped<std::uint32_t>::from_pairs(level.decks.size(), std::move(pairs));
-}
-
-Grouped<std::uint32_t> outlines_over_decks(const FramedLevel& level, double noise) {
-    std::vector<Box> boxes;
-    for (const FramedDeck& deck : level.decks) {
-        boxes.push_back(box_of(deck.outline));
-    }
-    const BoxFinder finder(std::move(boxes));
-    std::vector<std::pair<std::uint32_t, std::uint32_t>> pairs;
-    std::vector<std::uint32_t> found;
-    for (std::uint32_t i = 0; i < level.area_loads.size(); ++i) {
-        if (!level.area_loads[i].outline.empty()) {
-            finder.find(box_of(level.area_loads[i].outline).grown(noise), found);
-            for (const std::uint32_t d : found) {
-                pairs.emplace_back(d, i);
-            }
-        }
-    }
-    return Grouped<std::uint32_t>::from_pairs(level.decks.size(), std::move(pairs));
-}
-
-Ring to_strip(const StripAxes& axes, const Ring& ring) {
-    Ring turned;
-    turned.reserve(ring.size());
-    for (const Point& p : ring) {
-        turned.push_back(axes.to_strip(p));
-    }
-    return turned;
-}
-
-std::vector<Convex> convex_zone(Ring ring, double noise) {
-    if (signed_area(ring) < 0) {
-        std::reverse(ring.begin(), ring.end());
-    }
-    bool convex = true;
-    double turning = 0;
-    for (std::size_t i = 0; i < ring.size(); ++i) {
-        const Point d = ring[(i + 1) % ring.size()] - ring[i];
-        const Point e = ring[(i + 2) % ring.size()] - ring[(i + 1) % ring.size()];
-        convex = convex && norm(d) > noise && cross(d, e) >= 0;
-        turning += std::atan2(cross(d, e), dot(d, e));
-    }
-    constexpr double more_than_one_turn = 7; // radians; a convex ring turns by 2 pi
-    if (convex && turning < more_than_one_turn) {
-        return {std::move(ring)};
-    }
-    return convex_pieces(ring, {}, noise);
-}
-
-std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& axes, double noise) {
-    std::vector<Ring> openings;
-    openings.reserve(deck.openings.size());
-    for (const Ring& opening : deck.openings) {
-        openings.push_back(to_strip(axes, opening));
-    }
-    std::vector<StripPiece> pieces;
-    for (const Gap& gap : sweep_strips(to_strip(axes, deck.outline), openings, {}, noise).gaps) {
-        pieces.push_back(
-            {gap.from, gap.to, {gap.low_start, gap.low_end, 0}, {gap.high_start, gap.high_end, 0}});
-    }
-    return pieces;
-}
 
 Plane::Plane(const AreaLoad& load) : q(load.q) {
     if (!load.plane) {
@@ -296,10 +174,57 @@ DeckPressure::Surroundings DeckPressure::zones_near(const StripPiece& area, cons
 void DeckPressure::zones_over(const StripPiece& area, const StripAxes& axes,
                               std::vector<Piece>& pieces) const {
     pieces.clear();
-    if (zones_.empty()) {
+    if (!zones_.empty()) {
+        add_zones_over(area, axes, {}, pieces);
+    }
+}
+
+namespace {
+
+/// A piece in two halves, across its longer side; both use the same cut.
+std::pair<StripPiece, StripPiece> halves_of(const StripPiece& piece) {
+    const Box box = box_of(piece);
+    if (box.high.y - box.low.y >= box.high.x - box.low.x) {
+        const double middle = (piece.from + piece.to) / 2;
+        return {between_levels(piece, piece.from, middle), between_levels(piece, middle, piece.to)};
+    }
+    const Border middle{(piece.low.start + piece.high.start) / 2, (piece.low.end + piece.high.end) / 2,
+                        (piece.low.bulge + piece.high.bulge) / 2};
+    return {{piece.from, piece.to, piece.low, middle}, {piece.from, piece.to, middle, piece.high}};
+}
+
+/// Leaves of the parts what lies outside a window.
+void carve_out(const Convex& window, double noise, std::vector<StripPiece>& parts,
+               std::vector<StripPiece>& outside) {
+    const Box box = box_of(window);
+    outside.clear();
+    for (const StripPiece& part : parts) {
+        if (box.meets(box_of(part))) {
+            divide(part, window, noise, nullptr, &outside);
+        } else { // else it would only be cut at the window's levels
+            outside.push_back(part);
+        }
+    }
+    parts.swap(outside);
+}
+
+} // namespace
+
+void DeckPressure::add_zones_over(const StripPiece& area, const StripAxes& axes, const Halving& halving,
+                                  std::vector<Piece>& pieces) const {
+    const Surroundings near = zones_near(area, axes);
+    // What replaces is tried on all that lies near, so a large area with many zones is halved first, as long
+    // as that parts them.
+    constexpr std::size_t few = 24;
+    constexpr int tries = 2;
+    const bool parts_them = 4 * near.windows.size() < 3 * halving.windows;
+    const int in_vain = parts_them ? 0 : halving.in_vain + 1;
+    if (near.windows.size() > few && in_vain <= tries) {
+        const auto [first, second] = halves_of(area);
+        add_zones_over(first, axes, {near.windows.size(), in_vain}, pieces);
+        add_zones_over(second, axes, {near.windows.size(), in_vain}, pieces);
         return;
     }
-    const Surroundings near = zones_near(area, axes);
     std::vector<StripPiece> parts;
     std::vector<StripPiece> outside;
     for (std::size_t i = 0; i < near.zones.size(); ++i) {
@@ -314,17 +239,13 @@ void DeckPressure::zones_over(const StripPiece& area, const StripAxes& axes,
         for (std::size_t w = near.zones[i].first; w < near.zones[i].last; ++w) {
             divide(area, *near.windows[w], noise_, &parts, nullptr);
         }
-        for (std::size_t k = i + 1; k < near.zones.size(); ++k) {
+        for (std::size_t k = i + 1; k < near.zones.size() && !parts.empty(); ++k) {
             const Zone& later = zones_[near.zones[k].index];
             if (!later.replaces || later.load_case != zone.load_case) {
                 continue;
             }
             for (std::size_t w = near.zones[k].first; w < near.zones[k].last; ++w) {
-                outside.clear();
-                for (const StripPiece& part : parts) {
-                    divide(part, *near.windows[w], noise_, nullptr, &outside);
-                }
-                parts.swap(outside);
+                carve_out(*near.windows[w], noise_, parts, outside);
             }
         }
         for (const StripPiece& part : parts) {

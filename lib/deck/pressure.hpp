@@ -1,5 +1,6 @@
 #pragma once
 
+#include "deck/acting.hpp"
 #include "geometry/box_tree.hpp"
 #include "geometry/convex.hpp"
 #include "geometry/strip_piece.hpp"
@@ -11,11 +12,6 @@
 #include <vector>
 
 RUNNEL_NAMESPACE_BEGIN
-
-/// Index of a case by its id; `none` if there is none.
-[[nodiscard]] std::uint32_t case_index(const Plan& plan, std::string_view id);
-/// The case that own weights go to; `none` if the plan has no dead case.
-[[nodiscard]] std::uint32_t own_weight_case(const Plan& plan);
 
 /// The pressure of an area load over the whole plan: `slope` is where it grows and by how much a metre
 /// (kN/m3).
@@ -79,8 +75,16 @@ private:
         std::vector<Convex> turned; ///< windows, where the axes asked for are others than `home_`
     };
 
+    /// How many windows were near before the last halving, and how many halvings on end parted few of them.
+    struct Halving {
+        std::size_t windows = 0;
+        int in_vain = 0;
+    };
+
     void add_zones(const Plan& plan, const FramedLevel& level, std::span<const std::uint32_t> acting);
     [[nodiscard]] Surroundings zones_near(const StripPiece& area, const StripAxes& axes) const;
+    void add_zones_over(const StripPiece& area, const StripAxes& axes, const Halving& halving,
+                        std::vector<Piece>& pieces) const;
 
     StripAxes home_;
     double noise_ = 0;
@@ -91,21 +95,5 @@ private:
     std::vector<std::uint32_t> zone_of_;
     BoxFinder finder_; ///< of outlines_
 };
-
-/// The area loads that may act on each deck, rising, by their `decks` lists and their outlines' boxes.
-[[nodiscard]] Grouped<std::uint32_t> area_loads_by_deck(const FramedLevel& level, double noise);
-
-/// The area loads with outlines that reach over each deck, whether they are meant for it or not.
-[[nodiscard]] Grouped<std::uint32_t> outlines_over_decks(const FramedLevel& level, double noise);
-
-/// The ring itself where it is convex (turned counter-clockwise), else its convex pieces.
-[[nodiscard]] std::vector<Convex> convex_zone(Ring ring, double noise);
-
-/// The area of a deck, less its openings, in pieces in the given axes.
-[[nodiscard]] std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& axes,
-                                                     double noise);
-
-/// A ring seen in strip axes.
-[[nodiscard]] Ring to_strip(const StripAxes& axes, const Ring& ring);
 
 RUNNEL_NAMESPACE_END

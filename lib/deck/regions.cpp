@@ -1,225 +1,20 @@
 #include <runnel/deck.hpp>
 
+#include "deck/region_edges.hpp"
+#include "deck/region_rings.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/convex.hpp"
+#include "geometry/strip_piece.hpp"
 
 #include <algorithm>
+#include <array>
 #include <cmath>
-#include <map>
-#include <numeric>
 
-// Cells are joined to regions by cancelling the edges that two of them share, never by a boolean union:
-// levels across the strips are the same doubles in all cells of a deck, so shared edges are found by
-// comparing stretches of one level or of one carrier.
+// Cells are joined to regions by cancelling the edges that two of them share, never by a boolean union.
 
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-struct Edge {
-    Point a, b;
-};
-
-/// A stretch of a line with its direction: +1 runs with rising coordinate.
-struct Stretch {
-    double from, to;
-    int direction;
-};
-
-/// What is left of stretches on one line when opposite directions cancel, cut at every end.
-template <class F>
-void cancel(std::vector<Stretch>& stretches, double noise, F keep) {
-    std::vector<double> ends;
-    for (const Stretch& s : stretches) {
-        ends.push_back(s.from);
-        ends.push_back(s.to);
-    }
-    std::sort(ends.begin(), ends.end());
-    ends.erase(std::unique(ends.begin(), ends.end(), [noise](double l, double r) { return r - l <= noise; }),
-               ends.end());
-    const auto index = [&](double value) {
-        return static_cast<std::size_t>(std::lower_bound(ends.begin(), ends.end(), value - noise) -
-                                        ends.begin());
-    };
-    std::vector<int> steps(ends.size() + 1, 0);
-    for (const Stretch& s : stretches) {
-        steps[index(s.from)] += s.direction;
-        steps[index(s.to)] -= s.direction;
-    }
-    int cover = 0;
-    for (std::size_t i = 0; i + 1 < ends.size(); ++i) {
-        cover += steps[i];
-        if (cover != 0) {
-            keep(ends[i], ends[i + 1], cover);
-        }
-    }
-}
-
-class RegionEdges {
-public:
-    explicit RegionEdges(double noise) : noise_(noise) {}
-
-    void add(const Cell& cell) {
-        const double start = cell.high.start - cell.low.start;
-        const double end = cell.high.end - cell.low.end;
-        if (start <= noise_ && end <= noise_) {
-            return; // rounding between a carrier and the deck's edge under it
-        }
-        levels_[cell.from].push_back({cell.low.start, cell.high.start, 1});
-        levels_[cell.to].push_back({cell.low.end, cell.high.end, -1});
-        const Edge high{{cell.high.start, cell.from}, {cell.high.end, cell.to}};
-        const Edge low{{cell.low.start, cell.from}, {cell.low.end, cell.to}};
-        if (cell.carrier_side == Cell::CarrierSide::high) {
-            on_carrier(high, 1);
-        } else {
-            edges_.push_back(high);
-        }
-        if (cell.carrier_side == Cell::CarrierSide::low) {
-            on_carrier(low, -1);
-        } else {
-            edges_.push_back({low.b, low.a});
-        }
-    }
-
-    std::vector<Edge> finish() {
-        for (auto& [level, stretches] : levels_) {
-            const double across = level;
-            cancel(stretches, noise_, [&](double from, double to, int direction) {
-                const Edge edge{{from, across}, {to, across}};
-                edges_.push_back(direction > 0 ? edge : Edge{edge.b, edge.a});
-            });
-        }
-        cancel(carrier_, 0, [&](double from, double to, int direction) {
-            const Edge edge{{along_[from], from}, {along_[to], to}};
-            edges_.push_back(direction > 0 ? edge : Edge{edge.b, edge.a});
-        });
-        return std::move(edges_);
-    }
-
-private:
-    void on_carrier(const Edge& edge, int direction) {
-        carrier_.push_back({edge.a.y, edge.b.y, direction});
-        along_[edge.a.y] = edge.a.x;
-        along_[edge.b.y] = edge.b.x;
-    }
-
-    double noise_;
-    std::map<double, std::vector<Stretch>> levels_;
-    std::vector<Stretch> carrier_;
-    std::map<double, double> along_; ///< of the carrier, by level
-    std::vector<Edge> edges_;
-};
-
-/// Joins directed edges to rings; where several leave a corner, the one that turns most to the left goes on.
-class RingTracer {
-public:
-    RingTracer(std::vector<Edge> edges, double noise) : edges_(std::move(edges)), noise_(noise) {
-        number_corners();
-        std::vector<std::pair<std::uint32_t, std::uint32_t>> leaving;
-        for (std::uint32_t e = 0; e < edges_.size(); ++e) {
-            if (tail_[e] != head_[e]) {
-                leaving.emplace_back(tail_[e], e);
-            }
-        }
-        leaving_ = Grouped<std::uint32_t>::from_pairs(corners_.size(), std::move(leaving));
-        used_.assign(edges_.size(), false);
-    }
-
-    std::vector<Ring> trace() {
-        std::vector<Ring> rings;
-        for (std::uint32_t e = 0; e < edges_.size(); ++e) {
-            if (!used_[e] && tail_[e] != head_[e]) {
-                Ring ring = without_needless(follow(e));
-                if (ring.size() >= 3) {
-                    rings.push_back(std::move(ring));
-                }
-            }
-        }
-        return rings;
-    }
-
-private:
-    void number_corners() {
-        std::vector<std::uint32_t> order(2 * edges_.size());
-        std::iota(order.begin(), order.end(), 0U);
-        const auto point = [this](std::uint32_t end) {
-            return end % 2 == 0 ? edges_[end / 2].a : edges_[end / 2].b;
-        };
-        std::sort(order.begin(), order.end(), [&](std::uint32_t l, std::uint32_t r) {
-            const Point p = point(l);
-            const Point q = point(r);
-            return p.y != q.y ? p.y < q.y : p.x < q.x;
-        });
-        tail_.resize(edges_.size());
-        head_.resize(edges_.size());
-        Point last{};
-        for (const std::uint32_t end : order) {
-            const Point p = point(end);
-            if (corners_.empty() || p.y != last.y || p.x - last.x > noise_) {
-                corners_.push_back(p);
-            }
-            last = p;
-            (end % 2 == 0 ? tail_ : head_)[end / 2] = static_cast<std::uint32_t>(corners_.size() - 1);
-        }
-    }
-
-    Ring follow(std::uint32_t first) {
-        Ring ring;
-        std::uint32_t edge = first;
-        while (edge != none && !used_[edge]) {
-            used_[edge] = true;
-            ring.push_back(corners_[tail_[edge]]);
-            edge = next_of(edge);
-        }
-        return ring;
-    }
-
-    [[nodiscard]] std::uint32_t next_of(std::uint32_t edge) const {
-        const Point came = corners_[head_[edge]] - corners_[tail_[edge]];
-        std::uint32_t best = none;
-        double best_turn = 0;
-        for (const std::uint32_t e : leaving_[head_[edge]]) {
-            if (used_[e]) {
-                continue;
-            }
-            const Point goes = corners_[head_[e]] - corners_[tail_[e]];
-            const double turn = std::atan2(cross(came, goes), dot(came, goes));
-            if (best == none || turn > best_turn) {
-                best = e;
-                best_turn = turn;
-            }
-        }
-        return best;
-    }
-
-    /// Without corners on the straight between their neighbours. Begins at the corner farthest from the
-    /// first, which is never on such a straight, so that of two corners side by side one always stays.
-    [[nodiscard]] Ring without_needless(Ring ring) const {
-        std::rotate(ring.begin(),
-                    std::max_element(ring.begin(), ring.end(),
-                                     [first = ring.front()](Point l, Point r) {
-                                         return distance(first, l) < distance(first, r);
-                                     }),
-                    ring.end());
-        Ring kept;
-        for (std::size_t i = 0; i < ring.size(); ++i) {
-            const Point after = ring[(i + 1) % ring.size()];
-            const double length = kept.empty() ? 0 : distance(kept.back(), after);
-            if (!(length > 0) ||
-                std::abs(cross(after - kept.back(), ring[i] - kept.back())) / length > 2 * noise_) {
-                kept.push_back(ring[i]);
-            }
-        }
-        return kept;
-    }
-
-    std::vector<Edge> edges_;
-    double noise_;
-    std::vector<Point> corners_;
-    std::vector<std::uint32_t> tail_, head_;
-    Grouped<std::uint32_t> leaving_;
-    std::vector<bool> used_;
-};
 
 /// Rounding in strip coordinates, from the size of what is there.
 double noise_in(const Sharing& sharing) {
@@ -233,33 +28,58 @@ double noise_in(const Sharing& sharing) {
     return 2 * noise_of(largest);
 }
 
-Region region_of(const Sharing& sharing, std::span<const std::uint32_t> cells, double noise) {
+/// Where a deck's cells are those of strips, in one pair of axes and with straight borders.
+std::vector<bool> decks_in_strips(const Sharing& sharing) {
+    std::vector<bool> in_strips;
+    for (const Bay& bay : sharing.bays) {
+        if (bay.deck >= in_strips.size()) {
+            in_strips.resize(bay.deck + std::size_t{1}, false);
+        }
+        in_strips[bay.deck] = true;
+    }
+    return in_strips;
+}
+
+using CellList = std::span<const std::uint32_t>;
+
+std::uint32_t owner_of(const Sharing& sharing, std::uint32_t cell) {
+    return sharing.transfers[cell].front().carrier;
+}
+
+/// Sums areas and first moments of cells to a region's area and centroid.
+class Measure {
+public:
+    void add(double area, Point moment) {
+        area_.add(area);
+        x_.add(moment.x);
+        y_.add(moment.y);
+    }
+    [[nodiscard]] double area() const { return area_.value(); }
+    [[nodiscard]] Point centroid() const {
+        return area() != 0 ? Point{x_.value() / area(), y_.value() / area()} : Point{};
+    }
+
+private:
+    Sum area_, x_, y_;
+};
+
+Region region_of_strips(const Sharing& sharing, CellList cells, double noise) {
     Region region;
     region.deck = sharing.cells[cells.front()].deck;
-    region.carrier = sharing.transfers[cells.front()].front().carrier;
-    RegionEdges edges(noise);
-    Sum area;
-    Sum mx;
-    Sum my;
+    region.carrier = owner_of(sharing, cells.front());
     const StripAxes& axes = sharing.axes[sharing.cells[cells.front()].axes];
+    Measure measure;
     for (const std::uint32_t c : cells) {
         const Cell& cell = sharing.cells[c];
-        edges.add(cell);
         const std::array<Point, 4> corners{Point{cell.low.start, cell.from},
                                            Point{cell.high.start, cell.from}, Point{cell.high.end, cell.to},
                                            Point{cell.low.end, cell.to}};
         const AreaMoments moments = moments_of(corners, {0, 0});
-        area.add(moments.area);
-        mx.add(moments.moment.x);
-        my.add(moments.moment.y);
+        measure.add(moments.area, moments.moment);
     }
-    region.area = area.value();
-    if (region.area != 0) {
-        region.centroid = axes.to_plan({mx.value() / region.area, my.value() / region.area});
-    }
-    region.rings = RingTracer(edges.finish(), noise).trace();
-    std::sort(region.rings.begin(), region.rings.end(),
-              [](const Ring& l, const Ring& r) { return signed_area(l) > signed_area(r); });
+    region.area = measure.area();
+    region.centroid = axes.to_plan(measure.centroid());
+    region.rings = trace_rings(edges_of_strips(sharing, cells, noise), noise);
     for (Ring& ring : region.rings) {
         for (Point& p : ring) {
             p = axes.to_plan(p);
@@ -268,9 +88,63 @@ Region region_of(const Sharing& sharing, std::span<const std::uint32_t> cells, d
     return region;
 }
 
+/// The regions of one deck whose cells stand in any axes; `cells`: its cells, sorted by carrier.
+class PieceRegions {
+public:
+    PieceRegions(const Sharing& sharing, CellList cells, double noise, double chord_error)
+        : sharing_(sharing), cells_(cells), noise_(noise),
+          about_(sharing.axes[sharing.cells[cells.front()].axes].origin),
+          loops_(sharing, cells, about_, noise, chord_error) {}
+
+    /// Of the cells from `first` to `last` in the list, which have one carrier.
+    [[nodiscard]] Region region_of(std::size_t first, std::size_t last) const {
+        Region region;
+        region.deck = sharing_.cells[cells_[first]].deck;
+        region.carrier = owner_of(sharing_, cells_[first]);
+        Measure measure;
+        for (std::size_t i = first; i < last; ++i) {
+            const Cell& cell = sharing_.cells[cells_[i]];
+            StripAxes axes = sharing_.axes[cell.axes];
+            const AreaMoments moments = moments_of(StripPiece{cell.from, cell.to, cell.low, cell.high});
+            const Point from_about = axes.origin - about_;
+            axes.origin = {};
+            measure.add(moments.area, axes.to_plan(moments.moment) + moments.area * from_about);
+        }
+        region.area = measure.area();
+        region.centroid = about_ + measure.centroid();
+        region.rings = trace_rings(loops_.border_of(first, last), noise_);
+        for (Ring& ring : region.rings) {
+            for (Point& p : ring) {
+                p = about_ + p;
+            }
+        }
+        return region;
+    }
+
+private:
+    const Sharing& sharing_;
+    CellList cells_;
+    double noise_;
+    Point about_;
+    CellLoops loops_;
+};
+
+/// Calls f(first, last) for every run of equal keys in a sorted list.
+template <class Key, class F>
+void for_each_run(CellList list, Key key, F f) {
+    for (std::size_t first = 0; first < list.size();) {
+        std::size_t last = first + 1;
+        while (last < list.size() && key(list[last]) == key(list[first])) {
+            ++last;
+        }
+        f(first, last);
+        first = last;
+    }
+}
+
 } // namespace
 
-std::vector<Region> regions_of(const Sharing& sharing, [[maybe_unused]] double chord_error) {
+std::vector<Region> regions_of(const Sharing& sharing, double chord_error) {
     std::vector<std::uint32_t> order;
     order.reserve(sharing.cells.size());
     for (std::uint32_t c = 0; c < sharing.cells.size(); ++c) {
@@ -278,24 +152,32 @@ std::vector<Region> regions_of(const Sharing& sharing, [[maybe_unused]] double c
             order.push_back(c);
         }
     }
-    const auto key = [&](std::uint32_t c) {
-        return std::pair(sharing.cells[c].deck, sharing.transfers[c].front().carrier);
-    };
-    std::stable_sort(order.begin(), order.end(),
-                     [&](std::uint32_t l, std::uint32_t r) { return key(l) < key(r); });
+    const auto deck_of = [&](std::uint32_t c) { return sharing.cells[c].deck; };
+    const auto owner = [&](std::uint32_t c) { return owner_of(sharing, c); };
+    std::stable_sort(order.begin(), order.end(), [&](std::uint32_t l, std::uint32_t r) {
+        return std::pair(deck_of(l), owner(l)) < std::pair(deck_of(r), owner(r));
+    });
     const double noise = noise_in(sharing);
+    const std::vector<bool> in_strips = decks_in_strips(sharing);
     std::vector<Region> regions;
-    for (std::size_t i = 0; i < order.size();) {
-        std::size_t end = i + 1;
-        while (end < order.size() && key(order[end]) == key(order[i])) {
-            ++end;
-        }
-        Region region = region_of(sharing, std::span(order).subspan(i, end - i), noise);
+    const auto keep = [&regions](Region region) {
         if (!region.rings.empty()) {
             regions.push_back(std::move(region));
         }
-        i = end;
-    }
+    };
+    for_each_run(order, deck_of, [&](std::size_t first, std::size_t last) {
+        const CellList cells = CellList(order).subspan(first, last - first);
+        const std::uint32_t deck = deck_of(cells.front());
+        if (deck < in_strips.size() && in_strips[deck]) {
+            for_each_run(cells, owner, [&](std::size_t from, std::size_t to) {
+                keep(region_of_strips(sharing, cells.subspan(from, to - from), noise));
+            });
+        } else {
+            const PieceRegions pieces(sharing, cells, noise, chord_error);
+            for_each_run(cells, owner,
+                         [&](std::size_t from, std::size_t to) { keep(pieces.region_of(from, to)); });
+        }
+    });
     return regions;
 }
 

@@ -1,6 +1,7 @@
 #include "deck/one_way.hpp"
 #include "deck/pressure.hpp"
 #include "geometry/basic.hpp"
+#include "geometry/strip_piece.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
@@ -189,6 +190,47 @@ std::string loads_text(const Plan& plan, const FramedLevel& level, std::uint32_t
     return text.empty() ? "no load" : text;
 }
 
+/// Strips of a deck under lever or continuous that no statics holds: on one carrier alone, on a back span too
+/// short, or uneven spans.
+struct UnstableStrips {
+    WeakArea alone, short_back, uneven;
+};
+
+UnstableStrips find_unstable(const Sharing& sharing, const BaysBeside& beside, std::uint32_t deck,
+                             Share share, double snap) {
+    UnstableStrips found;
+    auto it = std::lower_bound(sharing.strips.begin(), sharing.strips.end(), deck,
+                               [](const Strip& strip, std::uint32_t d) { return strip.deck < d; });
+    for (; it != sharing.strips.end() && it->deck == deck; ++it) {
+        const Strip& strip = *it;
+        const auto carriers = sharing.strip_carriers[static_cast<std::size_t>(it - sharing.strips.begin())];
+        if (carriers.size() > 1 && strip.share == share) {
+            continue;
+        }
+        const StripPiece piece{strip.from, strip.to, strip.low, strip.high};
+        const double breadth = std::max(strip.high.start - strip.low.start, strip.high.end - strip.low.end);
+        if (breadth <= 2 * snap || strip.to - strip.from <= 2 * snap) {
+            continue; // the carrier runs along the edge, or the drawing is a little off
+        }
+        const Point place = sharing.axes[strip.axes].to_plan(
+            {(strip.low.at(0.5) + strip.high.at(0.5)) / 2, (strip.from + strip.to) / 2});
+        if (carriers.size() > 1) {
+            for (const StripCarrier& carrier : carriers) {
+                found.uneven.carriers.push_back(carrier.carrier);
+            }
+            found.uneven.add(area_of(piece), place, none);
+            continue;
+        }
+        const std::uint32_t carrier = carriers.front().carrier;
+        const bool goes_down = carriers.front().along.at(0.5) > strip.low.at(0.5);
+        bool backed = false;
+        beside.visit(sharing, carrier, goes_down, strip.from, strip.to,
+                     [&](std::size_t bay) { backed = backed || !is_overhang(sharing.bays[bay]); });
+        (backed ? found.short_back : found.alone).add(area_of(piece), place, carrier);
+    }
+    return found;
+}
+
 } // namespace
 
 void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t level_index,
@@ -205,7 +247,7 @@ void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t le
         if (is_unsupported(bay)) {
             unsupported.add(area_between(bay, bay.from, bay.to), middle_of(bay, sharing.axes[bay.axes]),
                             none);
-        } else if (is_overhang(bay)) {
+        } else if (is_overhang(bay) && deck.share == Share::half) {
             check_overhang(sharing, beside, bay, snap, alone, too_long);
         }
     }
@@ -235,6 +277,18 @@ void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t le
            "Is a beam missing on the other side, or is the deck built in there?");
     report(ProblemCode::strip_cantilevers, too_long, "overhang by more than half of the span behind",
            "Is a beam missing at the edge?");
+    if (deck.share != Share::half) {
+        UnstableStrips unstable = find_unstable(sharing, beside, deck_index, deck.share, snap);
+        report(ProblemCode::strip_unstable, unstable.alone, "hang on one carrier alone",
+               "Add a carrier behind it, or share this deck by `half` if it is built in there.");
+        report(ProblemCode::strip_unstable, unstable.short_back,
+               "overhang by more than twenty times the span behind",
+               "Is a beam missing at the edge? Statics would lift the carrier behind out of all proportion.");
+        report(ProblemCode::strip_unstable, unstable.uneven,
+               "lie in strips of which one span is shorter than a twentieth of the one beside it",
+               "A strip cannot run on as one beam there: share this deck by `lever`, or end it at that "
+               "carrier.");
+    }
 }
 
 RUNNEL_NAMESPACE_END

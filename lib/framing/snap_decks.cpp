@@ -215,7 +215,9 @@ void copy_decks(LevelDraft& draft) {
         framed.outline = deck.outline;
         framed.openings = deck.openings;
         framed.span = deck.span;
-        framed.share = deck.share.value_or(draft.plan.settings.share);
+        if (deck.span == SpanKind::one_way) {
+            framed.share = deck.share.value_or(draft.plan.settings.share);
+        }
         framed.corner_angles = deck.corner_angles;
         framed.direction = deck.direction.value_or(0);
         framed.own_weight = weight_of(deck, build_weights);

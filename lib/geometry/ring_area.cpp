@@ -396,6 +396,32 @@ double RingArea::length_outside(Point a, Point b) {
     return outside;
 }
 
+namespace {
+
+/// Part of the stretch from p to q, whose feet lie on the segment from a to b, within `beside` of it.
+double part_beside(Point p, Point q, Point a, Point b, double beside) {
+    const Point d = b - a;
+    const double at_p = cross(d, p - a) / norm(d);
+    const double at_q = cross(d, q - a) / norm(d);
+    double from = 0;
+    double to = 1;
+    for (const double sign : {1.0, -1.0}) { // where beside - sign * (distance to the left) is not negative
+        const double start = beside - sign * at_p;
+        const double end = beside - sign * at_q;
+        if (start < 0 && end < 0) {
+            return 0;
+        }
+        if (start < 0) {
+            from = std::max(from, start / (start - end));
+        } else if (end < 0) {
+            to = std::min(to, start / (start - end));
+        }
+    }
+    return std::max(0.0, to - from);
+}
+
+} // namespace
+
 RingArea::Shared RingArea::shared_with(Point a, Point b, double beside) {
     const double length = distance(a, b);
     switch (place_of(box_of(a, b).grown(beside))) {
@@ -426,8 +452,11 @@ RingArea::Shared RingArea::shared_with(Point a, Point b, double beside) {
         }
         const Point p = between(edge.a, edge.b, from / edge_length);
         const Point q = between(edge.a, edge.b, to / edge_length);
-        if (distance_to_segment(p, a, b) <= beside && distance_to_segment(q, a, b) <= beside) {
-            shared.along_edge = to - from;
+        // What meets an edge at an angle is beside it near the meeting point too: that alone is but a point.
+        constexpr double runs_along = 0.5;
+        const double part = part_beside(p, q, a, b, beside);
+        if (part >= runs_along) {
+            shared.along_edge = std::max(shared.along_edge, (to - from) * part);
         }
     }
     return shared;

@@ -2,6 +2,7 @@
 
 #include "deck/pressure.hpp"
 #include "geometry/line_pieces.hpp"
+#include "load/strip_loads.hpp"
 
 #include <algorithm>
 #include <array>
@@ -213,7 +214,7 @@ double magnitude_on(const StripPiece& piece, const Intensity& intensity, double 
 
 /// The account of what presses on a deck, from the deck alone: its rings and the zones, no carriers.
 void account_applied(const FramedDeck& deck, std::uint32_t index, const DeckPressure& pressure,
-                     const StripAxes& plain, Collector& collector) {
+                     const StripAxes& plain, const std::vector<StripPiece>& pieces, Collector& collector) {
     AreaMoments whole = moments_of(to_strip(plain, deck.outline), {0, 0});
     for (const Ring& opening : deck.openings) {
         const AreaMoments hole = moments_of(to_strip(plain, opening), {0, 0}); // clockwise: negative
@@ -228,7 +229,7 @@ void account_applied(const FramedDeck& deck, std::uint32_t index, const DeckPres
         return;
     }
     std::vector<DeckPressure::Piece> parts;
-    for (const StripPiece& piece : pieces_of_deck(deck, plain, collector.noise())) {
+    for (const StripPiece& piece : pieces) {
         pressure.zones_over(piece, plain, parts);
         for (const DeckPressure::Piece& part : parts) {
             const AreaMoments on = moments_of(part.where, part.intensity);
@@ -258,13 +259,23 @@ void load_areas(const Plan& plan, const Framing& framing, std::uint32_t level_in
             ++last;
         }
         const StripAxes plain{level.decks[d].outline.front(), 1, 0};
-        const DeckPressure upright(plan, level, d, acting[d], plain, noise);
-        account_applied(level.decks[d], d, upright, plain, collector);
-        if (last > first && follows_cells(level.decks[d])) {
+        const bool uneven = std::any_of(acting[d].begin(), acting[d].end(), [&](std::uint32_t i) {
+            return level.area_loads[i].plane || !level.area_loads[i].outline.empty();
+        });
+        const std::vector<StripPiece> pieces =
+            uneven ? pieces_of_deck(level.decks[d], plain, noise) : std::vector<StripPiece>{};
+        const std::vector<std::uint32_t> on_deck = really_acting(level, acting[d], pieces, plain, noise);
+        const DeckPressure upright(plan, level, d, on_deck, plain, noise);
+        account_applied(level.decks[d], d, upright, plain, pieces, collector);
+        if (last > first) {
             // One-way decks have one pair of axes; in those of others zones are turned as they are asked for.
-            const DeckPressure pressure(plan, level, d, acting[d], sharing.axes[sharing.cells[first].axes],
+            const DeckPressure pressure(plan, level, d, on_deck, sharing.axes[sharing.cells[first].axes],
                                         noise);
-            DeckLoader(sharing, d, pressure, plan.cases.size(), collector).load_cells(first, last);
+            if (follows_cells(level.decks[d])) {
+                DeckLoader(sharing, d, pressure, plan.cases.size(), collector).load_cells(first, last);
+            } else {
+                load_strips(sharing, d, first, last, pressure, collector);
+            }
         }
         first = last;
     }

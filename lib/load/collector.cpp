@@ -25,6 +25,7 @@ Collector::Collector(const Plan& plan, const FramedLevel& level, const Sharing& 
     }
     applied_.resize((decks_ + 1) * cases_);
     shared_.resize((decks_ + 1) * cases_);
+    moved_.resize((decks_ + 1) * cases_);
 }
 
 Point Collector::at(std::uint32_t carrier, double station) const {
@@ -56,6 +57,12 @@ void Collector::applied(std::uint32_t deck, std::uint32_t load_case, double forc
         return;
     }
     applied_[row(deck, load_case)].add(force, moment, magnitude);
+}
+
+void Collector::note_moved(std::uint32_t deck, std::uint32_t load_case, double moment) {
+    if (load_case != none) {
+        moved_[row(deck, load_case)] += moment;
+    }
 }
 
 double magnitude_of(const LinePiece& piece) {
@@ -134,10 +141,12 @@ LevelLoads Collector::finish() {
         for (std::uint32_t c = 0; c < cases_; ++c) {
             const std::size_t i = d * cases_ + c;
             if (applied_[i].any() || shared_[i].any()) {
-                loads.balance.push_back({d == decks_ ? none : d, c, applied_[i].sum(), shared_[i].sum()});
+                loads.balance.push_back(
+                    {d == decks_ ? none : d, c, applied_[i].sum(), shared_[i].sum(), moved_[i]});
             }
         }
     }
+    loads.curve_error = curve_error_;
     loads.problems = std::move(problems);
     return loads;
 }

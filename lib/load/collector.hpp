@@ -37,6 +37,10 @@ public:
     void put_line(std::uint32_t carrier, std::uint32_t deck, const CarrierLine& line);
     void put_point(std::uint32_t carrier, std::uint32_t deck, const CarrierPoint& point);
     void applied(std::uint32_t deck, std::uint32_t load_case, double force, Point moment, double magnitude);
+    /// Lines that stand for a curve which is none of degree four are off by no more than this, kN/m.
+    void note_curve_error(double error) { curve_error_ = std::max(curve_error_, error); }
+    /// Load of a deck that goes to its carrier without the moment of its way there, kNm.
+    void note_moved(std::uint32_t deck, std::uint32_t load_case, double moment);
 
     /// Joins the pieces of each carrier, case and source; sorts; hands everything over.
     [[nodiscard]] LevelLoads finish();
@@ -55,6 +59,7 @@ private:
     }
 
     double noise_;
+    double curve_error_ = 0;
     std::size_t decks_;
     std::size_t cases_;
     std::vector<Axis> axes_; ///< by carrier
@@ -62,6 +67,7 @@ private:
     std::vector<std::pair<std::uint32_t, CarrierPoint>> points_;
     std::vector<ForceGatherer> applied_;
     std::vector<ForceGatherer> shared_;
+    std::vector<double> moved_;
 };
 
 /// Integral of |w| over a piece; exact for pieces that are linear or do not change sign.

@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <limits>
 #include <numbers>
 #include <utility>
 
@@ -9,13 +10,14 @@ RUNNEL_NAMESPACE_BEGIN
 
 namespace {
 
-constexpr std::size_t order = 16;
+constexpr std::size_t most_points = 16;
 constexpr double wanted = 1e-9; // of the largest ordinate: the bound that the methods page states
 constexpr std::size_t most_pieces = 64;
 
+/// On -1..1.
 struct GaussRule {
-    std::array<double, order> node{};
-    std::array<double, order> weight{};
+    std::vector<double> node;
+    std::vector<double> weight;
 };
 
 double legendre(std::size_t n, double x) {
@@ -33,53 +35,47 @@ double legendre(std::size_t n, double x) {
     return value;
 }
 
-/// Nodes by Newton's iteration from Chebyshev's estimate.
-GaussRule make_rule() {
+/// Nodes by Newton's iteration from Chebyshev's estimate; mirrored, so that symmetry is exact.
+GaussRule make_rule(std::size_t points) {
     GaussRule rule;
-    constexpr double n = static_cast<double>(order);
-    for (std::size_t i = 0; i < order; ++i) {
+    rule.node.resize(points);
+    rule.weight.resize(points);
+    const auto n = static_cast<double>(points);
+    const auto slope_at = [&](double x) {
+        return n * (x * legendre(points, x) - legendre(points - 1, x)) / (x * x - 1);
+    };
+    for (std::size_t i = 0; i < (points + 1) / 2; ++i) {
         double x = std::cos(std::numbers::pi * (static_cast<double>(i) + 0.75) / (n + 0.5));
-        double slope = 1;
         constexpr int enough = 8;
         for (int step = 0; step < enough; ++step) {
-            slope = n * (x * legendre(order, x) - legendre(order - 1, x)) / (x * x - 1);
-            x -= legendre(order, x) / slope;
+            x -= legendre(points, x) / slope_at(x);
         }
-        slope = n * (x * legendre(order, x) - legendre(order - 1, x)) / (x * x - 1);
-        rule.node[i] = x;
-        rule.weight[i] = 2 / ((1 - x * x) * slope * slope);
+        x = 2 * i + 1 == points ? 0 : x;
+        const double slope = slope_at(x);
+        rule.node[i] = -x;
+        rule.node[points - 1 - i] = x;
+        rule.weight[i] = rule.weight[points - 1 - i] = 2 / ((1 - x * x) * slope * slope);
     }
     return rule;
 }
 
-using Coefficients = std::array<double, 5>;
-
-/// Legendre coefficients of f on from..to, up to the fourth.
-Coefficients project(const std::function<double(double)>& f, double from, double to) {
-    static const GaussRule rule = make_rule();
-    Coefficients a{};
-    for (std::size_t i = 0; i < order; ++i) {
-        const double value = f(from + (to - from) * (1 + rule.node[i]) / 2);
-        for (std::size_t k = 0; k < a.size(); ++k) {
-            a[k] += (2 * static_cast<double>(k) + 1) / 2 * rule.weight[i] * value * legendre(k, rule.node[i]);
+const GaussRule& rule_of(std::size_t points) {
+    static const std::array<GaussRule, 6> small = [] {
+        std::array<GaussRule, 6> rules;
+        for (std::size_t n = 1; n < rules.size(); ++n) {
+            rules[n] = make_rule(n);
         }
-    }
-    return a;
-}
-
-double value_of(const Coefficients& a, double z) {
-    double value = 0;
-    for (std::size_t k = 0; k < a.size(); ++k) {
-        value += a[k] * legendre(k, z);
-    }
-    return value;
+        return rules;
+    }();
+    static const GaussRule large = make_rule(most_points);
+    return points < small.size() ? small[points] : large;
 }
 
 /// From Legendre coefficients in z = 2 y - 1 to powers of y (the shifted Legendre polynomials).
-Coefficients to_powers(const Coefficients& a) {
-    constexpr std::array<Coefficients, 5> shifted{
+Quartic to_powers(const Quartic& a) {
+    constexpr std::array<Quartic, 5> shifted{
         {{1, 0, 0, 0, 0}, {-1, 2, 0, 0, 0}, {1, -6, 6, 0, 0}, {-1, 12, -30, 20, 0}, {1, -20, 90, -140, 70}}};
-    Coefficients c{};
+    Quartic c{};
     for (std::size_t k = 0; k < a.size(); ++k) {
         for (std::size_t i = 0; i < c.size(); ++i) {
             c[i] += a[k] * shifted[k][i];
@@ -88,56 +84,155 @@ Coefficients to_powers(const Coefficients& a) {
     return c;
 }
 
+double value_of(const Quartic& c, double y) {
+    return c[0] + y * (c[1] + y * (c[2] + y * (c[3] + y * c[4])));
+}
+
 /// A piece with what it is off by at most, at Chebyshev's points.
 struct Tried {
-    double from, to;
-    Coefficients a;
-    double error;
+    QuarticFit::Piece piece;
+    double error = 0;
 };
 
-Tried try_piece(const std::function<double(double)>& f, double from, double to) {
-    Tried tried{from, to, project(f, from, to), 0};
-    constexpr int samples = 9;
-    for (int i = 0; i < samples; ++i) {
-        const double z = -std::cos(std::numbers::pi * i / (samples - 1));
-        const double off = std::abs(f(from + (to - from) * (1 + z) / 2) - value_of(tried.a, z));
-        tried.error = std::max(tried.error, off);
-    }
-    return tried;
-}
+class Fitter {
+public:
+    Fitter(std::size_t count, const Functions& f) : f_(f), values_(count) {}
 
-double largest_of(const std::function<double(double)>& f) {
-    double largest = 0;
-    constexpr int samples = 33;
-    for (int i = 0; i < samples; ++i) {
-        largest = std::max(largest, std::abs(f(static_cast<double>(i) / (samples - 1))));
+    /// Projection on the Legendre polynomials up to a degree.
+    QuarticFit::Piece project(double from, double to, std::size_t points, std::size_t degree) {
+        QuarticFit::Piece piece{from, to, std::vector<Quartic>(values_.size())};
+        const GaussRule& rule = rule_of(points);
+        for (std::size_t i = 0; i < rule.node.size(); ++i) {
+            f_(from + (to - from) * (1 + rule.node[i]) / 2, values_);
+            for (std::size_t k = 0; k <= degree; ++k) {
+                const double factor =
+                    (2 * static_cast<double>(k) + 1) / 2 * rule.weight[i] * legendre(k, rule.node[i]);
+                for (std::size_t n = 0; n < values_.size(); ++n) {
+                    piece.c[n][k] += factor * values_[n];
+                }
+            }
+        }
+        return piece;
     }
-    return largest;
-}
+
+    Tried fit(double from, double to) {
+        Tried tried{project(from, to, most_points, 4), 0};
+        for (Quartic& c : tried.piece.c) {
+            c = to_powers(c);
+        }
+        constexpr int samples = 9;
+        for (int i = 0; i < samples; ++i) {
+            const double y = (1 - std::cos(std::numbers::pi * i / (samples - 1))) / 2;
+            f_(from + (to - from) * y, values_);
+            for (std::size_t n = 0; n < values_.size(); ++n) {
+                tried.error = std::max(tried.error, std::abs(values_[n] - value_of(tried.piece.c[n], y)));
+            }
+        }
+        return tried;
+    }
+
+    double largest() {
+        double largest = 0;
+        constexpr int samples = 33;
+        for (int i = 0; i < samples; ++i) {
+            f_(static_cast<double>(i) / (samples - 1), values_);
+            for (const double value : values_) {
+                largest = std::max(largest, std::abs(value));
+            }
+        }
+        return largest;
+    }
+
+private:
+    const Functions& f_;
+    std::vector<double> values_;
+};
 
 } // namespace
 
-std::vector<QuarticPiece> fit_quartics(const std::function<double(double)>& f) {
-    const double bound = wanted * largest_of(f);
+QuarticFit fit_quartics(std::size_t count, const Functions& f) {
+    Fitter fitter(count, f);
+    const double bound = wanted * fitter.largest();
     const auto better = [](const Tried& l, const Tried& r) { return l.error < r.error; };
-    std::vector<Tried> pieces{try_piece(f, 0, 1)}; // a heap, the worst on top
-    while (pieces.front().error > bound && pieces.size() < most_pieces) {
-        std::pop_heap(pieces.begin(), pieces.end(), better);
-        const Tried worst = pieces.back();
-        pieces.pop_back();
-        const double middle = (worst.from + worst.to) / 2;
-        for (const auto& [from, to] : {std::pair(worst.from, middle), std::pair(middle, worst.to)}) {
-            pieces.push_back(try_piece(f, from, to));
-            std::push_heap(pieces.begin(), pieces.end(), better);
+    std::vector<Tried> tried; // a heap, the worst on top
+    tried.push_back(fitter.fit(0, 1));
+    while (tried.front().error > bound && tried.size() < most_pieces) {
+        std::pop_heap(tried.begin(), tried.end(), better);
+        const double from = tried.back().piece.from;
+        const double to = tried.back().piece.to;
+        tried.pop_back();
+        const double middle = (from + to) / 2;
+        tried.push_back(fitter.fit(from, middle));
+        std::push_heap(tried.begin(), tried.end(), better);
+        tried.push_back(fitter.fit(middle, to));
+        std::push_heap(tried.begin(), tried.end(), better);
+    }
+    QuarticFit result;
+    result.error = tried.front().error;
+    std::sort(tried.begin(), tried.end(),
+              [](const Tried& l, const Tried& r) { return l.piece.from < r.piece.from; });
+    for (Tried& one : tried) {
+        result.pieces.push_back(std::move(one.piece));
+    }
+    return result;
+}
+
+QuarticFit exact_quartics(std::size_t count, std::size_t degree, const Functions& f) {
+    QuarticFit result;
+    result.pieces.push_back(Fitter(count, f).project(0, 1, degree + 1, degree));
+    constexpr double rounding = 32 * std::numeric_limits<double>::epsilon();
+    for (Quartic& c : result.pieces.back().c) {
+        double largest = 0;
+        for (const double a : c) {
+            largest = std::max(largest, std::abs(a));
         }
+        for (double& a : c) {
+            a = std::abs(a) <= rounding * largest ? 0 : a;
+        }
+        c = to_powers(c);
     }
-    std::sort(pieces.begin(), pieces.end(), [](const Tried& l, const Tried& r) { return l.from < r.from; });
-    std::vector<QuarticPiece> fitted;
-    fitted.reserve(pieces.size());
-    for (const Tried& piece : pieces) {
-        fitted.push_back({piece.from, piece.to, to_powers(piece.a)});
+    return result;
+}
+
+std::vector<QuarticPiece> fit_quartics(const std::function<double(double)>& f) {
+    const QuarticFit fit =
+        fit_quartics(1, [&f](double x, std::span<double> values) { values.front() = f(x); });
+    std::vector<QuarticPiece> pieces;
+    for (const QuarticFit::Piece& piece : fit.pieces) {
+        pieces.push_back({piece.from, piece.to, piece.c.front()});
     }
-    return fitted;
+    return pieces;
+}
+
+LinePiece line_between(double at_from, double at_to, Quartic c) {
+    if (at_to < at_from) {
+        // y = 1 - z: a Taylor shift to 1, then the odd powers change sign.
+        for (std::size_t i = 0; i + 1 < c.size(); ++i) {
+            for (std::size_t k = c.size() - 1; k-- > i;) {
+                c[k] += c[k + 1];
+            }
+        }
+        c[1] = -c[1];
+        c[3] = -c[3];
+        std::swap(at_from, at_to);
+    }
+    LinePiece piece;
+    piece.from = at_from;
+    piece.to = at_to;
+    const double length = at_to - at_from;
+    double scale = 1;
+    for (std::size_t k = 0; k < c.size(); ++k) {
+        piece.c[k] = c[k] * scale;
+        scale /= length;
+    }
+    return piece;
+}
+
+void for_gauss_points(std::size_t points, const std::function<void(double, double)>& use) {
+    const GaussRule& rule = rule_of(points);
+    for (std::size_t i = 0; i < rule.node.size(); ++i) {
+        use((1 + rule.node[i]) / 2, rule.weight[i] / 2);
+    }
 }
 
 RUNNEL_NAMESPACE_END

@@ -1,21 +1,54 @@
 #pragma once
 
-#include <array>
-#include <functional>
 #include <runnel/export.hpp>
+#include <runnel/line_piece.hpp>
+
+#include <array>
+#include <cstddef>
+#include <functional>
+#include <span>
 #include <vector>
 
 RUNNEL_NAMESPACE_BEGIN
 
-/// A quartic on from..to of a parameter: the sum of c[k] y^k with y = (x - from) / (to - from).
+/// c[k] of the sum of c[k] y^k with y = 0..1.
+using Quartic = std::array<double, 5>;
+
+/// A quartic on from..to of a parameter: y = (x - from) / (to - from).
 struct QuarticPiece {
     double from = 0, to = 0;
-    std::array<double, 5> c{};
+    Quartic c{};
 };
 
 /// Replaces a smooth function on 0..1 by quartics that keep its integral and first moment (the projection on
 /// Legendre polynomials keeps all moments up to the fourth). The worst piece is halved until every piece is
 /// within 1e-9 of the largest value, or there are 64.
 [[nodiscard]] std::vector<QuarticPiece> fit_quartics(const std::function<double(double)>& f);
+
+/// Several functions of one parameter: values[i] is that of function i. `values` comes as it may.
+using Functions = std::function<void(double x, std::span<double> values)>;
+
+/// Quartics of several functions on the same pieces: what holds for the functions at every x (that they add
+/// up to a load and keep its place) holds for the integrals and first moments of the quartics.
+struct QuarticFit {
+    struct Piece {
+        double from = 0, to = 0;
+        std::vector<Quartic> c; ///< by function
+    };
+    std::vector<Piece> pieces;
+    double error = 0; ///< the largest difference found, in the functions' unit
+};
+[[nodiscard]] QuarticFit fit_quartics(std::size_t count, const Functions& f);
+
+/// The same where the functions are polynomials of a degree up to four: one piece, found from degree + 1
+/// places, exact but for rounding. What rounding leaves of higher powers is left out.
+[[nodiscard]] QuarticFit exact_quartics(std::size_t count, std::size_t degree, const Functions& f);
+
+/// A quartic in y between the stations `at_from` (y = 0) and `at_to`, whichever way they run, as a piece of
+/// line load.
+[[nodiscard]] LinePiece line_between(double at_from, double at_to, Quartic c);
+
+/// Gauss's rule on 0..1: calls use(x, weight); exact up to the power 2 points - 1. At most 5 points, or 16.
+void for_gauss_points(std::size_t points, const std::function<void(double x, double weight)>& use);
 
 RUNNEL_NAMESPACE_END

@@ -1,13 +1,13 @@
 #include "load/phases.hpp"
 
 #include "deck/pressure.hpp"
+#include "load/carrier_axes.hpp"
 #include "load/standing.hpp"
+#include "load/standing_nearest.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
 #include <cmath>
-#include <map>
-#include <optional>
 #include <span>
 #include <string>
 
@@ -15,31 +15,13 @@ RUNNEL_NAMESPACE_BEGIN
 
 namespace {
 
-/// A member or wall of the level as a line that loads can be put on.
-struct Axis {
-    std::uint32_t number = none; ///< in Sharing
-    Point from, to;
-    double length = 0;
-    Role role = Role::joist;
-    bool wall = false;
-    std::string_view id;
-};
-
-struct Interval {
-    double from = 0, to = 0;
-};
-
 class LoadPlacer {
 public:
     LoadPlacer(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
                Collector& collector)
         : plan_(plan), level_(framing.levels[level]), sharing_(sharing), collector_(collector),
-          bays_(level_, sharing), axes_(axes_of_level()), tree_(boxes_of(axes_)),
-          columns_(boxes_of_columns()) {
-        for (std::uint32_t i = 0; i < axes_.size(); ++i) {
-            by_id_.emplace(axes_[i].id, i);
-        }
-    }
+          parts_(level_, sharing), cells_(level_, sharing), axes_(plan, level_, sharing),
+          columns_(boxes_of_columns()) {}
 
     void place_lines() {
         for (std::uint32_t i = 0; i < level_.line_loads.size(); ++i) {
@@ -73,30 +55,6 @@ public:
     }
 
 private:
-    [[nodiscard]] std::vector<Axis> axes_of_level() const {
-        std::vector<Axis> axes;
-        axes.reserve(level_.members.size() + level_.walls.size());
-        for (std::uint32_t m = 0; m < level_.members.size(); ++m) {
-            const FramedMember& member = level_.members[m];
-            axes.push_back({m, member.from, member.to, member.length, member.role, false, member.id});
-        }
-        for (const std::uint32_t w : level_.walls) {
-            const Wall& wall = plan_.walls[w];
-            axes.push_back({sharing_.number_of({CarrierKind::wall, w}), wall.from, wall.to,
-                            distance(wall.from, wall.to), Role::girder, true, wall.id});
-        }
-        return axes;
-    }
-
-    static std::vector<Box> boxes_of(const std::vector<Axis>& axes) {
-        std::vector<Box> boxes;
-        boxes.reserve(axes.size());
-        for (const Axis& axis : axes) {
-            boxes.push_back(box_of(axis.from, axis.to));
-        }
-        return boxes;
-    }
-
     [[nodiscard]] std::vector<Box> boxes_of_columns() const {
         std::vector<Box> boxes;
         boxes.reserve(level_.columns.size());
@@ -113,29 +71,9 @@ private:
         return "Level " + level_.id + ", " + list + '[' + std::to_string(i) + ']';
     }
 
-    /// The stretch of a line, by fractions of it, that runs along an axis within `snap`.
-    [[nodiscard]] std::optional<Interval> along(const Axis& axis, Point a, Point b) const {
-        const double sa = station_of(a, axis.from, axis.to);
-        const double sb = station_of(b, axis.from, axis.to);
-        const double low = std::max(0.0, std::min(sa, sb));
-        const double high = std::min(axis.length, std::max(sa, sb));
-        if (!(high - low > snap())) {
-            return std::nullopt;
-        }
-        const double t0 = std::clamp((low - sa) / (sb - sa), 0.0, 1.0);
-        const double t1 = std::clamp((high - sa) / (sb - sa), 0.0, 1.0);
-        const Interval interval{std::min(t0, t1), std::max(t0, t1)};
-        for (const double t : {interval.from, interval.to}) {
-            if (distance_to_segment(between(a, b, t), axis.from, axis.to) > snap()) {
-                return std::nullopt;
-            }
-        }
-        return interval;
-    }
-
     /// Puts a stretch of a line straight on an axis: force and place are kept, what stands beside is moved
     /// square on to it.
-    void put_along(const Axis& axis, const LineLoad& load, std::uint32_t index, Interval t) {
+    void put_along(const CarrierAxis& axis, const LineLoad& load, std::uint32_t index, Interval t) {
         const Point a = between(load.from, load.to, t.from);
         const Point b = between(load.from, load.to, t.to);
         const double w_a = (1 - t.from) * load.w_from + t.from * load.w_to;
@@ -188,35 +126,57 @@ private:
 
     void take_along_axes(const LineLoad& load, std::uint32_t index, std::vector<Interval>& left) {
         const double tolerance = collector_.noise() / distance(load.from, load.to);
-        tree_.find(box_of(load.from, load.to).grown(snap()), near_);
+        axes_.find(box_of(load.from, load.to).grown(snap()), near_);
         for (const std::uint32_t i : near_) {
-            if (const auto t = along(axes_[i], load.from, load.to)) {
+            if (const auto t = stretch_along(axes_[i], load.from, load.to, snap())) {
                 take(left, *t, tolerance, [&](Interval part) { put_along(axes_[i], load, index, part); });
             }
         }
     }
 
-    void take_over_bays(const LineLoad& load, std::uint32_t index, std::span<const BayFinder::Hit> hits,
-                        std::vector<Interval>& left) {
-        // Borders of neighbouring bays differ by rounding; a stretch of that size belongs to either.
-        const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
+    /// The parts of one-way decks and the cells of others that a line runs over.
+    struct Under {
+        std::vector<DeckPartFinder::Hit> parts;
+        std::vector<CellFinder::Hit> cells;
+    };
+    [[nodiscard]] Under what_lies_under(const LineLoad& load, double margin) {
+        return {parts_.over(load.from, load.to, margin), cells_.over(load.from, load.to, margin)};
+    }
+
+    /// Borders of neighbouring parts or cells differ by rounding; a stretch of that size, by fractions of the
+    /// line, belongs to either.
+    [[nodiscard]] double tolerance_on(const LineLoad& load) const {
+        return 4 * collector_.noise() / distance(load.from, load.to);
+    }
+
+    void take_over(const Under& under, const LineLoad& load, std::uint32_t index,
+                   std::vector<Interval>& left) {
+        const double tolerance = tolerance_on(load);
         const std::uint32_t load_case = case_index(plan_, load.case_id);
-        for (const BayFinder::Hit& hit : hits) {
+        const Source source{SourceKind::line_load, index};
+        const auto at = [&load](double t) { return between(load.from, load.to, t); };
+        const auto w = [&load](double t) { return (1 - t) * load.w_from + t * load.w_to; };
+        for (const DeckPartFinder::Hit& hit : under.parts) {
             take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
-                const double w_a = (1 - t.from) * load.w_from + t.from * load.w_to;
-                const double w_b = (1 - t.to) * load.w_from + t.to * load.w_to;
-                share_line(sharing_, sharing_.bays[hit.bay], between(load.from, load.to, t.from),
-                           between(load.from, load.to, t.to), w_a, w_b, snap(), load_case,
-                           {SourceKind::line_load, index}, collector_);
+                share_line(sharing_, hit.part, at(t.from), at(t.to), w(t.from), w(t.to), snap(), load_case,
+                           source, collector_);
+            });
+        }
+        for (const CellFinder::Hit& hit : under.cells) {
+            take(left, {hit.from, hit.to}, tolerance, [&](Interval t) {
+                put_line_on_cell(sharing_, hit.cell, at(t.from), at(t.to), w(t.from), w(t.to), snap(),
+                                 load_case, source, collector_);
             });
         }
     }
 
-    /// Whether the hits cover all that is left.
-    [[nodiscard]] bool cover(const LineLoad& load, std::span<const BayFinder::Hit> hits,
-                             std::vector<Interval> left) const {
-        const double tolerance = 4 * collector_.noise() / distance(load.from, load.to);
-        for (const BayFinder::Hit& hit : hits) {
+    /// Whether parts and cells cover all that is left.
+    [[nodiscard]] bool cover(const Under& under, const LineLoad& load, std::vector<Interval> left) const {
+        const double tolerance = tolerance_on(load);
+        for (const DeckPartFinder::Hit& hit : under.parts) {
+            take(left, {hit.from, hit.to}, tolerance, [](Interval) {});
+        }
+        for (const CellFinder::Hit& hit : under.cells) {
             take(left, {hit.from, hit.to}, tolerance, [](Interval) {});
         }
         return left.empty();
@@ -227,13 +187,13 @@ private:
         std::vector<Interval> left{{0, 1}};
         take_along_axes(load, index, left);
         if (!left.empty()) {
-            take_over_bays(load, index, bays_.over(load.from, load.to, collector_.noise()), left);
+            take_over(what_lies_under(load, collector_.noise()), load, index, left);
         }
         if (!left.empty()) {
             // What is drawn beside the deck by no more than `snap` stands on it.
-            const std::vector<BayFinder::Hit> hits = bays_.over(load.from, load.to, snap());
-            if (cover(load, hits, left)) {
-                take_over_bays(load, index, hits, left);
+            const Under under = what_lies_under(load, snap());
+            if (cover(under, load, left)) {
+                take_over(under, load, index, left);
             }
         }
         double off = 0;
@@ -255,14 +215,6 @@ private:
         }
     }
 
-    /// The carrier that `on` names; nothing if it is not on this level (check_plan has said so).
-    [[nodiscard]] const Axis* named(const std::string& on) const {
-        const std::size_t slash = on.find('/');
-        const auto it = by_id_.find(slash == std::string::npos ? std::string_view(on)
-                                                               : std::string_view(on).substr(slash + 1));
-        return it == by_id_.end() ? nullptr : &axes_[it->second];
-    }
-
     void refuse_on(const Origin& origin, const char* list, std::uint32_t index, const std::string& on) {
         collector_.problems.push_back(problem_inside(ProblemCode::unknown_id, origin, list, "/on",
                                                      name(list, index) + " stands `on` " + on +
@@ -272,8 +224,8 @@ private:
 
     /// How far a load named `on` an axis reaches past its ends and stands beside it; says so where it
     /// matters.
-    bool fits(const Axis& axis, std::initializer_list<Point> points, const Origin& origin, const char* list,
-              std::uint32_t index) {
+    bool fits(const CarrierAxis& axis, std::initializer_list<Point> points, const Origin& origin,
+              const char* list, std::uint32_t index) {
         double past = 0;
         double beside = 0;
         for (const Point& p : points) {
@@ -306,7 +258,7 @@ private:
 
     void place_on(std::uint32_t index) {
         const LineLoad& load = level_.line_loads[index];
-        const Axis* axis = named(load.on);
+        const CarrierAxis* axis = axes_.named(load.on);
         if (axis == nullptr) {
             refuse_on(load.origin, "line_loads", index, load.on);
         } else if (fits(*axis, {load.from, load.to}, load.origin, "line_loads", index)) {
@@ -316,7 +268,7 @@ private:
 
     void place_point_on(std::uint32_t index) {
         const PointLoad& load = level_.point_loads[index];
-        const Axis* axis = named(load.on);
+        const CarrierAxis* axis = axes_.named(load.on);
         if (axis == nullptr) {
             refuse_on(load.origin, "point_loads", index, load.on);
         } else if (fits(*axis, {load.at}, load.origin, "point_loads", index)) {
@@ -324,7 +276,7 @@ private:
         }
     }
 
-    void put_point_on(const Axis& axis, const PointLoad& load, std::uint32_t index) {
+    void put_point_on(const CarrierAxis& axis, const PointLoad& load, std::uint32_t index) {
         const double station = std::clamp(station_of(load.at, axis.from, axis.to), 0.0, axis.length);
         collector_.put_point(
             axis.number, none,
@@ -345,10 +297,10 @@ private:
                 return true;
             }
         }
-        tree_.find(box_of(load.at, load.at).grown(snap()), near_);
-        const Axis* best = nullptr;
+        axes_.find(box_of(load.at, load.at).grown(snap()), near_);
+        const CarrierAxis* best = nullptr;
         for (const std::uint32_t i : near_) {
-            const Axis& axis = axes_[i];
+            const CarrierAxis& axis = axes_[i];
             if (distance_to_segment(load.at, axis.from, axis.to) > snap()) {
                 continue;
             }
@@ -367,14 +319,17 @@ private:
         if (place_on_what_is_there(index)) {
             return;
         }
-        std::uint32_t bay = bays_.under(load.at, collector_.noise());
-        if (bay == none) {
-            bay = bays_.under(load.at, snap());
-        }
-        if (bay != none) {
-            share_point(sharing_, sharing_.bays[bay], load.at, load.p, case_index(plan_, load.case_id),
-                        {SourceKind::point_load, index}, collector_);
-            return;
+        const std::uint32_t load_case = case_index(plan_, load.case_id);
+        const Source source{SourceKind::point_load, index};
+        for (const double margin : {collector_.noise(), snap()}) {
+            if (const std::optional<DeckPart> part = parts_.under(load.at, margin)) {
+                share_point(sharing_, *part, load.at, load.p, load_case, source, collector_);
+                return;
+            }
+            if (const std::uint32_t cell = cells_.under(load.at, margin); cell != none) {
+                put_point_on_cell(sharing_, cell, load.at, load.p, load_case, source, collector_);
+                return;
+            }
         }
         Problem problem =
             problem_at(ProblemCode::load_off_decks, load.origin, "point_loads",
@@ -389,11 +344,10 @@ private:
     const FramedLevel& level_;
     const Sharing& sharing_;
     Collector& collector_;
-    BayFinder bays_;
-    std::vector<Axis> axes_;
-    BoxTree tree_;
+    DeckPartFinder parts_;
+    CellFinder cells_;
+    CarrierAxes axes_;
     BoxFinder columns_; ///< by their place in the level's list
-    std::map<std::string_view, std::uint32_t> by_id_;
     std::vector<std::uint32_t> near_;
 };
 

@@ -9,7 +9,8 @@ RUNNEL_NAMESPACE_BEGIN
 /// Area loads and the decks' own weight, on cells and in the account of what was put on.
 void load_areas(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
                 Collector& collector);
-/// Area loads reach off the decks: a note each with how much.
+/// Area loads that reach off the decks: a note each with how much. Planes of pressure that fall below zero
+/// where they act: a warning with the lowest place.
 void note_zones_off_decks(const Plan& plan, const Framing& framing, std::uint32_t level,
                           Collector& collector);
 

@@ -1,7 +1,9 @@
 #include "load/standing.hpp"
 
 #include "geometry/basic.hpp"
+#include "geometry/strip_piece.hpp"
 #include "load/fit.hpp"
+#include "load/strip_loads.hpp"
 
 #include <algorithm>
 #include <array>
@@ -11,13 +13,6 @@
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-Box box_of(const Bay& bay) {
-    Box box = box_of(Point{bay.low.start, bay.from}, Point{bay.high.end, bay.to});
-    box.add({bay.high.start, bay.from});
-    box.add({bay.low.end, bay.to});
-    return box;
-}
 
 std::vector<Box> outline_boxes(const FramedLevel& level) {
     std::vector<Box> boxes;
@@ -39,80 +34,105 @@ void keep_positive(double start, double end, double& from, double& to) {
 }
 
 /// A border's along coordinate at a level, the border taken as going on straight.
-double along_of(const Border& border, const Bay& bay, double across) {
-    const double x = (across - bay.from) / (bay.to - bay.from);
+double along_of(const Border& border, const StripPiece& piece, double across) {
+    const double x = (across - piece.from) / (piece.to - piece.from);
     return (1 - x) * border.start + x * border.end;
 }
 
-bool clip_to_bay(const Bay& bay, Point a, Point b, double margin, double& from, double& to) {
+StripPiece piece_of(const Bay& bay) {
+    return {bay.from, bay.to, bay.low, bay.high};
+}
+
+StripPiece piece_of(const Sharing& sharing, DeckPart part) {
+    switch (part.kind) {
+    case DeckPart::Kind::bay:
+        return piece_of(sharing.bays[part.index]);
+    case DeckPart::Kind::strip: {
+        const Strip& strip = sharing.strips[part.index];
+        return {strip.from, strip.to, strip.low, strip.high};
+    }
+    }
+    return {};
+}
+
+/// Narrows a line to what of it lies over a piece with straight borders.
+bool clip_to(const StripPiece& piece, Point a, Point b, double margin, double& from, double& to) {
     from = 0;
     to = 1;
-    keep_positive(a.y - bay.from + margin, b.y - bay.from + margin, from, to);
-    keep_positive(bay.to - a.y + margin, bay.to - b.y + margin, from, to);
-    keep_positive(a.x - along_of(bay.low, bay, a.y) + margin, b.x - along_of(bay.low, bay, b.y) + margin,
-                  from, to);
-    keep_positive(along_of(bay.high, bay, a.y) - a.x + margin, along_of(bay.high, bay, b.y) - b.x + margin,
-                  from, to);
+    keep_positive(a.y - piece.from + margin, b.y - piece.from + margin, from, to);
+    keep_positive(piece.to - a.y + margin, piece.to - b.y + margin, from, to);
+    keep_positive(a.x - along_of(piece.low, piece, a.y) + margin,
+                  b.x - along_of(piece.low, piece, b.y) + margin, from, to);
+    keep_positive(along_of(piece.high, piece, a.y) - a.x + margin,
+                  along_of(piece.high, piece, b.y) - b.x + margin, from, to);
     return to >= from;
+}
+
+/// Of a deck under lever or continuous, bays that are in no strip: those that no carrier crosses, and what
+/// the drawing is off by, whose load goes to a point.
+bool is_in_no_strip(const Bay& bay) {
+    const bool bare = bay.low_carrier == none && bay.high_carrier == none;
+    const bool sliver = bay.low_carrier != none && bay.low_station_from == bay.low_station_to;
+    return bare || sliver;
 }
 
 } // namespace
 
-BayFinder::BayFinder(const FramedLevel& level, const Sharing& sharing)
+DeckPartFinder::DeckPartFinder(const FramedLevel& level, const Sharing& sharing)
     : sharing_(&sharing), decks_(level.decks.size()), outlines_(outline_boxes(level)) {
-    for (std::uint32_t i = 0; i < sharing.bays.size();) {
-        std::uint32_t end = i;
-        while (end < sharing.bays.size() && sharing.bays[end].deck == sharing.bays[i].deck) {
-            ++end;
+    for (std::uint32_t i = 0; i < sharing.bays.size(); ++i) {
+        const Bay& bay = sharing.bays[i];
+        decks_[bay.deck].axes = bay.axes;
+        if (level.decks[bay.deck].share == Share::half || is_in_no_strip(bay)) {
+            decks_[bay.deck].parts.push_back({DeckPart::Kind::bay, i});
         }
-        decks_[sharing.bays[i].deck].first = i;
-        decks_[sharing.bays[i].deck].last = end;
-        i = end;
+    }
+    for (std::uint32_t i = 0; i < sharing.strips.size(); ++i) {
+        decks_[sharing.strips[i].deck].parts.push_back({DeckPart::Kind::strip, i});
     }
 }
 
-BayFinder::DeckBays& BayFinder::bays_of(std::uint32_t deck) {
-    DeckBays& bays = decks_[deck];
-    if (!bays.tree) {
+DeckPartFinder::PartsOfDeck& DeckPartFinder::parts_of(std::uint32_t deck) {
+    PartsOfDeck& found = decks_[deck];
+    if (!found.tree) {
         std::vector<Box> boxes;
-        for (std::uint32_t i = bays.first; i < bays.last; ++i) {
-            boxes.push_back(box_of(sharing_->bays[i]));
+        for (const DeckPart part : found.parts) {
+            boxes.push_back(box_of(piece_of(*sharing_, part)));
         }
-        bays.tree.emplace(boxes);
+        found.tree.emplace(boxes);
     }
-    return bays;
+    return found;
 }
 
-std::vector<BayFinder::Hit> BayFinder::over(Point a, Point b, double margin) {
+std::vector<DeckPartFinder::Hit> DeckPartFinder::over(Point a, Point b, double margin) {
     std::vector<Hit> hits;
     std::vector<std::uint32_t> decks;
     std::vector<std::uint32_t> near;
     outlines_.find(box_of(a, b).grown(margin), decks);
     for (const std::uint32_t d : decks) {
-        const DeckBays& bays = bays_of(d);
-        if (bays.first == bays.last) {
+        const PartsOfDeck& deck = parts_of(d);
+        if (deck.parts.empty()) {
             continue;
         }
-        const StripAxes& axes = sharing_->axes[sharing_->bays[bays.first].axes];
+        const StripAxes& axes = sharing_->axes[deck.axes];
         const Point sa = axes.to_strip(a);
         const Point sb = axes.to_strip(b);
-        bays.tree->find(box_of(sa, sb).grown(margin), near);
+        deck.tree->find(box_of(sa, sb).grown(margin), near);
         for (const std::uint32_t k : near) {
             Hit hit;
-            hit.bay = bays.first + k;
-            if (clip_to_bay(sharing_->bays[hit.bay], sa, sb, margin, hit.from, hit.to)) {
+            hit.part = deck.parts[k];
+            if (clip_to(piece_of(*sharing_, hit.part), sa, sb, margin, hit.from, hit.to)) {
                 hits.push_back(hit);
             }
         }
     }
-    std::sort(hits.begin(), hits.end(),
-              [](const Hit& l, const Hit& r) { return l.from != r.from ? l.from < r.from : l.bay < r.bay; });
+    std::sort(hits.begin(), hits.end(), [](const Hit& l, const Hit& r) { return l.key() < r.key(); });
     return hits;
 }
 
-std::uint32_t BayFinder::under(Point p, double margin) {
+std::optional<DeckPart> DeckPartFinder::under(Point p, double margin) {
     const std::vector<Hit> hits = over(p, p, margin);
-    return hits.empty() ? none : hits.front().bay;
+    return hits.empty() ? std::nullopt : std::optional(hits.front().part);
 }
 
 namespace {
@@ -122,8 +142,8 @@ double part_of_high(const Bay& bay, Point p) {
     if (bay.low_carrier == none || bay.high_carrier == none) {
         return bay.high_carrier == none ? 0 : 1;
     }
-    const double low = along_of(bay.low, bay, p.y);
-    const double high = along_of(bay.high, bay, p.y);
+    const double low = along_of(bay.low, piece_of(bay), p.y);
+    const double high = along_of(bay.high, piece_of(bay), p.y);
     return high > low ? std::clamp((p.x - low) / (high - low), 0.0, 1.0) : 0.5;
 }
 
@@ -135,34 +155,6 @@ double low_station(const Bay& bay, double across) {
 double high_station(const Bay& bay, double across) {
     const double x = std::clamp((across - bay.from) / (bay.to - bay.from), 0.0, 1.0);
     return (1 - x) * bay.high_station_from + x * bay.high_station_to;
-}
-
-using Quartic = std::array<double, 5>;
-
-/// A quartic in y = 0..1 between stations `at_from` and `at_to`, whichever way they run, as a piece of line
-/// load.
-LinePiece piece_between(double at_from, double at_to, Quartic c) {
-    if (at_to < at_from) {
-        // y = 1 - z: a Taylor shift to 1, then the odd powers change sign.
-        for (std::size_t i = 0; i + 1 < c.size(); ++i) {
-            for (std::size_t k = c.size() - 1; k-- > i;) {
-                c[k] += c[k + 1];
-            }
-        }
-        c[1] = -c[1];
-        c[3] = -c[3];
-        std::swap(at_from, at_to);
-    }
-    LinePiece piece;
-    piece.from = at_from;
-    piece.to = at_to;
-    const double length = at_to - at_from;
-    double scale = 1;
-    for (std::size_t k = 0; k < c.size(); ++k) {
-        piece.c[k] = c[k] * scale;
-        scale /= length;
-    }
-    return piece;
 }
 
 /// A stretch of line load over a bay, in strip axes.
@@ -233,7 +225,7 @@ void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c,
     for (double& k : c) {
         k *= s.length * (to - from) / stretch; // per length of carrier
     }
-    collector.put_line(carrier, none, {s.load_case, s.source, piece_between(at_from, at_to, c)});
+    collector.put_line(carrier, none, {s.load_case, s.source, line_between(at_from, at_to, c)});
 }
 
 /// A stretch across the strips puts a line on each carrier: w times the part, a polynomial where the carriers
@@ -245,7 +237,7 @@ void put_lines(const Stretch& s, double noise, Collector& collector) {
         return;
     }
     const auto width = [&](Point p) {
-        return along_of(s.bay.high, s.bay, p.y) - along_of(s.bay.low, s.bay, p.y);
+        return along_of(s.bay.high, piece_of(s.bay), p.y) - along_of(s.bay.low, piece_of(s.bay), p.y);
     };
     std::vector<QuarticPiece> pieces;
     if (std::abs(width(s.a) - width(s.b)) <= noise) {
@@ -264,10 +256,8 @@ void put_lines(const Stretch& s, double noise, Collector& collector) {
     }
 }
 
-} // namespace
-
-void share_line(const Sharing& sharing, const Bay& bay, Point a, Point b, double w_a, double w_b, double snap,
-                std::uint32_t load_case, Source source, Collector& collector) {
+void share_line_on_bay(const Sharing& sharing, const Bay& bay, Point a, Point b, double w_a, double w_b,
+                       double snap, std::uint32_t load_case, Source source, Collector& collector) {
     if (bay.low_carrier == none && bay.high_carrier == none) {
         return; // an unsupported strip: an error already
     }
@@ -281,8 +271,8 @@ void share_line(const Sharing& sharing, const Bay& bay, Point a, Point b, double
     }
 }
 
-void share_point(const Sharing& sharing, const Bay& bay, Point at, double p, std::uint32_t load_case,
-                 Source source, Collector& collector) {
+void share_point_on_bay(const Sharing& sharing, const Bay& bay, Point at, double p, std::uint32_t load_case,
+                        Source source, Collector& collector) {
     const Point q = sharing.axes[bay.axes].to_strip(at);
     const double high = part_of_high(bay, q);
     if (bay.high_carrier != none) {
@@ -290,6 +280,33 @@ void share_point(const Sharing& sharing, const Bay& bay, Point at, double p, std
     }
     if (bay.low_carrier != none) {
         collector.put_point(bay.low_carrier, none, {load_case, source, low_station(bay, q.y), p - p * high});
+    }
+}
+
+} // namespace
+
+void share_line(const Sharing& sharing, DeckPart part, Point a, Point b, double w_a, double w_b, double snap,
+                std::uint32_t load_case, Source source, Collector& collector) {
+    switch (part.kind) {
+    case DeckPart::Kind::bay:
+        share_line_on_bay(sharing, sharing.bays[part.index], a, b, w_a, w_b, snap, load_case, source,
+                          collector);
+        return;
+    case DeckPart::Kind::strip:
+        share_line_on_strip(sharing, part.index, a, b, w_a, w_b, snap, load_case, source, collector);
+        return;
+    }
+}
+
+void share_point(const Sharing& sharing, DeckPart part, Point at, double p, std::uint32_t load_case,
+                 Source source, Collector& collector) {
+    switch (part.kind) {
+    case DeckPart::Kind::bay:
+        share_point_on_bay(sharing, sharing.bays[part.index], at, p, load_case, source, collector);
+        return;
+    case DeckPart::Kind::strip:
+        share_point_on_strip(sharing, part.index, at, p, load_case, source, collector);
+        return;
     }
 }
 

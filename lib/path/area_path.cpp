@@ -11,15 +11,18 @@ namespace {
 
 using Piece = CarrierAreas::Piece;
 
-double area_of(const Piece& piece) {
-    return piece.to > piece.from ? (piece.to - piece.from) * (piece.start + piece.end) / 2 : piece.start;
-}
-
-/// Area of the part of a piece up to a station within it.
+/// Area of a piece, or of its part up to a station within it.
 double area_up_to(const Piece& piece, double station) {
+    const double length = piece.to - piece.from;
     const double x = station - piece.from;
-    const double slope = (piece.end - piece.start) / (piece.to - piece.from);
-    return x * (piece.start + slope * x / 2);
+    const double slope = (piece.end - piece.start) / length;
+    const double t = x / length;
+    // The bulge: length times the integral of t (1 - t).
+    return x * (piece.start + slope * x / 2) - piece.bulge * length * t * t * (3 - 2 * t) / 6;
+}
+double area_of(const Piece& piece) {
+    const double length = piece.to - piece.from;
+    return length > 0 ? length * (piece.start + piece.end) / 2 - piece.bulge * length / 6 : piece.start;
 }
 
 /// Deals out what stands on one member to its bearings.

@@ -1,4 +1,3 @@
-#include "deck/refused.hpp"
 #include "path/parallel.hpp"
 #include "path/path.hpp"
 
@@ -32,6 +31,28 @@ Takedown stopped(Plan plan, Framing framing, std::vector<Problem> problems) {
     return takedown;
 }
 
+/// The laws of a split, after every split: a broken one is a problem with its place, never a wrong number.
+void check_split(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
+                 std::vector<Problem>& broken) {
+    constexpr std::uint32_t points_a_deck = 4;
+    constexpr std::uint64_t seed = 1; // the same points on every run
+    for (std::vector<Problem> found :
+         {check_cover(framing, level, sharing), check_disjoint(framing, level, sharing),
+          check_owners(plan, framing, level, sharing, points_a_deck, seed)}) {
+        append(broken, found);
+    }
+}
+
+void check_loads(const Plan& plan, const Framing& framing, std::uint32_t level, const PathInput& input,
+                 std::vector<Problem>& broken) {
+    const Sharing& sharing = input.sharing[level];
+    const LevelLoads& loads = input.loads[level];
+    for (std::vector<Problem> found : {check_force(plan, framing, level, sharing, loads),
+                                       check_moment(plan, framing, level, sharing, loads)}) {
+        append(broken, found);
+    }
+}
+
 /// Splits and loads every level; levels know nothing of each other here. Problems come out in the order of
 /// phases, then of levels, whatever the number of threads.
 std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, unsigned threads,
@@ -44,12 +65,14 @@ std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, un
     for_each_index(levels, threads, [&](std::size_t l) {
         const auto level = static_cast<std::uint32_t>(l);
         input.sharing[l] = share_decks(plan, framing, level);
-        if (!has_errors(input.sharing[l].problems)) {
-            broken[l] = check_cover(framing, level, input.sharing[l]);
+        const bool whole = !has_errors(input.sharing[l].problems);
+        if (whole) {
+            check_split(plan, framing, level, input.sharing[l], broken[l]);
         }
         input.areas[l] = areas_of(input.sharing[l]);
-        if (!is_refused(input.sharing[l])) {
-            input.loads[l] = load_carriers(plan, framing, level, input.sharing[l]);
+        input.loads[l] = load_carriers(plan, framing, level, input.sharing[l]);
+        if (whole && !has_errors(input.loads[l].problems)) {
+            check_loads(plan, framing, level, input, broken[l]);
         }
     });
     std::vector<Problem> problems;

@@ -32,9 +32,6 @@ void check_on(CheckContext& context, const LevelIndex& index, std::size_t level,
 }
 
 void check_plane(CheckContext& context, const PlaneOfLoad& plane, const Subject& subject) {
-    context.report(subject, ProblemCode::not_supported_yet, "/q",
-                   "`q` of " + subject.name() + ": pressure that varies over a plane cannot be computed yet.",
-                   "A uniform `q`, in several zones, can.");
     bool good = true;
     for (std::size_t i = 0; i < plane.at.size(); ++i) {
         good = context.good_point(plane.at[i], subject, "/q/at/" + std::to_string(i)) && good;

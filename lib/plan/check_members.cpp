@@ -214,17 +214,19 @@ void check_decks(CheckContext& context, std::size_t level) {
         if (deck.direction) {
             context.good_number(*deck.direction, subject, "/direction", dimension::none);
         }
-        if (deck.span != SpanKind::one_way) {
-            context.report(subject, ProblemCode::not_supported_yet, "/span",
-                           "`span` of " + subject.name() + ": sharing `" + std::string(name_of(deck.span)) +
-                               "` cannot be computed yet.",
-                           "`one-way` can.");
+        if (deck.span != SpanKind::one_way && deck.share.value_or(Share::half) != Share::half) {
+            context.report(subject, ProblemCode::share_has_no_effect, "/share",
+                           "`share` of " + subject.name() + " is `" + std::string(name_of(*deck.share)) +
+                               "`, which only one-way decks follow; this one is `" +
+                               std::string(name_of(deck.span)) + "`, where all load goes to what is nearest.",
+                           "Leave it out, or make the deck one-way.");
         }
-        if (deck.share && *deck.share != Share::half) {
-            context.report(subject, ProblemCode::not_supported_yet, "/share",
-                           "`share` of " + subject.name() + ": sharing by `" +
-                               std::string(name_of(*deck.share)) + "` cannot be computed yet.",
-                           "`half` can.");
+        if (deck.span != SpanKind::two_way && deck.corner_angles != CornerAngles::equal) {
+            context.report(subject, ProblemCode::conflicting_keys, "/corner_angles",
+                           "`corner_angles` of " + subject.name() +
+                               " goes with a `two-way` span; this one is `" +
+                               std::string(name_of(deck.span)) + "`.",
+                           "Leave it out, or make the deck two-way.");
         }
         context.good_number(deck.q, subject, "/q", dimension::area_load, Range::not_negative);
         const Build* build = deck.build.empty() ? nullptr

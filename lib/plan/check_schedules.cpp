@@ -113,11 +113,6 @@ void check_settings(CheckContext& context) {
                            context.lengths(least_snap) + " and " + context.lengths(most_snap) + '.');
     }
     context.good_number(settings.ground_elevation, subject, "/settings/ground_elevation", dimension::length);
-    if (settings.share != Share::half) {
-        context.report(subject, ProblemCode::not_supported_yet, "/settings/share",
-                       "Sharing by `" + std::string(name_of(settings.share)) + "` cannot be computed yet.",
-                       "`half` can.");
-    }
     if (!settings.self_weight_case.empty() && context.cases.find(settings.self_weight_case) == nullptr &&
         !context.is_unread(settings.self_weight_case) && !context.doubts.cases) {
         Problem& problem = context.report(subject, ProblemCode::unknown_id, "/settings/self_weight_case",

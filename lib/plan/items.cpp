@@ -24,6 +24,8 @@ constexpr Table<Share, 3> shares{
     {{"half", Share::half}, {"lever", Share::lever}, {"continuous", Share::continuous}}};
 constexpr Table<SpanKind, 3> spans{
     {{"one-way", SpanKind::one_way}, {"two-way", SpanKind::two_way}, {"columns", SpanKind::columns}}};
+constexpr Table<CornerAngles, 2> corners{
+    {{"equal", CornerAngles::equal}, {"by_fixity", CornerAngles::by_fixity}}};
 constexpr Table<Role, 3> roles{{{"joist", Role::joist}, {"beam", Role::beam}, {"girder", Role::girder}}};
 constexpr Table<BaseFixity, 2> fixities{{{"pinned", BaseFixity::pinned}, {"fixed", BaseFixity::fixed}}};
 
@@ -217,6 +219,7 @@ Deck read_deck(ObjectReader& object) {
     deck.share = object.choice("share", choices(shares));
     deck.q = object.quantity("q", dimension::area_load);
     deck.build = object.text("build");
+    deck.corner_angles = object.choice("corner_angles", choices(corners)).value_or(CornerAngles::equal);
     return deck;
 }
 
@@ -269,9 +272,6 @@ AreaLoad read_area_load(ObjectReader& object) {
     if (const auto q = object.value("q", Need::required)) {
         if (q->kind() == JsonKind::object) {
             load.plane = read_plane(*q);
-            if (!load.plane) { // the values could not be read; that an engine is missing is still to be said
-                q->not_yet("pressure that varies over a plane");
-            }
         } else {
             load.q = quantity_from(*q, dimension::area_load);
         }

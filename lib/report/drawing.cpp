@@ -1,5 +1,7 @@
 #include "geometry/basic.hpp"
+#include "report/drawing_labels.hpp"
 #include "report/drawing_marks.hpp"
+#include "report/drawing_places.hpp"
 #include "report/names.hpp"
 #include "report/page.hpp"
 #include "report/region_tints.hpp"
@@ -22,8 +24,6 @@ constexpr double margin = 60;
 constexpr double least_width = 480; ///< for the title
 constexpr double title_height = 46;
 constexpr double scale_bar_height = 40;
-constexpr double letter = 13;
-constexpr double small_letter = 10.5;
 constexpr double column_side = 11;
 constexpr double least_gap_for_labels = 14; ///< between joists, or their labels would overlap
 
@@ -146,7 +146,21 @@ private:
             }
             svg_.add("\"/>\n");
         }
+        end_zones();
         svg_.add("</g>\n");
+    }
+
+    /// What goes to a line's end is set off from what goes to its length.
+    void end_zones() {
+        const std::vector<Region> zones = regions_of(end_zones_of(sharing_, level_));
+        has_end_zones_ = !zones.empty();
+        for (const Region& zone : zones) {
+            svg_.add("<path class=\"end-zone\" d=\"");
+            for (const Ring& ring : zone.rings) {
+                ring_path(ring);
+            }
+            svg_.add("\"/>\n");
+        }
     }
 
     void decks() {
@@ -196,8 +210,8 @@ private:
             const Point ring = end - (radius / norm(run)) * run;
             svg_.add("<circle class=\"grid-mark\" cx=\"").number(ring.x).add("\" cy=\"").number(ring.y);
             svg_.add("\" r=\"").number(radius).add("\"/>\n");
-            label({ring.x, ring.y + 0.35 * small_letter}, 0, fit(part.id, longest), "label of-grid",
-                  small_letter);
+            const std::string id = fit(part.id, longest);
+            write(Label{id, "label of-grid", small_letter}, {{ring.x, ring.y + 0.35 * small_letter}});
         }
         svg_.add("</g>\n");
     }
@@ -244,109 +258,111 @@ private:
 
     void labels() {
         svg_.add("<g>\n");
+        const ClearPlaces places(lines_to_avoid());
         for (const FramedDeck& deck : level_.decks) {
-            if (deck.span == SpanKind::one_way) {
-                span_arrow(deck);
-            }
-            label(label_place(deck), 0, deck.id, "label of-deck", letter);
+            deck_label(deck, places);
         }
         for (const FramedMember& member : level_.members) {
-            if (!member.from_field || field_labels_fit(member)) {
-                label_along(member.from, member.to, member.id,
-                            member.role == Role::joist ? small_letter : letter);
+            if (has_label(member)) {
+                write(label_of(member), spot_of(member));
             }
         }
         for (const std::uint32_t w : level_.walls) {
-            label_along(plan_.walls[w].from, plan_.walls[w].to, plan_.walls[w].id, letter);
+            const Wall& wall = plan_.walls[w];
+            write({wall.id, "label"}, spot_along(on_sheet(wall.from), on_sheet(wall.to)));
         }
         for (const std::uint32_t c : level_.columns) {
-            Point p = on_sheet(plan_.columns[c].at);
-            const double half_width = 0.5 * label_width(plan_.columns[c].id, letter);
-            label({p.x + column_side + half_width, p.y + column_side * 1.7}, 0, plan_.columns[c].id,
-                  "label of-column", letter);
+            write(label_of(plan_.columns[c]), spot_of(plan_.columns[c]));
         }
         svg_.add("</g>\n");
     }
 
+    void write(const Label& label, Label::Spot spot) { label.write(svg_, spot, {width_, height_}); }
+
+    [[nodiscard]] static Label label_of(const FramedMember& member) {
+        return {member.id, "label", member.role == Role::joist ? small_letter : letter};
+    }
+    [[nodiscard]] Label::Spot spot_of(const FramedMember& member) const {
+        return spot_along(on_sheet(member.from), on_sheet(member.to));
+    }
+    [[nodiscard]] static Label label_of(const Column& column) { return {column.id, "label of-column"}; }
+    [[nodiscard]] Label::Spot spot_of(const Column& column) const {
+        const Point p = on_sheet(column.at);
+        return {{p.x + column_side + 0.5 * label_of(column).width(), p.y + column_side * 1.7}};
+    }
+
+    /// What the labels of decks keep clear of. Joists are too many for that.
+    [[nodiscard]] std::vector<std::pair<Point, Point>> lines_to_avoid() const {
+        std::vector<std::pair<Point, Point>> lines;
+        const auto add_ring = [&](const Ring& ring) {
+            for (std::size_t i = 0; i < ring.size(); ++i) {
+                lines.emplace_back(on_sheet(ring[i]), on_sheet(ring[(i + 1) % ring.size()]));
+            }
+        };
+        const auto add = [&](Point from, Point to, std::string_view id) {
+            lines.emplace_back(on_sheet(from), on_sheet(to));
+            lines.push_back(Label{id, "label"}.middle_line(spot_along(on_sheet(from), on_sheet(to))));
+        };
+        for (const FramedDeck& deck : level_.decks) {
+            add_ring(deck.outline);
+            std::for_each(deck.openings.begin(), deck.openings.end(), add_ring);
+        }
+        for (const FramedMember& member : level_.members) {
+            if (member.role != Role::joist) {
+                add(member.from, member.to, member.id);
+            }
+        }
+        for (const std::uint32_t w : level_.walls) {
+            add(plan_.walls[w].from, plan_.walls[w].to, plan_.walls[w].id);
+        }
+        for (const std::uint32_t c : level_.columns) {
+            const Column& column = plan_.columns[c];
+            lines.push_back(label_of(column).middle_line(spot_of(column)));
+            lines.emplace_back(on_sheet(column.at), lines.back().first);
+        }
+        return lines;
+    }
+
+    [[nodiscard]] bool has_label(const FramedMember& member) const {
+        return !member.from_field || field_labels_fit(member);
+    }
     [[nodiscard]] bool field_labels_fit(const FramedMember& member) const {
         const std::vector<JoistField>& fields = plan_.levels[member.origin.level].joist_fields;
         return member.origin.level < plan_.levels.size() && member.origin.index < fields.size() &&
                fields[member.origin.index].spacing * per_metre_ >= least_gap_for_labels;
     }
 
-    /// A deck's label stands at the middle of its bounding box, a little off, where members cross.
-    [[nodiscard]] Point label_place(const FramedDeck& deck) const {
-        Point low = deck.outline[0];
-        Point high = deck.outline[0];
-        for (const Point& p : deck.outline) {
-            low = {std::min(low.x, p.x), std::min(low.y, p.y)};
-            high = {std::max(high.x, p.x), std::max(high.y, p.y)};
+    [[nodiscard]] Ring on_sheet(const Ring& ring) const {
+        Ring there;
+        for (const Point& p : ring) {
+            there.push_back(on_sheet(p));
         }
+        return there;
+    }
+
+    /// A deck's id, with the share where it is not by halves, and below it the mark of how it spans. Stands
+    /// at the middle of the deck's bounding box, a little off, where members cross, if it is clear there.
+    void deck_label(const FramedDeck& deck, const ClearPlaces& places) {
+        const bool halves = deck.span != SpanKind::one_way || deck.share == Share::half;
+        const std::string text = halves ? deck.id : deck.id + " (" + std::string(name_of(deck.share)) + ')';
+        const Label label{text, "label of-deck"};
+        const Ring outline = on_sheet(deck.outline);
+        std::vector<Ring> openings;
+        for (const Ring& opening : deck.openings) {
+            openings.push_back(on_sheet(opening));
+        }
+        const Box around = box_of(std::span<const Point>(outline));
+        const Point size = around.high - around.low;
+        const SpanMark mark = span_mark(deck, std::min(size.x, size.y));
+        const double half_width = std::max(label.width() / 2, mark.half_width());
         constexpr double aside = 0.4;
-        return on_sheet({low.x + aside * (high.x - low.x), low.y + aside * (high.y - low.y)});
-    }
-
-    /// Along the strips, below the deck's label.
-    void span_arrow(const FramedDeck& deck) {
-        constexpr double longest = 24;
-        constexpr double share = 0.15; // of the deck's shorter side
-        const Ring& ring = deck.outline;
-        const auto by_x = [](Point a, Point b) { return a.x < b.x; };
-        const auto by_y = [](Point a, Point b) { return a.y < b.y; };
-        const auto [left, right] = std::minmax_element(ring.begin(), ring.end(), by_x);
-        const auto [bottom, top] = std::minmax_element(ring.begin(), ring.end(), by_y);
-        const double side = std::min(right->x - left->x, top->y - bottom->y) * per_metre_;
-        const double half_length = std::min(longest, share * side);
-        const double angle = deck.direction * std::acos(0.0) / 90;
-        const Point along{std::cos(angle), -std::sin(angle)};
-        const Point at = label_place(deck);
-        const double below = 0.6 * letter + half_length * std::abs(along.y);
+        const Point at =
+            places.find(outline, openings, {around.low.x + aside * size.x, around.high.y - aside * size.y},
+                        {{-half_width, -letter}, {half_width, mark.below() + mark.half_height()}});
         svg_.add("<path class=\"span\" data-deck=\"").text(deck.id).add("\" d=\"");
-        double_arrow(svg_, {at.x, at.y + below}, along, half_length);
+        mark.draw(svg_, {at.x, at.y + mark.below()});
         svg_.add("\"/>\n");
-    }
-
-    void label_along(Point from, Point to, std::string_view id, double size) {
-        constexpr double lift = 5; // clear of the line
-        const Point a = on_sheet(from);
-        const Point b = on_sheet(to);
-        double angle = std::atan2(b.y - a.y, b.x - a.x);
-        const double quarter = std::acos(0.0);
-        constexpr double upright = 1e-6; // radians: a vertical line's direction up to rounding
-        // Text is read from below or from the right.
-        if (angle > quarter - upright) {
-            angle -= 2 * quarter;
-        } else if (angle <= -quarter - upright) {
-            angle += 2 * quarter;
-        }
-        constexpr double clear_of_columns = 0.42; // which stand at halves and thirds
-        const Point middle = between(a, b, clear_of_columns);
-        label({middle.x + lift * std::sin(angle), middle.y - lift * std::cos(angle)}, angle, id, "label",
-              size);
-    }
-
-    static constexpr std::size_t longest_label = 24; ///< columns
-
-    /// About: letters differ.
-    [[nodiscard]] static double label_width(std::string_view id, double size) {
-        constexpr double of_letter = 0.62;
-        return of_letter * size * static_cast<double>(columns_of(fit(id, longest_label)));
-    }
-
-    /// `at`: the middle of the line that the letters stand on.
-    void label(Point at, double angle, std::string_view id, std::string_view css_class, double size) {
-        const double width = label_width(id, size);
-        // The letters' middle lies above the line they stand on.
-        constexpr double rise_of_middle = 0.35;
-        const Point rise{rise_of_middle * size * std::sin(angle), -rise_of_middle * size * std::cos(angle)};
-        at = kept_on_sheet(at + rise, width, size, angle, {width_, height_}) - rise;
-        svg_.add("<text class=\"").add(css_class).add("\" x=\"").number(at.x).add("\" y=\"").number(at.y);
-        svg_.add("\" font-size=\"").number(size).add("\"");
-        if (angle != 0) {
-            svg_.add(" transform=\"rotate(").number(angle * 90 / std::acos(0.0)).add(" ").number(at.x);
-            svg_.add(" ").number(at.y).add(")\"");
-        }
-        svg_.add(">").text(fit(id, longest_label)).add("</text>\n");
+        write(label, {at});
     }
 
     /// A round length of about a fifth of the drawing.
@@ -362,6 +378,11 @@ private:
         svg_.add("v5h").number(pixels).add("v-5\"/>\n<text x=\"").number(margin + pixels + 8).add("\" y=\"");
         svg_.number(y).add("\" fill=\"#12303f\">").number(length).add(" ");
         svg_.text(name_of(scale_.units.length)).add("</text>\n");
+        if (has_end_zones_) {
+            svg_.add("<text x=\"").number(margin).add("\" y=\"").number(y + 1.7 * letter);
+            svg_.add("\" font-size=\"").number(small_letter);
+            svg_.add("\" fill=\"#39434b\">Within dotted lines: to the end of the beam or wall</text>\n");
+        }
     }
 
     const Plan& plan_;
@@ -377,6 +398,7 @@ private:
     };
     std::vector<GridPart> grid_;
     Point low_, high_;
+    bool has_end_zones_ = false;
     double per_metre_ = 1;
     double width_ = 0, height_ = 0;
 };

@@ -33,6 +33,7 @@ void drawing_style(SvgText& svg) {
     }
     svg.add("</defs>\n<style>\n"
             ".region{stroke:#5d6b75;stroke-width:.6;fill-rule:evenodd}\n"
+            ".end-zone{fill:none;stroke:#5d6b75;stroke-width:.9;stroke-dasharray:2 3}\n"
             ".deck{fill:none;stroke:#39434b;stroke-width:1.2;stroke-dasharray:9 4}\n"
             ".opening{fill:#fff;stroke:#39434b;stroke-width:1}\n"
             ".cross{stroke:#39434b;stroke-width:.8}\n"

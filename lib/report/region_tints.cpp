@@ -1,44 +1,72 @@
 #include "report/region_tints.hpp"
 
+#include "geometry/basic.hpp"
+#include "geometry/box_tree.hpp"
+
 #include <algorithm>
 #include <array>
-#include <tuple>
+#include <cmath>
 #include <unordered_map>
 
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
 
-struct Corner {
-    Point at;
-    std::uint32_t region;
-};
+/// The edges of all regions, to be found by place.
+class RegionBorders {
+public:
+    explicit RegionBorders(std::span<const Region> regions) {
+        std::vector<Box> boxes;
+        for (std::uint32_t r = 0; r < regions.size(); ++r) {
+            for (const Ring& ring : regions[r].rings) {
+                for (std::size_t i = 0; i < ring.size(); ++i) {
+                    edges_.push_back({ring[i], ring[(i + 1) % ring.size()], r});
+                    boxes.push_back(box_of(edges_.back().a, edges_.back().b));
+                    largest_ = std::max({largest_, std::abs(ring[i].x), std::abs(ring[i].y)});
+                }
+            }
+        }
+        edges_at_ = BoxFinder(std::move(boxes));
+    }
 
-bool before(const Corner& a, const Corner& b) {
-    return std::tuple(a.at.x, a.at.y, a.region) < std::tuple(b.at.x, b.at.y, b.region);
-}
-
-/// Regions of one deck share their corners exactly, so that equal points are neighbours.
-Grouped<std::uint32_t> neighbours_of(std::span<const Region> regions) {
-    std::vector<Corner> corners;
-    for (std::uint32_t r = 0; r < regions.size(); ++r) {
-        for (const Ring& ring : regions[r].rings) {
-            for (const Point& point : ring) {
-                corners.push_back({point, r});
+    /// Calls f(r, other) for the regions whose borders touch. Where two of them share a stretch, a corner of
+    /// the one lies on an edge of the other.
+    template <class F>
+    void for_each_touch(F f) const {
+        const double noise = 4 * noise_of(largest_);
+        std::vector<std::uint32_t> near;
+        for (const Edge& edge : edges_) {
+            edges_at_.find(box_of(edge.a, edge.a).grown(noise), near);
+            for (const std::uint32_t i : near) {
+                const Edge& other = edges_[i];
+                if (other.region != edge.region && distance_to_segment(edge.a, other.a, other.b) <= noise) {
+                    f(edge.region, other.region);
+                }
             }
         }
     }
-    std::sort(corners.begin(), corners.end(), before);
+
+private:
+    struct Edge {
+        Point a, b;
+        std::uint32_t region;
+    };
+    std::vector<Edge> edges_;
+    BoxFinder edges_at_;
+    double largest_ = 0;
+};
+
+/// The regions of other carriers that touch each region.
+Grouped<std::uint32_t> neighbours_of(std::span<const Region> regions) {
     std::vector<std::pair<std::uint32_t, std::uint32_t>> pairs;
-    for (std::size_t i = 0; i < corners.size(); ++i) {
-        // Only a few regions meet at a corner; a corner of many is left to chance.
-        constexpr std::size_t most = 8;
-        for (std::size_t j = i + 1; j < corners.size() && j < i + most && corners[j].at == corners[i].at;
-             ++j) {
-            pairs.emplace_back(corners[i].region, corners[j].region);
-            pairs.emplace_back(corners[j].region, corners[i].region);
+    RegionBorders(regions).for_each_touch([&](std::uint32_t r, std::uint32_t other) {
+        if (regions[r].carrier != regions[other].carrier) {
+            pairs.emplace_back(r, other);
+            pairs.emplace_back(other, r);
         }
-    }
+    });
+    std::sort(pairs.begin(), pairs.end());
+    pairs.erase(std::unique(pairs.begin(), pairs.end()), pairs.end());
     return Grouped<std::uint32_t>::from_pairs(regions.size(), std::move(pairs));
 }
 

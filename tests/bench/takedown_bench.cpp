@@ -124,7 +124,7 @@ double peak_megabytes() {
 struct Row {
     double joists = 0;
     double bytes = 0;
-    double reference = 0, read = 0, frame = 0, share = 0, load = 0, takedown = 0, write = 0;
+    double reference = 0, read = 0, frame = 0, share = 0, load = 0, check = 0, takedown = 0, write = 0;
 };
 
 double time_of_sort(const runnel::Plan& plan) {
@@ -139,6 +139,20 @@ double time_of_sort(const runnel::Plan& plan) {
     std::sort(ends.begin(), ends.end(),
               [](runnel::Point l, runnel::Point r) { return l.y != r.y ? l.y < r.y : l.x < r.x; });
     return seconds_since(start);
+}
+
+/// The five law checkers as the takedown runs them after every split.
+void check_laws(const runnel::Plan& plan, const runnel::Framing& framing, const runnel::Sharing& sharing,
+                const runnel::LevelLoads& loads) {
+    const std::size_t broken = check_cover(framing, 0, sharing).size() +
+                               check_disjoint(framing, 0, sharing).size() +
+                               check_owners(plan, framing, 0, sharing, 4, 1).size() +
+                               check_force(plan, framing, 0, sharing, loads).size() +
+                               check_moment(plan, framing, 0, sharing, loads).size();
+    if (broken != 0) {
+        std::fprintf(stderr, "%zu laws are broken\n", broken);
+        std::exit(1);
+    }
 }
 
 Row measure(std::size_t joists) {
@@ -164,6 +178,9 @@ Row measure(std::size_t joists) {
         start = Clock::now();
         const runnel::LevelLoads loads = runnel::load_carriers(reading.plan, framing, 0, sharing);
         row.load = seconds_since(start);
+        start = Clock::now();
+        check_laws(reading.plan, framing, sharing, loads);
+        row.check = seconds_since(start);
     }
     start = Clock::now();
     const runnel::Takedown takedown = runnel::take_down(std::move(reading.plan));
@@ -187,31 +204,34 @@ double exponent(double a, double b, double n_a, double n_b) {
 
 int main(int argc, char** argv) {
     const double largest = argc > 1 ? std::strtod(argv[1], nullptr) : 1e6;
-    std::printf("%10s %8s %10s %10s %10s %10s %10s %10s %10s %9s\n", "members", "MB/s", "sort us", "read us",
-                "frame us", "share us", "load us", "all us", "write us", "peak MB");
+    std::printf("%10s %8s %10s %10s %10s %10s %10s %10s %10s %10s %9s\n", "members", "MB/s", "sort us",
+                "read us", "frame us", "share us", "load us", "check us", "all us", "write us", "peak MB");
     std::vector<Row> rows;
     for (double joists = 1e4; joists <= largest * 1.001; joists *= 10) {
         measure(static_cast<std::size_t>(joists)); // warm: first touch of memory costs more than the work
         rows.push_back(measure(static_cast<std::size_t>(joists)));
         const Row& r = rows.back();
         const double us = 1e6 / r.joists;
-        std::printf("%10.0f %8.1f %10.3f %10.3f %10.3f %10.3f %10.3f %10.3f %10.3f %9.0f\n", r.joists,
+        std::printf("%10.0f %8.1f %10.3f %10.3f %10.3f %10.3f %10.3f %10.3f %10.3f %10.3f %9.0f\n", r.joists,
                     r.bytes / r.read / 1e6, r.reference * us, r.read * us, r.frame * us, r.share * us,
-                    r.load * us, r.takedown * us, r.write * us, peak_megabytes());
-        std::printf("%10s %8s %10s %10.1f %10.1f %10.1f %10.1f %10.1f %10.1f   times the sort\n", "", "", "1",
-                    r.read / r.reference, r.frame / r.reference, r.share / r.reference, r.load / r.reference,
-                    r.takedown / r.reference, r.write / r.reference);
+                    r.load * us, r.check * us, r.takedown * us, r.write * us, peak_megabytes());
+        std::printf("%10s %8s %10s %10.1f %10.1f %10.1f %10.1f %10.1f %10.1f %10.1f   times the sort\n", "",
+                    "", "1", r.read / r.reference, r.frame / r.reference, r.share / r.reference,
+                    r.load / r.reference, r.check / r.reference, r.takedown / r.reference,
+                    r.write / r.reference);
     }
     if (rows.size() > 1) {
         const Row& a = rows.front();
         const Row& b = rows.back();
         std::printf(
             "exponent from %.0f to %.0f members: sort %.3f, read %.3f, frame %.3f, share %.3f, load %.3f, "
+            "check %.3f, "
             "takedown "
             "%.3f, write %.3f\n",
             a.joists, b.joists, exponent(a.reference, b.reference, a.joists, b.joists),
             exponent(a.read, b.read, a.joists, b.joists), exponent(a.frame, b.frame, a.joists, b.joists),
             exponent(a.share, b.share, a.joists, b.joists), exponent(a.load, b.load, a.joists, b.joists),
+            exponent(a.check, b.check, a.joists, b.joists),
             exponent(a.takedown, b.takedown, a.joists, b.joists),
             exponent(a.write, b.write, a.joists, b.joists));
     }

@@ -14,6 +14,9 @@ extern "C" int LLVMFuzzerTestOneInput(const std::uint8_t* data, std::size_t size
         return 0;
     }
     runnel::Plan plan = support::random_building(data[0]);
+    if (data[1] % 2 == 1) {
+        support::mix_rules(plan, data[0]);
+    }
     for (std::size_t i = 1; i < size && i < 9; ++i) {
         support::Random random(data[i]);
         support::spoil(plan, random);

@@ -83,8 +83,18 @@ TEST_CASE("a plan built in code is checked like one that was read, with pointers
          "/levels/0/members/0/section"},
         {"no dead case", [&](Plan& p) { p.cases[0].kind = CaseKind::live; }, ProblemCode::no_dead_case,
          "/cases"},
-        {"the lever share", [&](Plan& p) { p.settings.share = Share::lever; }, ProblemCode::not_supported_yet,
-         "/settings/share"},
+        {"corner angles of a deck on columns",
+         [&](Plan& p) {
+             p.levels[0].decks[0].span = SpanKind::columns;
+             p.levels[0].decks[0].corner_angles = CornerAngles::by_fixity;
+         },
+         ProblemCode::conflicting_keys, "/levels/0/decks/0/corner_angles"},
+        {"the continuous share of a two-way deck",
+         [&](Plan& p) {
+             p.levels[0].decks[0].span = SpanKind::two_way;
+             p.levels[0].decks[0].share = Share::continuous;
+         },
+         ProblemCode::share_has_no_effect, "/levels/0/decks/0/share"},
         {"a joist and no end of them", [&](Plan& p) { p.levels[0].joist_fields[0].spacing = 1e-8; },
          ProblemCode::too_much, "/levels/0/joist_fields/0/spacing"},
         {"more levels than the limit",

@@ -271,7 +271,53 @@ TEST_CASE("three points on one line give no plane of load") {
         {"case": "live", "q": {"at": [[0, 0], [1, 1], [2, 2]], "values": [1, 2, 3]}}]}])"));
     REQUIRE(find(reading, ProblemCode::plane_undefined) != nullptr);
     CHECK(find(reading, ProblemCode::plane_undefined)->pointer == "/levels/0/area_loads/0/q/at");
-    CHECK(find(reading, ProblemCode::not_supported_yet) != nullptr);
+    CHECK(reading.problems.size() == 1);
+}
+
+TEST_CASE("a plane of pressure is read in its own units and in the plan's") {
+    const PlanReading reading = read_plan(plan_with(R"([{"id": "L", "elevation": 3, "area_loads": [
+        {"case": "live", "q": {"at": [[0, 0], ["5000 mm", 0], [0, 2]], "values": [1, "2000 Pa", "-3 kN/m2"]}}]}])"));
+    CHECK(reading.problems.empty());
+    const AreaLoad& load = reading.plan.levels.at(0).area_loads.at(0);
+    REQUIRE(load.plane.has_value());
+    CHECK(load.plane->at[1].x == doctest::Approx(5));
+    CHECK(load.plane->values[1] == doctest::Approx(2));
+    CHECK(load.plane->values[2] == -3);
+}
+
+TEST_CASE(
+    "lever and continuous are for one-way decks: named by another, a warning; in the settings, nothing") {
+    const auto decks = [](const char* span, const char* share) {
+        return std::string(R"([{"id": "L", "elevation": 3, "decks": [
+            {"id": "D", "outline": [[0, 0], [6, 0], [6, 4], [0, 4]], "direction": 0, "span": ")") +
+               span + "\", \"share\": \"" + share + "\"}]}]";
+    };
+    for (const char* span : {"two-way", "columns"}) {
+        for (const char* share : {"lever", "continuous"}) {
+            CAPTURE(span);
+            CAPTURE(share);
+            const PlanReading reading = read_plan(plan_with(decks(span, share)));
+            REQUIRE(reading.problems.size() == 1);
+            CHECK(reading.problems[0].code == ProblemCode::share_has_no_effect);
+            CHECK(reading.problems[0].severity == Severity::warning);
+            CHECK(reading.problems[0].pointer == "/levels/0/decks/0/share");
+        }
+        CHECK(read_plan(plan_with(decks(span, "half"))).problems.empty());
+        CHECK(read_plan(plan_with(decks(span, "half"), R"(, "settings": {"share": "lever"})"))
+                  .problems.empty());
+    }
+    CHECK(read_plan(plan_with(decks("one-way", "lever"))).problems.empty());
+}
+
+TEST_CASE("corner angles are read, and are equal where nothing is said") {
+    const PlanReading reading = read_plan(plan_with(R"([{"id": "L", "elevation": 3, "decks": [
+        {"id": "D", "outline": [[0, 0], [6, 0], [6, 4], [0, 4]], "span": "two-way", "corner_angles": "by_fixity"},
+        {"id": "E", "outline": [[6, 0], [9, 0], [9, 4], [6, 4]], "span": "two-way"},
+        {"id": "F", "outline": [[9, 0], [12, 0], [12, 4], [9, 4]], "direction": 0, "corner_angles": "equal"}]}])"));
+    CHECK(reading.problems.empty());
+    const std::vector<Deck>& decks = reading.plan.levels.at(0).decks;
+    CHECK(decks.at(0).corner_angles == CornerAngles::by_fixity);
+    CHECK(decks.at(1).corner_angles == CornerAngles::equal);
 }
 
 TEST_CASE("problems that only have a pointer are found in the text, absent ones at what encloses them") {

@@ -340,7 +340,69 @@ private:
     std::vector<std::array<double, 4>> openings_; ///< of the storey being drawn
 };
 
+/// A number that goes with a name, the same on every machine (FNV-1a).
+std::uint64_t number_of(const std::string& name) {
+    std::uint64_t hash = 14695981039346656037ULL;
+    for (const char c : name) {
+        hash = (hash ^ static_cast<unsigned char>(c)) * 1099511628211ULL;
+    }
+    return hash;
+}
+
+/// Whether a continuous strip over the deck's joists has spans of like length: strips along the bay's sides,
+/// no field with its odd last spacing.
+bool is_regular(const Level& level, const Deck& deck, double turned) {
+    const double along = std::abs(std::remainder(*deck.direction - turned, 90.0));
+    const bool field = std::any_of(level.joist_fields.begin(), level.joist_fields.end(),
+                                   [&](const JoistField& f) { return f.id == "J" + deck.id; });
+    return along < 1e-9 && !field;
+}
+
+void draw_rule(const Level& level, Deck& deck, Random& random, double turned) {
+    const double lot = random.fraction();
+    if (lot < 0.3) {
+        deck.span = SpanKind::two_way;
+        deck.corner_angles = random.chance(0.4) ? CornerAngles::by_fixity : CornerAngles::equal;
+    } else if (lot < 0.45) {
+        deck.span = SpanKind::columns;
+    } else if (lot < 0.65 && deck.openings.empty()) {
+        deck.share = Share::lever;
+    } else if (lot < 0.85 && deck.openings.empty() && is_regular(level, deck, turned)) {
+        deck.share = Share::continuous;
+    }
+    if (deck.span != SpanKind::one_way) {
+        deck.direction.reset();
+    }
+}
+
 } // namespace
+
+void mix_rules(Plan& plan, std::uint64_t seed, const Placing& placing) {
+    const double a = placing.degrees * std::numbers::pi / 180;
+    const auto at = [&](double x, double y) {
+        return Point{placing.shift.x + x * std::cos(a) - y * std::sin(a),
+                     placing.shift.y + x * std::sin(a) + y * std::cos(a)};
+    };
+    for (Level& level : plan.levels) {
+        for (Deck& deck : level.decks) {
+            Random random(seed ^ number_of(level.id + "/" + deck.id));
+            draw_rule(level, deck, random, placing.degrees);
+        }
+        Random random(seed ^ number_of(level.id));
+        AreaLoad drift;
+        drift.case_id = random.chance(0.5) ? "s" : "g";
+        drift.plane = PlaneOfLoad{{at(0, 0), at(10, 0), at(0, 10)},
+                                  {random.between(1, 3), random.between(1, 4), random.between(1, 4)}};
+        if (random.chance(0.5)) {
+            const double x = random.between(-1, 6);
+            const double y = random.between(-1, 6);
+            drift.outline = {at(x, y), at(x + 4, y - 0.5), at(x + 2, y + 1), at(x + 3, y + 5)};
+        }
+        drift.origin.level = level.origin.level;
+        drift.origin.index = static_cast<std::uint32_t>(level.area_loads.size());
+        level.area_loads.push_back(drift);
+    }
+}
 
 namespace {
 
@@ -356,7 +418,7 @@ void drop_one(std::vector<T>& list, Random& random) {
 void spoil(Plan& plan, Random& random) {
     Level& level =
         plan.levels[static_cast<std::size_t>(random.whole(0, static_cast<int>(plan.levels.size()) - 1))];
-    switch (random.whole(0, 11)) {
+    switch (random.whole(0, 13)) {
     case 0:
         drop_one(plan.columns, random);
         break;
@@ -419,6 +481,21 @@ void spoil(Plan& plan, Random& random) {
             if (!deck.outline.empty() && random.chance(0.3)) {
                 deck.outline.insert(deck.outline.begin() + 1, deck.outline.front());
             }
+        }
+        break;
+    case 11:
+        for (Deck& deck : level.decks) {
+            deck.span = static_cast<SpanKind>(random.whole(0, 2));
+            deck.share = static_cast<Share>(random.whole(0, 2));
+            deck.corner_angles = static_cast<CornerAngles>(random.whole(0, 1));
+            deck.direction = random.between(-90, 90);
+        }
+        break;
+    case 12:
+        for (AreaLoad& load : level.area_loads) {
+            load.plane =
+                PlaneOfLoad{{Point{0, 0}, Point{random.between(1, 9), 0}, Point{0, random.between(1, 9)}},
+                            {random.between(-2, 5), random.between(-2, 5), random.between(-2, 5)}};
         }
         break;
     default:

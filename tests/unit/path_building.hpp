@@ -215,7 +215,9 @@ private:
         for (const auto& [carrier, piece] : part.areas) {
             pieces.emplace_back(sharing.number_of(carrier), piece);
             areas.area[sharing.number_of(carrier)] +=
-                piece.to > piece.from ? (piece.to - piece.from) * piece.start : piece.start;
+                piece.to > piece.from
+                    ? (piece.to - piece.from) * ((piece.start + piece.end) / 2 - piece.bulge / 6)
+                    : piece.start;
         }
         areas.pieces = Grouped<CarrierAreas::Piece>::from_pairs(sharing.carrier_count(), std::move(pieces));
         return areas;

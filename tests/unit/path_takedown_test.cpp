@@ -197,6 +197,23 @@ TEST_CASE("a column standing on a girder is carried by it, with the area and flo
     CHECK(t.balance[live].applied.force == Approx(24));
 }
 
+TEST_CASE("an area under a parabola is divided at the middle of the span") {
+    Building building;
+    const auto roof = building.level("roof", 3);
+    const Carrier c1 = building.column("C1", {0, 0}, roof);
+    const Carrier c2 = building.column("C2", {10, 0}, roof);
+    const Carrier beam = building.member(roof, "B1", {0, 0}, {10, 0});
+    building.bears(roof, beam, 0, c1);
+    building.bears(roof, beam, 10, c2);
+    // From 2 to 8, over x = 0 to 1: breadth 1 + 2 x + 6 x (1 - x). Up to the middle 6 (1/2 + 1/4) + 36 / 12,
+    // in all 6 (1 + 1) + 36 / 6.
+    building.parts[roof].areas.push_back({beam, {2, 8, 1, 3, -6}});
+    const Takedown t = building.take_down();
+    CHECK(t.columns[c1.index].lifts[0].tributary_area == Approx(7.5));
+    CHECK(t.columns[c2.index].lifts[0].tributary_area == Approx(10.5));
+    CHECK(t.levels[roof].region_area[beam.index] == Approx(18));
+}
+
 TEST_CASE("a column standing on a column passes straight through, not counted on the level") {
     Building building;
     const auto roof = building.level("roof", 6);

@@ -1,0 +1,112 @@
+#include "support/deck_support.hpp"
+
+#include <doctest/doctest.h>
+
+#include <cmath>
+
+using namespace runnel;
+
+// Each law checker must see what it is there for: splits and loads broken on purpose, one fault at a time.
+
+namespace {
+
+/// Three beams under a strip of floor, 0 to 8 m, 5 m broad.
+support::HandFramed floor_on_three_beams() {
+    support::HandFramed f;
+    f.add_member({0, 0}, {0, 5});
+    f.add_member({4, 0}, {4, 5});
+    f.add_member({8, 0}, {8, 5});
+    f.add_deck({{0, 0}, {8, 0}, {8, 5}, {0, 5}}, 0);
+    f.add_area_load("live", 3);
+    return f;
+}
+
+/// The cell of a beam that begins at a place along the strips and has an area.
+std::size_t cell_from(const Sharing& sharing, double along) {
+    for (std::size_t c = 0; c < sharing.cells.size(); ++c) {
+        const Cell& cell = sharing.cells[c];
+        if (std::abs(cell.low.start - along) < 1e-9 && cell.high.start - cell.low.start > 1e-6) {
+            return c;
+        }
+    }
+    FAIL("no such cell");
+    return 0;
+}
+
+ProblemCode only_code(const std::vector<Problem>& problems) {
+    REQUIRE_FALSE(problems.empty());
+    for (const Problem& problem : problems) {
+        CHECK(problem.code == problems.front().code);
+        CHECK(problem.point.has_value());
+        CHECK(problem.ids.front() == "D0");
+    }
+    return problems.front().code;
+}
+
+} // namespace
+
+TEST_CASE("a sound split and its loads hold all laws") {
+    const support::HandFramed f = floor_on_three_beams();
+    const Sharing sharing = f.share();
+    const LevelLoads loads = f.load(sharing);
+    CHECK(check_cover(f.framing, 0, sharing).empty());
+    CHECK(check_disjoint(f.framing, 0, sharing).empty());
+    CHECK(check_owners(f.plan, f.framing, 0, sharing, 400, 1).empty());
+    CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+    CHECK(check_moment(f.plan, f.framing, 0, sharing, loads).empty());
+}
+
+TEST_CASE("a cell too narrow breaks the cover") {
+    const support::HandFramed f = floor_on_three_beams();
+    Sharing sharing = f.share();
+    sharing.cells[cell_from(sharing, 2)].high.start -= 1e-6;
+    CHECK(only_code(check_cover(f.framing, 0, sharing)) == ProblemCode::cover_broken);
+}
+
+TEST_CASE("cells that reach into each other are seen, though areas add up") {
+    const support::HandFramed f = floor_on_three_beams();
+    Sharing sharing = f.share();
+    Cell& cell = sharing.cells[cell_from(sharing, 2)];
+    cell.low.start -= 1e-3;  // into its neighbour ...
+    cell.high.start -= 1e-3; // ... and as much less on the other side
+    CHECK(check_cover(f.framing, 0, sharing).empty());
+    CHECK(only_code(check_disjoint(f.framing, 0, sharing)) == ProblemCode::cells_overlap);
+}
+
+TEST_CASE("a bulge counts as area and as overlap") {
+    const support::HandFramed f = floor_on_three_beams();
+    Sharing sharing = f.share();
+    sharing.cells[cell_from(sharing, 0)].high.bulge = -0.5; // bulges out into the next cell
+    CHECK(only_code(check_cover(f.framing, 0, sharing)) == ProblemCode::cover_broken);
+    CHECK(only_code(check_disjoint(f.framing, 0, sharing)) == ProblemCode::cells_overlap);
+}
+
+TEST_CASE("a cell given to the wrong carrier has a wrong owner") {
+    const support::HandFramed f = floor_on_three_beams();
+    Sharing sharing = f.share();
+    sharing.transfers[cell_from(sharing, 0)].front().carrier = 1;
+    CHECK(only_code(check_owners(f.plan, f.framing, 0, sharing, 400, 1)) == ProblemCode::owner_broken);
+}
+
+TEST_CASE("a load that is lost or moved on its way is seen") {
+    support::HandFramed f = floor_on_three_beams();
+    f.level().decks[0].share = Share::lever;
+    Sharing sharing = f.share();
+    LevelLoads loads = f.load(sharing);
+    REQUIRE_FALSE(loads.lines[1].empty());
+    loads.lines[1].front().piece.c[0] += 1e-6;
+    CHECK(only_code(check_force(f.plan, f.framing, 0, sharing, loads)) == ProblemCode::force_broken);
+
+    loads = f.load(sharing);
+    loads.lines[0].front().piece.c[0] += 1e-3;
+    loads.lines[2].front().piece.c[0] += 1e-3;
+    loads.lines[1].front().piece.c[0] -= 2e-3;
+    CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+    CHECK(
+        check_moment(f.plan, f.framing, 0, sharing, loads).empty()); // even on both sides: the place is kept
+
+    loads.lines[0].front().piece.c[0] += 1e-3;
+    loads.lines[2].front().piece.c[0] -= 1e-3;
+    CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+    CHECK(only_code(check_moment(f.plan, f.framing, 0, sharing, loads)) == ProblemCode::moment_broken);
+}

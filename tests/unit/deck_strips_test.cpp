@@ -1,0 +1,454 @@
+#include "support/deck_support.hpp"
+
+#include "deck/strips_chains.hpp"
+
+#include <doctest/doctest.h>
+
+#include <algorithm>
+
+using namespace runnel;
+using doctest::Approx;
+using support::HandFramed;
+using support::Motion;
+
+namespace {
+
+const std::vector<Motion> motions{{0, {}}, {17, {}}, {17, {1e5, -7e4}}, {90, {3, 4}}, {-128.5, {-2e5, 1e5}}};
+constexpr std::uint32_t live = 1;
+
+/// A deck of breadth 4 between x = low and x = high, along x, on joists across it.
+HandFramed floor_on(const std::vector<double>& joists, double low, double high, Share share,
+                    const Motion& move = {}) {
+    HandFramed f;
+    for (const double x : joists) {
+        f.add_member(move({x, 0}), move({x, 4}));
+    }
+    f.add_deck(move(Ring{{low, 0}, {high, 0}, {high, 4}, {low, 4}}), move.degrees);
+    f.level().decks[0].share = share;
+    return f;
+}
+
+/// The only line of a carrier, which has to be even from end to end: kN/m.
+double even_line(const LevelLoads& loads, std::uint32_t carrier) {
+    REQUIRE(loads.lines[carrier].size() == 1);
+    const LinePiece& piece = loads.lines[carrier][0].piece;
+    CHECK(piece.from == Approx(0).epsilon(1e-9));
+    CHECK(piece.to == Approx(4).epsilon(1e-9));
+    CHECK(piece.at(piece.to) == Approx(piece.c[0]).epsilon(1e-8));
+    return piece.c[0];
+}
+
+const DeckBalance& balance_of(const LevelLoads& loads, std::uint32_t deck, std::uint32_t load_case) {
+    const auto it = std::find_if(loads.balance.begin(), loads.balance.end(), [&](const DeckBalance& row) {
+        return row.deck == deck && row.load_case == load_case;
+    });
+    REQUIRE(it != loads.balance.end());
+    return *it;
+}
+
+void check_kept(const LevelLoads& loads) {
+    for (const DeckBalance& row : loads.balance) {
+        CHECK(row.shared.force == Approx(row.applied.force).epsilon(1e-9));
+        CHECK(row.shared.moment.x == Approx(row.applied.moment.x).epsilon(1e-9));
+        CHECK(row.shared.moment.y == Approx(row.applied.moment.y).epsilon(1e-9));
+    }
+}
+
+} // namespace
+
+TEST_CASE("lever: an overhang's load presses on its carrier and lifts the one behind") {
+    // By moments about the near carrier: w a^2 / 2 / L = 10 x 2^2 / 2 / 6 = 3.33 up at the far one.
+    for (const Motion& move : motions) {
+        HandFramed f = floor_on({0, 6}, 0, 8, Share::lever, move);
+        f.add_area_load("live", 10, move(Ring{{6, 0}, {8, 0}, {8, 4}, {6, 4}}));
+        const Sharing sharing = f.share();
+        CHECK(sharing.problems.empty());
+        const LevelLoads loads = f.load(sharing);
+        CHECK(even_line(loads, 0) == Approx(-10.0 / 3).epsilon(1e-9));
+        CHECK(even_line(loads, 1) == Approx(20 + 10.0 / 3).epsilon(1e-9));
+        CHECK(loads.curve_error == 0);
+        check_kept(loads);
+    }
+}
+
+TEST_CASE("lever: regions stay the halves while the loads follow statics") {
+    HandFramed f = floor_on({0, 6}, 0, 8, Share::lever);
+    f.add_area_load("live", 10);
+    const Sharing sharing = f.share();
+    const std::vector<Region> regions = regions_of(sharing);
+    REQUIRE(regions.size() == 2);
+    CHECK(regions[0].area == Approx(12));
+    CHECK(regions[1].area == Approx(20));
+    CHECK(check_owners(f.plan, f.framing, 0, sharing, 200, 7).empty());
+    const LevelLoads loads = f.load(sharing);
+    CHECK(even_line(loads, 0) == Approx(10 * (8 * 2.0 / 6)).epsilon(1e-12)); // resultant 80 at 4 - 8/2 + 4
+    CHECK(even_line(loads, 1) == Approx(10 * (8 * 4.0 / 6)).epsilon(1e-12));
+}
+
+TEST_CASE("lever: a load on part of a span goes to the nearer carrier for the most") {
+    // A band 1 m wide at 1..2 of a span of 6: resultant at 1.5, so a quarter to the far carrier.
+    HandFramed f = floor_on({0, 6}, 0, 6, Share::lever);
+    f.add_area_load("live", 4, Ring{{1, 0}, {2, 0}, {2, 4}, {1, 4}});
+    const LevelLoads loads = f.load(f.share());
+    CHECK(even_line(loads, 0) == Approx(3).epsilon(1e-12));
+    CHECK(even_line(loads, 1) == Approx(1).epsilon(1e-12));
+}
+
+TEST_CASE("continuous: strips over equal and unequal spans give the reactions of beam tables") {
+    // Common beam tables: two spans 0.375, 1.25, 0.375; three 0.4, 1.1, 1.1, 0.4; four 0.393, 1.143, 0.929
+    // (11/28, 8/7, 13/14) of w L. 6 + 4 m: M = -w (6^3 + 4^3) / (8 x 10) = -3.5 w.
+    struct Row {
+        std::vector<double> joists;
+        std::vector<double> expected; ///< for w = 1
+    };
+    const std::vector<Row> rows{
+        {{0, 5, 10}, {0.375 * 5, 1.25 * 5, 0.375 * 5}},
+        {{0, 6, 10}, {3 - 3.5 / 6, 5 + 3.5 / 6 + 3.5 / 4, 2 - 3.5 / 4}},
+        {{0, 2, 4, 6}, {0.8, 2.2, 2.2, 0.8}},
+        {{0, 1, 2, 3, 4}, {11.0 / 28, 8.0 / 7, 13.0 / 14, 8.0 / 7, 11.0 / 28}},
+    };
+    for (const Row& row : rows) {
+        for (const Motion& move : motions) {
+            HandFramed f = floor_on(row.joists, 0, row.joists.back(), Share::continuous, move);
+            f.add_area_load("live", 1);
+            const Sharing sharing = f.share();
+            CHECK(sharing.problems.empty());
+            REQUIRE(sharing.strips.size() == 1);
+            const LevelLoads loads = f.load(sharing);
+            for (std::uint32_t c = 0; c < row.expected.size(); ++c) {
+                CHECK(even_line(loads, c) == Approx(row.expected[c]).epsilon(1e-8));
+            }
+            CHECK(loads.curve_error == 0);
+            check_kept(loads);
+        }
+    }
+    HandFramed f = floor_on({0, 6, 10}, 0, 10, Share::continuous);
+    f.add_area_load("live", 1);
+    const LevelLoads loads = f.load(f.share());
+    CHECK(even_line(loads, 0) == Approx(2.4167).epsilon(1e-4));
+    CHECK(even_line(loads, 1) == Approx(6.4583).epsilon(1e-4));
+    CHECK(even_line(loads, 2) == Approx(1.125).epsilon(1e-12));
+}
+
+TEST_CASE("continuous: a load on one of two spans lifts the far end") {
+    // Common beam tables, one of two equal spans loaded: 7/16, 5/8, -1/16 of w L.
+    HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+    f.add_area_load("live", 1, Ring{{0, 0}, {4, 0}, {4, 4}, {0, 4}});
+    const LevelLoads loads = f.load(f.share());
+    CHECK(even_line(loads, 0) == Approx(4 * 7.0 / 16).epsilon(1e-12));
+    CHECK(even_line(loads, 1) == Approx(4 * 5.0 / 8).epsilon(1e-12));
+    CHECK(even_line(loads, 2) == Approx(-4.0 / 16).epsilon(1e-12));
+}
+
+TEST_CASE("continuous: an overhang turns into a moment that halves and changes sign") {
+    // An overhang of 1 m beside two spans of 4: M1 = -w / 2; M2 = -M1 h / (2 (h + h)) = w / 8 from it alone.
+    HandFramed f = floor_on({1, 5, 9}, 0, 9, Share::continuous);
+    f.add_area_load("live", 8, Ring{{0, 0}, {1, 0}, {1, 4}, {0, 4}});
+    const LevelLoads loads = f.load(f.share());
+    CHECK(even_line(loads, 0) == Approx(8 + (1.0 + 4.0) / 4).epsilon(1e-12));
+    CHECK(even_line(loads, 1) == Approx(-(1.0 + 4.0) / 4 - 1.0 / 4).epsilon(1e-12));
+    CHECK(even_line(loads, 2) == Approx(1.0 / 4).epsilon(1e-12));
+    check_kept(loads);
+}
+
+TEST_CASE("continuous: an opening interrupts the beam, a joist that ends cuts it at its end") {
+    HandFramed f;
+    for (const double x : {0.0, 3.0, 5.0, 8.0}) {
+        f.add_member({x, 0}, {x, 4});
+    }
+    f.add_deck({{0, 0}, {8, 0}, {8, 4}, {0, 4}}, 0, {{{3, 1}, {3, 3}, {5, 3}, {5, 1}}});
+    f.level().decks[0].share = Share::continuous;
+    f.add_area_load("live", 1);
+    const Sharing sharing = f.share();
+    CHECK(sharing.problems.empty());
+    std::vector<std::pair<double, std::size_t>> found; // level, carriers
+    for (std::size_t s = 0; s < sharing.strips.size(); ++s) {
+        found.emplace_back(sharing.strips[s].from, sharing.strip_carriers[s].size());
+    }
+    std::sort(found.begin(), found.end());
+    const std::vector<std::pair<double, std::size_t>> expected{{0, 4}, {1, 2}, {1, 2}, {3, 4}};
+    CHECK(found == expected);
+    const LevelLoads loads = f.load(sharing);
+    check_kept(loads);
+    // Spans of 3, 2, 3: M (2 x 5 + 2) = -(27 + 8) / 4.
+    const double moment = 35.0 / 48;
+    CHECK(support::total(loads.lines[1], live) == Approx(2 * 1.5 + 2 * (2.5 + moment / 3)).epsilon(1e-12));
+    CHECK(support::total(loads.lines[0], live) == Approx(2 * 1.5 + 2 * (1.5 - moment / 3)).epsilon(1e-12));
+}
+
+TEST_CASE("a joist that stops half-way cuts its own chains only") {
+    HandFramed f;
+    f.add_member({0, 0}, {0, 4});
+    f.add_member({2, 0}, {2, 2});
+    f.add_member({4, 0}, {4, 4});
+    f.add_member({8, 0}, {8, 4});
+    f.add_deck({{0, 0}, {8, 0}, {8, 4}, {0, 4}}, 0);
+    f.level().decks[0].share = Share::continuous;
+    const Sharing sharing = f.share();
+    REQUIRE(sharing.strips.size() == 2);
+    CHECK(sharing.strip_carriers[0].size() == 4);
+    CHECK(sharing.strip_carriers[1].size() == 3);
+    CHECK(sharing.strips[1].from == Approx(2));
+}
+
+TEST_CASE("a strip on one carrier alone is an error under lever and continuous, with area and place") {
+    for (const Share share : {Share::lever, Share::continuous}) {
+        HandFramed f;
+        f.add_member({1, 0}, {1, 4});
+        f.add_member({5, 0}, {5, 2});
+        f.add_deck({{0, 0}, {8, 0}, {8, 4}, {0, 4}}, 0);
+        f.level().decks[0].share = share;
+        f.add_area_load("live", 1);
+        const Sharing sharing = f.share();
+        // Above y = 2 all strips hang on the first joist; below, 3 m overhang a back span of 4 m, by statics.
+        REQUIRE(sharing.problems.size() == 1);
+        CHECK(sharing.problems[0].code == ProblemCode::strip_unstable);
+        CHECK(sharing.problems[0].severity == Severity::error);
+        CHECK(sharing.problems[0].message.find("16 m2") != std::string::npos);
+        REQUIRE(sharing.problems[0].point);
+        CHECK(sharing.problems[0].point->y == Approx(3));
+        // Nothing is lost all the same.
+        CHECK(balance_of(f.load(sharing), 0, live).shared.force == Approx(32));
+    }
+}
+
+TEST_CASE("a back span shorter than a twentieth of its overhang is an error, one as long is none") {
+    for (const double back : {0.09, 0.11}) {
+        HandFramed f = floor_on({0, back}, 0, back + 2, Share::lever);
+        const Sharing sharing = f.share();
+        if (back < 0.1) {
+            REQUIRE(sharing.problems.size() == 1);
+            CHECK(sharing.problems[0].code == ProblemCode::strip_unstable);
+            CHECK(sharing.problems[0].message.find("8 m2") != std::string::npos);
+        } else {
+            CHECK(sharing.problems.empty());
+        }
+    }
+}
+
+TEST_CASE("a span shorter than a twentieth of the one beside it is an error under continuous only") {
+    for (const Share share : {Share::lever, Share::continuous}) {
+        HandFramed f = floor_on({0, 4, 4.15}, 0, 4.15, share);
+        f.add_area_load("live", 1);
+        const Sharing sharing = f.share();
+        CHECK(has_errors(sharing.problems) == (share == Share::continuous));
+        if (share == Share::continuous) {
+            REQUIRE(sharing.problems.size() == 1);
+            CHECK(sharing.problems[0].code == ProblemCode::strip_unstable);
+            CHECK(sharing.problems[0].ids.size() == 4);
+        }
+        check_kept(f.load(sharing)); // what is left of statics is kept too
+    }
+}
+
+TEST_CASE("an overhang in front of two back spans is cut at their level") {
+    HandFramed f;
+    f.add_member({6, 0}, {6, 4});
+    f.add_member({0, 0}, {0, 4});
+    f.add_member({3, 0}, {3, 1.5});
+    f.add_deck({{0, 0}, {7, 0}, {7, 4}, {0, 4}}, 0);
+    f.level().decks[0].share = Share::lever;
+    f.add_area_load("live", 2, Ring{{6, 0}, {7, 0}, {7, 4}, {6, 4}});
+    const Sharing sharing = f.share();
+    CHECK(sharing.problems.empty());
+    const LevelLoads loads = f.load(sharing);
+    // w / 2 over the back span, per metre: 1 / 3 up to 1.5 m, 1 / 6 beyond.
+    CHECK(support::total(loads.lines[2], live) == Approx(-1.5 / 3).epsilon(1e-12));
+    CHECK(support::total(loads.lines[1], live) == Approx(-2.5 / 6).epsilon(1e-12));
+    CHECK(support::total(loads.lines[0], live) == Approx(8 + 1.5 / 3 + 2.5 / 6).epsilon(1e-12));
+    check_kept(loads);
+}
+
+TEST_CASE("lever on skew carriers: an even load on whole bays stays linear, one on a part is fitted") {
+    HandFramed f;
+    f.add_member({0, 0}, {-1, 4});
+    f.add_member({4, 0}, {6, 4});
+    f.add_deck({{0, 0}, {4, 0}, {6, 4}, {-1, 4}}, 0);
+    f.level().decks[0].share = Share::lever;
+    f.add_area_load("live", 1);
+    const Sharing sharing = f.share();
+    LevelLoads loads = f.load(sharing);
+    CHECK(loads.curve_error == 0);
+    REQUIRE(loads.lines[0].size() == 1);
+    const LinePiece line = loads.lines[0][0].piece;
+    const double slope = std::hypot(1, 4) / 4; // metres of carrier a metre across
+    CHECK(line.c[0] == Approx(2 / slope).epsilon(1e-12));
+    CHECK(line.at(line.to) == Approx(3.5 / slope).epsilon(1e-12));
+    CHECK(line.c[2] == 0);
+    check_kept(loads);
+
+    f.add_area_load("live", 3, Ring{{1, 0}, {2, 0}, {2, 4}, {1, 4}});
+    loads = f.load(sharing);
+    CHECK(loads.curve_error > 0);
+    CHECK(loads.curve_error < 1e-8);
+    check_kept(loads);
+    // At half height the span runs from -0.5 to 5: the zone's middle lies at 2 of 5.5.
+    double half = 0;
+    for (const CarrierLine& one : loads.lines[1]) {
+        const double s = std::hypot(2, 4) / 2;
+        if (one.piece.from <= s && s < one.piece.to) {
+            half += one.piece.at(s);
+        }
+    }
+    const double along = std::hypot(2, 4) / 4;
+    CHECK(half * along == Approx(5.5 / 2 + 3 * 2 / 5.5).epsilon(1e-9));
+}
+
+TEST_CASE("loads that stand on strips follow the strips") {
+    SUBCASE("a point on a lever's overhang lifts the far carrier") {
+        HandFramed f = floor_on({0, 6}, 0, 8, Share::lever);
+        f.level().point_loads.push_back({"live", 9, {8, 1}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        REQUIRE(loads.points[0].size() == 1);
+        CHECK(loads.points[0][0].p == Approx(-3));
+        CHECK(loads.points[0][0].station == Approx(1));
+        CHECK(loads.points[1][0].p == Approx(12));
+    }
+    SUBCASE("a point in the middle of the first of two equal spans: 13/32, 11/16, -3/32") {
+        // Common beam tables.
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().point_loads.push_back({"live", 32, {2, 3}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        CHECK(loads.points[0][0].p == Approx(13));
+        CHECK(loads.points[1][0].p == Approx(22));
+        CHECK(loads.points[2][0].p == Approx(-3));
+        CHECK(loads.points[2][0].station == Approx(3));
+    }
+    SUBCASE("a line across the strips puts lines on the carriers") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 32, 32, {2, 1}, {2, 3}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        REQUIRE(loads.lines[0].size() == 1);
+        CHECK(loads.lines[0][0].piece.from == Approx(1));
+        CHECK(loads.lines[0][0].piece.to == Approx(3));
+        CHECK(loads.lines[0][0].piece.c[0] == Approx(13));
+        CHECK(loads.lines[2][0].piece.c[0] == Approx(-3));
+        CHECK(loads.points[0].empty());
+        check_kept(loads);
+    }
+    SUBCASE("a line along the strips puts points on the carriers") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {0, 2.5}, {8, 2.5}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        REQUIRE(loads.points[1].size() == 1);
+        CHECK(loads.points[0][0].p == Approx(1.5));
+        CHECK(loads.points[1][0].p == Approx(5));
+        CHECK(loads.points[2][0].p == Approx(1.5));
+        CHECK(loads.points[1][0].station == Approx(2.5));
+        check_kept(loads);
+    }
+    SUBCASE("a line along the strips but for millimetres keeps its moment all the same") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {0.2, 2.5}, {3.6, 2.504}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        // Of the far carrier's part the centre lies within the line; it is lifted.
+        REQUIRE(loads.points[2].size() == 1);
+        CHECK(loads.points[2][0].p < 0);
+        check_kept(loads);
+    }
+    SUBCASE("a part that pushes both ways is two points") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {4, 2.5}, {12, 2.504}, {}, {}});
+        f.level().decks[0].outline = {{0, 0}, {12, 0}, {12, 4}, {0, 4}};
+        const LevelLoads loads = f.load(f.share());
+        check_kept(loads);
+        // The far carrier: -1/16 x 4 from the span, 1/4 x 2 x 8 / 4 from the overhang.
+        REQUIRE(loads.points[0].size() == 2);
+        CHECK(loads.points[0][0].p + loads.points[0][1].p == Approx(-0.25 + 0.5));
+    }
+    SUBCASE("a line from corner to corner over lever spans is shared by quadratics") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::lever);
+        f.level().line_loads.push_back({"live", 1, 3, {0.5, 0.5}, {7.5, 3.5}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        CHECK(loads.curve_error == 0);
+        check_kept(loads);
+    }
+    SUBCASE("and over continuous spans by quartics") {
+        HandFramed f = floor_on({0, 3, 8}, 0, 9, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 3, {0.5, 0.5}, {8.5, 3.5}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        CHECK(loads.curve_error == 0);
+        check_kept(loads);
+    }
+}
+
+TEST_CASE("continuous: a zone with a slanting border is an exact quartic") {
+    HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+    f.add_area_load("live", 1, Ring{{0, 0}, {1, 0}, {3, 4}, {0, 4}});
+    const LevelLoads loads = f.load(f.share());
+    CHECK(loads.curve_error == 0);
+    check_kept(loads);
+    REQUIRE(loads.lines[2].size() == 1);
+    // The far carrier takes -x (1 - x^2) / 4 of a load at fraction x of the first span; a band up to fraction
+    // z brings 4 x the integral, z^4 / 4 - z^2 / 2, over four.
+    for (const double s : {0.0, 1.0, 2.5, 4.0}) {
+        const double z = (1 + s / 2) / 4;
+        CHECK(loads.lines[2][0].piece.at(s) == Approx(z * z * z * z / 4 - z * z / 2).epsilon(1e-11));
+    }
+}
+
+TEST_CASE("what the drawing is off by goes to a point of the nearest carrier, and its way is told") {
+    for (const Share share : {Share::lever, Share::continuous}) {
+        HandFramed f;
+        f.add_member({0, 0}, {0, 5});
+        f.add_member({2, 0}, {2, 5});
+        f.add_member({4, 0}, {4, 5});
+        // The edge rises by 3 mm, within `snap`, from joist to joist and past the ends of all.
+        f.add_deck({{0, 0}, {4, 0}, {4, 5}, {2.9, 5.003}, {0, 5}}, 0);
+        f.level().decks[0].share = share;
+        f.add_area_load("live", 2);
+        f.add_area_load("live", 1, Ring{{3, 4}, {5, 4}, {5, 6}, {3, 6}});
+        const Sharing sharing = f.share();
+        CHECK(sharing.problems.empty());
+        const LevelLoads loads = f.load(sharing);
+        const DeckBalance& row = balance_of(loads, 0, live);
+        CHECK(row.shared.force == Approx(row.applied.force).epsilon(1e-14));
+        CHECK(row.moved > 0);
+        CHECK(row.moved < 0.2);               // kNm; of some 40 kN on spans of 2 m
+        REQUIRE(loads.points[1].size() == 1); // of the middle joist, the nearest
+        CHECK(loads.points[1][0].station == Approx(5).epsilon(1e-3));
+        CHECK(loads.points[1][0].p > 0);
+        CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+        CHECK(check_moment(f.plan, f.framing, 0, sharing, loads).empty());
+    }
+}
+
+TEST_CASE("a wedge of deck on two joists that meet is held by both up to its tip") {
+    HandFramed f;
+    f.add_member({0, 0}, {2, 4});
+    f.add_member({4, 0}, {2, 4});
+    f.add_deck({{0, 0}, {4, 0}, {2, 4}}, 0);
+    f.add_area_load("live", 3);
+    f.level().point_loads.push_back({"live", 1, {2, 4 - 1e-12}, {}, {}});
+    for (const Share share : {Share::lever, Share::continuous}) {
+        f.level().decks[0].share = share;
+        const Sharing sharing = f.share();
+        CHECK(sharing.problems.empty());
+        const LevelLoads loads = f.load(sharing);
+        CHECK(support::total(loads.lines[0], live) == Approx(12).epsilon(1e-12));
+        CHECK(loads.lines[0][0].piece.at(std::hypot(2, 4)) == Approx(0).epsilon(1e-12));
+        check_kept(loads);
+    }
+}
+
+TEST_CASE("a bay that begins beside another cuts its chain there and joins it") {
+    std::vector<Bay> bays(3);
+    bays[0].to = 3;
+    bays[1].from = 1;
+    bays[1].to = 2;
+    bays[2].to = 3;
+    const std::vector<BayMarks> marks{{Gap::edge, 7}, {7, Gap::edge}, {Gap::edge, 4}};
+    struct Found {
+        std::vector<std::uint32_t> bays;
+        double from, to;
+        bool operator==(const Found&) const = default;
+    };
+    std::vector<Found> found;
+    for_chains(bays, marks, [&](const Chain& chain) {
+        CHECK(chain.core == 0);
+        CHECK(chain.core_size == chain.bays.size());
+        found.push_back({{chain.bays.begin(), chain.bays.end()}, chain.from, chain.to});
+    });
+    const std::vector<Found> expected{{{0}, 0, 1}, {{0, 1}, 1, 2}, {{0}, 2, 3}, {{2}, 0, 3}};
+    CHECK(std::is_permutation(found.begin(), found.end(), expected.begin(), expected.end()));
+}
