@@ -108,6 +108,9 @@ private:
         command
             .add_option("-o,--output", request_.folder, "Also write result, tables and drawings into FOLDER")
             ->type_name("FOLDER");
+        command.add_flag("--compare-shares", request_.compare_shares,
+                         "Also show what carriers get under half, lever and continuous; with --format text "
+                         "or json");
         add_common(command);
     }
 
@@ -156,9 +159,8 @@ private:
 
     void add_common(CLI::App& command) {
         command
-            .add_option(
-                "--share", words_.share,
-                "Use this instead of the plan's setting and its decks' (lever, continuous: not built yet)")
+            .add_option("--share", words_.share,
+                        "Share one-way decks so, instead of by the plan's setting and its decks'")
             ->check(CLI::IsMember(names_in(shares)))
             ->type_name("SHARE");
         command.add_option("--units", words_.units, "Units of the output, for example m,kN or ft,kip")
@@ -278,6 +280,9 @@ private:
             if (request_.format != "csv") {
                 return "--table goes with --format csv";
             }
+        }
+        if (request_.compare_shares && request_.format == "csv") {
+            return "--compare-shares goes with --format text or json";
         }
         if (std::count(request_.files.begin(), request_.files.end(), "-") > 1) {
             return "standard input can be read once only";

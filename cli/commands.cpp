@@ -74,14 +74,6 @@ std::optional<Input> read_input(const std::string& file, const Request& request)
     if (request.share) {
         std::vector<std::string>& defaults = input.reading.plan.defaults_used;
         defaults.erase(std::remove(defaults.begin(), defaults.end(), "share"), defaults.end());
-        // The plan's own shares do not count then, so that one not built yet is no reason to refuse it.
-        std::vector<runnel::Problem>& problems = input.reading.problems;
-        problems.erase(std::remove_if(problems.begin(), problems.end(),
-                                      [](const runnel::Problem& p) {
-                                          return p.code == runnel::ProblemCode::not_supported_yet &&
-                                                 p.pointer.ends_with("/share");
-                                      }),
-                       problems.end());
     }
     return input;
 }
@@ -101,23 +93,10 @@ runnel::ReportOptions report_options(const Request& request, const Input& input)
     return options;
 }
 
-/// Whether a later phase refuses what reading refused already: the deck of a key, or the share of all decks.
-bool repeats(const runnel::Problem& later, const std::vector<runnel::Problem>& read, const Request& request) {
-    constexpr runnel::ProblemCode refused = runnel::ProblemCode::not_supported_yet;
-    return later.code == refused && std::any_of(read.begin(), read.end(), [&](const runnel::Problem& one) {
-               const bool of_all = one.pointer == "/settings/share" && !request.share;
-               return one.code == refused && (of_all || one.pointer == later.pointer ||
-                                              one.pointer.starts_with(later.pointer + '/'));
-           });
-}
-
 /// Problems of reading and of the phases after it. With errors among the first they are put in the order of
 /// the text, those without a place last.
 std::vector<runnel::Problem> together(const std::vector<runnel::Problem>& read,
-                                      std::vector<runnel::Problem> later, const Request& request) {
-    later.erase(std::remove_if(later.begin(), later.end(),
-                               [&](const runnel::Problem& p) { return repeats(p, read, request); }),
-                later.end());
+                                      std::vector<runnel::Problem> later) {
     std::vector<runnel::Problem> all = read;
     all.insert(all.end(), std::make_move_iterator(later.begin()), std::make_move_iterator(later.end()));
     if (runnel::has_errors(read)) {
@@ -161,9 +140,19 @@ runnel::Takedown take_down(Input& input, const Request& request) {
         takedown.plan = std::move(input.reading.plan);
     }
     const bool errors_of_reading = !input.usable();
-    takedown.problems = together(input.reading.problems, std::move(takedown.problems), request);
+    takedown.problems = together(input.reading.problems, std::move(takedown.problems));
     takedown.complete = takedown.complete && !errors_of_reading;
     return takedown;
+}
+
+runnel::ShareComparison compare_shares(const Input& input, const runnel::Takedown& takedown,
+                                       const Request& request) {
+    const Progress progress("comparing the shares");
+    runnel::ShareComparison shares = runnel::compare_shares(takedown, takedown_options(request));
+    for (runnel::ShareRun& run : shares.runs) {
+        runnel::locate_problems(input.text, run.problems);
+    }
+    return shares;
 }
 
 void complain_of(const std::string& file, runnel::Units units, const std::vector<runnel::Problem>& problems) {
@@ -237,7 +226,12 @@ Status takedown(const Request& request) {
         return file_trouble;
     }
     const runnel::Takedown takedown = take_down(*input, request);
-    const runnel::ReportOptions options = report_options(request, *input);
+    runnel::ReportOptions options = report_options(request, *input);
+    runnel::ShareComparison shares;
+    if (request.compare_shares && input->usable()) {
+        shares = compare_shares(*input, takedown, request);
+        options.shares = &shares;
+    }
 
     Output output = Output::standard();
     if (request.format == "json") {
@@ -245,7 +239,7 @@ Status takedown(const Request& request) {
     } else if (takedown.complete && request.format == "csv") {
         runnel::write_table(takedown, request.table.value_or(runnel::Table::reactions), options,
                             output.sink());
-    } else if (takedown.complete) {
+    } else if (takedown.complete || options.shares != nullptr) {
         runnel::write_account(takedown, options, output.sink());
     }
     bool written = output.close();

@@ -19,6 +19,7 @@ struct Request {
     std::string folder; ///< empty: none
     std::string level;  ///< empty: all
     std::optional<runnel::Share> share;
+    bool compare_shares = false;
     std::optional<runnel::Units> units;
     unsigned threads = 1;
     runnel::Document document = runnel::Document::plan;

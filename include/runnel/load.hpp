@@ -51,7 +51,8 @@ struct DeckBalance {
     ForceSum applied; ///< from zones and decks, without looking at carriers
     ForceSum shared;  ///< from the loads on carriers
     /// Under lever and continuous: a bound, kNm, of what the drawing's being off by no more than `snap` moved
-    /// (slivers whose load goes to a point, lone strips as narrow as that). 0 where all is by statics.
+    /// (slivers whose load goes to a point, lone strips as narrow as that, carriers beside the deck's edge).
+    /// 0 where all is by statics.
     double moved = 0;
 };
 

@@ -2,6 +2,7 @@
 
 #include <runnel/export.hpp>
 #include <runnel/plan.hpp>
+#include <runnel/share_comparison.hpp>
 #include <runnel/takedown.hpp>
 
 #include <cstdint>
@@ -20,6 +21,8 @@ struct ReportOptions {
     std::optional<Units> units; ///< else the plan's
     std::string digest;         ///< of the plan's text; empty: none
     bool colour = false;        ///< text account only
+    /// Shown in the account and the result document where given; of the same takedown.
+    const ShareComparison* shares = nullptr;
 };
 
 enum class Table : std::uint8_t { members, reactions, rundowns, foundations };

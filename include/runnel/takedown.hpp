@@ -51,6 +51,10 @@ struct LevelTakedown {
     std::vector<double> region_area; ///< by carrier, m2
     std::vector<double>
         tributary_area; ///< by carrier, m2: own regions and what comes through members it carries
+    /// By carrier, m2: the floor of this level on which a load is felt by the carrier. The full bays (not
+    /// halves) beside it, and of each member that bears on it the influence area of its spans on both sides
+    /// of that bearing; what comes by two ways counts once.
+    std::vector<double> influence_area;
 };
 
 /// The closing of a sum by case: applied = shared = arrived, as force and first moment about the plan's
@@ -76,6 +80,7 @@ struct Lift {
     std::uint32_t level = none;
     double height = 0;         ///< m, down to the next level it passes or to its foot
     double tributary_area = 0; ///< m2, of this level
+    double influence_area = 0; ///< m2, of this level
     double area_total = 0;     ///< m2, with the levels above
     std::uint32_t floors = 0;  ///< that bring it area
     std::vector<LiftLoad>
@@ -89,7 +94,7 @@ struct Lift {
 struct WallLift {
     std::uint32_t level = none;
     double height = 0;
-    double tributary_area = 0, area_total = 0;
+    double tributary_area = 0, influence_area = 0, area_total = 0;
     std::uint32_t floors = 0;
     double self_weight = 0;        ///< kN, whole wall
     std::vector<CarrierLine> line; ///< at its foot, own weight included; sources merged by case

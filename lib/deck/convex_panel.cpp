@@ -1,6 +1,6 @@
 #include "deck/convex_panel.hpp"
 
-#include "geometry/box_tree.hpp"
+#include "deck/panel_regions.hpp"
 #include "geometry/strip_piece.hpp"
 #include "geometry/strip_sweep.hpp"
 
@@ -24,146 +24,6 @@ Convex ring_of(const Panel& panel) {
         ring.push_back(edge.from);
     }
     return ring;
-}
-
-/// Distance from a side over its weight, inside positive.
-class WeightedDistance {
-public:
-    explicit WeightedDistance(const PanelSide& side)
-        : a_(side.a), along_((1 / (distance(side.a, side.b) * side.weight)) * (side.b - side.a)) {}
-    [[nodiscard]] double at(Point p) const { return cross(along_, p - a_); }
-
-private:
-    Point a_, along_;
-};
-
-/// Cuts a polygon where `value` changes its sign, into what is below zero and above; both have the same
-/// cutting points. Values within `noise` of zero count as zero.
-template <class Value>
-void cut_by(const Convex& polygon, const Value& value, double noise, Convex& below, Convex& above) {
-    below.clear();
-    above.clear();
-    if (polygon.empty()) {
-        return;
-    }
-    const auto at = [&](Point p) {
-        const double v = value(p);
-        return std::abs(v) <= noise ? 0.0 : v;
-    };
-    bool any_below = false;
-    bool any_above = false;
-    double here = at(polygon.front());
-    for (std::size_t i = 0; i < polygon.size(); ++i) {
-        const Point p = polygon[i];
-        const Point q = polygon[(i + 1) % polygon.size()];
-        const double there = at(q);
-        any_below = any_below || here < 0;
-        any_above = any_above || here > 0;
-        if (here <= 0) {
-            below.push_back(p);
-        }
-        if (here >= 0) {
-            above.push_back(p);
-        }
-        if ((here < 0 && there > 0) || (here > 0 && there < 0)) {
-            const Point on_line = between(p, q, here / (here - there));
-            below.push_back(on_line);
-            above.push_back(on_line);
-        }
-        here = there;
-    }
-    if (!any_above) {
-        above.clear();
-    } else if (!any_below) {
-        below.clear();
-    }
-}
-
-struct SideRegion {
-    std::size_t side = 0;
-    Convex where;
-};
-
-/// Each side's region by itself, cut free from all other sides.
-std::vector<SideRegion> regions_one_by_one(const Convex& ring, std::span<const PanelSide> sides,
-                                           double noise) {
-    std::vector<SideRegion> regions;
-    Convex below;
-    Convex above;
-    for (std::size_t i = 0; i < sides.size(); ++i) {
-        if (!sides[i].carries) {
-            continue;
-        }
-        const WeightedDistance own(sides[i]);
-        Convex region = ring;
-        for (std::size_t j = 0; j < sides.size() && !region.empty(); ++j) {
-            if (j != i && sides[j].carries) {
-                const WeightedDistance other(sides[j]);
-                cut_by(
-                    region, [&](Point p) { return own.at(p) - other.at(p); }, noise, below, above);
-                region.swap(below);
-            }
-        }
-        if (!region.empty()) {
-            regions.push_back({i, std::move(region)});
-        }
-    }
-    return regions;
-}
-
-/// The same in more pieces: each further side takes its part from those before it, so that the areas add up
-/// whatever rounding does to the borders.
-std::vector<SideRegion> regions_in_turn(const Convex& ring, std::span<const PanelSide> sides, double noise) {
-    std::vector<SideRegion> regions;
-    Convex below;
-    Convex above;
-    for (std::size_t j = 0; j < sides.size(); ++j) {
-        if (!sides[j].carries) {
-            continue;
-        }
-        if (regions.empty()) {
-            regions.push_back({j, ring});
-            continue;
-        }
-        const WeightedDistance taking(sides[j]);
-        const std::size_t before = regions.size();
-        for (std::size_t r = 0; r < before; ++r) {
-            const WeightedDistance holding(sides[regions[r].side]);
-            cut_by(
-                regions[r].where, [&](Point p) { return holding.at(p) - taking.at(p); }, noise, below, above);
-            regions[r].where.swap(below);
-            if (!above.empty()) {
-                regions.push_back({j, above});
-            }
-        }
-        std::erase_if(regions, [](const SideRegion& region) { return region.where.empty(); });
-    }
-    return regions;
-}
-
-double area_of(std::span<const SideRegion> regions) {
-    Sum area;
-    for (const SideRegion& region : regions) {
-        area.add(signed_area(region.where));
-    }
-    return area.value();
-}
-
-double perimeter_of(const Convex& ring) {
-    double perimeter = 0;
-    for (std::size_t i = 0; i < ring.size(); ++i) {
-        perimeter += distance(ring[i], ring[(i + 1) % ring.size()]);
-    }
-    return perimeter;
-}
-
-std::vector<SideRegion> regions_of(const Convex& ring, std::span<const PanelSide> sides, double noise) {
-    std::vector<SideRegion> regions = regions_one_by_one(ring, sides, noise);
-    // Between sides that are nearly in line the border is ill-defined, and two regions may see it apart.
-    if (std::abs(area_of(regions) - signed_area(ring)) > noise * perimeter_of(ring)) {
-        return regions_in_turn(ring, sides, noise);
-    }
-    return regions;
 }
 
 /// Without corners that lie on the line through their neighbours: they would only add levels.
@@ -211,11 +71,10 @@ public:
     CellMaker(const PanelDeck& deck, const Panel& panel, CarrierAxes& axes, Sharing& sharing)
         : deck_(deck), panel_(panel), axes_(axes), sharing_(sharing) {
         const Convex ring = ring_of(panel);
-        const Box box = box_of(std::span<const Point>(ring));
-        for (const Ring& opening : deck.openings) {
-            if (box_of(std::span<const Point>(opening)).meets(box)) {
-                openings_.push_back(&opening);
-            }
+        std::vector<std::uint32_t> near;
+        deck.opening_finder.find(box_of(std::span<const Point>(ring)), near);
+        for (const std::uint32_t opening : near) {
+            openings_.push_back(&deck.openings[opening]);
         }
     }
 
@@ -341,11 +200,9 @@ bool is_straight(const Panel& panel, std::size_t first, std::size_t count, doubl
 PanelSide side_of(const Panel& panel, std::size_t first, std::size_t count) {
     const std::size_t n = panel.outer.size();
     PanelSide side{
-        panel.outer[first % n].from, panel.outer[(first + count) % n].from, first % n, count, false, true, 1};
+        panel.outer[first % n].from, panel.outer[(first + count) % n].from, first % n, count, false, 1};
     for (std::size_t k = 0; k < count; ++k) {
-        const bool carried = panel.outer[(first + k) % n].carrier != none;
-        side.carries = side.carries || carried;
-        side.carries_whole = side.carries_whole && carried;
+        side.carries = side.carries || panel.outer[(first + k) % n].carrier != none;
     }
     return side;
 }
@@ -391,12 +248,15 @@ PanelDeck::PanelDeck(const FramedDeck& of_deck, std::uint32_t deck_index,
                      std::span<const LineCarrier> line_carriers, Point panel_origin, Tolerance deck_tolerance)
     : deck(of_deck), index(deck_index), carriers(line_carriers), origin(panel_origin),
       tolerance(deck_tolerance) {
+    std::vector<Box> boxes;
     for (const Ring& opening : of_deck.openings) {
         openings.emplace_back();
         for (const Point& p : opening) {
             openings.back().push_back(p - origin);
         }
+        boxes.push_back(box_of(std::span<const Point>(openings.back())));
     }
+    opening_finder = BoxFinder(std::move(boxes));
 }
 
 PanelShape shape_of(const Panel& panel, double snap) {
@@ -431,24 +291,9 @@ PanelShape shape_of(const Panel& panel, double snap) {
 void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<const PanelSide> sides,
                         CarrierAxes& axes, Sharing& sharing) {
     CellMaker cells(deck, panel, axes, sharing);
-    for (SideRegion& region : regions_of(ring_of(panel), sides, deck.tolerance.noise)) {
+    for (SideRegion& region : divide_among_sides(ring_of(panel), sides, deck.tolerance.noise)) {
         cells.add(sides[region.side], std::move(region.where));
     }
-}
-
-double area_without_openings(const PanelDeck& deck, const Panel& panel) {
-    Sum area;
-    for (const Gap& gap : sweep_strips(ring_of(panel), deck.openings, {}, deck.tolerance.noise).gaps) {
-        area.add((gap.to - gap.from) * (gap.high_start - gap.low_start + gap.high_end - gap.low_end) / 2);
-    }
-    for (const std::vector<PanelEdge>& hole : panel.holes) {
-        Ring ring;
-        for (const PanelEdge& edge : hole) {
-            ring.push_back(edge.from);
-        }
-        area.add(signed_area(ring));
-    }
-    return area.value();
 }
 
 RUNNEL_NAMESPACE_END

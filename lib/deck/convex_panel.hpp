@@ -1,6 +1,7 @@
 #pragma once
 
 #include "deck/panels.hpp"
+#include "geometry/box_tree.hpp"
 #include "geometry/convex.hpp"
 
 #include <runnel/deck.hpp>
@@ -37,8 +38,7 @@ struct PanelSide {
     std::size_t edge_count =
         0;                ///< of the panel's outer border, which goes on from its last edge to its first
     bool carries = false; ///< a carrier lies along some of it
-    bool carries_whole = false; ///< carriers lie along all of it
-    double weight = 1;          ///< distances from it are divided by this before they are compared
+    double weight = 1;    ///< distances from it are divided by this before they are compared
 };
 
 /// The sides of a convex panel, counter-clockwise; or the place (from Panels::origin) where it is not convex
@@ -57,6 +57,7 @@ struct PanelDeck {
     std::span<const LineCarrier> carriers;
     Point origin;               ///< Panels::origin
     std::vector<Ring> openings; ///< from origin
+    BoxFinder opening_finder;
     Tolerance tolerance;
 
     PanelDeck(const FramedDeck& of_deck, std::uint32_t deck_index, std::span<const LineCarrier> line_carriers,
@@ -73,8 +74,5 @@ struct PanelDeck {
 /// bays have.
 void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<const PanelSide> sides,
                         CarrierAxes& axes, Sharing& sharing);
-
-/// Area of a panel that was made without the deck's openings, less what of them lies in it.
-[[nodiscard]] double area_without_openings(const PanelDeck& deck, const Panel& panel);
 
 RUNNEL_NAMESPACE_END

@@ -1,8 +1,10 @@
 #include "deck/fixity.hpp"
 
 #include "deck/convex_panel.hpp"
+#include "deck/nearest.hpp"
 #include "deck/panels.hpp"
 #include "geometry/basic.hpp"
+#include "geometry/convex.hpp"
 #include "plan/problems.hpp"
 
 #include <algorithm>
@@ -24,6 +26,12 @@ public:
                 add(hole);
             }
         }
+        for (std::vector<std::vector<Stretch>>* side : {&left_, &right_}) {
+            for (std::vector<Stretch>& stretches : *side) {
+                std::sort(stretches.begin(), stretches.end(),
+                          [](const Stretch& l, const Stretch& r) { return l.from < r.from; });
+            }
+        }
     }
 
     /// Length of the part of a panel's edge with deck on its other side.
@@ -31,9 +39,14 @@ public:
         const bool forward = edge.station_from < edge.station_to;
         const double from = std::min(edge.station_from, edge.station_to);
         const double to = std::max(edge.station_from, edge.station_to);
+        const std::vector<Stretch>& stretches = (forward ? right_ : left_)[edge.carrier];
+        // They do not overlap: the first that matters is the first that ends behind `from`.
+        auto it =
+            std::lower_bound(stretches.begin(), stretches.end(), from,
+                             [](const Stretch& stretch, double station) { return stretch.to <= station; });
         double length = 0;
-        for (const Stretch& stretch : (forward ? right_ : left_)[edge.carrier]) {
-            length += std::max(0.0, std::min(to, stretch.to) - std::max(from, stretch.from));
+        for (; it != stretches.end() && it->from < to; ++it) {
+            length += std::min(to, it->to) - std::max(from, it->from);
         }
         return length;
     }
@@ -59,10 +72,73 @@ private:
     std::vector<std::vector<Stretch>> left_, right_; ///< by carrier
 };
 
-/// A panel that the rule does not fit.
-struct Misfit {
+/// The ring of a border without the ways there and back along carriers that end inside.
+Ring ring_without_ends(const std::vector<PanelEdge>& border, Point origin) {
+    Ring ring;
+    for (const PanelEdge& edge : border) {
+        if (ring.size() >= 2 && ring[ring.size() - 2] == edge.from) {
+            ring.pop_back();
+        } else {
+            ring.push_back(edge.from);
+        }
+    }
+    while (ring.size() >= 3 && ring[1] == ring.back()) { // the way there and back that the ring begins with
+        ring.erase(ring.begin());
+        ring.pop_back();
+    }
+    for (Point& p : ring) {
+        p = origin + p;
+    }
+    return ring;
+}
+
+bool has_carrier(const Panel& panel) {
+    const auto carries = [](const PanelEdge& edge) { return edge.carrier != none; };
+    return std::any_of(panel.outer.begin(), panel.outer.end(), carries) ||
+           std::any_of(panel.holes.begin(), panel.holes.end(), [&](const std::vector<PanelEdge>& hole) {
+               return std::any_of(hole.begin(), hole.end(), carries);
+           });
+}
+
+/// A point well inside a panel, from Panels::origin.
+Point point_inside(const Panel& panel, double noise) {
+    std::vector<Ring> holes;
+    for (const std::vector<PanelEdge>& hole : panel.holes) {
+        holes.push_back(ring_without_ends(hole, {}));
+    }
+    Point best = panel.outer.front().from;
+    double largest = 0;
+    for (const Convex& piece : convex_pieces(ring_without_ends(panel.outer, {}), holes, noise)) {
+        const AreaMoments moments = moments_of(piece, Point{});
+        if (moments.area > largest) {
+            largest = moments.area;
+            best = (1 / moments.area) * moments.moment;
+        }
+    }
+    return best;
+}
+
+bool encloses(const std::vector<PanelEdge>& border, Point p) {
+    bool inside = false;
+    for (std::size_t i = 0; i < border.size(); ++i) {
+        Point a = border[i].from;
+        Point b = border[(i + 1) % border.size()].from;
+        if ((a.y > p.y) == (b.y > p.y)) {
+            continue;
+        }
+        if (a.y > b.y) {
+            std::swap(a, b);
+        }
+        inside = inside != (cross(b - a, p - a) > 0);
+    }
+    return inside;
+}
+
+/// Area that goes to the nearest lines although the rule would divide it otherwise, and where.
+struct SetAside {
+    double area = 0;
+    double largest = 0;
     Point place; ///< in the plan
-    const char* why = "";
 };
 
 /// The panels of a deck with their sides, weighted.
@@ -72,47 +148,112 @@ public:
                  const DecksBeside& beside, Tolerance tolerance)
         : panels_(divide_into_panels(deck.outline, {}, carriers, tolerance)),
           deck_(deck, index, carriers, panels_.origin, tolerance), beside_(beside),
-          inside_(deck.openings.empty() ? panels_ : divide_into_panels(deck, carriers, tolerance),
-                  carriers.size()) {}
+          open_(deck.openings.empty() ? panels_ : divide_into_panels(deck, carriers, tolerance)),
+          inside_(open_, carriers.size()), carrier_finder_(boxes_of(carriers, tolerance.snap)) {}
 
-    /// Shapes all panels; stops at the first that does not fit. One that lies in openings is no panel.
-    [[nodiscard]] std::optional<Misfit> shape() {
+    /// Shapes all panels and finds those that are not fit. False: a part of the deck touches no carrier, so
+    /// that panels do not tell whose it is.
+    [[nodiscard]] bool shape() {
         for (const Panel& panel : panels_.panels) {
             PanelShape shape = shape_of(panel, deck_.tolerance.snap);
-            const bool carried = std::any_of(shape.sides.begin(), shape.sides.end(),
-                                             [](const PanelSide& side) { return side.carries; });
-            if ((shape.not_convex || !carried) && !is_nothing(panel)) {
-                if (shape.not_convex) {
-                    return Misfit{panels_.origin + *shape.not_convex,
-                                  "is not convex there, or a member or wall ends in it"};
-                }
-                return Misfit{panels_.origin + panel.outer.front().from,
-                              "has no member or wall along its sides"};
-            }
-            if (shape.not_convex || !carried) {
-                shape.sides.clear();
-            }
             for (PanelSide& side : shape.sides) {
                 side.weight = continues(panel, side) ? fixity_weight() : 1;
             }
+            if (shape.not_convex || !has_carrier(panel)) {
+                add_parts(panel, shape);
+                shape.sides.clear();
+            }
             shapes_.push_back(std::move(shape));
         }
-        return std::nullopt;
+        return std::all_of(parts_.begin(), parts_.end(),
+                           [](const Panel* part) { return has_carrier(*part); });
     }
 
-    void share(Sharing& sharing) const {
+    [[nodiscard]] const SetAside& set_aside() const { return set_aside_; }
+
+    void share(const Plan& plan, const Framing& framing, std::uint32_t level, Sharing& sharing) const {
         CarrierAxes axes(deck_.carriers, sharing);
         for (std::size_t p = 0; p < panels_.panels.size(); ++p) {
             if (!shapes_[p].sides.empty()) {
                 share_convex_panel(deck_, panels_.panels[p], shapes_[p].sides, axes, sharing);
             }
         }
+        for (const Panel* part : parts_) {
+            share_part(plan, framing, level, *part, sharing);
+        }
     }
 
 private:
-    [[nodiscard]] bool is_nothing(const Panel& panel) const {
-        return !deck_.openings.empty() &&
-               area_without_openings(deck_, panel) <= deck_.tolerance.snap * std::sqrt(panel.area);
+    static std::vector<Box> boxes_of(std::span<const LineCarrier> carriers, double snap) {
+        std::vector<Box> boxes;
+        boxes.reserve(carriers.size());
+        for (const LineCarrier& carrier : carriers) {
+            boxes.push_back(box_of(carrier.from, carrier.to).grown(snap));
+        }
+        return boxes;
+    }
+
+    /// What openings leave of a panel that is not fit.
+    void add_parts(const Panel& panel, const PanelShape& shape) {
+        double area = 0;
+        if (deck_.openings.empty()) {
+            parts_.push_back(&panel);
+            area = panel.area;
+        } else {
+            if (inside_points_.empty()) {
+                for (const Panel& part : open_.panels) {
+                    inside_points_.push_back(point_inside(part, deck_.tolerance.noise));
+                }
+            }
+            for (std::size_t p = 0; p < open_.panels.size(); ++p) {
+                if (encloses(panel.outer, inside_points_[p])) {
+                    parts_.push_back(&open_.panels[p]);
+                    area += open_.panels[p].area;
+                }
+            }
+        }
+        if (!is_alike(panel, shape.sides)) {
+            set_aside_.area += area;
+            if (area > set_aside_.largest) {
+                set_aside_.largest = area;
+                set_aside_.place = panels_.origin + shape.not_convex.value_or(panel.outer.front().from);
+            }
+        }
+    }
+
+    /// Whether all carriers of a panel weigh alike: then the rule gives what the nearest line gives.
+    static bool is_alike(const Panel& panel, std::span<const PanelSide> sides) {
+        double least = fixity_weight();
+        double most = 1;
+        for (const PanelSide& side : sides) {
+            if (side.carries) {
+                least = std::min(least, side.weight);
+                most = std::max(most, side.weight);
+            }
+        }
+        // What stands free in it has the deck on both sides.
+        most = panel.holes.empty() ? most : fixity_weight();
+        return !(least < most);
+    }
+
+    void share_part(const Plan& plan, const Framing& framing, std::uint32_t level, const Panel& panel,
+                    Sharing& sharing) const {
+        FramedDeck part = deck_.deck;
+        part.outline = ring_without_ends(panel.outer, panels_.origin);
+        part.openings.clear();
+        for (const std::vector<PanelEdge>& hole : panel.holes) {
+            Ring ring = ring_without_ends(hole, panels_.origin);
+            if (ring.size() >= 3) {
+                part.openings.push_back(std::move(ring));
+            }
+        }
+        std::vector<std::uint32_t> found;
+        carrier_finder_.find(box_of(std::span<const Point>(part.outline)), found);
+        std::vector<LineCarrier> near;
+        for (const std::uint32_t c : found) {
+            near.push_back(deck_.carriers[c]);
+        }
+        share_part_nearest(plan, framing, level, deck_.index, part, panel.area, near, sharing);
     }
 
     /// Whether the deck, or another, goes on over more than half of a side.
@@ -134,8 +275,13 @@ private:
     Panels panels_; ///< of the outline: openings are cut out of what each side takes
     PanelDeck deck_;
     const DecksBeside& beside_;
-    DeckBesideCarriers inside_;
-    std::vector<PanelShape> shapes_; ///< by panel
+    Panels open_;               ///< of the outline less openings
+    DeckBesideCarriers inside_; ///< where these are
+    BoxFinder carrier_finder_;
+    std::vector<PanelShape> shapes_;   ///< by panel; without sides where it is not fit
+    std::vector<const Panel*> parts_;  ///< that go to the nearest lines
+    std::vector<Point> inside_points_; ///< by panel of open_, when needed
+    SetAside set_aside_;
 };
 
 } // namespace
@@ -188,19 +334,22 @@ bool share_by_fixity(const Plan& plan, const Framing& framing, std::uint32_t lev
     const FramedDeck& deck = level.decks[index];
     FixityPanels panels(deck, index, carriers, beside,
                         {noise_of(framing.largest_coordinate), plan.settings.snap});
-    if (const std::optional<Misfit> misfit = panels.shape()) {
-        Problem problem = problem_at(
-            ProblemCode::fixity_set_aside, deck.origin, "decks",
-            "Level " + level.id + ", deck " + deck.id +
-                ": corner angles by fixity need convex panels; the one at " +
-                point_text(misfit->place, plan.units) + ' ' + misfit->why +
-                ". The whole deck goes to the nearest lines instead.",
-            "Complete the members around the panel, or use \"corner_angles\": \"equal\".", {deck.id});
-        problem.point = misfit->place;
-        sharing.problems.push_back(std::move(problem));
+    if (!panels.shape()) {
         return false;
     }
-    panels.share(sharing);
+    panels.share(plan, framing, level_index, sharing);
+    if (const SetAside& aside = panels.set_aside(); aside.area > 0) {
+        Problem problem = problem_at(
+            ProblemCode::fixity_set_aside, deck.origin, "decks",
+            "Level " + level.id + ", deck " + deck.id + ": " + area_text(aside.area, plan.units) +
+                " lie in panels that are not convex or in which a member or wall ends; they go to the "
+                "nearest "
+                "lines instead of by fixity, the largest part at " +
+                point_text(aside.place, plan.units) + '.',
+            "Complete the members around such panels, or use \"corner_angles\": \"equal\".", {deck.id});
+        problem.point = aside.place;
+        sharing.problems.push_back(std::move(problem));
+    }
     return true;
 }
 

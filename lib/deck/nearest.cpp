@@ -131,21 +131,16 @@ Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& d
 }
 
 /// Cells by way of a Voronoi diagram on a grid turned by `radians`.
-NearestCells split(const Selection& selected, std::uint32_t deck, double radians, double snap, double noise,
-                   RingArea& area) {
+NearestCells split(const Selection& selected, NearestSplit how, double radians, RingArea& area) {
     // Four points far out, from which no point of the deck is nearest, close the cells of all others.
     const Point middle = between(selected.deck_box.low, selected.deck_box.high, 0.5);
     const double away = 6 * selected.reach;
-    std::vector<Point> points = selected.carriers.points;
+    how.points = selected.carriers.points;
     for (const Point d : {Point{away, 0}, Point{0, away}, Point{-away, 0}, Point{0, -away}}) {
-        points.push_back(middle + d);
+        how.points.push_back(middle + d);
     }
     const Grid grid(box_of(middle, middle).grown(away), radians);
-    const NodedLines noded = node_on_grid(selected.carriers.lines, points, grid);
-    const std::span<const std::uint32_t> open(noded.node_of_point.data() + selected.carriers.points.size(),
-                                              4);
-    const VoronoiDiagram diagram = segment_voronoi(selected.carriers.lines, noded, grid, open, noise);
-    return cells_of_diagram(selected.carriers, noded, diagram, deck, snap, area);
+    return nearest_cells(selected.carriers, grid, how, area);
 }
 
 void append(NearestCells&& cells, Sharing& sharing) {
@@ -156,7 +151,11 @@ void append(NearestCells&& cells, Sharing& sharing) {
         sharing.transfers.push(cells.transfers[c]);
         sharing.transfers.end_group();
     }
-    sharing.cells.insert(sharing.cells.end(), cells.cells.begin(), cells.cells.end());
+    if (sharing.cells.empty()) {
+        sharing.cells = std::move(cells.cells); // of one big deck there are many
+    } else {
+        sharing.cells.insert(sharing.cells.end(), cells.cells.begin(), cells.cells.end());
+    }
 }
 
 void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise, Sharing& sharing) {
@@ -180,8 +179,14 @@ void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise
 
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
                    std::uint32_t deck_index, std::span<const LineCarrier> near, Sharing& sharing) {
+    share_part_nearest(plan, framing, level_index, deck_index, framing.levels[level_index].decks[deck_index],
+                       sharing.deck_area[deck_index], near, sharing);
+}
+
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
+                        std::uint32_t deck_index, const FramedDeck& deck, double whole,
+                        std::span<const LineCarrier> near, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
-    const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
     const double noise = noise_of(framing.largest_coordinate);
     if (NearestCells bay;
@@ -200,18 +205,17 @@ void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level
         return;
     }
     // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
-    constexpr double closed = 1e-10; // of the area: rounding alone leaves less
-    const double whole = sharing.deck_area[deck_index];
+    const NearestSplit how{deck_index, whole, snap, noise, deck.span == SpanKind::two_way, {}};
     NearestCells best;
     double least = std::numeric_limits<double>::infinity();
     for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
-        NearestCells cells = split(selected, deck_index, radians, snap, noise, area);
+        NearestCells cells = split(selected, how, radians, area);
         const double open = std::abs(cells.area() - whole);
         if (open < least) {
             least = open;
             best = std::move(cells);
         }
-        if (least <= closed * whole) {
+        if (least <= closed_within * whole) {
             break;
         }
     }

@@ -1,6 +1,8 @@
 #pragma once
 
+#include "deck/convex_bay.hpp"
 #include "deck/one_way.hpp"
+#include "geometry/faces.hpp"
 #include "geometry/grid_noding.hpp"
 #include "geometry/ring_area.hpp"
 #include "geometry/segment_voronoi.hpp"
@@ -17,6 +19,12 @@ RUNNEL_NAMESPACE_BEGIN
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
                    std::span<const LineCarrier> near, Sharing& sharing);
 
+/// The same for a part of deck `deck`, given as a copy of it with the part's outline and openings, of `area`
+/// m2; carriers are those of `near` that share more than a point with the part.
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
+                        const FramedDeck& part, double area, std::span<const LineCarrier> near,
+                        Sharing& sharing);
+
 /// What a deck's points are shared among. Local coordinates: the deck's first corner is the origin, so that
 /// a plan far out loses nothing.
 struct NearestCarriers {
@@ -26,6 +34,9 @@ struct NearestCarriers {
     std::vector<Point> points;               ///< columns
     std::vector<std::uint32_t> point_number; ///< of the columns in Sharing
 };
+
+/// What may be missing of a deck's area by rounding alone, relative.
+inline constexpr double closed_within = 1e-10;
 
 /// A part of a split that asks for a warning: how much, and where its largest part lies.
 struct DoubtfulArea {
@@ -47,13 +58,32 @@ struct NearestCells {
     [[nodiscard]] double area() const;
 };
 
-/// Turns a Voronoi diagram of the carriers into cells: the pieces between each site and its arcs, clipped by
-/// the deck.
-[[nodiscard]] NearestCells cells_of_diagram(const NearestCarriers& carriers, const NodedLines& noded,
-                                            const VoronoiDiagram& diagram, std::uint32_t deck, double snap,
-                                            RingArea& area);
+/// Which sides of noded lines are dealt with face by face.
+struct ConvexFaces {
+    std::vector<std::uint32_t> faces; ///< indices into Faces::half_edges
+    std::vector<bool> is_done;        ///< by half-edge
+};
 
-/// The same for a convex deck without openings whose every edge lies on one carrier and which no other
+/// The faces that are convex bays, with lines all round and nothing in them: what is nearest there is found
+/// from the bay's own edges.
+[[nodiscard]] ConvexFaces convex_faces(const NearestCarriers& carriers, const NodedLines& noded,
+                                       const Faces& faces, double noise);
+
+/// How a deck is split by the nearest carrier.
+struct NearestSplit {
+    std::uint32_t deck = none;
+    double whole = 0; ///< area of the deck, m2
+    double snap = 0, noise = 0;
+    bool by_faces = true;      ///< convex bays directly
+    std::vector<Point> points; ///< columns, then those that only close the diagram
+};
+
+/// Cells of the nearest carriers, clipped by the deck: convex bays directly, the rest from a Voronoi diagram
+/// on the grid, as the pieces between each site and its arcs.
+[[nodiscard]] NearestCells nearest_cells(const NearestCarriers& carriers, const Grid& grid,
+                                         const NearestSplit& split, RingArea& area);
+
+/// The cells of a convex deck without openings whose every edge lies on one carrier and which no other
 /// reaches into, directly by the bisectors of its edges. False: it is no such deck.
 [[nodiscard]] bool share_convex_bay(const FramedDeck& deck, std::uint32_t index,
                                     std::span<const LineCarrier> near, Tolerance tolerance,

@@ -145,29 +145,46 @@ public:
         model_.deck = deck;
     }
 
-    NearestCells run(const VoronoiDiagram& diagram) {
-        const auto pieces = static_cast<std::uint32_t>(noded_.pieces.size());
-        const auto node_of = [&](std::uint32_t site) { return site < pieces ? none : site - pieces; };
-        result_.cells.reserve(2 * diagram.arcs.size());
-        result_.transfers.reserve(2 * diagram.arcs.size());
+    /// The cells along the edges of a convex face.
+    void add_face(std::span<const std::uint32_t> half_edges, double noise) {
+        ConvexBay bay;
+        for (const std::uint32_t h : half_edges) {
+            bay.corner[bay.count++] = noded_.nodes[start_of(noded_, h)].place;
+        }
+        if (bay.close(noise)) {
+            for (std::size_t i = 0; i < bay.count; ++i) {
+                add_region(half_edges[i] / 2, region_of(bay, i));
+            }
+        }
+    }
+
+    /// The cells beside the arcs of a diagram of some of the pieces, but for what is done by faces.
+    void add_diagram(const VoronoiDiagram& diagram, std::span<const std::uint32_t> pieces,
+                     const std::vector<bool>& is_done) {
+        const auto is_node = [&](std::uint32_t site) { return site >= pieces.size(); };
+        const auto node_of = [&](std::uint32_t site) {
+            return site - static_cast<std::uint32_t>(pieces.size());
+        };
+        is_done_ = &is_done;
+        const auto add = [&](std::uint32_t site, Point from, Point to, std::uint32_t other) {
+            if (is_node(site)) {
+                add_fan(node_of(site), from, to, is_node(other) ? none : pieces[other]);
+            } else {
+                add_side(pieces[site], from, to, is_node(other) ? node_of(other) : none);
+            }
+        };
+        result_.cells.reserve(result_.cells.size() + 2 * diagram.arcs.size());
+        result_.transfers.reserve(result_.transfers.size() + 2 * diagram.arcs.size());
         for (const VoronoiDiagram::Arc& arc : diagram.arcs) {
             const Point from = diagram.vertices[arc.from];
             const Point to = diagram.vertices[arc.to];
-            const std::uint32_t left = node_of(arc.left);
-            const std::uint32_t right = node_of(arc.right);
-            if (left == none) {
-                add_side(arc.left, from, to, right);
-            } else {
-                add_fan(left, from, to, right == none ? arc.right : none);
-            }
-            if (right == none) {
-                add_side(arc.right, to, from, left);
-            } else {
-                add_fan(right, to, from, left == none ? arc.left : none);
-            }
+            add(arc.left, from, to, arc.right);
+            add(arc.right, to, from, arc.left);
         }
-        return std::move(result_);
     }
+
+    [[nodiscard]] double area() const { return result_.area(); }
+    NearestCells take() { return std::move(result_); }
 
 private:
     // ---- axes: of the lines, and plain ones for columns --------------------------------------------------
@@ -203,7 +220,23 @@ private:
 
     // ---- sides of pieces ---------------------------------------------------------------------------------
 
+    /// The chain of a region's corners runs back from its edge's end.
+    void add_region(std::uint32_t piece, const Corners& region) {
+        for (std::size_t i = 1; i < region.count; ++i) {
+            add_arc(piece, region.at[i], i + 1 < region.count ? region.at[i + 1] : region.at[0], none);
+        }
+    }
+
     void add_side(std::uint32_t piece, Point from, Point to, std::uint32_t focus) {
+        const AxisLine& axis = carriers_.lines[noded_.pieces[piece].line];
+        const bool right = axis.right_of(from) + axis.right_of(to) > 0;
+        if (!(*is_done_)[2 * piece + (right ? 1 : 0)]) {
+            add_arc(piece, from, to, focus);
+        }
+    }
+
+    /// What lies between a piece and an arc beside it.
+    void add_arc(std::uint32_t piece, Point from, Point to, std::uint32_t focus) {
         const std::uint32_t line = noded_.pieces[piece].line;
         const StripAxes axes = local_axes(line);
         const LevelArc arc = arc_in(axes, from, to, focus == none ? nullptr : &noded_.nodes[focus].place);
@@ -247,6 +280,10 @@ private:
         const Point middle =
             dot(toward_from, toward_to) > 0 ? toward_from + toward_to : Point{turn.y, -turn.x};
         const NodeOwners::Beside beside = owners_.beside(node, middle);
+        const std::uint32_t c = beside.clockwise;
+        if ((*is_done_)[2 * c + (noded_.pieces[c].node_a == node ? 0 : 1)]) {
+            return;
+        }
         const auto give = [&](std::uint32_t piece, Point a, Point b) {
             const NodedLines::Piece& owner = noded_.pieces[piece];
             const double station = owner.node_a == node ? owner.from : owner.to;
@@ -344,14 +381,51 @@ private:
     std::vector<std::uint32_t> axes_of_line_;
     std::uint32_t plain_axes_ = none;
     std::vector<RingArea::Part> parts_;
+    const std::vector<bool>* is_done_ = nullptr; ///< by half-edge
+};
+
+/// The pieces of lines with a side that no face has dealt with, and their nodes, as lines to be seen alone.
+struct Rest {
+    NodedLines noded;
+    std::vector<std::uint32_t> pieces; ///< in the whole
+
+    Rest(const NodedLines& whole, const std::vector<bool>& is_done) {
+        noded.nodes = whole.nodes;
+        noded.node_of_point = whole.node_of_point;
+        for (std::uint32_t p = 0; p < whole.pieces.size(); ++p) {
+            if (!is_done[2 * p] || !is_done[2 * p + 1]) {
+                noded.pieces.push_back(whole.pieces[p]);
+                pieces.push_back(p);
+            }
+        }
+    }
 };
 
 } // namespace
 
-NearestCells cells_of_diagram(const NearestCarriers& carriers, const NodedLines& noded,
-                              const VoronoiDiagram& diagram, std::uint32_t deck, double snap,
-                              RingArea& area) {
-    return CellMaker(carriers, noded, deck, snap, area).run(diagram);
+NearestCells nearest_cells(const NearestCarriers& carriers, const Grid& grid, const NearestSplit& split,
+                           RingArea& area) {
+    const NodedLines noded = node_on_grid(carriers.lines, split.points, grid);
+    ConvexFaces convex;
+    convex.is_done.assign(2 * noded.pieces.size(), false);
+    CellMaker maker(carriers, noded, split.deck, split.snap, area);
+    if (split.by_faces) {
+        const Faces faces = faces_of(noded);
+        convex = convex_faces(carriers, noded, faces, split.noise);
+        for (const std::uint32_t face : convex.faces) {
+            maker.add_face(faces.half_edges[face], split.noise);
+        }
+        constexpr double nothing_left = 1e-13; // of the area: no part of the deck lies outside them
+        if (std::abs(maker.area() - split.whole) <= nothing_left * split.whole) {
+            return maker.take();
+        }
+    }
+    const Rest rest(noded, convex.is_done);
+    const std::span<const std::uint32_t> open(noded.node_of_point.data() + carriers.points.size(),
+                                              noded.node_of_point.size() - carriers.points.size());
+    maker.add_diagram(segment_voronoi(carriers.lines, rest.noded, grid, open, split.noise), rest.pieces,
+                      convex.is_done);
+    return maker.take();
 }
 
 RUNNEL_NAMESPACE_END

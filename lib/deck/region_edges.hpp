@@ -30,7 +30,7 @@ public:
     [[nodiscard]] DirectedEdges border_of(std::size_t first, std::size_t last) const;
 
 private:
-    void add(const StripPiece& piece, const StripAxes& axes, double chord_error);
+    [[nodiscard]] bool is_noise(const StripPiece& piece) const;
     void number_corners();
     [[nodiscard]] DirectedEdges numbered_anew(std::span<const DirectedEdges::Edge> edges) const;
 

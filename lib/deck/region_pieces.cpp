@@ -1,9 +1,10 @@
+#include "deck/region_chords.hpp"
 #include "deck/region_edges.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/box_tree.hpp"
 
 #include <algorithm>
-#include <cmath>
+#include <cstdlib>
 #include <numeric>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -11,40 +12,6 @@ RUNNEL_NAMESPACE_BEGIN
 namespace {
 
 using Edge = DirectedEdges::Edge;
-
-/// Chords for a parabola: they leave it by no more than the error given. Both sides of a border have the same
-/// bulge up to rounding, which must not give them other numbers of chords.
-std::size_t chords_for(const Border& border, double noise, double chord_error) {
-    const double bulge = std::abs(border.bulge) - noise;
-    if (!(bulge > 0)) {
-        return 1;
-    }
-    // Of two chords the middle point is off by bulge / 12; of more, their middles by less than bulge / 4 n^2.
-    if (bulge <= 12 * chord_error) {
-        return 2;
-    }
-    constexpr double most = 1e4; // whatever is asked for
-    return static_cast<std::size_t>(std::clamp(std::ceil(std::sqrt(bulge / (4 * chord_error))), 3.0, most));
-}
-
-/// Appends a border's points in strip axes, upward or downward. Chords between points on a parabola would
-/// leave out 1 / n^2 of the area of its bulge: the inner points are moved outward until the area is kept.
-void append_border(const StripPiece& piece, const Border& border, bool upward, std::size_t chords,
-                   std::vector<Point>& points) {
-    const auto n = static_cast<double>(chords);
-    const double moved = chords > 1 ? border.bulge / (6 * n * (n - 1)) : 0;
-    for (std::size_t i = 0; i <= chords; ++i) {
-        const std::size_t step = upward ? i : chords - i;
-        if (step == 0) {
-            points.push_back({border.start, piece.from});
-        } else if (step == chords) {
-            points.push_back({border.end, piece.to});
-        } else {
-            const double x = static_cast<double>(step) / n;
-            points.push_back({border.at(x) - moved, (1 - x) * piece.from + x * piece.to});
-        }
-    }
-}
 
 /// Groups values that follow each other within `noise`: by value the number of its group, rising.
 std::vector<std::uint32_t> grouped_within(std::span<const double> values, double noise) {
@@ -129,29 +96,32 @@ void cut_at_corners(std::vector<Edge>& edges, std::span<const Point> corners, do
 CellLoops::CellLoops(const Sharing& sharing, std::span<const std::uint32_t> cells, Point about, double noise,
                      double chord_error)
     : noise_(noise) {
+    const BorderChords chords(sharing, cells, noise, chord_error);
+    std::vector<Point> low;
     for (const std::uint32_t c : cells) {
         const Cell& cell = sharing.cells[c];
-        StripAxes axes = sharing.axes[cell.axes];
-        axes.origin = axes.origin - about;
-        add({cell.from, cell.to, cell.low, cell.high}, axes, chord_error);
+        if (!is_noise({cell.from, cell.to, cell.low, cell.high})) {
+            const std::size_t first = points_.size();
+            chords.append(cell, cell.high, points_);
+            low.clear();
+            chords.append(cell, cell.low, low);
+            points_.insert(points_.end(), low.rbegin(), low.rend());
+            StripAxes axes = sharing.axes[cell.axes];
+            axes.origin = axes.origin - about;
+            std::transform(points_.begin() + static_cast<std::ptrdiff_t>(first), points_.end(),
+                           points_.begin() + static_cast<std::ptrdiff_t>(first),
+                           [&axes](Point p) { return axes.to_plan(p); });
+        }
         begin_.push_back(points_.size());
     }
     number_corners();
 }
 
-void CellLoops::add(const StripPiece& piece, const StripAxes& axes, double chord_error) {
-    const Border breadth{piece.high.start - piece.low.start, piece.high.end - piece.low.end,
-                         piece.high.bulge - piece.low.bulge};
+/// What rounding leaves between a carrier and the deck's edge under it.
+bool CellLoops::is_noise(const StripPiece& piece) const {
     constexpr double middle = 0.5;
-    if (breadth.start <= noise_ && breadth.end <= noise_ && breadth.at(middle) <= noise_) {
-        return; // rounding between a carrier and the deck's edge under it
-    }
-    const std::size_t first = points_.size();
-    append_border(piece, piece.high, true, chords_for(piece.high, noise_, chord_error), points_);
-    append_border(piece, piece.low, false, chords_for(piece.low, noise_, chord_error), points_);
-    for (std::size_t i = first; i < points_.size(); ++i) {
-        points_[i] = axes.to_plan(points_[i]);
-    }
+    return piece.high.start - piece.low.start <= noise_ && piece.high.end - piece.low.end <= noise_ &&
+           piece.high.at(middle) - piece.low.at(middle) <= noise_;
 }
 
 /// By x, and within one x by y: corners that agree in both are one.

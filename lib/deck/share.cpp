@@ -1,10 +1,9 @@
+#include "deck/carrier_finder.hpp"
 #include "deck/doubtful.hpp"
 #include "deck/fixity.hpp"
 #include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
 #include "geometry/basic.hpp"
-#include "geometry/box_tree.hpp"
-#include "plan/problems.hpp"
 
 #include <runnel/deck.hpp>
 
@@ -47,24 +46,12 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
     sharing.columns = static_cast<std::uint32_t>(plan.columns.size());
 
     const std::vector<LineCarrier> carriers = line_carriers(plan, level, sharing);
-    std::vector<Box> boxes;
-    boxes.reserve(carriers.size());
-    for (const LineCarrier& carrier : carriers) {
-        boxes.push_back(box_of(carrier.from, carrier.to));
-    }
-    const BoxTree tree(boxes);
-
-    std::vector<std::uint32_t> near;
-    std::vector<LineCarrier> beside;
+    CarrierFinder finder(carriers, level.decks.size());
     std::optional<DecksBeside> decks_beside;
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
         sharing.deck_area.push_back(area_of(deck));
-        tree.find(box_of(deck.outline).grown(plan.settings.snap), near);
-        beside.clear();
-        for (const std::uint32_t i : near) {
-            beside.push_back(carriers[i]);
-        }
+        const std::vector<LineCarrier>& beside = finder.find(deck, plan.settings.snap);
         if (deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity) {
             if (!decks_beside) {
                 decks_beside.emplace(level, plan.settings.snap);

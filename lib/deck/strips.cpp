@@ -1,11 +1,10 @@
 #include "deck/strips.hpp"
 
 #include "deck/strip_beam.hpp"
+#include "deck/strips_chains.hpp"
 #include "geometry/strip_piece.hpp"
 
 #include <algorithm>
-#include <limits>
-#include <numeric>
 #include <tuple>
 #include <utility>
 #include <vector>
@@ -13,8 +12,6 @@
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-constexpr std::uint32_t no_bay = std::numeric_limits<std::uint32_t>::max();
 
 StripPiece piece_of(const Bay& bay) {
     return {bay.from, bay.to, bay.low, bay.high};
@@ -66,7 +63,9 @@ public:
         }
     }
 
-    void make_chains();
+    void make_chains() {
+        for_chains(bays_, marks_, [this](const Chain& chain) { push_chain(chain); });
+    }
 
 private:
     struct Row {
@@ -185,7 +184,7 @@ private:
                             kept);
     }
 
-    void push_chain(std::span<const std::uint32_t> chain, const Levels& at);
+    void push_chain(const Chain& chain);
     void push_bays(std::span<const std::uint32_t> chain, const Levels& at) {
         for (const std::uint32_t i : chain) {
             push_bay(i, at);
@@ -200,136 +199,38 @@ private:
 };
 
 /// One strip for a chain of bays, where its spans are long enough for each other; the rest bay by bay.
-void StripMaker::push_chain(std::span<const std::uint32_t> chain, const Levels& at) {
-    if (!at.any()) {
-        return;
-    }
+void StripMaker::push_chain(const Chain& chain) {
+    const Levels at{chain.from, chain.to};
+    const auto core = chain.bays.subspan(chain.core, chain.core_size);
     Levels held = at;
     std::size_t spans = 0;
-    for (std::size_t k = 0; k < chain.size() && held.any(); ++k) {
-        if (is_span(chain[k])) {
+    for (std::size_t k = 0; k < chain.bays.size() && held.any(); ++k) {
+        if (is_span(chain.bays[k])) {
             ++spans;
             if (k > 0) {
-                keep_long_spans(chain[k], chain[k - 1], at, held);
+                keep_long_spans(chain.bays[k], chain.bays[k - 1], at, held);
             }
-            if (k + 1 < chain.size()) {
-                keep_long_spans(chain[k], chain[k + 1], at, held);
+            if (k + 1 < chain.bays.size()) {
+                keep_long_spans(chain.bays[k], chain.bays[k + 1], at, held);
             }
         }
     }
     if (spans == 0 || !held.any()) {
-        push_bays(chain, at);
+        push_bays(core, at);
         return;
     }
-    push_bays(chain, {at.from, held.from});
-    begin_strip(chain.front(), chain.back(), held, Share::continuous);
-    if (marks_[chain.front()].low != Gap::edge) {
-        sharing_.strip_carriers.push(low_carrier(chain.front(), held));
+    push_bays(core, {at.from, held.from});
+    begin_strip(core.front(), core.back(), held, Share::continuous);
+    if (marks_[chain.bays.front()].low != Gap::edge) {
+        sharing_.strip_carriers.push(low_carrier(chain.bays.front(), held));
     }
-    for (const std::uint32_t i : chain) {
+    for (const std::uint32_t i : chain.bays) {
         if (marks_[i].high != Gap::edge) {
             sharing_.strip_carriers.push(high_carrier(i, held));
         }
     }
     sharing_.strip_carriers.end_group();
-    push_bays(chain, {held.to, at.to});
-}
-
-/// Goes up through the levels at which bays begin and end. A chain stays open until one of its bays ends or
-/// another joins it, so that an opening or a short joist cuts its own chains only.
-void StripMaker::make_chains() {
-    std::vector<std::uint32_t> by_from;
-    for (std::uint32_t i = 0; i < bays_.size(); ++i) {
-        if (!marks_[i].bare() && bays_[i].to > bays_[i].from) {
-            by_from.push_back(i);
-        }
-    }
-    std::vector<std::uint32_t> by_to = by_from;
-    std::sort(by_from.begin(), by_from.end(), [&](std::uint32_t l, std::uint32_t r) {
-        return std::pair(bays_[l].from, l) < std::pair(bays_[r].from, r);
-    });
-    std::sort(by_to.begin(), by_to.end(), [&](std::uint32_t l, std::uint32_t r) {
-        return std::pair(bays_[l].to, l) < std::pair(bays_[r].to, r);
-    });
-    std::uint32_t marks = 0;
-    for (const std::uint32_t i : by_from) {
-        for (const std::uint32_t mark : {marks_[i].low, marks_[i].high}) {
-            marks = mark == Gap::edge ? marks : std::max(marks, mark + 1);
-        }
-    }
-    std::vector<std::uint32_t> above(marks, no_bay); // by mark: the bay beside it at this level
-    std::vector<std::uint32_t> below(marks, no_bay);
-    std::vector<std::uint32_t> chain_of(bays_.size(), no_bay); // by its first bay
-    std::vector<std::vector<std::uint32_t>> bays_of(bays_.size());
-    std::vector<double> opened(bays_.size(), 0);
-    std::vector<std::uint32_t> loose; // bays of chains that were closed at this level, and new ones
-
-    const auto close = [&](std::uint32_t bay, double level) {
-        const std::uint32_t chain = chain_of[bay];
-        if (chain == no_bay) {
-            return;
-        }
-        push_chain(bays_of[chain], {opened[chain], level});
-        for (const std::uint32_t i : bays_of[chain]) {
-            chain_of[i] = no_bay;
-            loose.push_back(i);
-        }
-        bays_of[chain] = {};
-    };
-    const auto before = [&](std::uint32_t i) {
-        return marks_[i].low == Gap::edge ? no_bay : below[marks_[i].low];
-    };
-    const auto after = [&](std::uint32_t i) {
-        return marks_[i].high == Gap::edge ? no_bay : above[marks_[i].high];
-    };
-    std::size_t start = 0;
-    std::size_t end = 0;
-    while (end < by_to.size()) {
-        double level = bays_[by_to[end]].to;
-        if (start < by_from.size()) {
-            level = std::min(level, bays_[by_from[start]].from);
-        }
-        loose.clear();
-        for (; end < by_to.size() && bays_[by_to[end]].to == level; ++end) {
-            const std::uint32_t i = by_to[end];
-            close(i, level);
-            if (marks_[i].low != Gap::edge && above[marks_[i].low] == i) {
-                above[marks_[i].low] = no_bay;
-            }
-            if (marks_[i].high != Gap::edge && below[marks_[i].high] == i) {
-                below[marks_[i].high] = no_bay;
-            }
-        }
-        for (; start < by_from.size() && bays_[by_from[start]].from == level; ++start) {
-            const std::uint32_t i = by_from[start];
-            loose.push_back(i);
-            if (marks_[i].low != Gap::edge) {
-                above[marks_[i].low] = i;
-            }
-            if (marks_[i].high != Gap::edge) {
-                below[marks_[i].high] = i;
-            }
-            for (const std::uint32_t beside : {before(i), after(i)}) {
-                if (beside != no_bay) {
-                    close(beside, level);
-                }
-            }
-        }
-        for (std::size_t k = 0; k < loose.size(); ++k) {
-            std::uint32_t i = loose[k];
-            if (bays_[i].to <= level || chain_of[i] != no_bay) {
-                continue;
-            }
-            while (before(i) != no_bay) {
-                i = before(i);
-            }
-            opened[i] = level;
-            for (std::uint32_t next = i; next != no_bay; next = after(next)) {
-                chain_of[next] = i;
-                bays_of[i].push_back(next);
-            }
-        }
-    }
+    push_bays(core, {held.to, at.to});
 }
 
 } // namespace

@@ -23,10 +23,10 @@ struct BayMarks {
 ///
 /// Lever: a strip for each span; one for each part of an overhang that has one back span. Continuous: a strip
 /// for each chain of bays that follow each other from carrier to carrier, and levels between which the chain
-/// stays the same. Where no statics holds a strip (one carrier alone, a span shorter than `least_span_ratio`
-/// of what hangs on it or, under `continuous`, of the one beside it) what can be is shared by lever, and the
-/// rest goes to its one carrier, so that nothing is lost; find_weak_strips says so.
-/// Cost: O(n log n), and for `continuous` as many carriers as all strips have together.
+/// stays the same; of long chains, one for each part, on its carriers and those that are felt there. Where no
+/// statics holds a strip (one carrier alone, a span shorter than `least_span_ratio` of what hangs on it or,
+/// under `continuous`, of the one beside it) what can be is shared by lever, and the rest goes to its one
+/// carrier, so that nothing is lost; find_weak_strips says so. Cost: O(n log n).
 void make_strips(Share share, std::size_t first_bay, std::span<const BayMarks> marks, double noise,
                  Sharing& sharing);
 

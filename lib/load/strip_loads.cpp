@@ -31,7 +31,7 @@ class StripLoader {
 public:
     StripLoader(const StripAtLevels& strip, double noise) : strip_(strip), noise_(noise) {}
 
-    /// Calls put(carrier, line) for what a pressure on a piece of the strip brings each carrier.
+    /// Calls put(i, line) for what a pressure on a piece of the strip brings its carriers, i of them.
     template <class Put>
     void carry(const StripPiece& piece, const Intensity& intensity, Put put) {
         std::vector<double> levels{piece.from};
@@ -40,11 +40,16 @@ public:
             add_crossings(strip_, piece, piece.high, levels);
             std::sort(levels.begin(), levels.end());
         }
-        levels.push_back(piece.to);
-        for (std::size_t i = 0; i + 1 < levels.size(); ++i) {
-            if (levels[i + 1] > levels[i]) {
-                carry_smooth(between_levels(piece, levels[i], levels[i + 1]), intensity, put);
+        // A level within noise of the last one, or of the end, is that level.
+        double from = piece.from;
+        for (const double level : levels) {
+            if (level - from > noise_ && piece.to - level > noise_) {
+                carry_smooth(between_levels(piece, from, level), intensity, put);
+                from = level;
             }
+        }
+        if (piece.to > from) {
+            carry_smooth(between_levels(piece, from, piece.to), intensity, put);
         }
     }
 
@@ -137,13 +142,17 @@ private:
                 const std::size_t carrier = window.first + i;
                 const double at_from = strip_.station(carrier, from);
                 const double at_to = strip_.station(carrier, to);
-                const double rate = (to - from) / std::abs(at_to - at_from);
+                const double stretch = std::abs(at_to - at_from);
+                if (!(stretch > 0)) {
+                    continue; // a piece as thin as rounding
+                }
+                const double rate = (to - from) / stretch;
                 Quartic c = piece.c[i];
                 for (double& k : c) {
                     k *= rate;
                 }
                 curve_error_ = std::max(curve_error_, fit.error * rate);
-                put(strip_.carrier(carrier), line_between(at_from, at_to, c));
+                put(carrier, line_between(at_from, at_to, c));
             }
         }
     }
@@ -175,15 +184,6 @@ double most_force(const StripPiece& piece, const Intensity& intensity) {
         most = std::max(most, std::abs(intensity.at(corner)));
     }
     return most * std::abs(area_of(piece));
-}
-
-/// Of a strip on one carrier alone: the largest way from there to its carrier.
-double way_to_lone_carrier(const StripAtLevels& strip, const StripPiece& whole) {
-    double way = 0;
-    for (const Point& corner : corners_of(whole)) {
-        way = std::max(way, std::abs(corner.x - strip.along(0, corner.y)));
-    }
-    return strip.alone() ? way : 0;
 }
 
 /// All load of a cell that goes to points of its carriers.
@@ -218,41 +218,86 @@ void load_sliver(const Sharing& sharing, std::size_t c, const DeckPressure& pres
     }
 }
 
-void load_strip(const Sharing& sharing, std::uint32_t index, const DeckPressure& pressure,
-                std::vector<DeckPressure::Piece>& zones, Collector& collector) {
-    const Strip& strip = sharing.strips[index];
-    const Source source{SourceKind::deck, strip.deck};
-    const StripPiece whole{strip.from, strip.to, strip.low, strip.high};
-    const StripAtLevels levels(sharing, index);
-    const double way = way_to_lone_carrier(levels, whole);
-    if (!pressure.uniform().empty()) {
-        StripLoader loader(levels, collector.noise());
-        double largest = 0;
-        loader.carry(whole, {1, 0, 0}, [&](std::uint32_t carrier, const LinePiece& unit) {
+/// Bound of the integral of |w|.
+double most_force(const LinePiece& line) {
+    const double length = line.to - line.from;
+    double most = 0;
+    double power = length;
+    for (const double c : line.c) {
+        most += std::abs(c) * power;
+        power *= length;
+    }
+    return most;
+}
+
+/// Puts the area loads of one strip on its carriers.
+class StripAreaLoads {
+public:
+    StripAreaLoads(const Sharing& sharing, std::uint32_t index, Collector& collector)
+        : strip_(sharing.strips[index]), axes_(sharing.axes[strip_.axes]),
+          levels_(sharing, index), whole_{strip_.from, strip_.to, strip_.low, strip_.high},
+          collector_(collector) {
+        if (levels_.alone()) {
+            for (const Point& corner : corners_of(whole_)) {
+                way_to_carrier_ = std::max(way_to_carrier_, std::abs(corner.x - levels_.along(0, corner.y)));
+            }
+        }
+        beside_axis_.reserve(levels_.size());
+        for (std::size_t i = 0; i < levels_.size(); ++i) {
+            beside_axis_.push_back(std::max(off_axis(i, strip_.from), off_axis(i, strip_.to)));
+        }
+    }
+
+    void put_uniform(const DeckPressure& pressure) {
+        StripLoader loader(levels_, collector_.noise());
+        loader.carry(whole_, {1, 0, 0}, [&](std::size_t i, const LinePiece& unit) {
             for (const DeckPressure::Uniform& u : pressure.uniform()) {
-                largest = std::max(largest, std::abs(u.q));
                 LinePiece line = unit;
                 for (double& c : line.c) {
                     c *= u.q;
                 }
-                collector.put_line(carrier, strip.deck, {u.load_case, source, line});
-                collector.note_moved(strip.deck, u.load_case, way * std::abs(u.q * area_of(whole)));
+                put(i, u.load_case, line);
             }
         });
-        collector.note_curve_error(largest * loader.curve_error());
-    }
-    if (pressure.has_zones()) {
-        StripLoader loader(levels, collector.noise());
-        pressure.zones_over(whole, sharing.axes[strip.axes], zones);
-        for (const DeckPressure::Piece& zone : zones) {
-            loader.carry(zone.where, zone.intensity, [&](std::uint32_t carrier, const LinePiece& line) {
-                collector.put_line(carrier, strip.deck, {zone.load_case, source, line});
-            });
-            collector.note_moved(strip.deck, zone.load_case, way * most_force(zone.where, zone.intensity));
+        for (const DeckPressure::Uniform& u : pressure.uniform()) {
+            collector_.note_curve_error(std::abs(u.q) * loader.curve_error());
         }
-        collector.note_curve_error(loader.curve_error());
     }
-}
+
+    void put_zones(const DeckPressure& pressure, std::vector<DeckPressure::Piece>& zones) {
+        StripLoader loader(levels_, collector_.noise());
+        pressure.zones_over(whole_, axes_, zones);
+        for (const DeckPressure::Piece& zone : zones) {
+            loader.carry(zone.where, zone.intensity,
+                         [&](std::size_t i, const LinePiece& line) { put(i, zone.load_case, line); });
+        }
+        collector_.note_curve_error(loader.curve_error());
+    }
+
+private:
+    /// How far a carrier that was drawn beside the deck's edge, by no more than `snap`, was moved on to it.
+    [[nodiscard]] double off_axis(std::size_t i, double level) const {
+        const Point there = axes_.to_plan({levels_.along(i, level), level});
+        const double off = distance(there, collector_.at(levels_.carrier(i), levels_.station(i, level)));
+        return off > 4 * collector_.noise() ? off : 0;
+    }
+
+    void put(std::size_t i, std::uint32_t load_case, const LinePiece& line) {
+        const Source source{SourceKind::deck, strip_.deck};
+        collector_.put_line(levels_.carrier(i), strip_.deck, {load_case, source, line});
+        if (const double way = way_to_carrier_ + beside_axis_[i]; way > 0) {
+            collector_.note_moved(strip_.deck, load_case, way * most_force(line));
+        }
+    }
+
+    const Strip& strip_;
+    const StripAxes& axes_;
+    StripAtLevels levels_;
+    StripPiece whole_;
+    Collector& collector_;
+    double way_to_carrier_ = 0; ///< of a strip on one carrier alone, from its farthest corner
+    std::vector<double> beside_axis_;
+};
 
 } // namespace
 
@@ -262,8 +307,11 @@ void load_strips(const Sharing& sharing, std::uint32_t deck, std::size_t first_c
     const auto first = std::lower_bound(sharing.strips.begin(), sharing.strips.end(), deck,
                                         [](const Strip& strip, std::uint32_t d) { return strip.deck < d; });
     for (auto it = first; it != sharing.strips.end() && it->deck == deck; ++it) {
-        load_strip(sharing, static_cast<std::uint32_t>(it - sharing.strips.begin()), pressure, zones,
-                   collector);
+        StripAreaLoads strip(sharing, static_cast<std::uint32_t>(it - sharing.strips.begin()), collector);
+        strip.put_uniform(pressure);
+        if (pressure.has_zones()) {
+            strip.put_zones(pressure, zones);
+        }
     }
     for (std::size_t c = first_cell; c < last_cell; ++c) {
         const std::span<const Transfer> transfers = sharing.transfers[c];

@@ -10,9 +10,6 @@ RUNNEL_NAMESPACE_BEGIN
 
 namespace {
 
-/// What a balance may be off by, beside the sum of |P|: far above rounding, far below what anybody reads.
-constexpr double closing = 1e-9;
-
 /// The carriers that feet name on one of their sides, each once.
 std::vector<Carrier> different(const std::vector<Foot>& feet, Carrier Foot::*side) {
     std::vector<Carrier> carriers;

@@ -6,6 +6,10 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
+/// What a sum of loads may be off by, beside the sum of |P|: far above rounding, far below what anybody
+/// reads.
+inline constexpr double closing = 1e-9;
+
 /// Fills level_balance and balance.
 ///
 /// Loads count where they stand. A reaction that leaves a member is taken by its carrier up to `snap` beside

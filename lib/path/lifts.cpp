@@ -2,6 +2,7 @@
 #include "geometry/basic.hpp"
 #include "geometry/line_pieces.hpp"
 #include "path/area_path.hpp"
+#include "path/influence.hpp"
 #include "path/level_path.hpp"
 #include "path/places.hpp"
 
@@ -99,6 +100,7 @@ void add_column_lift(Takedown& takedown, std::uint32_t level_index, std::uint32_
     if (takedown.self_weight_case != none) {
         lift.self_weight = weight_per_height(plan, plan.columns[column]) * lift.height;
     }
+    lift.influence_area = level.influence_area[carrier];
     add_areas(lift, arrived, lifts.empty() ? nullptr : &lifts.back());
     add_up_lift(lift, plan.cases.size(), takedown.self_weight_case);
     lifts.push_back(std::move(lift));
@@ -191,6 +193,8 @@ void add_wall_lift(Takedown& takedown, std::uint32_t level_index, std::uint32_t 
                                    return std::binary_search(below.walls.begin(), below.walls.end(), wall);
                                });
     load_wall_lift(takedown, wall, above, lift);
+    const LevelTakedown& level = takedown.levels[level_index];
+    lift.influence_area = level.influence_area[level.sharing.number_of({CarrierKind::wall, wall})];
     add_areas(lift, arrived, above);
     add_up_wall_lift(lift, takedown.plan.cases.size());
     lifts.push_back(std::move(lift));
@@ -202,7 +206,11 @@ void pass_areas_and_lifts(Takedown& takedown, std::uint32_t level_index, const L
                           const CarrierAreas& areas) {
     const std::vector<AreaBrought> arrived = pass_areas(takedown, level_index, path, areas);
     const FramedLevel& framed = takedown.framing.levels[level_index];
-    const Sharing& sharing = takedown.levels[level_index].sharing;
+    LevelTakedown& level = takedown.levels[level_index];
+    const Sharing& sharing = level.sharing;
+    const Tolerance tolerance{noise_of(takedown.framing.largest_coordinate), takedown.plan.settings.snap};
+    const FloorPieces pieces = floor_pieces(takedown.plan, framed, sharing, tolerance);
+    level.influence_area = influence_areas(framed, sharing, path, pieces, tolerance);
     for (const std::uint32_t column : framed.columns) {
         add_column_lift(takedown, level_index, column,
                         arrived[sharing.number_of({CarrierKind::column, column})]);

@@ -1,8 +1,10 @@
 #include "report/account.hpp"
+#include "report/deck_shares.hpp"
 
 #include <runnel/version.hpp>
 
 #include <algorithm>
+#include <array>
 #include <cmath>
 #include <map>
 
@@ -55,7 +57,7 @@ void write_account(const Takedown& takedown, const ReportOptions& options, const
 }
 
 Account::Account(const Takedown& takedown, const ReportOptions& options, const TextSink& sink)
-    : takedown_(takedown), scale_(options.units.value_or(takedown.plan.units)),
+    : takedown_(takedown), shares_(options.shares), scale_(options.units.value_or(takedown.plan.units)),
       names_(takedown.plan, takedown.framing), page_(options.colour, sink) {}
 
 void Account::write() {
@@ -67,6 +69,7 @@ void Account::write() {
         rundowns();
         foundations();
     }
+    shares();
     warnings();
     cautions();
 }
@@ -75,14 +78,36 @@ void Account::head() {
     page_.heading(takedown_.plan.title.empty() ? "Plan without a title" : takedown_.plan.title);
     page_.paragraph("Takedown by runnel " + std::string(version()) + ", characteristic values by case, in " +
                         std::string(name_of(scale_.units.length)) + " and " +
-                        std::string(name_of(scale_.units.force)) + ", decks shared by `" +
-                        std::string(name_of(takedown_.plan.settings.share)) + "` unless they say otherwise.",
+                        std::string(name_of(scale_.units.force)) + ". " + shares_used(),
                     0);
     page_.blank();
     if (!takedown_.complete) {
         page_.alarm("Nothing is computed: the plan has errors.", 0);
         page_.blank();
     }
+}
+
+/// "Decks shared by `half`; by `lever`: D1, D4." Decks are named where they differ from the plan's setting.
+std::string Account::shares_used() const {
+    constexpr std::size_t most = 8; // decks that are named
+    constexpr std::array<Share, 3> shares{Share::half, Share::lever, Share::continuous};
+    const Share usual = takedown_.plan.settings.share;
+    std::string text = "Decks shared by `" + std::string(name_of(usual)) + '`';
+    for (const Share share : shares) {
+        std::string decks;
+        std::size_t count = 0;
+        for (const auto& [level, deck] : decks_shared_otherwise(takedown_)) {
+            if (takedown_.framing.levels[level].decks[deck].share == share && ++count <= most) {
+                decks += (decks.empty() ? "" : ", ") +
+                         fit(names_.source_anywhere(level, {SourceKind::deck, deck}), id_width);
+            }
+        }
+        if (count > 0) {
+            text += "; by `" + std::string(name_of(share)) + "`: " + decks +
+                    (count > most ? " and " + std::to_string(count - most) + " more" : "");
+        }
+    }
+    return text + '.';
 }
 
 void Account::members() {
@@ -164,9 +189,10 @@ bool Account::alike(std::uint32_t level, std::uint32_t a, std::uint32_t b) const
         }
     }
     const std::vector<double>& areas = takedown_.levels[level].tributary_area;
+    const std::vector<double>& influence = takedown_.levels[level].influence_area;
     const std::span<const double> x = reaction_rows(level, a);
     const std::span<const double> y = reaction_rows(level, b);
-    return same(first.length, other.length) && same(areas[a], areas[b]) &&
+    return same(first.length, other.length) && same(areas[a], areas[b]) && same(influence[a], influence[b]) &&
            std::equal(x.begin(), x.end(), y.begin(), same);
 }
 
@@ -180,6 +206,7 @@ void Account::level_members(std::uint32_t level, std::size_t most) {
     table.describe("role", Align::left);
     table.describe(with_unit("length", dimension::length), Align::right);
     table.describe("area, " + area_unit(), Align::right);
+    table.describe("influence", Align::right);
     table.names("on", on_width);
     table.describe("station", Align::right);
     case_headings(table);
@@ -196,6 +223,13 @@ void Account::level_members(std::uint32_t level, std::size_t most) {
                        ": all stand in the table `reactions` and in the result document",
                    indent);
     }
+    if (const double off = takedown_.levels[level].loads.curve_error; off > 0) {
+        page_.paragraph("line loads of strips on skew carriers are fitted curves: force and first moment are "
+                        "kept, ordinates are within " +
+                            three_figures(off / scale_.line_load) + ' ' +
+                            unit_text(scale_.units, dimension::line_load),
+                        indent);
+    }
     page_.blank();
 }
 
@@ -206,11 +240,11 @@ void Account::member_rows(PageTable& table, std::uint32_t level, const Alike& gr
     const std::span<const Bearing> bearings = framed.bearings[group.first];
     const std::span<const double> reactions = reaction_rows(level, group.first);
     for (std::size_t b = 0; b < bearings.size(); ++b) {
-        std::vector<std::string> row(4);
+        std::vector<std::string> row(5);
         if (b == 0) {
             const FramedMember& one = framed.members[group.first];
             row = {named(one.id, group.count), std::string(name_of(one.role)), length(one.length),
-                   area(result.tributary_area[group.first])};
+                   area(result.tributary_area[group.first]), area(result.influence_area[group.first])};
         }
         row.emplace_back(names_.carrier(level, bearings[b].on));
         row.push_back(length(bearings[b].station));

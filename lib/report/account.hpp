@@ -27,12 +27,14 @@ public:
 
 private:
     void head();
+    [[nodiscard]] std::string shares_used() const;
     void uplift();
     void balance();
     void members();
     void level_members(std::uint32_t level, std::size_t most);
     void rundowns();
     void foundations();
+    void shares();
     void warnings();
     void cautions();
 
@@ -68,7 +70,19 @@ private:
     [[nodiscard]] std::string area_load(double kilonewtons_per_square_metre) const;
     [[nodiscard]] std::string area_load_unit() const;
 
+    using Values = std::vector<double> ComparedCarrier::*;
+    struct ComparedGroup {
+        const ComparedCarrier* first = nullptr;
+        std::size_t count = 0;
+    };
+    void stopped_share(const ShareRun& run);
+    void compared(std::string_view heading, const std::vector<ComparedCarrier>& carriers, Values values);
+    [[nodiscard]] std::vector<ComparedGroup> differing(const std::vector<ComparedCarrier>& carriers,
+                                                       Values values) const;
+    void compared_rows(PageTable& table, const ComparedGroup& group, Values values) const;
+
     const Takedown& takedown_;
+    const ShareComparison* shares_;
     Scale scale_;
     Names names_;
     Page page_;

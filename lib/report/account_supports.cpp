@@ -53,6 +53,7 @@ void Account::rundowns() {
     table.names("column, wall", id_width);
     table.names("level", id_width - 4);
     table.describe("area, " + area_unit(), Align::right);
+    table.describe("influence", Align::right);
     table.describe("in all", Align::right);
     table.describe("own weight", Align::right);
     case_headings(table);
@@ -80,8 +81,8 @@ void Account::lift_rows(PageTable& table, std::string_view id, std::span<const A
     for (const AnyLift& lift : lifts) {
         const bool first = &lift == lifts.data();
         std::vector<std::string> row{std::string(first ? id : ""), takedown_.framing.levels[lift.level].id,
-                                     area(lift.tributary_area), area(lift.area_total),
-                                     force(lift.self_weight)};
+                                     area(lift.tributary_area),    area(lift.influence_area),
+                                     area(lift.area_total),        force(lift.self_weight)};
         for (const double total : lift.total) {
             row.push_back(reaction(total));
         }

@@ -152,7 +152,9 @@ private:
 
     /// What goes to a line's end is set off from what goes to its length.
     void end_zones() {
-        for (const Region& zone : regions_of(end_zones_of(sharing_, level_))) {
+        const std::vector<Region> zones = regions_of(end_zones_of(sharing_, level_));
+        has_end_zones_ = !zones.empty();
+        for (const Region& zone : zones) {
             svg_.add("<path class=\"end-zone\" d=\"");
             for (const Ring& ring : zone.rings) {
                 ring_path(ring);
@@ -376,6 +378,11 @@ private:
         svg_.add("v5h").number(pixels).add("v-5\"/>\n<text x=\"").number(margin + pixels + 8).add("\" y=\"");
         svg_.number(y).add("\" fill=\"#12303f\">").number(length).add(" ");
         svg_.text(name_of(scale_.units.length)).add("</text>\n");
+        if (has_end_zones_) {
+            svg_.add("<text x=\"").number(margin).add("\" y=\"").number(y + 1.7 * letter);
+            svg_.add("\" font-size=\"").number(small_letter);
+            svg_.add("\" fill=\"#39434b\">Within dotted lines: to the end of the beam or wall</text>\n");
+        }
     }
 
     const Plan& plan_;
@@ -391,6 +398,7 @@ private:
     };
     std::vector<GridPart> grid_;
     Point low_, high_;
+    bool has_end_zones_ = false;
     double per_metre_ = 1;
     double width_ = 0, height_ = 0;
 };

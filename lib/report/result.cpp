@@ -1,4 +1,5 @@
 #include "geometry/basic.hpp"
+#include "report/deck_shares.hpp"
 #include "report/problem_json.hpp"
 #include "report/result_writer.hpp"
 
@@ -31,6 +32,9 @@ void ResultWriter::write(std::span<const Problem> reading_problems) {
         columns();
         walls();
         foundations();
+    }
+    if (options_.shares != nullptr) {
+        shares(*options_.shares);
     }
     json_.close_object();
     json_.finish();
@@ -65,6 +69,14 @@ void ResultWriter::settings() {
     const Settings& settings = takedown_.plan.settings;
     json_.key("settings").open_object();
     json_.key("share").text(name_of(settings.share));
+    json_.key("deck_shares").open_array();
+    for (const auto& [level, deck] : decks_shared_otherwise(takedown_)) {
+        json_.open_object();
+        json_.key("deck").text(names_.source_anywhere(level, {SourceKind::deck, deck}));
+        json_.key("share").text(name_of(takedown_.framing.levels[level].decks[deck].share));
+        json_.close_object();
+    }
+    json_.close_array();
     json_.key("snap").number(settings.snap, scale_.length);
     json_.key("ground_elevation").number(settings.ground_elevation, scale_.length);
     if (takedown_.self_weight_case < takedown_.plan.cases.size()) {

@@ -62,6 +62,9 @@ void ResultWriter::level(std::uint32_t level) {
     json_.key("elevation").number(framed.elevation, scale_.length);
     json_.key("balance");
     balances(takedown_.level_balance[level], true);
+    if (const double off = takedown_.levels[level].loads.curve_error; off > 0) {
+        json_.key("curve_error").number(off, scale_.line_load);
+    }
     decks(level);
     regions(level);
     members(level);
@@ -114,6 +117,7 @@ void ResultWriter::member(std::uint32_t level, std::uint32_t member) {
     json_.key("length").number(framed.length, scale_.length);
     json_.key("region_area").number(result.region_area[member], scale_.area);
     json_.key("tributary_area").number(result.tributary_area[member], scale_.area);
+    json_.key("influence_area").number(result.influence_area[member], scale_.area);
     bearings(level, member);
     loads(level, member);
     spans(level, member);

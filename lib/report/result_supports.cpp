@@ -23,6 +23,7 @@ void ResultWriter::lift(const Lift& lift) {
     json_.open_object();
     json_.key("level").text(takedown_.framing.levels[lift.level].id);
     json_.key("tributary_area").number(lift.tributary_area, scale_.area);
+    json_.key("influence_area").number(lift.influence_area, scale_.area);
     json_.key("area_total").number(lift.area_total, scale_.area);
     json_.key("floors").count(lift.floors);
     json_.key("added");
@@ -52,6 +53,7 @@ void ResultWriter::walls() {
             json_.open_object();
             json_.key("level").text(takedown_.framing.levels[lift.level].id);
             json_.key("tributary_area").number(lift.tributary_area, scale_.area);
+            json_.key("influence_area").number(lift.influence_area, scale_.area);
             json_.key("area_total").number(lift.area_total, scale_.area);
             json_.key("floors").count(lift.floors);
             json_.key("self_weight").number(lift.self_weight, scale_.force);

@@ -49,6 +49,12 @@ private:
     void wall_lines_and_points(const WallLift& lift);
     void foundations();
 
+    // The comparison of shares.
+    void shares(const ShareComparison& shares);
+    void compared(const ShareComparison& shares, std::size_t run, const ComparedCarrier& carrier);
+    void values_and_percent(const ShareComparison& shares, std::size_t run, const std::vector<double>& values,
+                            std::string_view key);
+
     // Shared by all.
     void by_case(std::span<const double> values, double scale);
     /// from, to, start, end and, where it is not linear, curve.

@@ -40,6 +40,7 @@ private:
         lengths({"from x", "from y", "to x", "to y", "length"});
         heading("region area", dimension::area);
         heading("tributary area", dimension::area);
+        heading("influence area", dimension::area);
         headings({"bearings"});
         by_case("load ", dimension::force);
         csv_.end_row();
@@ -59,6 +60,7 @@ private:
         point(member.to);
         csv_.number(member.length, scale_.length);
         csv_.number(result.region_area[m], scale_.area).number(result.tributary_area[m], scale_.area);
+        csv_.number(result.influence_area[m], scale_.area);
         csv_.number(static_cast<double>(framed.bearings[m].size()));
         std::vector<Sum> totals(cases_);
         for (const CarrierLine& line : result.lines[m]) {
@@ -134,6 +136,7 @@ private:
     void rundowns() {
         headings({"carrier", "kind", "level"});
         heading("tributary area", dimension::area);
+        heading("influence area", dimension::area);
         heading("area in all", dimension::area);
         headings({"floors"});
         heading("self weight", dimension::force);
@@ -161,7 +164,8 @@ private:
     template <class AnyLift>
     void lift_start(std::string_view id, CarrierKind kind, const AnyLift& lift) {
         csv_.text(id).text(Names::kind(kind)).text(takedown_.framing.levels[lift.level].id);
-        csv_.number(lift.tributary_area, scale_.area).number(lift.area_total, scale_.area);
+        csv_.number(lift.tributary_area, scale_.area).number(lift.influence_area, scale_.area);
+        csv_.number(lift.area_total, scale_.area);
         csv_.number(lift.floors).number(lift.self_weight, scale_.force);
     }
 

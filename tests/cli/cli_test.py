@@ -53,7 +53,8 @@ class Statuses(unittest.TestCase):
                           ["takedown", plan, "--units", "kN,m"], ["takedown", plan, "--threads", "0"],
                           ["takedown", plan, "--threads", "257"], ["takedown", plan, "--threads", "two"],
                           ["takedown", plan, "--share", "third"], ["takedown", plan, "--table", "members"],
-                          ["regions", plan, "--level", "cellar"], ["schema", "drawing"], ["check"],
+                          ["takedown", plan, "--compare-shares", "--format", "csv"],
+                          ["check", plan, "--compare-shares"], ["regions", plan, "--level", "cellar"], ["schema", "drawing"], ["check"],
                           ["check", "-", "-"], ["regions", sample("workshop"), "--format", "svg"]):
             done = self.status(2, *arguments, text=b"")
             self.assertEqual(done.stdout, b"", arguments)
@@ -141,7 +142,10 @@ class OnePass(unittest.TestCase):
 
     def test_what_is_not_supported_is_said_once(self):
         plan = plan_of("shelter")
-        plan["combinations"] = [{"preset": "en1990-6.10"}, {"preset": "asce7-22-strength"}]
+        plan["levels"][0]["moving_point"] = {"case": "snow", "p": 1}
+        self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
+        plan = plan_of("shelter")
+        plan["reductions"] = {"rule": "asce7"}
         self.assertEqual([problem["code"] for problem in self.problems(plan)], ["not-supported-yet"])
 
     def test_where_values_are_missing_framing_waits_and_says_so(self):
@@ -237,7 +241,8 @@ class Documents(unittest.TestCase):
     def test_samples_and_their_results_are_valid(self):
         for plan in SAMPLES:
             self.valid(json.loads(plan.read_text()), "plan")
-            for more in ([], ["--units", "mm,N"], ["--units", "ft,kip"], ["--share", "lever"]):
+            for more in ([], ["--units", "mm,N"], ["--units", "ft,kip"], ["--share", "lever"], ["--compare-shares"],
+                         ["--compare-shares", "--share", "lever"]):
                 self.valid(json.loads(runnel("takedown", plan, "--format", "json", *more).stdout), "result")
 
     def test_a_result_without_numbers_is_valid(self):
@@ -303,6 +308,31 @@ class Documents(unittest.TestCase):
         for other in forces[1:]:
             for force, same in zip(forces[0], other, strict=True):
                 self.assertAlmostEqual(force, same, places=6)
+
+    def test_shares_are_compared_carrier_by_carrier_with_the_plan_s_own(self):
+        arguments = ["takedown", sample("shelter"), "--compare-shares", "--format", "json"]
+        result = json.loads(runnel(*arguments).stdout)
+        self.assertEqual([run["share"] for run in result["shares"]], ["half", "lever", "continuous"])
+        self.assertEqual([run["own"] for run in result["shares"]], [True, False, False])
+        half = result["shares"][0]
+        self.assertEqual({s["id"] for s in half["supports"]}, {"A1", "B1", "A2", "B2"})
+        self.assertEqual(len(half["members"]), 9)
+        for support in half["supports"]:
+            self.assertAlmostEqual(support["total"]["snow"], 4.8)
+        for run in result["shares"]:
+            self.assertEqual(run["complete"], "supports" in run)
+            self.assertEqual(run["complete"], not run["problems"])
+        account = runnel(*arguments[:-2]).stdout.decode()
+        self.assertIn("Shares compared, kN\n  %: difference from `half`, which this plan uses", account)
+
+    def test_a_share_is_chosen_for_all_decks_and_named(self):
+        plan = plan_of("shelter")
+        plan["levels"][0]["decks"][0]["share"] = "lever"
+        own = json.loads(runnel("takedown", "-", "--format", "json", text=as_text(plan)).stdout)
+        self.assertEqual(own["settings"]["deck_shares"], [{"deck": "D", "share": "lever"}])
+        chosen = json.loads(runnel("takedown", "-", "--format", "json", "--share", "continuous",
+                                   text=as_text(plan)).stdout)
+        self.assertEqual((chosen["settings"]["share"], chosen["settings"]["deck_shares"]), ("continuous", []))
 
 
 class Texts(unittest.TestCase):

@@ -1,5 +1,9 @@
+#include "support/building_support.hpp"
 #include "support/fixity_support.hpp"
+#include "support/problem_support.hpp"
 #include "support/random_support.hpp"
+
+#include <runnel/takedown.hpp>
 
 #include <doctest/doctest.h>
 
@@ -283,6 +287,8 @@ TEST_CASE("corner angles by fixity: cover on decks of many panels, turned, with 
     MESSAGE("seed " << seed);
     Random random(seed);
     double worst = 0;
+    double worst_unfit = 0;
+    int set_aside = 0;
     for (int i = 0; i < 200; ++i) {
         CAPTURE(i);
         const Motion move{random.chance(0.3) ? 0 : random.between(0, 360), {random.between(-50, 50), 7}};
@@ -299,6 +305,11 @@ TEST_CASE("corner angles by fixity: cover on decks of many panels, turned, with 
         for (const double y : ys) {
             f.add_member(move({-1, y}), move({xs.back() + 1, y}));
         }
+        const bool ends_inside = random.chance(0.4);
+        if (ends_inside) { // panels that are not fit, among those that are
+            f.add_member(move({random.between(0, xs.back()), 0}),
+                         move({random.between(0, xs.back()), random.between(0.3, 0.9) * ys.back()}));
+        }
         std::vector<Ring> openings;
         if (random.chance(0.7)) {
             openings.push_back(
@@ -309,8 +320,64 @@ TEST_CASE("corner angles by fixity: cover on decks of many panels, turned, with 
         const FixityShared shared = share_by_fixity(f);
         REQUIRE(shared.fits);
         const double area = deck_area(f.framing.levels[0].decks[0]);
-        worst = std::max(worst, std::abs(support::covered_area(shared.sharing) - area) / area);
+        const double off = std::abs(support::covered_area(shared.sharing) - area) / area;
+        (ends_inside ? worst_unfit : worst) = std::max(ends_inside ? worst_unfit : worst, off);
+        CHECK(check_disjoint(f.framing, 0, shared.sharing).empty());
+        set_aside += static_cast<int>(shared.sharing.problems.size() > 0 &&
+                                      shared.sharing.problems.back().code == ProblemCode::fixity_set_aside);
     }
     CHECK(worst <= 1e-12);
-    MESSAGE("areas close within " << worst);
+    CHECK(worst_unfit <= 1e-10); // as far as the nearest line closes
+    CHECK(set_aside > 20);
+    MESSAGE("areas close within " << worst << ", with nearest lines within " << worst_unfit << "; "
+                                  << set_aside << " decks had panels that were not fit");
+}
+
+TEST_CASE("corner angles by fixity in random buildings: all is carried, wherever they stand") {
+    const std::uint64_t seed = support::seed_of_run(20261205);
+    MESSAGE("seed " << seed);
+    std::size_t decks = 0;
+    std::size_t set_aside = 0;
+    double motion = 0;
+    for (int i = 0; i < 60; ++i) {
+        const std::uint64_t own = seed + static_cast<std::uint64_t>(i);
+        CAPTURE(own);
+        const auto taken_down = [&](const support::Placing& placing) {
+            Plan plan = support::random_building(own, placing);
+            for (Level& level : plan.levels) {
+                for (Deck& deck : level.decks) {
+                    deck.span = SpanKind::two_way;
+                    deck.corner_angles = CornerAngles::by_fixity;
+                    deck.direction.reset();
+                }
+            }
+            Takedown takedown = take_down(std::move(plan));
+            REQUIRE_MESSAGE(takedown.complete, support::texts_of_errors(takedown.problems));
+            CHECK(check_balance(takedown).empty());
+            return takedown;
+        };
+        const Takedown plain = taken_down({});
+        support::Placing away;
+        away.degrees = Random(own).between(-89, 89);
+        away.shift = {-3e4, 5e4};
+        const Takedown moved = taken_down(away);
+        REQUIRE(plain.foundations.size() == moved.foundations.size());
+        for (std::size_t k = 0; k < plain.foundations.size(); ++k) {
+            for (std::size_t c = 0; c < plain.foundations[k].reactions.size(); ++c) {
+                motion = std::max(
+                    motion, std::abs(plain.foundations[k].reactions[c] - moved.foundations[k].reactions[c]));
+            }
+        }
+        for (const FramedLevel& level : plain.framing.levels) {
+            decks += level.decks.size();
+        }
+        set_aside += static_cast<std::size_t>(
+            std::count_if(plain.problems.begin(), plain.problems.end(), [](const Problem& problem) {
+                return problem.code == ProblemCode::fixity_set_aside;
+            }));
+    }
+    CHECK(motion <= 1e-6);
+    CHECK(set_aside < decks / 2);
+    MESSAGE(set_aside << " of " << decks << " decks fell back; foundation loads differ by " << motion
+                      << " kN turned and moved");
 }

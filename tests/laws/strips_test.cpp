@@ -502,3 +502,175 @@ TEST_CASE("lever and continuous: force, moment, statics, order and motion on ran
                  << " levels within " << statics << " kN/m of brute force; " << curved
                  << " with curves fitted within " << curve << " of the largest ordinate");
 }
+
+TEST_CASE("decks that no statics holds lose nothing, and those that it holds keep their moment") {
+    const std::uint64_t seed = support::seed_of_run(20261203);
+    MESSAGE("seed " << seed);
+    Random random(seed);
+    Errors near;
+    Errors far;
+    double force = 0;
+    int carried = 0;
+    int held = 0;
+    for (int i = 0; i < 1200; ++i) {
+        CAPTURE(i);
+        Drawing d;
+        d.outline = random.star({0, 0}, 3, 11, random.whole(5, 13));
+        if (random.chance(0.4)) {
+            d.openings.push_back(random.star({0, 0}, 0.3, 1.5, random.whole(3, 7)));
+            std::reverse(d.openings.back().begin(), d.openings.back().end());
+        }
+        if (random.chance(0.7)) {
+            for (std::size_t k = 0; k < d.outline.size(); ++k) {
+                d.members.emplace_back(d.outline[k], d.outline[(k + 1) % d.outline.size()]);
+            }
+        }
+        for (int k = random.whole(2, 10); k > 0; --k) { // crossing each other and the edges as they like
+            const double x = random.between(-9, 9);
+            const double from = random.between(-14, 4);
+            d.members.emplace_back(Point{x, from},
+                                   Point{x + random.between(-3, 3), from + random.between(2, 24)});
+        }
+        d.zones.push_back({{}, {}, 2});
+        d.zones.push_back({random.star({random.between(-4, 4), random.between(-4, 4)}, 1, 6, 6), {}, 3});
+        const Share share = i % 2 == 0 ? Share::lever : Share::continuous;
+        const Motion away{random.between(-180, 180),
+                          {1e6 * random.between(-1, 1), 1e6 * random.between(-1, 1)}};
+        for (const Motion& move : {Motion{}, away}) {
+            const bool here = move.degrees == 0;
+            const HandFramed f = framed(d, share, move);
+            const Sharing sharing = f.share();
+            const LevelLoads loads = f.load(sharing);
+            const auto lines = loads.lines.items();
+            CHECK(std::all_of(lines.begin(), lines.end(), [](const CarrierLine& line) {
+                return std::isfinite(line.piece.total()) && line.piece.to > line.piece.from;
+            }));
+            const bool reached =
+                std::none_of(sharing.problems.begin(), sharing.problems.end(),
+                             [](const Problem& p) { return p.code == ProblemCode::strip_unsupported; });
+            if (!reached) {
+                continue;
+            }
+            const Errors open = open_balance(f, loads);
+            CHECK(open.force <= (here ? 1e-12 : 1e-9));
+            force = std::max(force, here ? open.force : 0);
+            ++carried;
+            if (!has_errors(sharing.problems)) {
+                CHECK(check_moment(f.plan, f.framing, 0, sharing, loads, here ? 1e-12 : 1e-9).empty());
+                (here ? near : far).add(open);
+                ++held;
+            }
+        }
+    }
+    CHECK(carried > 900);
+    CHECK(held > 200);
+    MESSAGE(carried << " decks carried, open force " << force << "; " << held << " held by statics, moment "
+                    << near.moment << "; 1000 km away " << far.force << ", " << far.moment);
+}
+
+TEST_CASE("continuous over hundreds of joists that end one by one: by parts, yet as one beam") {
+    const std::uint64_t seed = support::seed_of_run(300);
+    MESSAGE("seed " << seed);
+    Random random(seed);
+    double worst = 0;
+    for (const int joists : {80, 150, 400}) {
+        CAPTURE(joists);
+        Drawing d;
+        double x = 0;
+        for (int i = 0; i < joists; ++i) {
+            const bool stops = i % 5 != 0 && random.chance(0.5);
+            d.members.emplace_back(Point{x, 0}, Point{x, stops ? random.between(1, 9) : 10});
+            x += random.between(0.5, 3);
+        }
+        x = d.members.back().first.x;
+        d.members.back().second.y = 10;
+        d.outline = {{-0.3, 0}, {x + 0.2, 0}, {x + 0.2, 10}, {-0.3, 10}};
+        d.zones.push_back({{}, {0.001, 0.1}, 2});
+        d.zones.push_back({{{x / 3, 2}, {x / 3 + 20, 3}, {x / 3 + 15, 8}, {x / 3 + 1, 7}}, {}, 30});
+        const HandFramed f = framed(d, Share::continuous, {});
+        const Sharing sharing = f.share();
+        REQUIRE(!has_errors(sharing.problems));
+        CHECK(sharing.strip_carriers.items().size() < 120 * d.members.size());
+        const LevelLoads loads = f.load(sharing);
+        const Errors open = open_balance(f, loads);
+        CHECK(open.force <= 1e-12);
+        CHECK(open.moment <= 1e-12);
+        StripBeam beam;
+        for (int k = 0; k < 40; ++k) {
+            const double level = random.between(0, 10);
+            if (!clear_of_ends(d, level)) {
+                continue;
+            }
+            std::vector<std::uint32_t> carriers;
+            std::vector<double> at;
+            for (std::uint32_t m = 0; m < d.members.size(); ++m) {
+                if (d.members[m].second.y > level) {
+                    carriers.push_back(m);
+                    at.push_back(d.members[m].first.x);
+                }
+            }
+            beam.set(at);
+            const auto plane = [&](double u) { return 2 + 0.001 * u + 0.1 * level; };
+            beam.add_line(-0.3, x + 0.2, plane(-0.3), plane(x + 0.2));
+            if (const std::vector<double> zone = crossings({d.zones[1].outline}, level); !zone.empty()) {
+                beam.add_line(zone[0], zone[1], 30, 30);
+            }
+            std::vector<double> expected(at.size());
+            beam.reactions(expected);
+            for (std::size_t i = 0; i < at.size(); ++i) {
+                const double off = std::abs(given_at(loads, d, carriers[i], level) - expected[i]);
+                CHECK(off <= 1e-7 + 4 * loads.curve_error); // short pieces that differ by noise are joined
+                worst = std::max(worst, off);
+            }
+        }
+    }
+    MESSAGE("lines differ by " << worst << " kN/m");
+}
+
+TEST_CASE("drawings that are off by less than `snap` keep force, and moment but for what is told") {
+    const std::uint64_t seed = support::seed_of_run(5003);
+    MESSAGE("seed " << seed);
+    Random random(seed);
+    int held = 0;
+    int told = 0;
+    for (int i = 0; i < 1000; ++i) {
+        CAPTURE(i);
+        Drawing d = draw(random);
+        const auto jitter = [&](Point p) {
+            return Point{p.x + random.between(-0.003, 0.003), p.y + random.between(-0.003, 0.003)};
+        };
+        for (auto& [from, to] : d.members) {
+            from = jitter(from);
+            to = jitter(to);
+        }
+        for (Point& p : d.outline) {
+            p = jitter(p);
+        }
+        for (int k = 0; k < 2; ++k) { // beams along the edges across the strips, beside them by millimetres
+            const std::size_t n = d.outline.size();
+            const std::size_t at = k == 0 ? n - 1 : 1;
+            d.members.emplace_back(jitter(d.outline[at]), jitter(d.outline[(at + 1) % n]));
+        }
+        HandFramed f = framed(d, i % 2 == 0 ? Share::lever : Share::continuous, {});
+        f.plan.settings.snap = 0.005;
+        const Sharing sharing = f.share();
+        const LevelLoads loads = f.load(sharing);
+        const bool reached =
+            std::none_of(sharing.problems.begin(), sharing.problems.end(),
+                         [](const Problem& p) { return p.code == ProblemCode::strip_unsupported; });
+        if (reached) {
+            CHECK(check_force(f.plan, f.framing, 0, sharing, loads, 1e-12).empty());
+        }
+        if (!has_errors(sharing.problems)) {
+            ++held;
+            CHECK(check_moment(f.plan, f.framing, 0, sharing, loads, 1e-12).empty());
+            for (const DeckBalance& row : loads.balance) {
+                told += row.moved > 0 ? 1 : 0;
+                CHECK(row.moved <= 0.02 * row.applied.magnitude); // kNm of kN: some millimetres
+            }
+        }
+    }
+    CHECK(held > 300);
+    CHECK(told > 100);
+    MESSAGE(held << " of 1000 held by statics, " << told << " rows with something moved");
+}

@@ -1,3 +1,4 @@
+#include "geometry/strip_piece.hpp"
 #include "support/building_support.hpp"
 #include "support/problem_support.hpp"
 
@@ -57,8 +58,7 @@ double check_split(const Takedown& takedown, std::uint32_t samples, std::uint64_
         CHECK(check_owners(takedown.plan, takedown.framing, l, sharing, samples, seed).empty());
         std::vector<double> area(sharing.deck_area.size(), 0.0);
         for (const Cell& cell : sharing.cells) {
-            area[cell.deck] +=
-                (cell.to - cell.from) * (cell.high.start - cell.low.start + cell.high.end - cell.low.end) / 2;
+            area[cell.deck] += area_of(StripPiece{cell.from, cell.to, cell.low, cell.high});
         }
         for (std::size_t d = 0; d < area.size(); ++d) {
             worst = std::max(worst, std::abs(area[d] - sharing.deck_area[d]) / sharing.deck_area[d]);
@@ -82,20 +82,21 @@ double largest_difference(const Takedown& a, const Takedown& b) {
 
 } // namespace
 
-TEST_CASE("random buildings: decks are covered, balance closes, and turning, moving or renumbering changes "
-          "no foundation load") {
-    const std::uint64_t seed = support::seed_of_run(41);
+namespace {
+
+using Draw = Plan (*)(std::uint64_t, const Placing&);
+
+void hold_laws(std::uint64_t seed, int plans, Draw draw) {
     MESSAGE("seed " << seed);
     Closing near;
     Closing far;
     double motion = 0;
     double order = 0;
     double scale = 0;
-    constexpr int plans = 520;
     for (int i = 0; i < plans; ++i) {
         const std::uint64_t own = seed + static_cast<std::uint64_t>(i);
         CAPTURE(own);
-        const Takedown plain = take_down(support::random_building(own));
+        const Takedown plain = take_down(draw(own, {}));
         REQUIRE_MESSAGE(plain.complete, support::texts_of_errors(plain.problems));
         CHECK(check_balance(plain).empty());
         near.cover = std::max(near.cover, check_split(plain, 20, own));
@@ -108,7 +109,7 @@ TEST_CASE("random buildings: decks are covered, balance closes, and turning, mov
         away.degrees =
             random.between(-89, 89); // past a quarter turn joist fields count from their other side
         away.shift = {random.between(-1, 1) * 1e5, random.between(-1, 1) * 1e5};
-        const Takedown moved = take_down(support::random_building(own, away));
+        const Takedown moved = take_down(draw(own, away));
         REQUIRE_MESSAGE(moved.complete, support::texts_of_errors(moved.problems));
         CHECK(check_balance(moved).empty());
         far.cover = std::max(far.cover, check_split(moved, 20, own));
@@ -119,7 +120,7 @@ TEST_CASE("random buildings: decks are covered, balance closes, and turning, mov
 
         Placing reversed;
         reversed.reversed = true;
-        const Takedown back = take_down(support::random_building(own, reversed));
+        const Takedown back = take_down(draw(own, reversed));
         REQUIRE_MESSAGE(back.complete, support::texts_of_errors(back.problems));
         order = std::max(order, largest_difference(plain, back));
         for (const Balance& row : plain.balance) {
@@ -139,4 +140,21 @@ TEST_CASE("random buildings: decks are covered, balance closes, and turning, mov
     CHECK(far.moment <= 1e-11);
     CHECK(motion <= 1e-6);
     CHECK(order <= 1e-9);
+}
+
+Plan mixed_building(std::uint64_t seed, const Placing& placing) {
+    Plan plan = support::random_building(seed, placing);
+    support::mix_rules(plan, seed, placing);
+    return plan;
+}
+
+} // namespace
+
+TEST_CASE("random buildings: decks are covered, balance closes, and turning, moving or renumbering changes "
+          "no foundation load") {
+    hold_laws(support::seed_of_run(41), 520, support::random_building);
+}
+
+TEST_CASE("the same of buildings whose decks span two ways, stand on columns, lever or run on") {
+    hold_laws(support::seed_of_run(77), 400, mixed_building);
 }

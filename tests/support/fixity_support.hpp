@@ -4,6 +4,7 @@
 
 #include "deck/fixity.hpp"
 #include "geometry/basic.hpp"
+#include "geometry/strip_piece.hpp"
 
 #include <cmath>
 #include <vector>
@@ -55,8 +56,7 @@ inline void add_deck_beyond(HandFramed& f, runnel::Point a, runnel::Point b) {
 inline double covered_area(const runnel::Sharing& sharing) {
     runnel::Sum area;
     for (const runnel::Cell& cell : sharing.cells) {
-        area.add((cell.to - cell.from) * (cell.high.start - cell.low.start + cell.high.end - cell.low.end) /
-                 2);
+        area.add(runnel::area_of(runnel::StripPiece{cell.from, cell.to, cell.low, cell.high}));
     }
     return area.value();
 }

@@ -33,20 +33,6 @@ HandFramed panel(std::vector<std::size_t> continuous, const Motion& move = {}) {
     return f;
 }
 
-void check_sorry(const FixityShared& shared, Point place) {
-    CHECK(!shared.fits);
-    CHECK(shared.sharing.cells.empty());
-    CHECK(shared.sharing.axes.empty());
-    REQUIRE(shared.sharing.problems.size() == 1);
-    const Problem& problem = shared.sharing.problems[0];
-    CHECK(problem.code == ProblemCode::fixity_set_aside);
-    CHECK(problem.severity == Severity::warning);
-    CHECK(problem.ids == std::vector<std::string>{"D0"});
-    REQUIRE(problem.point);
-    CHECK(problem.point->x == Approx(place.x));
-    CHECK(problem.point->y == Approx(place.y));
-}
-
 } // namespace
 
 TEST_CASE("a cell lies square to its beam: on its left below zero, on its right above") {
@@ -193,31 +179,92 @@ TEST_CASE("an opening inside a panel carries nothing and borders nothing") {
     CHECK(support::covered_area(shared.sharing) == Approx(22).epsilon(1e-14));
 }
 
-TEST_CASE("panels that the rule does not fit are told with their place, and nothing is shared") {
+TEST_CASE(
+    "where a panel is not fit and its sides differ, it goes to the nearest lines, with area and place") {
+    HandFramed f = panel({0});
+    const double lone = share_by_fixity(f).area(0);
+    Point place;
+    double area = 24;
+    SUBCASE("a beam ends inside") {
+        f.add_member({3, 4}, {3, 2});
+        place = {3, 2};
+    }
+    SUBCASE("a wall stands free inside") {
+        f.add_member({2, 2}, {4, 2});
+        place = {2, 2};
+    }
     SUBCASE("not convex") {
+        f.level().decks[0].outline = {{0, 0}, {6, 0}, {6, 4}, {3, 4}, {3, 2}, {0, 2}};
+        place = {3, 2};
+        area = 18;
+    }
+    const FixityShared shared = share_by_fixity(f);
+    REQUIRE(shared.fits);
+    REQUIRE(!shared.sharing.problems.empty());
+    const Problem& problem = shared.sharing.problems.back();
+    CHECK(problem.code == ProblemCode::fixity_set_aside);
+    CHECK(problem.severity == Severity::warning);
+    CHECK(problem.ids == std::vector<std::string>{"D0"});
+    REQUIRE(problem.point);
+    CHECK(problem.point->x == Approx(place.x));
+    CHECK(problem.point->y == Approx(place.y));
+    CHECK(problem.message.find(area == 24 ? "24 m2" : "18 m2") != std::string::npos);
+    CHECK(support::covered_area(shared.sharing) == Approx(area).epsilon(1e-14));
+    CHECK(shared.area(0) < lone);
+}
+
+TEST_CASE("a slab edge beyond its edge beams goes to them whole, and makes them continuous") {
+    HandFramed f;
+    support::add_beams_around(f, panel_6_by_4);
+    f.add_deck({{-0.5, -0.5}, {6.5, -0.5}, {6.5, 4.5}, {-0.5, 4.5}}, 0);
+    const FixityShared shared = share_by_fixity(f);
+    REQUIRE(shared.fits);
+    CHECK(shared.sharing.problems.empty()); // all sides alike: the nearest line is what the rule gives
+    CHECK(support::covered_area(shared.sharing) == Approx(35).epsilon(1e-14));
+    CHECK(shared.area(0) == Approx(8 + 3 + 0.25));
+    CHECK(shared.area(1) == Approx(4 + 2 + 0.25));
+}
+
+TEST_CASE("an opening in a panel that is not fit is cut out of it; other panels keep their rule") {
+    HandFramed f;
+    support::add_beams_around(f, panel_6_by_4);
+    f.add_member({0, 6}, {6, 6});
+    f.add_member({3, 4}, {3, 5}); // ends in the panel between
+    f.add_deck({{0, 0}, {6, 0}, {6, 6}, {0, 6}}, 0, {{{1, 4.5}, {1, 5.5}, {2, 5.5}, {2, 4.5}}});
+    const FixityShared shared = share_by_fixity(f);
+    REQUIRE(shared.fits);
+    CHECK(support::covered_area(shared.sharing) == Approx(35).epsilon(1e-14));
+    CHECK(shared.area(0) == Approx(6.6410162));
+    CHECK(shared.area(1) == Approx(2.9282032));
+    REQUIRE(!shared.sharing.problems.empty());
+    CHECK(shared.sharing.problems.back().message.find("11 m2") != std::string::npos);
+}
+
+TEST_CASE(
+    "a deck with a panel that is not convex but alike all round goes to the nearest lines, without a word") {
+    const auto shared = [](CornerAngles angles) {
         HandFramed f;
         const Ring ell{{0, 0}, {6, 0}, {6, 3}, {3, 3}, {3, 6}, {0, 6}};
         support::add_beams_around(f, ell);
         f.add_deck(ell, 0);
-        check_sorry(share_by_fixity(f), {3, 3});
+        f.level().decks[0].span = SpanKind::two_way;
+        f.level().decks[0].corner_angles = angles;
+        return f.share();
+    };
+    const Sharing fallen_back = shared(CornerAngles::by_fixity);
+    CHECK(fallen_back.problems.size() == shared(CornerAngles::equal).problems.size());
+    for (const Problem& problem : fallen_back.problems) {
+        CHECK(problem.code != ProblemCode::fixity_set_aside);
     }
-    SUBCASE("a beam ends inside") {
-        HandFramed f = panel({});
-        f.add_member({3, 0}, {3, 2});
-        check_sorry(share_by_fixity(f), {3, 2});
-    }
-    SUBCASE("a wall stands free inside") {
-        HandFramed f = panel({});
-        f.add_member({2, 2}, {4, 2});
-        const FixityShared shared = share_by_fixity(f);
-        CHECK(!shared.fits);
-        CHECK(shared.sharing.cells.empty());
-    }
-    SUBCASE("no beam around it") {
-        HandFramed f;
-        f.add_deck(panel_6_by_4, 0);
-        check_sorry(share_by_fixity(f), {0, 0});
-    }
+    CHECK(areas_of(fallen_back).area == areas_of(shared(CornerAngles::equal)).area);
+}
+
+TEST_CASE("a deck that no beam touches is left to the nearest line, which says so") {
+    HandFramed f;
+    f.add_deck(panel_6_by_4, 0);
+    const FixityShared shared = share_by_fixity(f);
+    CHECK(!shared.fits);
+    CHECK(shared.sharing.problems.empty());
 }
 
 TEST_CASE("beams a little off the deck's edge, and a strip of deck thinner than snap, are no obstacle") {

@@ -181,3 +181,170 @@ TEST_CASE("three columns at the corners of a triangle") {
         CHECK(s.area.at(2) == doctest::Approx(26.0 / 3).epsilon(1e-12));
     }
 }
+
+TEST_CASE("a beam that ends inside a deck takes the zone around its end as a point load") {
+    for (const Motion& move : motions()) {
+        const Ring ring = move(Ring{{0, 0}, {10, 0}, {10, 4}, {0, 4}});
+        HandFramed f = two_way(ring);
+        f.add_member(move(Point{2, 2}), move(Point{7, 2}), Role::beam);
+        const Sharing sharing = f.share();
+        const Shared s = shared(sharing);
+        CHECK(s.all == doctest::Approx(40).epsilon(1e-13));
+        CHECK(s.area.at(0) == doctest::Approx(40).epsilon(1e-13));
+        CHECK(s.at_ends.at(0) == doctest::Approx(2 * 4 + 3 * 4).epsilon(1e-13));
+        double at_from = 0;
+        for (std::size_t c = 0; c < sharing.cells.size(); ++c) {
+            const Transfer& transfer = sharing.transfers[c].front();
+            at_from += transfer.station_from == 0 && transfer.station_to == 0 ? area_of(sharing.cells[c]) : 0;
+        }
+        CHECK(at_from == doctest::Approx(8).epsilon(1e-13));
+    }
+}
+
+TEST_CASE("the zone at an end that two beams share is divided by the bisector of their angle") {
+    for (const Motion& move : motions()) {
+        // Beams from (4, 4) to the left and downwards; what lies above and to the right of both is halved.
+        const Ring ring = move(Ring{{0, 0}, {8, 0}, {8, 8}, {0, 8}});
+        HandFramed f = two_way(ring);
+        f.add_member(move(Point{4, 4}), move(Point{0, 4}), Role::beam);
+        f.add_member(move(Point{4, 4}), move(Point{4, 0}), Role::beam);
+        const Shared s = shared(f.share());
+        CHECK(s.at_ends.at(0) == doctest::Approx(8).epsilon(1e-13));
+        CHECK(s.at_ends.at(1) == doctest::Approx(8).epsilon(1e-13));
+        CHECK(s.area.at(0) == doctest::Approx(32).epsilon(1e-13));
+        CHECK(s.area.at(1) == doctest::Approx(32).epsilon(1e-13));
+    }
+}
+
+TEST_CASE("a column at a wall's end takes what is nearest to that end") {
+    HandFramed f;
+    f.plan.walls.push_back({"W", {2, 2}, {7, 2}, "ground", "L", {}, {}});
+    f.level().walls.push_back(0);
+    Column column;
+    column.id = "C";
+    column.at = {7, 2};
+    f.plan.columns.push_back(column);
+    f.level().columns.push_back(0);
+    f.add_deck({{0, 0}, {10, 0}, {10, 4}, {0, 4}}, 0);
+    f.level().decks.back().span = SpanKind::columns;
+    const Sharing sharing = f.share();
+    const Shared s = shared(sharing);
+    CHECK(s.area.at(sharing.number_of({CarrierKind::column, 0})) == doctest::Approx(12).epsilon(1e-13));
+    CHECK(s.area.at(sharing.number_of({CarrierKind::wall, 0})) == doctest::Approx(28).epsilon(1e-13));
+}
+
+TEST_CASE("members under a deck on columns take nothing of it, and a note says so") {
+    HandFramed f;
+    const Ring ring{{0, 0}, {6, 0}, {6, 6}, {0, 6}};
+    f.add_deck(ring, 0);
+    f.level().decks.back().span = SpanKind::columns;
+    add_edges(f, ring);
+    f.add_member({6, 3}, {9, 3}); // touches it only
+    for (std::uint32_t i = 0; i < 4; ++i) {
+        Column column;
+        column.id = "C" + std::to_string(i);
+        column.at = ring[i];
+        f.plan.columns.push_back(column);
+        f.level().columns.push_back(i);
+    }
+    const Sharing sharing = f.share();
+    const Shared s = shared(sharing);
+    for (std::uint32_t c = 0; c < 4; ++c) {
+        CHECK(s.area.at(sharing.number_of({CarrierKind::column, c})) == doctest::Approx(9).epsilon(1e-13));
+    }
+    CHECK(s.area.size() == 4);
+    REQUIRE(sharing.problems.size() == 1);
+    CHECK(sharing.problems[0].code == ProblemCode::carries_nothing);
+    CHECK(sharing.problems[0].severity == Severity::note);
+    CHECK(sharing.problems[0].ids == std::vector<std::string>{"D0", "M0", "M1", "M2", "M3"});
+}
+
+TEST_CASE("a deck without any carrier is an error with what would be lost") {
+    for (const SpanKind span : {SpanKind::two_way, SpanKind::columns}) {
+        HandFramed f = two_way({{0, 0}, {6, 0}, {6, 4}, {0, 4}}, {{{1, 1}, {1, 2}, {3, 2}, {3, 1}}});
+        f.level().decks.back().span = span;
+        f.add_member({6, 2}, {9, 2}); // touches it only
+        f.add_member({-1, -0.1}, {9, -0.1});
+        f.add_area_load("live", 2);
+        f.add_area_load("dead", 1, {{0, 0}, {3, 0}, {3, 1}, {0, 1}});
+        const Sharing sharing = f.share();
+        REQUIRE(sharing.problems.size() == 1);
+        CHECK(sharing.problems[0].code == ProblemCode::strip_unsupported);
+        CHECK(sharing.problems[0].message.find("22 m2") != std::string::npos);
+        CHECK(sharing.problems[0].message.find("live 44 kN") != std::string::npos);
+        CHECK(sharing.problems[0].message.find("dead 3 kN") != std::string::npos);
+        double area = 0;
+        for (std::size_t c = 0; c < sharing.cells.size(); ++c) {
+            area += area_of(sharing.cells[c]);
+            CHECK(sharing.transfers[c].empty());
+        }
+        CHECK(area == doctest::Approx(22));
+    }
+}
+
+TEST_CASE("a way past a re-entrant corner leaves the deck, one beside it does not") {
+    // A U: only the left leg's outer edge and the bottom carry.
+    const Ring ring{{0, 0}, {9, 0}, {9, 6}, {6, 6}, {6, 2}, {3, 2}, {3, 6}, {0, 6}};
+    HandFramed f = two_way(ring);
+    f.add_member({0, 6}, {0, 0}, Role::beam);
+    const Sharing sharing = f.share();
+    REQUIRE(sharing.problems.size() == 1);
+    CHECK(sharing.problems[0].code == ProblemCode::way_leaves_deck);
+    CHECK(sharing.problems[0].severity == Severity::warning);
+    CHECK(sharing.problems[0].message.find("12 m2") != std::string::npos); // the right leg above y = 2
+    REQUIRE(sharing.problems[0].point);
+    CHECK(sharing.problems[0].point->x > 6);
+    CHECK(sharing.problems[0].ids == std::vector<std::string>{"D0", "M0"});
+
+    f.add_member({9, 0}, {9, 6}, Role::beam);
+    CHECK(f.share().problems.empty());
+}
+
+TEST_CASE("a gap no wider than snap between carrier and deck is none") {
+    HandFramed f = two_way({{0, 0}, {6, 0}, {6, 4}, {0, 4}});
+    f.add_member({0, -0.004}, {6, -0.004}, Role::beam);
+    f.add_member({6, 4.004}, {0, 4.004}, Role::beam);
+    const Sharing sharing = f.share();
+    const Shared s = shared(sharing);
+    CHECK(s.all == doctest::Approx(24).epsilon(1e-13));
+    CHECK(s.area.at(0) == doctest::Approx(12).epsilon(1e-13));
+    CHECK(sharing.problems.empty());
+}
+
+TEST_CASE("bays of one deck and the same bays as decks of their own are shared alike") {
+    const auto member_areas = [](bool one_deck, const Motion& move) {
+        HandFramed f;
+        const std::vector<double> xs{0, 6, 13, 18};
+        const std::vector<double> ys{0, 5, 9};
+        for (const double y : ys) {
+            f.add_member(move(Point{xs.front(), y}), move(Point{xs.back(), y}), Role::girder);
+        }
+        for (const double x : xs) {
+            for (std::size_t r = 0; r + 1 < ys.size(); ++r) {
+                f.add_member(move(Point{x, ys[r]}), move(Point{x, ys[r + 1]}), Role::beam);
+            }
+        }
+        const auto add = [&](double x0, double y0, double x1, double y1) {
+            f.add_deck(move(Ring{{x0, y0}, {x1, y0}, {x1, y1}, {x0, y1}}), 0);
+            f.level().decks.back().span = SpanKind::two_way;
+        };
+        if (one_deck) {
+            add(xs.front(), ys.front(), xs.back(), ys.back());
+        } else {
+            for (std::size_t r = 0; r + 1 < ys.size(); ++r) {
+                for (std::size_t c = 0; c + 1 < xs.size(); ++c) {
+                    add(xs[c], ys[r], xs[c + 1], ys[r + 1]);
+                }
+            }
+        }
+        return shared(f.share()).area;
+    };
+    for (const Motion& move : motions()) {
+        const auto whole = member_areas(true, move);
+        const auto bays = member_areas(false, move);
+        REQUIRE(whole.size() == bays.size());
+        for (const auto& [member, area] : whole) {
+            CHECK(area == doctest::Approx(bays.at(member)).epsilon(1e-12));
+        }
+    }
+}

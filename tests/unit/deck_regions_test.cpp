@@ -430,7 +430,7 @@ TEST_CASE("rings enclose the area of their cells for random cells in random axes
     MESSAGE("largest relative error of a region's rings " << worst);
 }
 
-TEST_CASE("a column before a wall: both sides of a parabola cut at any stations") {
+TEST_CASE("a column before a wall: both sides of a parabola cut at stations of their own") {
     const std::uint64_t seed = support::seed_of_run(20261204);
     MESSAGE("seed " << seed);
     Random random(seed);
@@ -449,14 +449,17 @@ TEST_CASE("a column before a wall: both sides of a parabola cut at any stations"
         }
         std::sort(stations.begin(), stations.end());
         const double top = std::max(parabola(0), parabola(10)) + 1;
+        const auto arc = [&](double from, double to) {
+            return Border{-parabola(from), -parabola(to), -(to - from) * (to - from) / (4 * h)};
+        };
         for (std::size_t k = 0; k + 1 < stations.size(); ++k) {
             const double from = stations[k];
             const double to = stations[k + 1];
-            const double bulge = -(to - from) * (to - from) / (4 * h);
-            const Border arc{-parabola(from), -parabola(to), bulge};
-            s.add_side(0, axes, {from, to, arc, {}});
-            s.add_zone(2, 0, axes, {from, to, {-top, -top, 0}, arc});
+            s.add_side(0, axes, {from, to, arc(from, to), {}});
         }
+        const double split = random.between(1, 9);
+        s.add_zone(2, 0, axes, {0, split, {-top, -top, 0}, arc(0, split)});
+        s.add_zone(2, 0, axes, {split, 10, {-top, -top, 0}, arc(split, 10)});
         const std::vector<Region> regions = regions_of(s.sharing);
         REQUIRE(regions.size() == 2);
         const double below = 10 * h + (std::pow(10 - c, 3) + std::pow(c, 3)) / (12 * h);

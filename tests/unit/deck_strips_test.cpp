@@ -1,5 +1,7 @@
 #include "support/deck_support.hpp"
 
+#include "deck/strips_chains.hpp"
+
 #include <doctest/doctest.h>
 
 #include <algorithm>
@@ -335,6 +337,25 @@ TEST_CASE("loads that stand on strips follow the strips") {
         CHECK(loads.points[1][0].station == Approx(2.5));
         check_kept(loads);
     }
+    SUBCASE("a line along the strips but for millimetres keeps its moment all the same") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {0.2, 2.5}, {3.6, 2.504}, {}, {}});
+        const LevelLoads loads = f.load(f.share());
+        // Of the far carrier's part the centre lies within the line; it is lifted.
+        REQUIRE(loads.points[2].size() == 1);
+        CHECK(loads.points[2][0].p < 0);
+        check_kept(loads);
+    }
+    SUBCASE("a part that pushes both ways is two points") {
+        HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::continuous);
+        f.level().line_loads.push_back({"live", 1, 1, {4, 2.5}, {12, 2.504}, {}, {}});
+        f.level().decks[0].outline = {{0, 0}, {12, 0}, {12, 4}, {0, 4}};
+        const LevelLoads loads = f.load(f.share());
+        check_kept(loads);
+        // The far carrier: -1/16 x 4 from the span, 1/4 x 2 x 8 / 4 from the overhang.
+        REQUIRE(loads.points[0].size() == 2);
+        CHECK(loads.points[0][0].p + loads.points[0][1].p == Approx(-0.25 + 0.5));
+    }
     SUBCASE("a line from corner to corner over lever spans is shared by quadratics") {
         HandFramed f = floor_on({0, 4, 8}, 0, 8, Share::lever);
         f.level().line_loads.push_back({"live", 1, 3, {0.5, 0.5}, {7.5, 3.5}, {}, {}});
@@ -364,4 +385,70 @@ TEST_CASE("continuous: a zone with a slanting border is an exact quartic") {
         const double z = (1 + s / 2) / 4;
         CHECK(loads.lines[2][0].piece.at(s) == Approx(z * z * z * z / 4 - z * z / 2).epsilon(1e-11));
     }
+}
+
+TEST_CASE("what the drawing is off by goes to a point of the nearest carrier, and its way is told") {
+    for (const Share share : {Share::lever, Share::continuous}) {
+        HandFramed f;
+        f.add_member({0, 0}, {0, 5});
+        f.add_member({2, 0}, {2, 5});
+        f.add_member({4, 0}, {4, 5});
+        // The edge rises by 3 mm, within `snap`, from joist to joist and past the ends of all.
+        f.add_deck({{0, 0}, {4, 0}, {4, 5}, {2.9, 5.003}, {0, 5}}, 0);
+        f.level().decks[0].share = share;
+        f.add_area_load("live", 2);
+        f.add_area_load("live", 1, Ring{{3, 4}, {5, 4}, {5, 6}, {3, 6}});
+        const Sharing sharing = f.share();
+        CHECK(sharing.problems.empty());
+        const LevelLoads loads = f.load(sharing);
+        const DeckBalance& row = balance_of(loads, 0, live);
+        CHECK(row.shared.force == Approx(row.applied.force).epsilon(1e-14));
+        CHECK(row.moved > 0);
+        CHECK(row.moved < 0.2);               // kNm; of some 40 kN on spans of 2 m
+        REQUIRE(loads.points[1].size() == 1); // of the middle joist, the nearest
+        CHECK(loads.points[1][0].station == Approx(5).epsilon(1e-3));
+        CHECK(loads.points[1][0].p > 0);
+        CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
+        CHECK(check_moment(f.plan, f.framing, 0, sharing, loads).empty());
+    }
+}
+
+TEST_CASE("a wedge of deck on two joists that meet is held by both up to its tip") {
+    HandFramed f;
+    f.add_member({0, 0}, {2, 4});
+    f.add_member({4, 0}, {2, 4});
+    f.add_deck({{0, 0}, {4, 0}, {2, 4}}, 0);
+    f.add_area_load("live", 3);
+    f.level().point_loads.push_back({"live", 1, {2, 4 - 1e-12}, {}, {}});
+    for (const Share share : {Share::lever, Share::continuous}) {
+        f.level().decks[0].share = share;
+        const Sharing sharing = f.share();
+        CHECK(sharing.problems.empty());
+        const LevelLoads loads = f.load(sharing);
+        CHECK(support::total(loads.lines[0], live) == Approx(12).epsilon(1e-12));
+        CHECK(loads.lines[0][0].piece.at(std::hypot(2, 4)) == Approx(0).epsilon(1e-12));
+        check_kept(loads);
+    }
+}
+
+TEST_CASE("a bay that begins beside another cuts its chain there and joins it") {
+    std::vector<Bay> bays(3);
+    bays[0].to = 3;
+    bays[1].from = 1;
+    bays[1].to = 2;
+    bays[2].to = 3;
+    const std::vector<BayMarks> marks{{Gap::edge, 7}, {7, Gap::edge}, {Gap::edge, 4}};
+    struct Found {
+        std::vector<std::uint32_t> bays;
+        double from, to;
+        bool operator==(const Found&) const = default;
+    };
+    std::vector<Found> found;
+    for_chains(bays, marks, [&](const Chain& chain) {
+        CHECK(chain.core == 0);
+        CHECK(chain.core_size == chain.bays.size());
+        found.push_back({{chain.bays.begin(), chain.bays.end()}, chain.from, chain.to});
+    });
+    const std::vector<Found> expected{{{0}, 0, 1}, {{0, 1}, 1, 2}, {{0}, 2, 3}, {{2}, 0, 3}};
+    CHECK(std::is_permutation(found.begin(), found.end(), expected.begin(), expected.end()));
 }

@@ -59,7 +59,7 @@ bool cuts_a_digit(std::string_view line) {
             --word;
         }
         const std::string_view cell = line.substr(word, at - word);
-        if (cell.find_first_not_of("0123456789.+-e(,") == std::string_view::npos) {
+        if (!cell.empty() && cell.find_first_not_of("0123456789.+-e(,") == std::string_view::npos) {
             return true;
         }
     }

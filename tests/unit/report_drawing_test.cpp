@@ -107,10 +107,12 @@ TEST_CASE("decks show by their marks how they span, and by their labels how they
         transfer.station_to = transfer.station_from;
     }
     CHECK(drawn().find("class=\"end-zone\"") != std::string::npos);
+    CHECK(drawn().find("to the end of the beam or wall</text>") != std::string::npos);
     for (Transfer& transfer : sharing.transfers.items()) {
         transfer.carrier = sharing.number_of({CarrierKind::column, 1});
     }
     CHECK(drawn().find("class=\"end-zone\"") == std::string::npos);
+    CHECK(drawn().find("to the end of") == std::string::npos);
 }
 
 TEST_CASE("a deck's label stands in the deck, clear of openings and lines") {

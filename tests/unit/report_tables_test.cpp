@@ -39,8 +39,9 @@ TEST_CASE("tables have their units in the head and a row for each thing") {
     const std::string reactions = table(Table::reactions);
     CHECK(reactions.find("\r\nwalk,b,1,0,south,member,4000,4000,0,2000,20000,\r\n") != std::string::npos);
     const std::string members = table(Table::members);
-    CHECK(members.find("\r\nwalk,b,joist,4000,0,4000,2000,2000,8e+06,8e+06,2,4000,40000\r\n") !=
+    CHECK(members.find("\r\nwalk,b,joist,4000,0,4000,2000,2000,8e+06,8e+06,1.6e+07,2,4000,40000\r\n") !=
           std::string::npos);
     const std::string rundowns = table(Table::rundowns);
-    CHECK(rundowns.find("\r\nP,column,walk,4e+06,4e+06,1,0,2000,22250,2000,22250,\r\n") != std::string::npos);
+    CHECK(rundowns.find("\r\nP,column,walk,4e+06,1.6e+07,4e+06,1,0,2000,22250,2000,22250,\r\n") !=
+          std::string::npos);
 }

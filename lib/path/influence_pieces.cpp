@@ -1,0 +1,156 @@
+#include "path/influence_pieces.hpp"
+
+#include "deck/panels.hpp"
+#include "geometry/box_tree.hpp"
+#include "path/influence_columns.hpp"
+
+#include <algorithm>
+#include <optional>
+#include <utility>
+
+RUNNEL_NAMESPACE_BEGIN
+
+double FloorPieces::area_between(std::uint32_t piece, double from, double to) const {
+    const bool all = from <= 0 && to >= 1;
+    if (all || piece >= shapes.size()) {
+        return areas[piece];
+    }
+    const StripPiece& shape = shapes[piece];
+    const double breadth = shape.to - shape.from;
+    return area_of({shape.from + from * breadth, shape.from + to * breadth, stretch_of(shape.low, from, to),
+                    stretch_of(shape.high, from, to)});
+}
+
+namespace {
+
+class PieceMaker {
+public:
+    PieceMaker(const Plan& plan, const FramedLevel& framed, const Sharing& sharing, Tolerance tolerance)
+        : plan_(plan), framed_(framed), sharing_(sharing), tolerance_(tolerance) {}
+
+    FloorPieces make() {
+        add_bays();
+        const Grouped<std::uint32_t> on_columns = cells_on_columns();
+        for (std::uint32_t d = 0; d < framed_.decks.size(); ++d) {
+            if (framed_.decks[d].span == SpanKind::two_way) {
+                add_panels(framed_.decks[d]);
+            } else if (!on_columns[d].empty()) {
+                add_felt_areas(d, on_columns[d]);
+            }
+        }
+        pieces_.beside = Grouped<Beside>::from_pairs(sharing_.carrier_count(), std::move(beside_));
+        return std::move(pieces_);
+    }
+
+private:
+    void add_bays() {
+        pieces_.shapes.reserve(sharing_.bays.size());
+        pieces_.areas.reserve(sharing_.bays.size());
+        beside_.reserve(2 * sharing_.bays.size());
+        for (const Bay& bay : sharing_.bays) {
+            pieces_.shapes.push_back({bay.from, bay.to, bay.low, bay.high});
+            const std::uint32_t piece = add_piece(area_of(pieces_.shapes.back()));
+            if (bay.low_carrier != none) {
+                beside_.push_back(
+                    {bay.low_carrier, {piece, bay.low_station_from, bay.low_station_to, false}});
+            }
+            if (bay.high_carrier != none) {
+                beside_.push_back(
+                    {bay.high_carrier, {piece, bay.high_station_from, bay.high_station_to, false}});
+            }
+        }
+    }
+
+    std::uint32_t add_piece(double area) {
+        pieces_.areas.push_back(area);
+        return static_cast<std::uint32_t>(pieces_.areas.size() - 1);
+    }
+
+    void add_panels(const FramedDeck& deck) {
+        const std::vector<LineCarrier> carriers = carriers_near(deck);
+        for (const Panel& panel : divide_into_panels(deck, carriers, tolerance_).panels) {
+            const std::uint32_t piece = add_piece(panel.area);
+            const auto lay_beside = [&](const std::vector<PanelEdge>& border) {
+                for (const PanelEdge& edge : border) {
+                    if (edge.carrier != none) {
+                        beside_.push_back({carriers[edge.carrier].number,
+                                           {piece, edge.station_from, edge.station_to, true}});
+                    }
+                }
+            };
+            lay_beside(panel.outer);
+            std::for_each(panel.holes.begin(), panel.holes.end(), lay_beside);
+        }
+    }
+
+    /// Members and walls of the level that may carry a deck.
+    std::vector<LineCarrier> carriers_near(const FramedDeck& deck) {
+        if (!tree_) {
+            find_carriers();
+        }
+        std::vector<std::uint32_t> near;
+        tree_->find(box_of(deck.outline).grown(tolerance_.snap), near);
+        std::vector<LineCarrier> carriers;
+        for (const std::uint32_t i : near) {
+            carriers.push_back(carriers_[i]);
+        }
+        return carriers;
+    }
+
+    void find_carriers() {
+        for (std::uint32_t m = 0; m < framed_.members.size(); ++m) {
+            if (framed_.members[m].carries_deck) {
+                carriers_.push_back({m, framed_.members[m].from, framed_.members[m].to});
+            }
+        }
+        for (const std::uint32_t w : framed_.walls) {
+            carriers_.push_back(
+                {sharing_.number_of({CarrierKind::wall, w}), plan_.walls[w].from, plan_.walls[w].to});
+        }
+        std::vector<Box> boxes;
+        boxes.reserve(carriers_.size());
+        for (const LineCarrier& carrier : carriers_) {
+            boxes.push_back(box_of(carrier.from, carrier.to));
+        }
+        tree_.emplace(boxes);
+    }
+
+    void add_felt_areas(std::uint32_t d, std::span<const std::uint32_t> cells) {
+        for (const FeltArea& felt : felt_areas(plan_, framed_.decks[d], sharing_, cells, tolerance_)) {
+            const std::uint32_t piece = add_piece(felt.area);
+            for (const std::uint32_t carrier : felt.carriers) {
+                beside_.push_back({carrier, {piece, 0, 0, true}});
+            }
+        }
+    }
+
+    /// Cells of decks on columns that go to any, by deck.
+    Grouped<std::uint32_t> cells_on_columns() const {
+        std::vector<std::pair<std::uint32_t, std::uint32_t>> cells;
+        for (std::uint32_t c = 0; c < sharing_.cells.size(); ++c) {
+            const std::uint32_t deck = sharing_.cells[c].deck;
+            if (framed_.decks[deck].span == SpanKind::columns && !sharing_.transfers[c].empty()) {
+                cells.emplace_back(deck, c);
+            }
+        }
+        return Grouped<std::uint32_t>::from_pairs(framed_.decks.size(), std::move(cells));
+    }
+
+    const Plan& plan_;
+    const FramedLevel& framed_;
+    const Sharing& sharing_;
+    Tolerance tolerance_;
+    std::vector<LineCarrier> carriers_;
+    std::optional<BoxTree> tree_; ///< of the carriers; built when first asked
+    FloorPieces pieces_;
+    std::vector<std::pair<std::uint32_t, Beside>> beside_;
+};
+
+} // namespace
+
+FloorPieces floor_pieces(const Plan& plan, const FramedLevel& framed, const Sharing& sharing,
+                         Tolerance tolerance) {
+    return PieceMaker(plan, framed, sharing, tolerance).make();
+}
+
+RUNNEL_NAMESPACE_END
