@@ -60,6 +60,17 @@ struct Corner {
 };
 using Corners = std::vector<Corner>;
 
+inline Corner seen_from(runnel::Point base, runnel::Point p) {
+    return {static_cast<long double>(p.x) - static_cast<long double>(base.x),
+            static_cast<long double>(p.y) - static_cast<long double>(base.y)};
+}
+
+/// A pressure q + x slope.x + y slope.y.
+struct Pressure {
+    long double q = 0;
+    Corner slope;
+};
+
 inline Corners cut(const Corners& polygon, Corner a, Corner b) {
     Corners left;
     const auto side = [&](const Corner& p) { return (b.x - a.x) * (p.y - a.y) - (b.y - a.y) * (p.x - a.x); };
@@ -79,10 +90,10 @@ inline Corners cut(const Corners& polygon, Corner a, Corner b) {
     return left;
 }
 
-/// Integral of q + g.x x + g.y y over what a polygon and all rings have in common. A ring is the signed sum
-/// of the triangles of a fan, so that nothing but convex polygons is cut, and signs do the rest.
+/// Integral of a pressure over what a polygon and all rings have in common. A ring is the signed sum of the
+/// triangles of a fan, so that nothing but convex polygons is cut, and signs do the rest.
 inline long double integral_over(const Corners& polygon, std::span<const runnel::Ring> rings,
-                                 runnel::Point base, long double q, runnel::Point g) {
+                                 runnel::Point base, const Pressure& pressure) {
     if (polygon.size() < 3) {
         return 0;
     }
@@ -93,21 +104,18 @@ inline long double integral_over(const Corners& polygon, std::span<const runnel:
             const Corner& b = polygon[i];
             const Corner& c = polygon[i + 1];
             const long double area = ((b.x - a.x) * (c.y - a.y) - (b.y - a.y) * (c.x - a.x)) / 2;
-            sum += area * (q + g.x * (a.x + b.x + c.x) / 3 + g.y * (a.y + b.y + c.y) / 3);
+            sum += area * (pressure.q + pressure.slope.x * (a.x + b.x + c.x) / 3 +
+                           pressure.slope.y * (a.y + b.y + c.y) / 3);
         }
         return sum;
     }
     long double sum = 0;
     long double doubled = 0;
     const runnel::Ring& ring = rings.front();
-    const auto corner = [&](std::size_t i) {
-        return Corner{static_cast<long double>(ring[i].x) - base.x,
-                      static_cast<long double>(ring[i].y) - base.y};
-    };
     for (std::size_t i = 1; i + 1 < ring.size(); ++i) {
-        const Corner a = corner(0);
-        Corner b = corner(i);
-        Corner c = corner(i + 1);
+        const Corner a = seen_from(base, ring[0]);
+        Corner b = seen_from(base, ring[i]);
+        Corner c = seen_from(base, ring[i + 1]);
         const long double twice = (b.x - a.x) * (c.y - a.y) - (b.y - a.y) * (c.x - a.x);
         doubled += twice;
         if (twice == 0) {
@@ -117,7 +125,7 @@ inline long double integral_over(const Corners& polygon, std::span<const runnel:
             std::swap(b, c);
         }
         const long double part =
-            integral_over(cut(cut(cut(polygon, a, b), b, c), c, a), rings.subspan(1), base, q, g);
+            integral_over(cut(cut(cut(polygon, a, b), b, c), c, a), rings.subspan(1), base, pressure);
         sum += twice < 0 ? -part : part;
     }
     return doubled < 0 ? -sum : sum; // whichever way the ring runs
@@ -129,7 +137,7 @@ inline long double integral_over(const Corners& polygon, std::span<const runnel:
 inline long double force_on(const runnel::FramedDeck& deck, std::span<const runnel::AreaLoad> loads,
                             const std::string& load_case) {
     const runnel::Point base = deck.outline.front();
-    const double far = 1e3; // any square around decks of these tests
+    const long double far = 1000; // any square around decks of these tests
     const exact::Corners all{{-far, -far}, {far, -far}, {far, far}, {-far, far}};
     long double force = 0;
     for (std::size_t i = 0; i < loads.size(); ++i) {
@@ -138,8 +146,10 @@ inline long double force_on(const runnel::FramedDeck& deck, std::span<const runn
             continue;
         }
         const double q = pressure_of(load, base);
-        const runnel::Point slope{pressure_of(load, {base.x + 1, base.y}) - q,
-                                  pressure_of(load, {base.x, base.y + 1}) - q};
+        const exact::Pressure pressure{
+            static_cast<long double>(q),
+            {static_cast<long double>(pressure_of(load, {base.x + 1, base.y}) - q),
+             static_cast<long double>(pressure_of(load, {base.x, base.y + 1}) - q)}};
         std::vector<runnel::Ring> own{deck.outline};
         if (!load.outline.empty()) {
             own.push_back(load.outline);
@@ -156,17 +166,17 @@ inline long double force_on(const runnel::FramedDeck& deck, std::span<const runn
         // outline and do not overlap each other.
         for (std::uint32_t chosen = 0; left && chosen < (1U << replacing.size()); ++chosen) {
             std::vector<runnel::Ring> common = own;
-            double sign = 1;
+            long double sign = 1;
             for (std::size_t k = 0; k < replacing.size(); ++k) {
                 if ((chosen >> k & 1U) != 0) {
                     common.push_back(replacing[k]);
                     sign = -sign;
                 }
             }
-            force += sign * exact::integral_over(all, common, base, q, slope);
+            force += sign * exact::integral_over(all, common, base, pressure);
             for (const runnel::Ring& opening : deck.openings) {
                 common[0] = opening;
-                force -= sign * exact::integral_over(all, common, base, q, slope);
+                force -= sign * exact::integral_over(all, common, base, pressure);
             }
         }
     }
