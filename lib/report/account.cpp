@@ -87,12 +87,21 @@ void Account::head() {
     }
 }
 
-/// "Decks shared by `half`; by `lever`: D1, D4." Decks are named where they differ from the plan's setting.
+/// "One-way decks shared by `half`; by `lever`: D1, D4." Decks are named where they differ from the plan's
+/// setting.
 std::string Account::shares_used() const {
+    const auto is_one_way = [](const FramedDeck& deck) { return deck.span == SpanKind::one_way; };
+    const bool any = std::any_of(takedown_.framing.levels.begin(), takedown_.framing.levels.end(),
+                                 [&](const FramedLevel& level) {
+                                     return std::any_of(level.decks.begin(), level.decks.end(), is_one_way);
+                                 });
+    if (!any) {
+        return "No deck spans one way.";
+    }
     constexpr std::size_t most = 8; // decks that are named
     constexpr std::array<Share, 3> shares{Share::half, Share::lever, Share::continuous};
     const Share usual = takedown_.plan.settings.share;
-    std::string text = "Decks shared by `" + std::string(name_of(usual)) + '`';
+    std::string text = "One-way decks shared by `" + std::string(name_of(usual)) + '`';
     for (const Share share : shares) {
         std::string decks;
         std::size_t count = 0;
@@ -217,6 +226,8 @@ void Account::level_members(std::uint32_t level, std::size_t most) {
     }
     if (shown > 0) {
         table.print(page_, indent);
+    } else if (framed.members.empty()) {
+        page_.line("none: what decks carry goes to columns and walls", indent);
     }
     if (shown < framed.members.size()) {
         page_.line("and " + counted(framed.members.size() - shown, "lighter member") +

@@ -101,13 +101,13 @@ TEST_CASE("decks that are shared otherwise than the plan says are named") {
         std::replace(text.begin(), text.end(), '\n', ' ');
         return text;
     };
-    CHECK(holds(account(), "Decks shared by `half`."));
+    CHECK(holds(account(), "One-way decks shared by `half`."));
     takedown.framing.levels[0].decks[0].share = Share::lever;
-    CHECK(holds(account(), "Decks shared by `half`; by `lever`: boards."));
+    CHECK(holds(account(), "One-way decks shared by `half`; by `lever`: boards."));
     const std::string result = written([&](const TextSink& sink) { write_result(takedown, {}, {}, sink); });
     CHECK(holds(result, R"("deck_shares":[{"deck":"boards","share":"lever"}])"));
     takedown.framing.levels[0].decks[0].span = SpanKind::two_way; // these have no such choice
-    CHECK(holds(account(), "Decks shared by `half`."));
+    CHECK(holds(account(), "No deck spans one way."));
 }
 
 namespace {
