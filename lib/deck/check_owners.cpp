@@ -108,7 +108,7 @@ public:
                 owner = sharing_.transfers[c].empty() ? none : sharing_.transfers[c].front().carrier;
             }
         }
-        if (holders != (answer.inside ? 1U : 0U) || (answer.inside && owner != answer.carrier)) {
+        if (holders != (answer.inside ? 1U : 0U) || (answer.inside && !probe_.accepts(p, answer, owner))) {
             problems.push_back(broken(p, holders));
         }
     }
@@ -155,6 +155,15 @@ void sample(const FramedDeck& deck, const Sharing& sharing, DeckCells cells, std
     }
 }
 
+std::unique_ptr<OwnerProbe> probe_of(const FramedDeck& deck, const StripAxes& axes,
+                                     std::span<const ProbedCarrier> carriers, Tolerance tolerance) {
+    if (deck.span == SpanKind::one_way) {
+        return probe_strips(deck, axes, carriers, tolerance);
+    }
+    const bool by_fixity = deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity;
+    return by_fixity ? probe_fixity(deck, carriers, tolerance) : probe_nearest(deck, carriers, tolerance);
+}
+
 } // namespace
 
 std::vector<Problem> check_owners(const Plan& plan, const Framing& framing, std::uint32_t level_index,
@@ -174,16 +183,13 @@ std::vector<Problem> check_owners(const Plan& plan, const Framing& framing, std:
     std::vector<std::uint32_t> near;
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
-        // What by_fixity gives is checked by its own rule.
-        if (cells[d].first == cells[d].last || deck.corner_angles == CornerAngles::by_fixity) {
+        if (cells[d].first == cells[d].last) {
             continue;
         }
         tree.find(box_of(deck.outline).grown(2 * tolerance.snap), near);
         const std::vector<ProbedCarrier> carriers = carriers_for(deck, sharing, all, near);
         const std::unique_ptr<OwnerProbe> probe =
-            deck.span == SpanKind::one_way
-                ? probe_strips(deck, sharing.axes[sharing.cells[cells[d].first].axes], carriers, tolerance)
-                : probe_nearest(deck, carriers, tolerance);
+            probe_of(deck, sharing.axes[sharing.cells[cells[d].first].axes], carriers, tolerance);
         sample(deck, sharing, cells[d], samples, random,
                OwnerChecker(plan, level, sharing, *probe, d, cells[d], 8 * tolerance.noise), problems);
     }

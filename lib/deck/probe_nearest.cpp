@@ -100,12 +100,30 @@ public:
         return answer;
     }
 
-private:
+protected:
     struct Carrying {
         ProbedCarrier line;
         bool doubtful = false; ///< shares hardly more than a point with the deck
     };
 
+    [[nodiscard]] const std::vector<Carrying>& carriers() const { return carriers_; }
+    [[nodiscard]] double margin() const { return margin_; }
+
+    /// Whether the straight way from a point of the deck to another place stays in it.
+    [[nodiscard]] bool way_stays(Point p, Point q) const {
+        return std::none_of(edges_.begin(), edges_.end(), [&](const Edge& e) {
+            const Point d = q - p;
+            const double to_a = cross(d, e.a - p);
+            const double to_b = cross(d, e.b - p);
+            const Point along = e.b - e.a;
+            const double from_p = cross(along, p - e.a);
+            const double from_q = cross(along, q - e.a);
+            const double reach = norm(along) * (margin_ + snap_);
+            return to_a * to_b < 0 && from_p * from_q < 0 && std::abs(from_q) > reach;
+        });
+    }
+
+private:
     void add_edges(const Ring& ring) {
         for (std::size_t i = 0; i < ring.size(); ++i) {
             edges_.push_back({ring[i], ring[(i + 1) % ring.size()]});
@@ -115,8 +133,8 @@ private:
     void add_carrier(const FramedDeck& deck, const ProbedCarrier& carrier) {
         if (deck.span == SpanKind::columns && carrier.column) {
             const double off = is_inside(edges_, carrier.from) ? 0 : distance_to_edges(edges_, carrier.from);
-            if (off <= snap_ + margin_) {
-                carriers_.push_back({carrier, off > snap_ - margin_});
+            if (off <= 2 * snap_) {
+                carriers_.push_back({carrier, off > snap_ / 2});
             }
         } else if (!carrier.column) {
             // Whether it carries hangs on `snap` alone where a little more or less of it would change that.
@@ -184,7 +202,56 @@ private:
     std::vector<Carrying> carriers_;
 };
 
+class FixityProbe : public NearestProbe {
+public:
+    using NearestProbe::NearestProbe;
+
+    [[nodiscard]] Answer ask(Point p) const override {
+        Answer answer = NearestProbe::ask(p);
+        answer.clear = answer.clear && !carriers().empty(); // ties of the nearest are left out here too
+        return answer;
+    }
+
+    [[nodiscard]] bool accepts(Point p, const Answer& answer, std::uint32_t owner) const override {
+        if (owner == answer.carrier) {
+            return true;
+        }
+        const Carrying* nearest = find(answer.carrier);
+        const Carrying* taker = find(owner);
+        if (nearest == nullptr || taker == nullptr) {
+            return false;
+        }
+        const Point foot = foot_on(nearest->line, p);
+        if (!way_stays(p, foot)) {
+            return true; // no carrier of this panel
+        }
+        const Point a = taker->line.from;
+        const Point d = taker->line.to - a;
+        const double square_to_line = std::abs(cross(d, p - a)) / norm(d);
+        return square_to_line <= std::sqrt(3.0) * (distance(p, foot) + margin()) + margin();
+    }
+
+private:
+    [[nodiscard]] const Carrying* find(std::uint32_t number) const {
+        for (const Carrying& c : carriers()) {
+            if (c.line.number == number) {
+                return &c;
+            }
+        }
+        return nullptr;
+    }
+    static Point foot_on(const ProbedCarrier& line, Point p) {
+        const Point d = line.to - line.from;
+        return between(line.from, line.to, std::clamp(dot(p - line.from, d) / dot(d, d), 0.0, 1.0));
+    }
+};
+
 } // namespace
+
+std::unique_ptr<OwnerProbe> probe_fixity(const FramedDeck& deck, std::span<const ProbedCarrier> carriers,
+                                         Tolerance tolerance) {
+    return std::make_unique<FixityProbe>(deck, carriers, tolerance);
+}
 
 std::unique_ptr<OwnerProbe> probe_nearest(const FramedDeck& deck, std::span<const ProbedCarrier> carriers,
                                           Tolerance tolerance) {

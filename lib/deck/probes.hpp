@@ -25,6 +25,10 @@ public:
     virtual ~OwnerProbe() = default;
 
     [[nodiscard]] virtual Answer ask(Point p) const = 0;
+    /// Whether a point with this answer may go to that carrier.
+    [[nodiscard]] virtual bool accepts(Point /*p*/, const Answer& answer, std::uint32_t owner) const {
+        return owner == answer.carrier;
+    }
 };
 
 /// A member, wall or column that may carry the deck (a column: from == to).
@@ -42,5 +46,9 @@ struct ProbedCarrier {
 /// all.
 [[nodiscard]] std::unique_ptr<OwnerProbe>
 probe_nearest(const FramedDeck& deck, std::span<const ProbedCarrier> carriers, Tolerance tolerance);
+/// Two-way with corners divided by fixity. What this brute force knows of the rule is that no carrier takes a
+/// point from more than sqrt(3) times as far as the nearest; the rest is held by tests/laws/fixity_test.cpp.
+[[nodiscard]] std::unique_ptr<OwnerProbe>
+probe_fixity(const FramedDeck& deck, std::span<const ProbedCarrier> carriers, Tolerance tolerance);
 
 RUNNEL_NAMESPACE_END

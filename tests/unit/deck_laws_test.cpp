@@ -110,3 +110,34 @@ TEST_CASE("a load that is lost or moved on its way is seen") {
     CHECK(check_force(f.plan, f.framing, 0, sharing, loads).empty());
     CHECK(only_code(check_moment(f.plan, f.framing, 0, sharing, loads)) == ProblemCode::moment_broken);
 }
+
+TEST_CASE("on two-way decks and decks on columns a wrong owner is seen as well") {
+    support::HandFramed f;
+    f.add_member({0, 0}, {6, 0});
+    f.add_member({6, 0}, {6, 4});
+    f.add_member({6, 4}, {0, 4});
+    f.add_member({0, 4}, {0, 0});
+    for (const Point at : {Point{0, 0}, Point{6, 0}, Point{6, 4}, Point{0, 4}}) {
+        f.level().columns.push_back(static_cast<std::uint32_t>(f.plan.columns.size()));
+        f.plan.columns.emplace_back().at = at;
+    }
+    f.add_deck({{0, 0}, {6, 0}, {6, 4}, {0, 4}}, 0);
+    FramedDeck& deck = f.level().decks[0];
+    for (const SpanKind span : {SpanKind::two_way, SpanKind::columns}) {
+        for (const CornerAngles angles : {CornerAngles::equal, CornerAngles::by_fixity}) {
+            CAPTURE(name_of(span));
+            deck.span = span;
+            deck.corner_angles = angles;
+            Sharing sharing = f.share();
+            CHECK(check_owners(f.plan, f.framing, 0, sharing, 400, 1).empty());
+            CHECK(check_disjoint(f.framing, 0, sharing).empty());
+            const std::uint32_t first = sharing.transfers[0].front().carrier;
+            for (std::size_t c = 0; c < sharing.cells.size(); ++c) {
+                std::uint32_t& carrier = sharing.transfers[c].front().carrier;
+                carrier = carrier == first ? first + 1 : carrier;
+            }
+            CHECK(only_code(check_owners(f.plan, f.framing, 0, sharing, 400, 1)) ==
+                  ProblemCode::owner_broken);
+        }
+    }
+}
