@@ -231,6 +231,13 @@ void RingArea::find_levels(const StripPiece& piece) {
             for (const double x : crossings_of(part, edge.at(from), edge.at(to))) {
                 add((1 - x) * from + x * to);
             }
+            // A parabola that only touches the edge does so at a level, never at a strip's middle.
+            const double d0 = part.start - edge.at(from);
+            const double b = part.end - edge.at(to) - d0 - part.bulge;
+            const double touching = part.bulge != 0 ? -b / (2 * part.bulge) : 0;
+            if (touching > 0 && touching < 1 && std::abs(d0 + touching * b / 2) <= noise_) {
+                add((1 - touching) * from + touching * to);
+            }
         }
     }
     std::sort(levels_.begin(), levels_.end());
