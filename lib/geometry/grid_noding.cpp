@@ -1,5 +1,7 @@
 #include "geometry/grid_noding.hpp"
 
+#include "geometry/box_buckets.hpp"
+
 #include <algorithm>
 #include <cmath>
 #include <numeric>
@@ -120,7 +122,7 @@ private:
             const GridPoint b = grid_of(piece.node_b);
             boxes.push_back(box_of(Point{double(a.x), double(a.y)}, Point{double(b.x), double(b.y)}));
         }
-        const BoxTree tree(boxes);
+        const BoxBuckets tree(boxes);
         cuts_.clear();
         any_merged_ = false;
         std::vector<std::uint32_t> near;

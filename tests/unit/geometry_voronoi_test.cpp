@@ -1,6 +1,7 @@
 #include "support/random_support.hpp"
 
 #include "geometry/basic.hpp"
+#include "geometry/box_buckets.hpp"
 #include "geometry/grid_noding.hpp"
 #include "geometry/ring_area.hpp"
 #include "geometry/segment_voronoi.hpp"
@@ -236,4 +237,51 @@ TEST_CASE("openings that touch along an edge are clipped from any side") {
             CHECK(found == doctest::Approx(44).epsilon(1e-13));
         }
     }
+}
+
+TEST_CASE("boxes are found in buckets as one by one, however they lie") {
+    const std::uint64_t seed = support::seed_of_run(45);
+    MESSAGE("seed " << seed);
+    Random random(seed);
+    for (int round = 0; round < 60; ++round) {
+        CAPTURE(round);
+        std::vector<Box> boxes;
+        const double largest = round % 3 == 0 ? 60 : 1; // long ones, so that a tree takes over
+        for (int i = random.whole(1, 300); i > 0; --i) {
+            const Point p = round % 4 == 0 ? Point{3, random.between(-30, 30)}
+                                           : Point{random.between(-30, 30), random.between(-30, 30)};
+            boxes.push_back({p, p + Point{random.between(0, largest), random.between(0, largest)}});
+        }
+        const BoxBuckets buckets(boxes);
+        std::vector<std::uint32_t> found;
+        for (int k = 0; k < 40; ++k) {
+            const Point p{random.between(-40, 40), random.between(-40, 40)};
+            const Box asked{p, p + Point{random.between(0, 20), random.between(0, 20)}};
+            buckets.find(asked, found);
+            std::sort(found.begin(), found.end());
+            std::vector<std::uint32_t> expected;
+            for (std::uint32_t i = 0; i < boxes.size(); ++i) {
+                if (boxes[i].meets(asked)) {
+                    expected.push_back(i);
+                }
+            }
+            CHECK(found == expected);
+        }
+    }
+}
+
+// An opening whose edge is as far from a beam's end as from the deck's edge: the parabola between them
+// touches it, and a strip that is even about that point has to see both sides.
+TEST_CASE("a parabola that touches an edge is clipped on both sides of the point") {
+    RingArea area({Ring{{-3, 2}, {3, 2}, {3, 9}, {-3, 9}}}, 1e-13, 0);
+    const StripAxes axes{{0, 0}, 0, 1}; // along = y, across = -x
+    // d = (s^2 + 16) / 8, about s = 0 where it is 2.
+    const StripPiece piece{-2, 2, {0, 0, 0}, {2.5, 2.5, 2}};
+    std::vector<RingArea::Part> parts;
+    area.clip(piece, axes, Box{{-2, 0}, {2, 2.5}}, parts);
+    double found = 0;
+    for (const RingArea::Part& part : parts) {
+        found += area_of(part.piece);
+    }
+    CHECK(found == doctest::Approx(2.0 / 3).epsilon(1e-13)); // twice the integral of s^2 / 8 from 0 to 2
 }
