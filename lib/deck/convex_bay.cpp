@@ -11,11 +11,11 @@ bool ConvexBay::close(double noise) {
         extent = std::max({extent, std::abs(corner[i].x), std::abs(corner[i].y)});
     }
     rounding = noise_of(extent);
-    in_line = std::max(rounding, noise);
+    const double in_line = std::max(rounding, noise);
     for (std::size_t i = 0; i < count; ++i) {
         const Point d = corner[next(i)] - corner[i];
         const double length = norm(d);
-        if (length <= rounding) {
+        if (length <= in_line) {
             return false;
         }
         direction[i] = (1 / length) * d;
@@ -24,7 +24,8 @@ bool ConvexBay::close(double noise) {
     for (std::size_t i = 0; i < count; ++i) {
         const std::size_t j = next(i);
         const double turn = cross(direction[i], direction[j]);
-        const double run = distance(corner[j], corner[next(j)]);
+        // A corner that is off by rounding turns short edges most.
+        const double run = std::min(distance(corner[i], corner[j]), distance(corner[j], corner[next(j)]));
         runs_on[i] = std::abs(turn) * run <= in_line;
         const bool turns_back = runs_on[i] && dot(direction[i], direction[j]) < 0;
         // The bisector of all but straight edges is hard to place by what they differ in.
@@ -33,6 +34,15 @@ bool ConvexBay::close(double noise) {
             return false;
         }
         turned += std::atan2(turn, dot(direction[i], direction[j]));
+    }
+    const auto before = [this](std::size_t i) { return i > 0 ? i - 1 : count - 1; };
+    std::size_t first = 0; // of the edges in its line
+    while (first + 1 < count && runs_on[before(first)]) {
+        ++first;
+    }
+    for (std::size_t k = 0; k < count; ++k) {
+        const std::size_t i = (first + k) % count;
+        line_of[i] = k > 0 && runs_on[before(i)] ? line_of[before(i)] : i;
     }
     constexpr double once_and_a_bit = 7; // radians: a ring that turns twice is not convex
     return turned > 0 && turned < once_and_a_bit;
@@ -81,9 +91,7 @@ Corners region_of(const ConvexBay& bay, std::size_t edge) {
                          [&](Point p) { return dot(bay.corner[bay.next(edge)] - p, along); });
     }
     for (std::size_t other = 0; other < bay.count; ++other) {
-        const bool same_line = std::abs(bay.inside_of(edge, bay.corner[other])) <= bay.in_line &&
-                               std::abs(bay.inside_of(edge, bay.corner[bay.next(other)])) <= bay.in_line;
-        if (!same_line) {
+        if (bay.line_of[other] != bay.line_of[edge]) {
             region = cut_off(region, bay.rounding,
                              [&](Point p) { return bay.inside_of(other, p) - bay.inside_of(edge, p); });
         }

@@ -15,10 +15,10 @@ struct ConvexBay {
     static constexpr std::size_t most_edges = 12; ///< beyond, all pairs of edges cost more than a diagram
 
     std::array<Point, most_edges> corner, direction;
-    std::array<bool, most_edges> runs_on{}; ///< the next edge goes on in the same line
+    std::array<bool, most_edges> runs_on{};        ///< the next edge goes on in the same line
+    std::array<std::size_t, most_edges> line_of{}; ///< by edge: the same for those in one line
     std::size_t count = 0;
     double rounding = 0;
-    double in_line = 0; ///< m: edges that are off a line by no more go on in it
 
     [[nodiscard]] std::size_t next(std::size_t i) const { return i + 1 < count ? i + 1 : 0; }
     /// Distance of a point from an edge's line, positive inside.

@@ -348,3 +348,21 @@ TEST_CASE("bays of one deck and the same bays as decks of their own are shared a
         }
     }
 }
+
+// A joint beside a corner, far from the plan's origin: rounding bends the beam there by more than it would a
+// long one.
+TEST_CASE("a joint close to a corner of a bay loses no area far from the origin") {
+    for (const Point shift : {Point{0, 0}, Point{-284432.0606548303, -737426.50509824115}, Point{9e5, 3e5}}) {
+        const Motion move{1.8071, shift};
+        const Ring ring = move(Ring{{7.75, 3.57}, {-7.75, 3.55}, {-0.6, -7}});
+        HandFramed f = two_way(ring);
+        add_edges(f, ring);
+        f.add_member(move(Point{0.25, 0.125}), move(Point{4.09820106, 4.46995812}), Role::beam);
+        f.add_member(move(Point{3.65966146, -1.58925733}), move(Point{2.07229054, 4.70878963}), Role::beam);
+        f.add_member(move(Point{0.25, 0.125}), move(Point{6.68396262, 2.7590036}), Role::beam);
+        f.add_member(move(Point{0.287219194, 0.16702375}), move(Point{-3.57004593, -3.06400812}),
+                     Role::joist);
+        const double area = shared(f.share()).all;
+        CHECK(area == doctest::Approx(signed_area(ring)).epsilon(1e-10));
+    }
+}
