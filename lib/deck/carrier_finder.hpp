@@ -2,7 +2,7 @@
 
 #include "deck/one_way.hpp"
 #include "geometry/basic.hpp"
-#include "geometry/box_tree.hpp"
+#include "geometry/box_buckets.hpp"
 
 #include <runnel/deck.hpp>
 
@@ -21,11 +21,13 @@ public:
         for (const LineCarrier& carrier : carriers) {
             boxes_.push_back(box_of(carrier.from, carrier.to));
         }
-        constexpr std::size_t worth_a_tree = 4; // decks: fewer are found by going through all carriers
-        if (decks > worth_a_tree) {
-            tree_.emplace(boxes_);
+        constexpr std::size_t worth_an_index = 4; // decks: fewer are found by going through all carriers
+        if (decks > worth_an_index) {
+            buckets_.emplace(boxes_);
         }
     }
+    CarrierFinder(const CarrierFinder&) = delete;
+    CarrierFinder& operator=(const CarrierFinder&) = delete;
 
     /// Carriers whose rectangle along the deck's longest edge meets the deck's own, within `snap`; upright
     /// ones alone would find most of a level beside a long deck that lies askew. Rising.
@@ -40,7 +42,7 @@ public:
                 beside_.push_back(carrier);
             }
         };
-        if (tree_) {
+        if (buckets_) {
             find_along(turned, axes);
             std::for_each(near_.begin(), near_.end(), add);
         } else {
@@ -67,7 +69,8 @@ private:
             Box part = box_of(axes.to_plan({from, turned.low.y}), axes.to_plan({to, turned.high.y}));
             part.add(axes.to_plan({from, turned.high.y}));
             part.add(axes.to_plan({to, turned.low.y}));
-            tree_->find_more(part, near_);
+            buckets_->find(part, found_);
+            near_.insert(near_.end(), found_.begin(), found_.end());
         }
         std::sort(near_.begin(), near_.end());
         near_.erase(std::unique(near_.begin(), near_.end()), near_.end());
@@ -99,8 +102,8 @@ private:
 
     const std::vector<LineCarrier>& carriers_;
     std::vector<Box> boxes_;
-    std::optional<BoxTree> tree_;
-    std::vector<std::uint32_t> near_;
+    std::optional<BoxBuckets> buckets_;
+    std::vector<std::uint32_t> near_, found_;
     std::vector<LineCarrier> beside_;
 };
 

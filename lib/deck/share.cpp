@@ -46,6 +46,11 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
     sharing.columns = static_cast<std::uint32_t>(plan.columns.size());
 
     const std::vector<LineCarrier> carriers = line_carriers(plan, level, sharing);
+    // A carrier of strips bounds two bays and takes two cells: room for them at once saves moving them often.
+    const std::size_t likely = carriers.size() + level.decks.size();
+    sharing.bays.reserve(likely);
+    sharing.cells.reserve(2 * likely);
+    sharing.transfers.reserve(2 * likely, 2 * likely);
     CarrierFinder finder(carriers, level.decks.size());
     std::optional<DecksBeside> decks_beside;
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {

@@ -54,10 +54,10 @@ std::vector<std::pair<std::uint32_t, Point>> find_crossings(const std::vector<Sw
 
 } // namespace
 
-void split_at_crossings(std::vector<SweepEdge>& edges, double noise) {
+bool split_at_crossings(std::vector<SweepEdge>& edges, double noise) {
     std::vector<std::pair<std::uint32_t, Point>> cuts = find_crossings(edges, noise);
     if (cuts.empty()) {
-        return;
+        return false;
     }
     std::sort(cuts.begin(), cuts.end(), [](const auto& l, const auto& r) {
         return l.first != r.first ? l.first < r.first
@@ -88,6 +88,7 @@ void split_at_crossings(std::vector<SweepEdge>& edges, double noise) {
             edges.push_back(rest);
         }
     }
+    return true;
 }
 
 RUNNEL_NAMESPACE_END

@@ -18,7 +18,8 @@ struct SweepEdge {
 /// Distance of p from the line through the edge, positive on its left (towards falling x).
 [[nodiscard]] double left_of(const SweepEdge& edge, Point p);
 
-/// Splits edges where they cross inside both by more than `noise`; edges that only touch stay whole.
-void split_at_crossings(std::vector<SweepEdge>& edges, double noise);
+/// Splits edges where they cross inside both by more than `noise`; edges that only touch stay whole. False:
+/// none crosses.
+bool split_at_crossings(std::vector<SweepEdge>& edges, double noise);
 
 RUNNEL_NAMESPACE_END

@@ -83,6 +83,7 @@ class Levels {
 public:
     explicit Levels(double noise) : noise_(noise) {}
 
+    void reserve(std::size_t count) { values_.reserve(count); }
     void add(double across, bool boundary) { values_.push_back({across, boundary}); }
 
     void join() {
@@ -134,10 +135,10 @@ public:
     }
 
     StripSweep run(std::span<const Mark> marks) {
-        const Levels levels = join_levels(marks);
-        record_marks(marks, levels);
-        split_at_crossings(edges_, noise_);
-        join_levels({});
+        record_marks(marks, join_levels());
+        if (split_at_crossings(edges_, noise_)) {
+            join_levels();
+        }
         sweep();
         return std::move(result_);
     }
@@ -167,15 +168,12 @@ private:
         }
     }
 
-    Levels join_levels(std::span<const Mark> marks) {
+    Levels join_levels() {
         Levels levels(noise_);
+        levels.reserve(2 * edges_.size());
         for (const SweepEdge& e : edges_) {
             levels.add(e.a.y, e.mark == Gap::edge);
             levels.add(e.b.y, e.mark == Gap::edge);
-        }
-        for (const Mark& m : marks) {
-            levels.add(m.a.y, false);
-            levels.add(m.b.y, false);
         }
         levels.join();
         for (SweepEdge& e : edges_) {
