@@ -72,27 +72,18 @@ std::vector<std::string> ids_of(const FramedDeck& deck, WeakArea& weak, const Pl
 }
 
 /// The bays of a deck by the carrier and the side on which it bounds them, to find the back span of an
-/// overhang.
+/// overhang. Most decks have none: they are listed when first asked for.
 class BaysBeside {
 public:
-    BaysBeside(const Sharing& sharing, std::size_t first_bay) {
-        for (std::size_t i = first_bay; i < sharing.bays.size(); ++i) {
-            const Bay& bay = sharing.bays[i];
-            if (bay.low_carrier != none) {
-                rows_.push_back({bay.low_carrier, true, bay.from, i});
-            }
-            if (bay.high_carrier != none) {
-                rows_.push_back({bay.high_carrier, false, bay.from, i});
-            }
-        }
-        std::sort(rows_.begin(), rows_.end(), [](const Row& l, const Row& r) { return l.key() < r.key(); });
-    }
+    BaysBeside(const Sharing& sharing, std::size_t first_bay) : sharing_(sharing), first_bay_(first_bay) {}
 
     /// Calls f(bay index) for those that `carrier` bounds from below (or above) and that overlap from..to
     /// across.
     template <class F>
-    void visit(const Sharing& sharing, std::uint32_t carrier, bool from_below, double from, double to,
-               F f) const {
+    void visit(std::uint32_t carrier, bool from_below, double from, double to, F f) {
+        if (rows_.empty()) {
+            list();
+        }
         // Bays beside one carrier do not overlap across the strips, so the last that begins before `from` is
         // the first that can reach it.
         const Row key{carrier, from_below, from, 0};
@@ -103,13 +94,26 @@ public:
         }
         for (; it != rows_.end() && it->carrier == carrier && it->below == from_below && it->from < to;
              ++it) {
-            if (sharing.bays[it->bay].to > from) {
+            if (sharing_.bays[it->bay].to > from) {
                 f(it->bay);
             }
         }
     }
 
 private:
+    void list() {
+        for (std::size_t i = first_bay_; i < sharing_.bays.size(); ++i) {
+            const Bay& bay = sharing_.bays[i];
+            if (bay.low_carrier != none) {
+                rows_.push_back({bay.low_carrier, true, bay.from, i});
+            }
+            if (bay.high_carrier != none) {
+                rows_.push_back({bay.high_carrier, false, bay.from, i});
+            }
+        }
+        std::sort(rows_.begin(), rows_.end(), [](const Row& l, const Row& r) { return l.key() < r.key(); });
+    }
+
     struct Row {
         std::uint32_t carrier;
         bool below;
@@ -117,6 +121,8 @@ private:
         std::size_t bay;
         [[nodiscard]] std::tuple<std::uint32_t, bool, double> key() const { return {carrier, below, from}; }
     };
+    const Sharing& sharing_;
+    std::size_t first_bay_;
     std::vector<Row> rows_;
 };
 
@@ -134,7 +140,7 @@ double long_overhang_area(const Bay& overhang, const Bay& back, double from, dou
     return area_between(overhang, at_from > 0 ? from : crossing, at_to > 0 || at_from <= 0 ? to : crossing);
 }
 
-void check_overhang(const Sharing& sharing, const BaysBeside& beside, const Bay& overhang, double snap,
+void check_overhang(const Sharing& sharing, BaysBeside& beside, const Bay& overhang, double snap,
                     WeakArea& alone, WeakArea& too_long) {
     const bool low_is_edge = overhang.low_carrier == none;
     const std::uint32_t carrier = low_is_edge ? overhang.high_carrier : overhang.low_carrier;
@@ -145,7 +151,7 @@ void check_overhang(const Sharing& sharing, const BaysBeside& beside, const Bay&
         return; // the carrier runs along the edge, or the drawing is a little off
     }
     double backed = 0;
-    beside.visit(sharing, carrier, low_is_edge, overhang.from, overhang.to, [&](std::size_t index) {
+    beside.visit(carrier, low_is_edge, overhang.from, overhang.to, [&](std::size_t index) {
         const Bay& back = sharing.bays[index];
         const double from = std::max(overhang.from, back.from);
         const double to = std::min(overhang.to, back.to);
@@ -196,8 +202,8 @@ struct UnstableStrips {
     WeakArea alone, short_back, uneven;
 };
 
-UnstableStrips find_unstable(const Sharing& sharing, const BaysBeside& beside, std::uint32_t deck,
-                             Share share, double snap) {
+UnstableStrips find_unstable(const Sharing& sharing, BaysBeside& beside, std::uint32_t deck, Share share,
+                             double snap) {
     UnstableStrips found;
     auto it = std::lower_bound(sharing.strips.begin(), sharing.strips.end(), deck,
                                [](const Strip& strip, std::uint32_t d) { return strip.deck < d; });
@@ -224,7 +230,7 @@ UnstableStrips find_unstable(const Sharing& sharing, const BaysBeside& beside, s
         const std::uint32_t carrier = carriers.front().carrier;
         const bool goes_down = carriers.front().along.at(0.5) > strip.low.at(0.5);
         bool backed = false;
-        beside.visit(sharing, carrier, goes_down, strip.from, strip.to,
+        beside.visit(carrier, goes_down, strip.from, strip.to,
                      [&](std::size_t bay) { backed = backed || !is_overhang(sharing.bays[bay]); });
         (backed ? found.short_back : found.alone).add(area_of(piece), place, carrier);
     }
@@ -238,7 +244,7 @@ void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t le
     const FramedLevel& level = framing.levels[level_index];
     const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
-    const BaysBeside beside(sharing, first_bay);
+    BaysBeside beside(sharing, first_bay);
     WeakArea unsupported;
     WeakArea alone;
     WeakArea too_long;
