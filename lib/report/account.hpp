@@ -43,6 +43,7 @@ private:
     std::size_t balance_rows(PageTable& table, std::string_view where, std::span<const Balance> balances,
                              bool all) const;
     bool support_rows(PageTable& table) const;
+    [[nodiscard]] std::string moved(const Balance& balance) const;
     /// Joists of one field that read the same stand in one row, under the first one's id.
     struct Alike {
         std::uint32_t first = 0; ///< member

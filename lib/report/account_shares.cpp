@@ -50,7 +50,8 @@ void Account::shares() {
     page_.paragraph("%: difference from " +
                         (own.share ? '`' + std::string(name_of_run(own)) + "`, which this plan uses"
                                    : std::string("the plan's own shares, which are not all alike")) +
-                        "; carriers and cases that differ, the most different first",
+                        "; carriers and cases that differ, sorted by their largest change as part of what "
+                        "the carrier takes in all cases together",
                     indent);
     for (const ShareRun& run : shares_->runs) {
         if (!run.complete) {
@@ -117,6 +118,9 @@ std::vector<Account::ComparedGroup> Account::differing(const std::vector<Compare
 
 void Account::compared(std::string_view heading, const std::vector<ComparedCarrier>& carriers,
                        Values values) {
+    if (carriers.empty()) {
+        return; // a plan without members
+    }
     page_.line(heading, indent);
     PageTable table;
     table.names("of", id_width);

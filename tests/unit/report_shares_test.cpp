@@ -76,6 +76,18 @@ TEST_CASE("what differs between shares is shown with its per cent, uplift in wor
     CHECK(holds(account, "0.500  new"));
     CHECK(holds(account, "3 others do not differ"));
     CHECK(holds(account, "4 others do not differ"));
+    CHECK(holds(account, "sorted by their\n  largest change as part of what the carrier takes"));
+}
+
+TEST_CASE("a plan without members has no tables of members to compare") {
+    Takedown takedown = takedown_of(support::footbridge);
+    ShareComparison shares = made_up(takedown);
+    CHECK(holds(account_of(takedown, shares), "Members, largest reaction"));
+    shares.members.clear();
+    const std::string account = account_of(takedown, shares);
+    CHECK(holds(account, "Columns and walls, at their feet\n    none differs"));
+    CHECK(!holds(account, "Members, all load on them"));
+    CHECK(!holds(account, "Members, largest reaction"));
 }
 
 TEST_CASE("the result lists every share with its values, and none for a share that stopped") {
