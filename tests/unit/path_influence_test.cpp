@@ -150,6 +150,39 @@ TEST_CASE("influence areas do not depend on how decks are outlined") {
     }
 }
 
+TEST_CASE("where two decks meet and no carrier runs, neither is felt by the carriers of the other") {
+    for (const SpanKind span : {SpanKind::one_way, SpanKind::two_way}) {
+        PlanBuilder builder;
+        for (const double x : {0.0, 6.0}) {
+            const std::string n = std::to_string(static_cast<int>(x));
+            builder.column("S" + n, {x, 0}).column("N" + n, {x, 4}).girder("G" + n, {x, 0}, {x, 4});
+        }
+        const auto areas_with = [&](double joint) {
+            builder.floor().decks.clear();
+            for (const auto& [from, to] : {std::pair(0.0, joint), std::pair(joint, 6.0)}) {
+                if (to > from) {
+                    Deck& deck = builder.deck("D" + std::to_string(from), rectangle(from, 0, to, 4));
+                    deck.span = span;
+                    if (span == SpanKind::one_way) {
+                        deck.direction = 0;
+                    }
+                }
+            }
+            const Takedown t = completed(builder);
+            return std::pair(areas_of(t, "G0"), areas_of(t, "G6"));
+        };
+        const std::pair<Areas, Areas> whole = areas_with(0);
+        CHECK(whole.first.tributary == Approx(12));
+        CHECK(whole.first.influence == Approx(24));
+        CHECK(whole.second.influence == Approx(24));
+        const std::pair<Areas, Areas> apart = areas_with(2);
+        CHECK(apart.first.tributary == Approx(8)); // as the load goes
+        CHECK(apart.first.influence == Approx(8));
+        CHECK(apart.second.tributary == Approx(16));
+        CHECK(apart.second.influence == Approx(16));
+    }
+}
+
 namespace {
 
 /// Marks the carriers that feel a load at a station of one: upwards from the load, the other way round than
