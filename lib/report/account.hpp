@@ -71,16 +71,16 @@ private:
     [[nodiscard]] std::string area_load(double kilonewtons_per_square_metre) const;
     [[nodiscard]] std::string area_load_unit() const;
 
-    using Values = std::vector<double> ComparedCarrier::*;
     struct ComparedGroup {
         const ComparedCarrier* first = nullptr;
         std::size_t count = 0;
     };
     void stopped_share(const ShareRun& run);
-    void compared(std::string_view heading, const std::vector<ComparedCarrier>& carriers, Values values);
+    void compared(std::string_view heading, const std::vector<ComparedCarrier>& carriers,
+                  ComparedValues values);
     [[nodiscard]] std::vector<ComparedGroup> differing(const std::vector<ComparedCarrier>& carriers,
-                                                       Values values) const;
-    void compared_rows(PageTable& table, const ComparedGroup& group, Values values) const;
+                                                       ComparedValues values) const;
+    void compared_rows(PageTable& table, const ComparedGroup& group, ComparedValues values) const;
 
     const Takedown& takedown_;
     const ShareComparison* shares_;

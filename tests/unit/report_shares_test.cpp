@@ -167,16 +167,18 @@ TEST_CASE("a floor over two equal spans brings 3/8 and 10/8 of a span where halv
     CHECK(value(0, 2) == Approx(span * 3 / 8));
     CHECK(value(1, 0) == Approx(span));
     CHECK(value(1, 2) == Approx(span * 10 / 8));
-    CHECK(*shares.percent(compared_member(shares, 0).total, 2, live) == Approx(-25));
-    CHECK(*shares.percent(compared_member(shares, 1).total, 2, live) == Approx(25));
-    CHECK(*shares.percent(compared_member(shares, 1).largest_reaction, 2, live) == Approx(25));
-    CHECK(*shares.percent(compared_member(shares, 1).total, 1, live) == 0);
+    CHECK(*shares.percent(compared_member(shares, 0), &ComparedCarrier::total, {2, live}) == Approx(-25));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {2, live}) == Approx(25));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::largest_reaction, {2, live}) ==
+          Approx(25));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {1, live}) == 0);
+    CHECK(!shares.percent(shares.supports[0], &ComparedCarrier::largest_reaction, {2, live}));
     CHECK(shares.members[0].difference == Approx(0.25));
     // The plan's own is what the others are measured by.
     builder.plan.settings.share = Share::continuous;
     const ShareComparison other = compare_shares(builder.plan);
     CHECK(other.own == 2);
-    CHECK(*other.percent(compared_member(other, 0).total, 0, live) == Approx(100.0 / 3));
+    CHECK(*other.percent(compared_member(other, 0), &ComparedCarrier::total, {0, live}) == Approx(100.0 / 3));
     TakedownOptions options;
     options.share = Share::lever;
     CHECK(compare_shares(builder.plan, options).own == 1);
@@ -199,8 +201,9 @@ TEST_CASE("a plan that mixes shares is compared with its own mixture") {
     CHECK(!shares.runs[0].share);
     REQUIRE(shares.runs[0].complete);
     const std::size_t live = shares.cases - 1;
-    CHECK(*shares.percent(compared_member(shares, 1).total, 1, live) == doctest::Approx(-20));
-    CHECK(*shares.percent(compared_member(shares, 1).total, 3, live) == 0);
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {1, live}) ==
+          doctest::Approx(-20));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {3, live}) == 0);
 }
 
 TEST_CASE("a share that errors stop says why, and the others are compared") {
@@ -212,7 +215,7 @@ TEST_CASE("a share that errors stop says why, and the others are compared") {
     for (const std::size_t run : {1U, 2U}) {
         CHECK(!shares.runs[run].complete);
         REQUIRE(!shares.runs[run].problems.empty());
-        CHECK(!shares.percent(shares.members[0].total, run, 0));
+        CHECK(!shares.percent(shares.members[0], &ComparedCarrier::total, {run, 0}));
     }
     CHECK(shares.members[0].difference == 0);
     const Takedown takedown = take_down(builder.plan);
