@@ -9,67 +9,12 @@
 #include <algorithm>
 #include <cmath>
 #include <limits>
+#include <optional>
 #include <string>
 
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-/// Where there is deck beside the carriers of a deck, by stations.
-class DeckBesideCarriers {
-public:
-    DeckBesideCarriers(const Panels& panels, std::size_t carriers) : left_(carriers), right_(carriers) {
-        for (const Panel& panel : panels.panels) {
-            add(panel.outer);
-            for (const std::vector<PanelEdge>& hole : panel.holes) {
-                add(hole);
-            }
-        }
-        for (std::vector<std::vector<Stretch>>* side : {&left_, &right_}) {
-            for (std::vector<Stretch>& stretches : *side) {
-                std::sort(stretches.begin(), stretches.end(),
-                          [](const Stretch& l, const Stretch& r) { return l.from < r.from; });
-            }
-        }
-    }
-
-    /// Length of the part of a panel's edge with deck on its other side.
-    [[nodiscard]] double beyond(const PanelEdge& edge) const {
-        const bool forward = edge.station_from < edge.station_to;
-        const double from = std::min(edge.station_from, edge.station_to);
-        const double to = std::max(edge.station_from, edge.station_to);
-        const std::vector<Stretch>& stretches = (forward ? right_ : left_)[edge.carrier];
-        // They do not overlap: the first that matters is the first that ends behind `from`.
-        auto it =
-            std::lower_bound(stretches.begin(), stretches.end(), from,
-                             [](const Stretch& stretch, double station) { return stretch.to <= station; });
-        double length = 0;
-        for (; it != stretches.end() && it->from < to; ++it) {
-            length += std::min(to, it->to) - std::max(from, it->from);
-        }
-        return length;
-    }
-
-private:
-    struct Stretch {
-        double from, to;
-    };
-
-    void add(const std::vector<PanelEdge>& border) {
-        for (const PanelEdge& edge : border) {
-            if (edge.carrier == none) {
-                continue;
-            }
-            if (edge.station_from < edge.station_to) {
-                left_[edge.carrier].push_back({edge.station_from, edge.station_to});
-            } else {
-                right_[edge.carrier].push_back({edge.station_to, edge.station_from});
-            }
-        }
-    }
-
-    std::vector<std::vector<Stretch>> left_, right_; ///< by carrier
-};
 
 /// The ring of a border without the ways there and back along carriers that end inside.
 Ring ring_without_ends(const std::vector<PanelEdge>& border, Point origin) {
@@ -191,6 +136,9 @@ private:
         for (PanelSide& side : shape.sides) {
             side.weight = continues(panel, side) ? fixity_weight() : 1;
         }
+        if (!shape.gap) {
+            shape.gap = carrier_beside_free_edge(panel);
+        }
         const bool alike = is_alike(panel, shape.sides);
         bool fits = !shape.reflex && !shape.inside && !shape.gap && has_carrier(panel);
         if (alike && fits) {
@@ -206,6 +154,53 @@ private:
             shape.sides.clear();
         }
         shapes_.push_back(std::move(shape));
+    }
+
+    /// Where a carrier lies beside a free edge that leaves it by more than `snap` farther on: drawn askew, it
+    /// does not bound the panel, and yet carries some of that edge.
+    [[nodiscard]] std::optional<Point> carrier_beside_free_edge(const Panel& panel) const {
+        std::vector<std::uint32_t> near;
+        for (std::size_t i = 0; i < panel.outer.size(); ++i) {
+            const PanelEdge& edge = panel.outer[i];
+            if (edge.carrier != none) {
+                continue;
+            }
+            const Point a = panels_.origin + edge.from;
+            const Point b = panels_.origin + panel.outer[(i + 1) % panel.outer.size()].from;
+            carrier_finder_.find(box_of(a, b).grown(deck_.tolerance.snap), near);
+            for (const std::uint32_t c : near) {
+                const auto bounds = [c](const PanelEdge& other) { return other.carrier == c; };
+                if (std::none_of(panel.outer.begin(), panel.outer.end(), bounds) &&
+                    length_beside(deck_.carriers[c], a, b) > deck_.tolerance.snap) {
+                    return edge.from;
+                }
+            }
+        }
+        return std::nullopt;
+    }
+
+    /// Length of the part of a carrier within `snap` of the line from a to b, between its ends.
+    [[nodiscard]] double length_beside(const LineCarrier& carrier, Point a, Point b) const {
+        const double length = distance(a, b);
+        const Point along = (1 / length) * (b - a);
+        double from = 0;
+        double to = 1;
+        const auto limit = [&](double at_from, double at_to) { // to where it is not below zero
+            if (at_from < 0 && at_to < 0) {
+                to = from;
+            } else if (at_from < 0) {
+                from = std::max(from, at_from / (at_from - at_to));
+            } else if (at_to < 0) {
+                to = std::min(to, at_from / (at_from - at_to));
+            }
+        };
+        const Point p = carrier.from - a;
+        const Point q = carrier.to - a;
+        limit(dot(along, p), dot(along, q));
+        limit(length - dot(along, p), length - dot(along, q));
+        limit(deck_.tolerance.snap - cross(along, p), deck_.tolerance.snap - cross(along, q));
+        limit(deck_.tolerance.snap + cross(along, p), deck_.tolerance.snap + cross(along, q));
+        return std::max(0.0, to - from) * distance(p, q);
     }
 
     /// All carriers that may be the nearest to some point within a ring, however far away.
@@ -324,44 +319,6 @@ private:
 
 double fixity_weight() noexcept {
     return std::sqrt(3.0);
-}
-
-DecksBeside::DecksBeside(const FramedLevel& level, double snap) : snap_(snap) {
-    std::vector<Box> boxes;
-    for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
-        const Ring& outline = level.decks[d].outline;
-        for (std::size_t i = 0; i < outline.size(); ++i) {
-            edges_.push_back({d, outline[i], outline[(i + 1) % outline.size()]});
-            boxes.push_back(box_of(edges_.back().a, edges_.back().b));
-        }
-    }
-    finder_ = BoxFinder(std::move(boxes));
-}
-
-double DecksBeside::length_along(std::uint32_t deck, Point a, Point b) const {
-    const double length = distance(a, b);
-    if (!(length > 0)) {
-        return 0;
-    }
-    std::vector<std::uint32_t> near;
-    finder_.find(box_of(a, b).grown(snap_), near);
-    double along = 0;
-    for (const std::uint32_t e : near) {
-        const Edge& edge = edges_[e];
-        // Outlines run counter-clockwise: what lies on the other side runs against this one.
-        if (edge.deck == deck || dot(edge.b - edge.a, b - a) >= 0) {
-            continue;
-        }
-        const double at_a = station_of(edge.a, a, b);
-        const double at_b = station_of(edge.b, a, b);
-        const double from = std::max(0.0, at_b);
-        const double to = std::min(length, at_a);
-        if (to > from && distance_to_segment(between(a, b, from / length), edge.a, edge.b) <= snap_ &&
-            distance_to_segment(between(a, b, to / length), edge.a, edge.b) <= snap_) {
-            along += to - from;
-        }
-    }
-    return along;
 }
 
 bool share_by_fixity(const Plan& plan, const Framing& framing, std::uint32_t level_index, std::uint32_t index,

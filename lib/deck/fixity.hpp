@@ -1,34 +1,14 @@
 #pragma once
 
+#include "deck/deck_beyond.hpp"
 #include "deck/one_way.hpp"
-#include "geometry/box_tree.hpp"
 
 #include <runnel/deck.hpp>
 
 #include <cstdint>
 #include <span>
-#include <vector>
 
 RUNNEL_NAMESPACE_BEGIN
-
-/// The outlines of a level's decks, to find where one deck goes on beside another. Built once a level.
-class DecksBeside {
-public:
-    DecksBeside(const FramedLevel& level, double snap);
-
-    /// Length of the part of a stretch from a to b (plan), with deck `deck` on its left, along whose right
-    /// side the outline of another deck runs within `snap`.
-    [[nodiscard]] double length_along(std::uint32_t deck, Point a, Point b) const;
-
-private:
-    struct Edge {
-        std::uint32_t deck = none;
-        Point a, b;
-    };
-    std::vector<Edge> edges_;
-    BoxFinder finder_;
-    double snap_;
-};
 
 /// Shares one two-way deck with `corner_angles: by_fixity`: in each of its panels the line that divides a
 /// corner runs at 45 degrees between like sides, and at 60 degrees from a side over which the deck continues

@@ -141,7 +141,7 @@ private:
             const double least = length_in(edges_, carrier.from, carrier.to, snap_ / 2);
             const double most = length_in(edges_, carrier.from, carrier.to, 2 * snap_);
             if (most > snap_ / 2) {
-                carriers_.push_back({carrier, least <= 4 * snap_});
+                carriers_.push_back({carrier, least <= 4 * snap_ || most - least > 4 * snap_});
             }
         }
     }

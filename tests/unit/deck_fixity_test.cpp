@@ -402,3 +402,17 @@ TEST_CASE("what goes to its beam across an opening is told once, with the area o
     CHECK(way->point->x == Approx(3));
     CHECK(way->point->y > 4.5); // the larger part
 }
+
+TEST_CASE("a beam drawn askew, beside a side for half of its length, carries it as by the nearest line") {
+    HandFramed f = panel({0});
+    f.level().members[3].from = {-1.8 * f.plan.settings.snap, 4}; // the left beam leaves the deck's edge
+    const FixityShared shared = share_by_fixity(f);
+    const std::vector<double> equal = areas_of(support::share_equal(f)).area;
+    CHECK(equal[3] > 3.9);
+    for (std::uint32_t m = 0; m < 4; ++m) {
+        CHECK(shared.area(m) == Approx(equal[m]).epsilon(1e-10));
+    }
+    const Problem* problem = support::problem_of(shared.sharing, ProblemCode::fixity_set_aside);
+    REQUIRE(problem != nullptr);
+    CHECK(problem->message.find("a part of its length") != std::string::npos);
+}
