@@ -73,7 +73,7 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(strip_unstable, "strip-unstable", error, "Strips that no statics holds up.")                           \
     X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
     X(fixity_set_aside, "fixity-set-aside", warning,                                                         \
-      "Corner angles by fixity do not fit panels, which go to the nearest lines.")                           \
+      "Corner angles by fixity do not fit bays, which go to the nearest lines.")                           \
     X(share_has_no_effect, "share-has-no-effect", warning,                                                   \
       "A deck names a share that only one-way decks follow.")                                                \
     X(way_leaves_deck, "way-leaves-deck", warning,                                                           \

@@ -1,7 +1,5 @@
 #include "deck/nearest.hpp"
 
-#include "framing/draft.hpp"
-
 #include "deck/pressure.hpp"
 #include "geometry/basic.hpp"
 
@@ -26,6 +24,15 @@ void DoubtfulArea::add(double part, Point where, std::uint32_t carrier) {
     }
 }
 
+void DoubtfulArea::add(const DoubtfulArea& other) {
+    area += other.area;
+    if (other.largest > largest) {
+        largest = other.largest;
+        place = other.place;
+    }
+    carriers.insert(carriers.end(), other.carriers.begin(), other.carriers.end());
+}
+
 double NearestCells::area() const {
     Sum sum;
     for (const Cell& cell : cells) {
@@ -34,9 +41,8 @@ double NearestCells::area() const {
     return sum.value();
 }
 
-namespace {
-
-std::vector<Ring> local_rings(const FramedDeck& deck, Point origin) {
+std::vector<Ring> local_rings(const FramedDeck& deck) {
+    const Point origin = deck.outline.front();
     std::vector<Ring> rings;
     rings.reserve(1 + deck.openings.size());
     const auto add = [&](const Ring& ring) {
@@ -52,6 +58,21 @@ std::vector<Ring> local_rings(const FramedDeck& deck, Point origin) {
     }
     return rings;
 }
+
+std::vector<LineCarrier> carriers_in_touch(const FramedDeck& deck, std::span<const LineCarrier> near,
+                                           double snap, RingArea& area) {
+    const Point origin = deck.outline.front();
+    std::vector<LineCarrier> carriers;
+    for (const LineCarrier& carrier : near) {
+        const RingArea::Shared shared = area.shared_with(carrier.from - origin, carrier.to - origin, snap);
+        if (shared.inside > snap || shared.along_edge > snap) {
+            carriers.push_back(carrier);
+        }
+    }
+    return carriers;
+}
+
+namespace {
 
 /// The part of a carrier inside a window; none if it misses it.
 bool add_line(const LineCarrier& carrier, const Box& window, NearestCarriers& carriers) {
@@ -91,57 +112,12 @@ bool add_line(const LineCarrier& carrier, const Box& window, NearestCarriers& ca
 struct Selection {
     NearestCarriers carriers;
     std::vector<std::uint32_t> idle; ///< members that lie in a deck on columns
-    std::vector<NearMissed> missed;
-    Box deck_box;     ///< local
-    double reach = 0; ///< no point of the deck is farther from a carrier
+    Box deck_box;                    ///< local
+    double reach = 0;                ///< no point of the deck is farther from a carrier
 };
 
-/// A gap is told to this part of `snap`.
-constexpr double told_to = 1e-6;
-
-/// How far a point lies beside the deck's edge, between two bounds.
-double gap_at(Point at, double from, double to, RingArea& area) {
-    const double enough = told_to * from;
-    while (to - from > enough) {
-        const double middle = (from + to) / 2;
-        (area.is_beside_edge(at, middle) ? to : from) = middle;
-    }
-    return to;
-}
-
-/// A carrier that is none of the deck's, but runs along its edge within a near miss.
-void look_beside(const LineCarrier& carrier, Selection& selected, double snap, RingArea& area) {
-    const Point from = carrier.from - selected.carriers.origin;
-    const Point to = carrier.to - selected.carriers.origin;
-    const double reach = snaps_of_a_near_miss * snap;
-    if (area.shared_with(from, to, reach).along_edge <= 2 * reach) {
-        return;
-    }
-    // Half-way along what is beside the edge lies near the middle of one of them.
-    double least = snap;
-    double most = reach;
-    while (most - least > told_to * snap) {
-        const double middle = (least + most) / 2;
-        (area.shared_with(from, to, middle).along_edge > 2 * reach ? most : least) = middle;
-    }
-    selected.missed.push_back({carrier.number, most, between(carrier.from, carrier.to, 0.5)});
-}
-
-/// What runs beside an edge that has a carrier of its own was not meant to carry it.
-bool has_own_carrier(const NearMissed& miss, const LineCarrier& missed, const NearestCarriers& carriers,
-                     double reach) {
-    constexpr double alike = 0.1; // sine of the angle
-    const Point d = missed.to - missed.from;
-    return std::any_of(carriers.carriers.begin(), carriers.carriers.end(), [&](const LineCarrier& own) {
-        const Point e = own.to - own.from;
-        return std::abs(cross(d, e)) <= alike * norm(d) * norm(e) &&
-               distance_to_segment(miss.place, own.from, own.to) <= 2 * reach;
-    });
-}
-
-Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& deck,
-                 std::span<const LineCarrier> near, const Sharing& sharing, RingArea& area) {
-    const double snap = plan.settings.snap;
+/// Of a deck or a part of it, so far without carriers.
+Selection selection_for(const FramedDeck& deck, double snap) {
     Selection selected;
     selected.carriers.origin = deck.outline.front();
     Ring outline = deck.outline;
@@ -150,42 +126,48 @@ Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& d
     }
     selected.deck_box = box_of(outline);
     selected.reach = distance(selected.deck_box.low, selected.deck_box.high) + 2 * snap;
+    return selected;
+}
+
+Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& deck,
+                 std::span<const LineCarrier> near, const Sharing& sharing, RingArea& area) {
+    const double snap = plan.settings.snap;
+    Selection selected = selection_for(deck, snap);
     const Box window = selected.deck_box.grown(2 * selected.reach);
-    for (const LineCarrier& carrier : near) {
-        const RingArea::Shared shared = area.shared_with(carrier.from - selected.carriers.origin,
-                                                         carrier.to - selected.carriers.origin, snap);
-        if (shared.inside <= snap && shared.along_edge <= snap) {
-            if (deck.span == SpanKind::two_way || carrier.number >= sharing.members) {
-                look_beside(carrier, selected, snap, area);
-            }
-            continue;
-        }
+    for (const LineCarrier& carrier : carriers_in_touch(deck, near, snap, area)) {
         if (deck.span == SpanKind::columns && carrier.number < sharing.members) {
             selected.idle.push_back(carrier.number);
         } else {
             add_line(carrier, window, selected.carriers);
         }
     }
-    std::erase_if(selected.missed, [&](const NearMissed& miss) {
-        const auto own = std::find_if(near.begin(), near.end(),
-                                      [&](const LineCarrier& c) { return c.number == miss.carrier; });
-        return has_own_carrier(miss, *own, selected.carriers, snaps_of_a_near_miss * snap);
-    });
     if (deck.span == SpanKind::columns) {
         for (const std::uint32_t c : level.columns) {
             const Point at = plan.columns[c].at - selected.carriers.origin;
-            const double reach = snaps_of_a_near_miss * snap;
-            if (!box_of(at, at).meets(selected.deck_box.grown(reach))) {
-                continue;
-            }
-            const std::uint32_t number = sharing.number_of({CarrierKind::column, c});
-            if (area.contains(at) || area.is_beside_edge(at, snap)) {
+            if (box_of(at, at).meets(selected.deck_box.grown(snap)) &&
+                (area.contains(at) || area.is_beside_edge(at, snap))) {
                 selected.carriers.points.push_back(at);
-                selected.carriers.point_number.push_back(number);
-            } else if (area.is_beside_edge(at, reach)) {
-                selected.missed.push_back({number, gap_at(at, snap, reach, area), plan.columns[c].at});
+                selected.carriers.point_number.push_back(sharing.number_of({CarrierKind::column, c}));
             }
         }
+    }
+    return selected;
+}
+
+/// All carriers given, however far they are from the part.
+Selection select_all(const FramedDeck& part, std::span<const LineCarrier> carriers, double snap) {
+    Selection selected = selection_for(part, snap);
+    const Point middle = between(selected.deck_box.low, selected.deck_box.high, 0.5);
+    double nearest = std::numeric_limits<double>::infinity();
+    for (const LineCarrier& carrier : carriers) {
+        nearest = std::min(nearest, distance_to_segment(middle, carrier.from - selected.carriers.origin,
+                                                        carrier.to - selected.carriers.origin));
+    }
+    const double half = distance(selected.deck_box.low, selected.deck_box.high) / 2;
+    selected.reach = std::max(selected.reach, half + nearest + 2 * snap);
+    const Box window = selected.deck_box.grown(2 * selected.reach);
+    for (const LineCarrier& carrier : carriers) {
+        add_line(carrier, window, selected.carriers);
     }
     return selected;
 }
@@ -201,6 +183,25 @@ NearestCells split(const Selection& selected, NearestSplit how, double radians, 
     }
     const Grid grid(box_of(middle, middle).grown(away), radians);
     return nearest_cells(selected.carriers, grid, how, area);
+}
+
+/// Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
+NearestCells best_split(const Selection& selected, const NearestSplit& how, RingArea& area) {
+    NearestCells best;
+    double least = std::numeric_limits<double>::infinity();
+    for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
+        NearestCells cells = split(selected, how, radians, area);
+        const double open = std::abs(cells.area() - how.whole);
+        const bool done = cells.sound && open <= closed_within * how.whole;
+        if (done || open < least) {
+            least = open;
+            best = std::move(cells);
+        }
+        if (done) {
+            break;
+        }
+    }
+    return best;
 }
 
 void append(NearestCells&& cells, Sharing& sharing) {
@@ -239,14 +240,8 @@ void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise
 
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
                    std::uint32_t deck_index, std::span<const LineCarrier> near, Sharing& sharing) {
-    share_part_nearest(plan, framing, level_index, deck_index, framing.levels[level_index].decks[deck_index],
-                       sharing.deck_area[deck_index], near, sharing);
-}
-
-void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
-                        std::uint32_t deck_index, const FramedDeck& deck, double whole,
-                        std::span<const LineCarrier> near, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
+    const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
     const double noise = noise_of(framing.largest_coordinate);
     if (NearestCells bay;
@@ -254,11 +249,9 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
         append(std::move(bay), sharing);
         return;
     }
-    RingArea area(local_rings(deck, deck.outline.front()), noise, 4 * near.size());
+    RingArea area(local_rings(deck), noise, 4 * near.size());
     const Selection selected = select(plan, level, deck, near, sharing, area);
-    if (!selected.missed.empty()) {
-        report_near_misses(plan, level, deck_index, selected.missed, sharing);
-    }
+    report_near_misses(plan, level, deck_index, near, selected.carriers, area, sharing);
     if (!selected.idle.empty()) {
         report_idle_members(level, deck_index, selected.idle, sharing);
     }
@@ -267,24 +260,27 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
         report_no_carrier(plan, framing, level_index, deck_index, sharing);
         return;
     }
-    // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
-    const NearestSplit how{deck_index, whole, snap, noise, deck.span == SpanKind::two_way, {}};
-    NearestCells best;
-    double least = std::numeric_limits<double>::infinity();
-    for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
-        NearestCells cells = split(selected, how, radians, area);
-        const double open = std::abs(cells.area() - whole);
-        const bool done = cells.sound && open <= closed_within * whole;
-        if (done || open < least) {
-            least = open;
-            best = std::move(cells);
-        }
-        if (done) {
-            break;
-        }
+    const NearestSplit how{deck_index, sharing.deck_area[deck_index],  snap,
+                           noise,      deck.span == SpanKind::two_way, {}};
+    NearestCells cells = best_split(selected, how, area);
+    report_way_leaves(plan, level, deck_index, cells.way_leaves, sharing);
+    append(std::move(cells), sharing);
+}
+
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t deck_index,
+                        const FramedDeck& part, double whole, std::span<const LineCarrier> carriers,
+                        DoubtfulArea& way_leaves, Sharing& sharing) {
+    const double snap = plan.settings.snap;
+    const double noise = noise_of(framing.largest_coordinate);
+    if (NearestCells bay; share_convex_bay(part, deck_index, carriers, {noise, snap}, bay)) {
+        append(std::move(bay), sharing);
+        return;
     }
-    report_way_leaves(plan, level, deck_index, best.way_leaves, sharing);
-    append(std::move(best), sharing);
+    RingArea area(local_rings(part), noise, 4 * carriers.size());
+    const NearestSplit how{deck_index, whole, snap, noise, true, {}};
+    NearestCells cells = best_split(select_all(part, carriers, snap), how, area);
+    way_leaves.add(cells.way_leaves);
+    append(std::move(cells), sharing);
 }
 
 RUNNEL_NAMESPACE_END

@@ -190,7 +190,7 @@ private:
             return Part::idle;
         }
         const double least = edges_.length_in(carrier.from, carrier.to, snap_ / 2);
-        return least <= 4 * snap_ ? Part::doubtful : Part::carries;
+        return least <= 4 * snap_ || most - least > 4 * snap_ ? Part::doubtful : Part::carries;
     }
 
     /// The carriers of the deck that are as near to p as any, but for the margin; in the order given.
