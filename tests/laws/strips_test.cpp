@@ -497,7 +497,7 @@ TEST_CASE("lever and continuous: force, moment, statics, order and motion on ran
     }
     CHECK(held > 1500);
     CHECK(curved > 300);
-    CHECK(curve < 2e-9);
+    CHECK(curve < 4e-9); // 1e-9 by fitting, as much by joining, of ordinates between those looked at
     MESSAGE(held << " of 2400 decks held by statics; open force " << near.force << ", moment " << near.moment
                  << "; 1000 km away " << far.force << ", " << far.moment << "; " << levels
                  << " levels within " << statics << " kN/m of brute force; " << curved
