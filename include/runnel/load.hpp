@@ -63,7 +63,9 @@ struct LevelLoads {
     Grouped<CarrierPoint> points; ///< by carrier
     std::vector<DeckBalance> balance;
     /// Where a line stands for a curve that no polynomial of degree four is (lever or continuous strips on
-    /// skew carriers), it keeps force and first moment and is off by no more than this, kN/m. 0: all exact.
+    /// skew carriers, line loads between skew carriers), it keeps force and first moment and is off by no
+    /// more than this, kN/m, what joining such lines changes included. 0: all exact, but for what the
+    /// rounding of coordinates moves.
     double curve_error = 0;
     std::vector<Problem> problems;
 };

@@ -194,16 +194,6 @@ QuarticFit exact_quartics(std::size_t count, std::size_t degree, const Functions
     return result;
 }
 
-std::vector<QuarticPiece> fit_quartics(const std::function<double(double)>& f) {
-    const QuarticFit fit =
-        fit_quartics(1, [&f](double x, std::span<double> values) { values.front() = f(x); });
-    std::vector<QuarticPiece> pieces;
-    for (const QuarticFit::Piece& piece : fit.pieces) {
-        pieces.push_back({piece.from, piece.to, piece.c.front()});
-    }
-    return pieces;
-}
-
 LinePiece line_between(double at_from, double at_to, Quartic c) {
     if (at_to < at_from) {
         // y = 1 - z: a Taylor shift to 1, then the odd powers change sign.

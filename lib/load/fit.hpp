@@ -14,23 +14,13 @@ RUNNEL_NAMESPACE_BEGIN
 /// c[k] of the sum of c[k] y^k with y = 0..1.
 using Quartic = std::array<double, 5>;
 
-/// A quartic on from..to of a parameter: y = (x - from) / (to - from).
-struct QuarticPiece {
-    double from = 0, to = 0;
-    Quartic c{};
-};
-
-/// Replaces a smooth function on 0..1 by quartics that keep its integral and first moment (the projection on
-/// Legendre polynomials keeps all moments up to the fourth). The worst piece is halved until every piece is
-/// within 1e-9 of the largest value, or there are 64.
-[[nodiscard]] std::vector<QuarticPiece> fit_quartics(const std::function<double(double)>& f);
-
 /// Several functions of one parameter: values[i] is that of function i. `values` comes as it may.
 using Functions = std::function<void(double x, std::span<double> values)>;
 
 /// Quartics of several functions on the same pieces: what holds for the functions at every x (that they add
 /// up to a load and keep its place) holds for the integrals and first moments of the quartics.
 struct QuarticFit {
+    /// On from..to of the parameter: y = (x - from) / (to - from).
     struct Piece {
         double from = 0, to = 0;
         std::vector<Quartic> c; ///< by function
@@ -38,6 +28,10 @@ struct QuarticFit {
     std::vector<Piece> pieces;
     double error = 0; ///< the largest difference found, in the functions' unit
 };
+
+/// Replaces smooth functions on 0..1 by quartics that keep integrals and first moments (the projection on
+/// Legendre polynomials keeps all moments up to the fourth). The worst piece is halved until every piece is
+/// within 1e-9 of the largest value, or there are 64.
 [[nodiscard]] QuarticFit fit_quartics(std::size_t count, const Functions& f);
 
 /// The same where the functions are polynomials of a degree up to four: one piece, found from degree + 1
