@@ -185,6 +185,7 @@ private:
             await(floor_.over[bearing]);
         }
         add_parts();
+        add_within();
         return area_.value();
     }
 
@@ -211,8 +212,22 @@ private:
         if (!whole) {
             parts_.push_back(patch);
         } else if (std::exchange(piece_seen_[patch.piece], carrier_) != carrier_) {
-            area_.add(pieces_.areas[patch.piece]);
+            if (pieces_.within[patch.piece] == none) {
+                area_.add(pieces_.areas[patch.piece]);
+            } else {
+                within_.push_back(patch.piece);
+            }
         }
+    }
+
+    /// Of pieces within others; where those are there they add nothing.
+    void add_within() {
+        for (const std::uint32_t piece : within_) {
+            if (piece_seen_[pieces_.within[piece]] != carrier_) {
+                area_.add(pieces_.areas[piece]);
+            }
+        }
+        within_.clear();
     }
 
     /// Parts of the same piece are united; of a piece that is there as a whole they add nothing.
@@ -244,6 +259,7 @@ private:
     std::vector<std::uint32_t> piece_seen_;
     std::vector<std::uint32_t> waiting_; ///< bearings that land on what has been gone through
     std::vector<Patch> parts_;
+    std::vector<std::uint32_t> within_; ///< pieces within others
     Sum area_;
 };
 

@@ -52,13 +52,18 @@ public:
             return;
         }
         std::vector<Box> boxes;
+        std::size_t all_edges = 0;
+        for (const Panel& panel : panels.panels) {
+            all_edges += edges_of(panel);
+        }
         for (const Panel& panel : panels.panels) {
             std::vector<Ring> rings{ring_of(panel.outer)};
             boxes.push_back(box_of(rings.front()));
             for (const std::vector<PanelEdge>& hole : panel.holes) {
                 rings.push_back(ring_of(hole));
             }
-            areas_.emplace_back(std::move(rings), noise, questions / panels.panels.size());
+            // A longer border has more cells beside it.
+            areas_.emplace_back(std::move(rings), noise, questions * edges_of(panel) / all_edges);
         }
         finder_ = BoxFinder(std::move(boxes));
     }
@@ -76,6 +81,14 @@ public:
     }
 
 private:
+    static std::size_t edges_of(const Panel& panel) {
+        std::size_t count = panel.outer.size();
+        for (const std::vector<PanelEdge>& hole : panel.holes) {
+            count += hole.size();
+        }
+        return count;
+    }
+
     static Ring ring_of(const std::vector<PanelEdge>& border) {
         Ring ring;
         for (const PanelEdge& edge : border) {
@@ -99,6 +112,7 @@ public:
         for (const Panel& panel : panels.panels) {
             borders_.push_back(border_of(panel, carriers, tolerance.snap));
         }
+        areas_.resize(borders_.size());
         borders_.emplace_back(); // of what lies in no panel
     }
 
@@ -116,17 +130,24 @@ public:
                 elsewhere.push_back(own);
             }
         }
-        Gathered& part = parts_[{panel, carriers_of(elsewhere)}];
-        part.area.add(area_of(piece));
-        part.elsewhere.insert(part.elsewhere.end(), elsewhere.begin(), elsewhere.end());
+        if (found != none) {
+            areas_[panel].add(area_of(piece));
+        }
+        if (!elsewhere.empty()) {
+            Gathered& part = parts_[{panel, carriers_of(elsewhere)}];
+            part.area.add(area_of(piece));
+            part.elsewhere.insert(part.elsewhere.end(), elsewhere.begin(), elsewhere.end());
+        }
     }
 
     [[nodiscard]] std::vector<PanelPart> finish() {
         std::vector<PanelPart> parts;
+        for (std::uint32_t p = 0; p < areas_.size(); ++p) {
+            parts.push_back({areas_[p].value(), std::move(borders_[p]), none});
+        }
         for (auto& [key, gathered] : parts_) {
-            PanelPart part{gathered.area.value(), borders_[key.first]};
-            part.along.insert(part.along.end(), gathered.elsewhere.begin(), gathered.elsewhere.end());
-            parts.push_back(std::move(part));
+            parts.push_back({gathered.area.value(), std::move(gathered.elsewhere),
+                             key.first < areas_.size() ? key.first : none});
         }
         return parts;
     }
@@ -166,7 +187,8 @@ private:
 
     Tolerance tolerance_;
     PanelFinder finder_;
-    std::vector<std::vector<FeltAlong>> borders_; ///< by panel
+    std::vector<std::vector<FeltAlong>> borders_; ///< by panel, and one more
+    std::vector<Sum> areas_;                      ///< by panel
     std::map<std::pair<std::uint32_t, std::vector<std::uint32_t>>, Gathered> parts_;
 };
 

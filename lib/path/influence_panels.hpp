@@ -17,21 +17,22 @@ struct FeltAlong {
     double station_from = 0, station_to = 0;
 };
 
-/// A part of a two-way deck and the stretches of carriers that feel a load on it.
+/// A panel of a two-way deck, or a part of one, and the stretches of carriers that feel a load on it.
 struct PanelPart {
     double area = 0; ///< m2
     std::vector<FeltAlong> along;
+    std::uint32_t within = none; ///< index of the panel that it is part of, whose carriers feel it too
 };
 
-/// Divides a two-way deck into the parts that each are felt by the same carriers; they add up to the cells'
-/// area. `carriers`: those that may carry it; `cells`: indices of the deck's cells in `sharing`.
+/// The panels of a two-way deck, and parts of them that more carriers feel; those that are in nothing else
+/// add up to the cells' area. `carriers`: those that may carry it; `cells`: indices of the deck's cells in
+/// `sharing`.
 ///
 /// A panel between carriers is felt whole by all that lie along its border. The nearest carrier may also lie
 /// elsewhere, across an opening or a notch: it feels what of the panel it takes, and no more, since nothing
 /// else of the panel goes there. So no carrier feels less than its own cells.
 ///
-/// Cost: O((n + k) log n) for n edges, carriers and cells and k meetings of their boxes, and for each panel
-/// the length of its border times the number of carriers elsewhere that take part of it.
+/// Cost: O((n + k) log n) for n edges, carriers and cells and k meetings of their boxes.
 [[nodiscard]] std::vector<PanelPart> panel_parts(const FramedDeck& deck,
                                                  std::span<const LineCarrier> carriers,
                                                  const Sharing& sharing, std::span<const std::uint32_t> cells,

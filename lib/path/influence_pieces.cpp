@@ -49,6 +49,7 @@ private:
     void add_bays() {
         pieces_.shapes.reserve(sharing_.bays.size());
         pieces_.areas.reserve(sharing_.bays.size());
+        pieces_.within.reserve(sharing_.bays.size());
         beside_.reserve(2 * sharing_.bays.size());
         for (const Bay& bay : sharing_.bays) {
             pieces_.shapes.push_back({bay.from, bay.to, bay.low, bay.high});
@@ -64,14 +65,17 @@ private:
         }
     }
 
-    std::uint32_t add_piece(double area) {
+    std::uint32_t add_piece(double area, std::uint32_t within = none) {
         pieces_.areas.push_back(area);
+        pieces_.within.push_back(within);
         return static_cast<std::uint32_t>(pieces_.areas.size() - 1);
     }
 
     void add_panels(const FramedDeck& deck, std::span<const std::uint32_t> cells) {
+        const auto first = static_cast<std::uint32_t>(pieces_.areas.size());
         for (const PanelPart& part : panel_parts(deck, carriers_near(deck), sharing_, cells, tolerance_)) {
-            const std::uint32_t piece = add_piece(part.area);
+            const std::uint32_t piece =
+                add_piece(part.area, part.within == none ? none : first + part.within);
             for (const FeltAlong& along : part.along) {
                 beside_.push_back({along.carrier, {piece, along.station_from, along.station_to, true}});
             }

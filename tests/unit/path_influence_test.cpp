@@ -580,6 +580,7 @@ TEST_CASE("what lands right over a bearing is felt there, and not at the bearing
     sharing.columns = 5;
     FloorPieces pieces;
     pieces.areas = {10};
+    pieces.within = {none};
     pieces.beside = Grouped<Beside>::from_pairs(8, {{b, {0, 0, 8, true}}});
     const std::vector<double> areas =
         influence_areas(framed, sharing, find_landings(framed, sharing), pieces, {1e-12, 0.005});
@@ -603,6 +604,7 @@ TEST_CASE(
     sharing.columns = 3;
     FloorPieces pieces;
     pieces.areas = {10};
+    pieces.within = {none};
     pieces.beside = Grouped<Beside>::from_pairs(4, {{0, {0, 3.998, 4.004, true}}});
     const std::vector<double> areas =
         influence_areas(framed, sharing, find_landings(framed, sharing), pieces, {1e-12, 0.005});
