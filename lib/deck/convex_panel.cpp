@@ -175,20 +175,35 @@ private:
         }
         sharing_.cells.push_back(cell);
         if (may_leave_) {
-            check_way(piece, (station_from + station_to) / 2, axes, deck_.carriers[stretch.carrier].number);
+            check_ways(piece, station_from, station_to, sharing_.axes[axes],
+                       deck_.carriers[stretch.carrier].number);
         }
         sharing_.transfers.push({deck_.carriers[stretch.carrier].number, station_from + 0.0, station_to, 1});
         sharing_.transfers.end_group();
     }
 
-    /// Judged at the middle of a piece, since all that its ways cross is the same edges.
-    void check_way(const StripPiece& piece, double station, std::uint32_t axes_index, std::uint32_t carrier) {
-        const StripAxes& axes = sharing_.axes[axes_index];
-        const Point middle =
-            axes.to_plan({(piece.low.at(0.5) + piece.high.at(0.5)) / 2, (piece.from + piece.to) / 2});
-        const Point foot = axes.to_plan({0, station});
-        if (area_.length_outside(middle - deck_.origin, foot - deck_.origin) > deck_.tolerance.snap) {
-            way_leaves_.add(area_of(piece), middle, carrier);
+    /// Judged at the middle of what lies between the levels of openings' corners: all that its ways cross is
+    /// the same edges.
+    void check_ways(const StripPiece& piece, double station_from, double station_to, const StripAxes& axes,
+                    std::uint32_t carrier) {
+        levels_.assign({piece.from, piece.to});
+        for (const Ring& opening : openings_here_) {
+            for (const Point& p : opening) {
+                if (p.y > piece.from && p.y < piece.to) {
+                    levels_.push_back(p.y);
+                }
+            }
+        }
+        std::sort(levels_.begin(), levels_.end());
+        for (std::size_t i = 0; i + 1 < levels_.size(); ++i) {
+            const StripPiece part = between_levels(piece, levels_[i], levels_[i + 1]);
+            const double level = (part.from + part.to) / 2;
+            const double t = piece.fraction(level);
+            const Point middle = axes.to_plan({(part.low.at(0.5) + part.high.at(0.5)) / 2, level});
+            const Point foot = axes.to_plan({0, (1 - t) * station_from + t * station_to});
+            if (area_.length_outside(middle - deck_.origin, foot - deck_.origin) > deck_.tolerance.snap) {
+                way_leaves_.add(area_of(part), middle, carrier);
+            }
         }
     }
 
@@ -204,6 +219,7 @@ private:
     bool may_leave_ = false;            ///< a way to a carrier may leave the deck
     std::vector<const Ring*> openings_; ///< that may reach into the panel
     std::vector<Ring> openings_here_;   ///< the same in a carrier's axes
+    std::vector<double> levels_;
 };
 
 /// Whether all points of the border between two of its corners lie within `snap` of the straight line.

@@ -171,7 +171,7 @@ private:
             for (const std::uint32_t c : near) {
                 const auto bounds = [c](const PanelEdge& other) { return other.carrier == c; };
                 if (std::none_of(panel.outer.begin(), panel.outer.end(), bounds) &&
-                    length_beside(deck_.carriers[c], a, b) > deck_.tolerance.snap) {
+                    runs_beside(deck_.carriers[c], a, b)) {
                     return edge.from;
                 }
             }
@@ -179,9 +179,11 @@ private:
         return std::nullopt;
     }
 
-    /// Length of the part of a carrier within `snap` of the line from a to b, between its ends.
-    [[nodiscard]] double length_beside(const LineCarrier& carrier, Point a, Point b) const {
+    /// Whether a carrier runs within `snap` of the line from a to b over at least half of what they have in
+    /// common, which is more than a point: what only meets it there does not.
+    [[nodiscard]] bool runs_beside(const LineCarrier& carrier, Point a, Point b) const {
         const double length = distance(a, b);
+        const double snap = deck_.tolerance.snap;
         const Point along = (1 / length) * (b - a);
         double from = 0;
         double to = 1;
@@ -198,9 +200,10 @@ private:
         const Point q = carrier.to - a;
         limit(dot(along, p), dot(along, q));
         limit(length - dot(along, p), length - dot(along, q));
-        limit(deck_.tolerance.snap - cross(along, p), deck_.tolerance.snap - cross(along, q));
-        limit(deck_.tolerance.snap + cross(along, p), deck_.tolerance.snap + cross(along, q));
-        return std::max(0.0, to - from) * distance(p, q);
+        const double in_common = to - from;
+        limit(snap - cross(along, p), snap - cross(along, q));
+        limit(snap + cross(along, p), snap + cross(along, q));
+        return (to - from) * std::abs(dot(along, q - p)) > snap && to - from >= in_common / 2;
     }
 
     /// All carriers that may be the nearest to some point within a ring, however far away.

@@ -416,3 +416,16 @@ TEST_CASE("a beam drawn askew, beside a side for half of its length, carries it 
     REQUIRE(problem != nullptr);
     CHECK(problem->message.find("a part of its length") != std::string::npos);
 }
+
+TEST_CASE("a beam that only meets the end of a free side does not carry it") {
+    HandFramed f;
+    f.add_member({-1, 0}, {6, 0});
+    f.add_member({0, 0}, {1, 8}); // leaves a triangle with a free side, which the beam below meets at its tip
+    f.add_member({6, 0}, {6, 8});
+    f.add_member({0, 8}, {6, 8});
+    f.add_deck({{0, 0}, {6, 0}, {6, 8}, {0, 8}}, 0);
+    support::add_deck_beyond(f, {6, 8}, {0, 8}); // and whose other sides are both continuous ...
+    CHECK(share_by_fixity(f).sharing.problems.empty());
+    f.level().decks.pop_back(); // ... or unlike
+    CHECK(share_by_fixity(f).sharing.problems.empty());
+}
