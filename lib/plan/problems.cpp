@@ -91,13 +91,19 @@ std::string force_text(double kilonewtons, Units units) {
 namespace {
 
 /// So many decimals that a step of the last one is no more than a millimetre.
-int decimals_to_a_millimetre(double metres_per_unit) {
-    constexpr double millimetre = 1e-3;
-    int decimals = 0;
-    for (double step = metres_per_unit; step > millimetre * (1 + 1e-9); step /= 10) {
-        ++decimals;
+int decimals_to_a_millimetre(LengthUnit unit) {
+    switch (unit) {
+    case LengthUnit::m:
+    case LengthUnit::ft:
+        return 3;
+    case LengthUnit::in:
+        return 2;
+    case LengthUnit::cm:
+        return 1;
+    case LengthUnit::mm:
+        return 0;
     }
-    return decimals;
+    return 3;
 }
 
 /// With no more than that many decimals, and no zeros at the end of them.
@@ -119,7 +125,7 @@ std::string fixed_text(double value, int decimals) {
 
 std::string point_text(Point point, Units units) {
     const double scale = si_per_unit(units, dimension::length);
-    const int decimals = decimals_to_a_millimetre(scale);
+    const int decimals = decimals_to_a_millimetre(units.length);
     return '(' + fixed_text(point.x / scale, decimals) + ", " + fixed_text(point.y / scale, decimals) + ')';
 }
 
