@@ -62,8 +62,9 @@ struct LevelLoads {
         lines; ///< by carrier; sorted by case, source, station; no two of a case and source overlap
     Grouped<CarrierPoint> points; ///< by carrier
     std::vector<DeckBalance> balance;
-    /// Where a line stands for a curve that no polynomial of degree four is (lever or continuous strips on
-    /// skew carriers), it keeps force and first moment and is off by no more than this, kN/m. 0: all exact.
+    /// Where a line stands for a curve that no polynomial of degree four is (strips on skew carriers), it
+    /// keeps force and first moment and is off by no more than this, kN/m: the largest sum, by carrier, case
+    /// and source, of the bounds of all curves that add up at one station. 0: all exact.
     double curve_error = 0;
     std::vector<Problem> problems;
 };

@@ -70,6 +70,8 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(strip_unsupported, "strip-unsupported", error, "Strips of a deck that no carrier crosses.")            \
     X(strip_cantilevers, "strip-cantilevers", warning, "Strips on one carrier, or with a long overhang.")    \
     X(strip_unstable, "strip-unstable", error, "Strips that no statics holds up.")                           \
+    X(strip_by_lever, "strip-by-lever", warning, "Continuous strips cut where a span dies out in a wedge.")  \
+    X(strip_clamped, "strip-clamped", warning, "Continuous strips clamped by two carriers close together.")  \
     X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
     X(fixity_set_aside, "fixity-set-aside", warning,                                                         \
       "Corner angles by fixity do not fit panels, which go to the nearest lines.")                           \

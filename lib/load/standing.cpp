@@ -210,7 +210,9 @@ void put_points(const Stretch& s, Collector& collector) {
     put(s.bay.low_carrier, false, {whole.force - high.force, whole.moment - high.moment});
 }
 
-void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c, Collector& collector) {
+/// `error`: what the quartic is off by, per length of the line.
+void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c, double error,
+                 Collector& collector) {
     const double across_from = between(s.a, s.b, from).y;
     const double across_to = between(s.a, s.b, to).y;
     const double at_from = high ? high_station(s.bay, across_from) : low_station(s.bay, across_from);
@@ -222,10 +224,11 @@ void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c,
         collector.put_point(carrier, none, {s.load_case, s.source, at_from, force});
         return;
     }
+    const double rate = s.length * (to - from) / stretch; // per length of carrier
     for (double& k : c) {
-        k *= s.length * (to - from) / stretch; // per length of carrier
+        k *= rate;
     }
-    collector.put_line(carrier, none, {s.load_case, s.source, line_between(at_from, at_to, c)});
+    collector.put_line(carrier, none, {s.load_case, s.source, line_between(at_from, at_to, c)}, error * rate);
 }
 
 /// A stretch across the strips puts a line on each carrier: w times the part, a polynomial where the carriers
@@ -233,26 +236,26 @@ void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c,
 void put_lines(const Stretch& s, double noise, Collector& collector) {
     const bool both = s.bay.low_carrier != none && s.bay.high_carrier != none;
     if (!both) {
-        put_quartic(s, s.bay.high_carrier != none, 0, 1, {s.w_a, s.w_b - s.w_a, 0, 0, 0}, collector);
+        put_quartic(s, s.bay.high_carrier != none, 0, 1, {s.w_a, s.w_b - s.w_a, 0, 0, 0}, 0, collector);
         return;
     }
     const auto width = [&](Point p) {
         return along_of(s.bay.high, piece_of(s.bay), p.y) - along_of(s.bay.low, piece_of(s.bay), p.y);
     };
-    std::vector<QuarticPiece> pieces;
+    QuarticFit fit;
     if (std::abs(width(s.a) - width(s.b)) <= noise) {
         const double w1 = s.w_b - s.w_a;
         const double f0 = s.part(0);
         const double f1 = s.part(1) - f0;
-        pieces.push_back({0, 1, {s.w_a * f0, s.w_a * f1 + w1 * f0, w1 * f1, 0, 0}});
+        fit.pieces.push_back({0, 0, 1, {s.w_a * f0, s.w_a * f1 + w1 * f0, w1 * f1, 0, 0}, 0});
     } else {
-        pieces = fit_quartics([&](double t) { return s.w(t) * s.part(t); });
+        fit = fit_quartics(1, [&](double t, std::span<double> value) { value.front() = s.w(t) * s.part(t); });
     }
-    for (const QuarticPiece& piece : pieces) {
-        put_quartic(s, true, piece.from, piece.to, piece.c, collector);
+    for (const QuarticFit::Piece& piece : fit.pieces) {
+        put_quartic(s, true, piece.from, piece.to, piece.c, piece.error, collector);
         const Quartic rest{s.w(piece.from) - piece.c[0], s.w(piece.to) - s.w(piece.from) - piece.c[1],
                            -piece.c[2], -piece.c[3], -piece.c[4]};
-        put_quartic(s, false, piece.from, piece.to, rest, collector);
+        put_quartic(s, false, piece.from, piece.to, rest, piece.error, collector);
     }
 }
 
