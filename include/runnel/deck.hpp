@@ -62,8 +62,9 @@ struct StripCarrier {
 ///
 /// Lever: two carriers a, b; a load at u goes to b by the part (u - a) / (b - a) and to a by the rest,
 /// between them and beyond. Continuous: two carriers or more; each takes what a beam of constant stiffness on
-/// all of them brings it. The strips' own load is what lies between `low` and `high`: these need not be
-/// carriers.
+/// all of them brings it. Decks under `continuous` have strips under lever where a span dies out in a wedge:
+/// there the beam ends on either side of that span. The strips' own load is what lies between `low` and
+/// `high`: these need not be carriers.
 struct Strip {
     std::uint32_t deck = none;
     std::uint32_t axes = 0;
@@ -131,7 +132,8 @@ struct Sharing {
 ///   (4) order     the result does not depend on the order of members
 ///   (5) motion    turning or moving level and carriers together turns or moves the cells
 ///   (6) statics   at every point the parts that a strip's carriers take add up to one, and keep its place
-/// Problems: strip-unsupported, strip-cantilevers and others with area and place.
+/// Problems: strip-unsupported, strip-cantilevers, strip-unstable, strip-by-lever, strip-clamped and others
+/// with area and place.
 /// Cost: O((n + k) log n) for n edges and k crossings.
 [[nodiscard]] RUNNEL_EXPORT Sharing share_decks(const Plan& plan, const Framing& framing,
                                                 std::uint32_t level);

@@ -62,10 +62,10 @@ struct LevelLoads {
         lines; ///< by carrier; sorted by case, source, station; no two of a case and source overlap
     Grouped<CarrierPoint> points; ///< by carrier
     std::vector<DeckBalance> balance;
-    /// Where a line stands for a curve that no polynomial of degree four is (lever or continuous strips on
-    /// skew carriers, line loads between skew carriers), it keeps force and first moment and is off by no
-    /// more than this, kN/m, what joining such lines changes included. 0: all exact, but for what the
-    /// rounding of coordinates moves.
+    /// Where a line stands for a curve that no polynomial of degree four is (strips on skew carriers), it
+    /// keeps force and first moment and is off by no more than this, kN/m: the largest sum, by carrier, case
+    /// and source, of the bounds of all curves that add up at one station, and what joining lines changes.
+    /// 0: all exact, but for what the rounding of coordinates moves.
     double curve_error = 0;
     std::vector<Problem> problems;
 };

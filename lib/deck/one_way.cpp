@@ -283,7 +283,7 @@ void share_one_way(const FramedDeck& deck, std::uint32_t index, std::span<const 
         }
     }
     if (deck.share != Share::half) {
-        make_strips(deck.share, first_bay, marks, tolerance.noise, sharing);
+        make_strips(deck.share, first_bay, marks, tolerance, sharing);
     }
 }
 

@@ -2,6 +2,7 @@
 
 #include "deck/strip_beam.hpp"
 #include "deck/strips_chains.hpp"
+#include "deck/strips_cut.hpp"
 #include "geometry/strip_piece.hpp"
 
 #include <algorithm>
@@ -17,29 +18,11 @@ StripPiece piece_of(const Bay& bay) {
     return {bay.from, bay.to, bay.low, bay.high};
 }
 
-struct Levels {
-    double from = 0, to = 0;
-
-    [[nodiscard]] bool any() const { return to > from; }
-};
-
-/// Narrows levels to where a quantity that is linear in between, and has these values at both ends, is not
-/// negative.
-void keep_where_positive(const Levels& whole, double start, double end, Levels& kept) {
-    if (start < 0 && end < 0) {
-        kept.to = kept.from;
-    } else if (start < 0 || end < 0) {
-        const double x = start / (start - end);
-        const double level = (1 - x) * whole.from + x * whole.to;
-        (start < 0 ? kept.from : kept.to) = start < 0 ? std::max(kept.from, level) : std::min(kept.to, level);
-    }
-}
-
 class StripMaker {
 public:
-    StripMaker(std::size_t first_bay, std::span<const BayMarks> marks, double noise, Sharing& sharing)
+    StripMaker(std::size_t first_bay, std::span<const BayMarks> marks, Tolerance tolerance, Sharing& sharing)
         : sharing_(sharing), bays_(std::span<const Bay>(sharing.bays).subspan(first_bay)), marks_(marks),
-          noise_(noise) {
+          tolerance_(tolerance) {
         for (std::uint32_t i = 0; i < bays_.size(); ++i) {
             if (marks_[i].low != Gap::edge) {
                 above_.push_back({marks_[i].low, bays_[i].from, i});
@@ -176,7 +159,7 @@ private:
     void keep_long_spans(std::uint32_t span, std::uint32_t beside, const Levels& at, Levels& kept) const {
         const auto [start, end] = lengths(span, at);
         const auto [beside_start, beside_end] = lengths(beside, at);
-        if (!(start + end > 2 * noise_)) {
+        if (!(start + end > 2 * tolerance_.noise)) {
             kept.to = kept.from; // two carriers on one line: nothing can be told from their distance
             return;
         }
@@ -185,59 +168,61 @@ private:
     }
 
     void push_chain(const Chain& chain);
-    void push_bays(std::span<const std::uint32_t> chain, const Levels& at) {
-        for (const std::uint32_t i : chain) {
-            push_bay(i, at);
-        }
-    }
+    void push_part(const Chain& chain, const ChainPart& part);
 
     Sharing& sharing_;
     std::span<const Bay> bays_;
     std::span<const BayMarks> marks_;
-    double noise_;
+    Tolerance tolerance_;
+    std::vector<ChainBay> chain_bays_;
     std::vector<Row> above_, below_; ///< bays by the mark below (above) them, by rising level
 };
 
-/// One strip for a chain of bays, where its spans are long enough for each other; the rest bay by bay.
+/// One strip for all bays of a chain that act as one beam.
 void StripMaker::push_chain(const Chain& chain) {
     const Levels at{chain.from, chain.to};
-    const auto core = chain.bays.subspan(chain.core, chain.core_size);
-    Levels held = at;
-    std::size_t spans = 0;
-    for (std::size_t k = 0; k < chain.bays.size() && held.any(); ++k) {
-        if (is_span(chain.bays[k])) {
-            ++spans;
-            if (k > 0) {
-                keep_long_spans(chain.bays[k], chain.bays[k - 1], at, held);
-            }
-            if (k + 1 < chain.bays.size()) {
-                keep_long_spans(chain.bays[k], chain.bays[k + 1], at, held);
-            }
-        }
+    chain_bays_.clear();
+    for (const std::uint32_t i : chain.bays) {
+        const Bay& bay = bays_[i];
+        const auto [start, end] = lengths(i, at);
+        const double breadth = bay.to - bay.from;
+        const double grown = (bay.high.end - bay.low.end) - (bay.high.start - bay.low.start);
+        chain_bays_.push_back({is_span(i), start, end, grown / breadth, breadth});
     }
-    if (spans == 0 || !held.any()) {
-        push_bays(core, at);
+    for_parts(chain_bays_, at, tolerance_.snap, tolerance_.noise,
+              [&](const ChainPart& part) { push_part(chain, part); });
+}
+
+/// A part's strip bears the load of those of its bays that are in the chain's core.
+void StripMaker::push_part(const Chain& chain, const ChainPart& part) {
+    const std::size_t first = std::max(part.first, chain.core);
+    const std::size_t last = std::min(part.last, chain.core + chain.core_size);
+    if (first >= last || !part.at.any()) {
         return;
     }
-    push_bays(core, {at.from, held.from});
-    begin_strip(core.front(), core.back(), held, Share::continuous);
-    if (marks_[chain.bays.front()].low != Gap::edge) {
-        sharing_.strip_carriers.push(low_carrier(chain.bays.front(), held));
+    const auto bays = chain.bays.subspan(part.first, part.last - part.first);
+    if (std::none_of(bays.begin(), bays.end(), [this](std::uint32_t i) { return is_span(i); })) {
+        push_alone(bays.front(), part.at); // two overhangs of a carrier are two parts
+        return;
     }
-    for (const std::uint32_t i : chain.bays) {
+    begin_strip(chain.bays[first], chain.bays[last - 1], part.at,
+                part.dying ? Share::lever : Share::continuous);
+    if (marks_[bays.front()].low != Gap::edge) {
+        sharing_.strip_carriers.push(low_carrier(bays.front(), part.at));
+    }
+    for (const std::uint32_t i : bays) {
         if (marks_[i].high != Gap::edge) {
-            sharing_.strip_carriers.push(high_carrier(i, held));
+            sharing_.strip_carriers.push(high_carrier(i, part.at));
         }
     }
     sharing_.strip_carriers.end_group();
-    push_bays(core, {held.to, at.to});
 }
 
 } // namespace
 
-void make_strips(Share share, std::size_t first_bay, std::span<const BayMarks> marks, double noise,
+void make_strips(Share share, std::size_t first_bay, std::span<const BayMarks> marks, Tolerance tolerance,
                  Sharing& sharing) {
-    StripMaker maker(first_bay, marks, noise, sharing);
+    StripMaker maker(first_bay, marks, tolerance, sharing);
     if (share == Share::continuous) {
         maker.make_chains();
     } else {

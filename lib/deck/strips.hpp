@@ -1,5 +1,6 @@
 #pragma once
 
+#include "geometry/basic.hpp"
 #include "geometry/strip_sweep.hpp"
 
 #include <runnel/deck.hpp>
@@ -23,11 +24,12 @@ struct BayMarks {
 ///
 /// Lever: a strip for each span; one for each part of an overhang that has one back span. Continuous: a strip
 /// for each chain of bays that follow each other from carrier to carrier, and levels between which the chain
-/// stays the same; of long chains, one for each part, on its carriers and those that are felt there. Where no
-/// statics holds a strip (one carrier alone, a span shorter than `least_span_ratio` of what hangs on it or,
-/// under `continuous`, of the one beside it) what can be is shared by lever, and the rest goes to its one
-/// carrier, so that nothing is lost; find_weak_strips says so. Cost: O(n log n).
-void make_strips(Share share, std::size_t first_bay, std::span<const BayMarks> marks, double noise,
+/// stays the same; of long chains, one for each part, on its carriers and those that are felt there. In a
+/// wedge, where a span dies out beside a longer one, that span is cut off and shared by lever, and the chain
+/// ends on either side of it (strips_cut.hpp). What no statics holds (one carrier alone, a back span shorter
+/// than `least_span_ratio` of its overhang) goes to its one carrier, so that nothing is lost.
+/// find_weak_strips tells of all these. Cost: O(n log n).
+void make_strips(Share share, std::size_t first_bay, std::span<const BayMarks> marks, Tolerance tolerance,
                  Sharing& sharing);
 
 RUNNEL_NAMESPACE_END

@@ -11,8 +11,8 @@ RUNNEL_NAMESPACE_BEGIN
 namespace {
 
 constexpr std::uint32_t no_bay = std::numeric_limits<std::uint32_t>::max();
-/// Over equal spans a moment dies down to 0.268 of it from each to the next: to 1e-18 over so many.
-constexpr std::size_t felt_bays = 32;
+/// Over equal spans a moment dies down to 0.268 of it from each to the next: to 1e-13 over so many.
+constexpr std::size_t felt_bays = 23;
 constexpr std::size_t most_core_bays = 2 * felt_bays; // makes the least work where joists end one by one
 
 /// Goes up through the levels at which bays begin and end. A chain stays open until one of its bays ends or

@@ -1,5 +1,6 @@
 #include "deck/one_way.hpp"
 #include "deck/pressure.hpp"
+#include "deck/strip_beam.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/strip_piece.hpp"
 #include "plan/problems.hpp"
@@ -196,11 +197,37 @@ std::string loads_text(const Plan& plan, const FramedLevel& level, std::uint32_t
     return text.empty() ? "no load" : text;
 }
 
-/// Strips of a deck under lever or continuous that no statics holds: on one carrier alone, on a back span too
-/// short, or uneven spans.
+/// Strips of a deck under lever or continuous that no statics holds (on one carrier alone, on a back span too
+/// short), or whose spans are so uneven that they cannot run on, or clamp the deck.
 struct UnstableStrips {
-    WeakArea alone, short_back, uneven;
+    WeakArea alone, short_back, by_lever, clamped;
 };
+
+/// The spans of a continuous strip beside one so short that it clamps them. Where such a span dies out the
+/// strip was cut, so that what is left is about as wide all along: the middle tells.
+void find_clamped(const Strip& strip, std::span<const StripCarrier> carriers, const StripAxes& axes,
+                  WeakArea& clamped) {
+    const double low = strip.low.at(0.5);
+    const double high = strip.high.at(0.5);
+    const double level = (strip.from + strip.to) / 2;
+    const auto place = [&](std::size_t i) { return carriers[i].along.at(0.5); };
+    for (std::size_t i = 1; i < carriers.size(); ++i) {
+        const double middle = (place(i - 1) + place(i)) / 2;
+        if (middle < low || middle > high) {
+            continue; // felt, but the load of another strip
+        }
+        const double least = least_span_ratio * (place(i) - place(i - 1));
+        const bool below = i > 1 && place(i - 1) - place(i - 2) < least;
+        const bool above = i + 1 < carriers.size() && place(i + 1) - place(i) < least;
+        if (!below && !above) {
+            continue;
+        }
+        const std::size_t end = below ? i - 1 : i; // of the span, where it is clamped
+        clamped.add((place(i) - place(i - 1)) * (strip.to - strip.from), axes.to_plan({place(end), level}),
+                    carriers[end].carrier);
+        clamped.carriers.push_back(carriers[below ? i - 2 : i + 1].carrier);
+    }
+}
 
 UnstableStrips find_unstable(const Sharing& sharing, BaysBeside& beside, std::uint32_t deck, Share share,
                              double snap) {
@@ -211,6 +238,9 @@ UnstableStrips find_unstable(const Sharing& sharing, BaysBeside& beside, std::ui
         const Strip& strip = *it;
         const auto carriers = sharing.strip_carriers[static_cast<std::size_t>(it - sharing.strips.begin())];
         if (carriers.size() > 1 && strip.share == share) {
+            if (share == Share::continuous) {
+                find_clamped(strip, carriers, sharing.axes[strip.axes], found.clamped);
+            }
             continue;
         }
         const StripPiece piece{strip.from, strip.to, strip.low, strip.high};
@@ -221,10 +251,8 @@ UnstableStrips find_unstable(const Sharing& sharing, BaysBeside& beside, std::ui
         const Point place = sharing.axes[strip.axes].to_plan(
             {(strip.low.at(0.5) + strip.high.at(0.5)) / 2, (strip.from + strip.to) / 2});
         if (carriers.size() > 1) {
-            for (const StripCarrier& carrier : carriers) {
-                found.uneven.carriers.push_back(carrier.carrier);
-            }
-            found.uneven.add(area_of(piece), place, none);
+            found.by_lever.add(area_of(piece), place, carriers.front().carrier);
+            found.by_lever.carriers.push_back(carriers.back().carrier);
             continue;
         }
         const std::uint32_t carrier = carriers.front().carrier;
@@ -290,10 +318,16 @@ void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t le
         report(ProblemCode::strip_unstable, unstable.short_back,
                "overhang by more than twenty times the span behind",
                "Is a beam missing at the edge? Statics would lift the carrier behind out of all proportion.");
-        report(ProblemCode::strip_unstable, unstable.uneven,
-               "lie in strips of which one span is shorter than a twentieth of the one beside it",
-               "A strip cannot run on as one beam there: share this deck by `lever`, or end it at that "
-               "carrier.");
+        report(
+            ProblemCode::strip_by_lever, unstable.by_lever,
+            "lie in spans that die out beside one more than twenty times as long; there the strips are "
+            "cut, and shared by lever",
+            "Nothing is wrong where a carrier runs at a skew; to see how much it matters, share by `lever`.");
+        report(ProblemCode::strip_clamped, unstable.clamped,
+               "lie in spans beside one shorter than a twentieth of them; its two carriers clamp the strips, "
+               "and one of them may be lifted",
+               "Two beams side by side act as a pair that pries. If the deck is not held down on both, or is "
+               "not continuous over them, share it by `lever`.");
     }
 }
 

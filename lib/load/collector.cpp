@@ -32,7 +32,7 @@ Point Collector::at(std::uint32_t carrier, double station) const {
     return axes_[carrier].from + station * axes_[carrier].direction;
 }
 
-void Collector::put_line(std::uint32_t carrier, std::uint32_t deck, const CarrierLine& line) {
+void Collector::put_line(std::uint32_t carrier, std::uint32_t deck, const CarrierLine& line, double error) {
     if (line.load_case == none) {
         return; // an error already, which read_plan and check_plan have told
     }
@@ -41,6 +41,10 @@ void Collector::put_line(std::uint32_t carrier, std::uint32_t deck, const Carrie
         force * at(carrier, line.piece.from) + line.piece.first_moment() * axes_[carrier].direction;
     shared_[row(deck, line.load_case)].add(force, moment, magnitude_of(line.piece));
     lines_.emplace_back(carrier, line);
+    if (error > 0) {
+        curve_errors_.push_back(
+            {carrier, line.load_case, line.source, line.piece.from, line.piece.to, error});
+    }
 }
 
 void Collector::put_point(std::uint32_t carrier, std::uint32_t deck, const CarrierPoint& point) {
@@ -76,6 +80,28 @@ double magnitude_of(const LinePiece& piece) {
     const double length = piece.to - piece.from;
     const double zero = length * start / (start - end);
     return (std::abs(start) * zero + std::abs(end) * (length - zero)) / 2;
+}
+
+double Collector::largest_curve_error(std::vector<CurveError>& errors) {
+    std::sort(errors.begin(), errors.end(),
+              [](const CurveError& l, const CurveError& r) { return l.key() < r.key(); });
+    double largest = 0;
+    std::vector<std::pair<double, double>> steps; // station, what the sum grows by there
+    for (std::size_t i = 0; i < errors.size();) {
+        steps.clear();
+        const auto key = errors[i].key();
+        for (; i < errors.size() && errors[i].key() == key; ++i) {
+            steps.emplace_back(errors[i].from, errors[i].error);
+            steps.emplace_back(errors[i].to, -errors[i].error);
+        }
+        std::sort(steps.begin(), steps.end());
+        double sum = 0;
+        for (const auto& [station, step] : steps) {
+            sum += step;
+            largest = std::max(largest, sum);
+        }
+    }
+    return largest;
 }
 
 LevelLoads Collector::finish() {
@@ -147,7 +173,8 @@ LevelLoads Collector::finish() {
             }
         }
     }
-    loads.curve_error = curve_error_ > 0 ? curve_error_ + changed : 0;
+    const double fitted = largest_curve_error(curve_errors_);
+    loads.curve_error = fitted > 0 ? fitted + changed : 0;
     loads.problems = std::move(problems);
     return loads;
 }

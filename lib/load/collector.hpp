@@ -4,7 +4,11 @@
 
 #include <runnel/load.hpp>
 
+#include <cstddef>
+#include <cstdint>
 #include <span>
+#include <tuple>
+#include <utility>
 #include <vector>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -34,11 +38,10 @@ public:
     Collector(const Plan& plan, const FramedLevel& level, const Sharing& sharing, double noise);
 
     /// `deck`: the deck whose account it goes to, or `none`.
-    void put_line(std::uint32_t carrier, std::uint32_t deck, const CarrierLine& line);
+    /// `error`, kN/m: what a line is off by at most where it stands for a curve that is none of degree four.
+    void put_line(std::uint32_t carrier, std::uint32_t deck, const CarrierLine& line, double error = 0);
     void put_point(std::uint32_t carrier, std::uint32_t deck, const CarrierPoint& point);
     void applied(std::uint32_t deck, std::uint32_t load_case, double force, Point moment, double magnitude);
-    /// Lines that stand for a curve which is none of degree four are off by no more than this, kN/m.
-    void note_curve_error(double error) { curve_error_ = std::max(curve_error_, error); }
     /// Load of a deck that goes to its carrier without the moment of its way there, kNm.
     void note_moved(std::uint32_t deck, std::uint32_t load_case, double moment);
 
@@ -58,13 +61,28 @@ private:
         return (deck == none ? decks_ : deck) * cases_ + load_case;
     }
 
+    /// What a line of a carrier, case and source is off by over a stretch of it.
+    struct CurveError {
+        std::uint32_t carrier = 0;
+        std::uint32_t load_case = 0;
+        Source source;
+        double from = 0, to = 0; ///< stations
+        double error = 0;
+
+        [[nodiscard]] auto key() const {
+            return std::tuple(carrier, load_case, static_cast<int>(source.kind), source.index);
+        }
+    };
+    /// The largest sum, by carrier, case and source, of what is off at one station.
+    [[nodiscard]] static double largest_curve_error(std::vector<CurveError>& errors);
+
     double noise_;
-    double curve_error_ = 0;
     std::size_t decks_;
     std::size_t cases_;
     std::vector<Axis> axes_; ///< by carrier
     std::vector<std::pair<std::uint32_t, CarrierLine>> lines_;
     std::vector<std::pair<std::uint32_t, CarrierPoint>> points_;
+    std::vector<CurveError> curve_errors_;
     std::vector<ForceGatherer> applied_;
     std::vector<ForceGatherer> shared_;
     std::vector<double> moved_;

@@ -1,6 +1,7 @@
 #include "load/fit.hpp"
 
 #include <algorithm>
+#include <array>
 #include <cmath>
 #include <limits>
 #include <numbers>
@@ -84,56 +85,61 @@ Quartic to_powers(const Quartic& a) {
     return c;
 }
 
-double value_of(const Quartic& c, double y) {
-    return c[0] + y * (c[1] + y * (c[2] + y * (c[3] + y * c[4])));
+/// How much a function's value at a Gauss point adds to its Legendre coefficients.
+using Projection = std::array<std::array<double, most_points>, most_points>; ///< by point, by degree
+
+Projection projection_of(const GaussRule& rule) {
+    Projection projection{};
+    for (std::size_t i = 0; i < rule.node.size(); ++i) {
+        for (std::size_t k = 0; k < most_points; ++k) {
+            projection[i][k] =
+                (2 * static_cast<double>(k) + 1) / 2 * rule.weight[i] * legendre(k, rule.node[i]);
+        }
+    }
+    return projection;
 }
 
-/// A piece with what it is off by at most, at Chebyshev's points.
+/// A stretch of the parameter with the quartics of all functions on it.
 struct Tried {
-    QuarticFit::Piece piece;
-    double error = 0;
+    double from = 0, to = 0;
+    std::vector<Quartic> c;
+    std::vector<double> error; ///< by function
+    double worst = 0;
+    std::size_t half = 0; ///< the first of its two halves; 0: it was not halved
 };
 
 class Fitter {
 public:
-    Fitter(std::size_t count, const Functions& f) : f_(f), values_(count) {}
+    Fitter(std::size_t count, const Functions& f) : f_(f), values_(count), coefficients_(count) {}
 
-    /// Projection on the Legendre polynomials up to a degree.
-    QuarticFit::Piece project(double from, double to, std::size_t points, std::size_t degree) {
-        QuarticFit::Piece piece{from, to, std::vector<Quartic>(values_.size())};
-        const GaussRule& rule = rule_of(points);
-        for (std::size_t i = 0; i < rule.node.size(); ++i) {
+    Tried fit(double from, double to) {
+        static const Projection projection = projection_of(rule_of(most_points));
+        for (auto& a : coefficients_) {
+            a.fill(0);
+        }
+        const GaussRule& rule = rule_of(most_points);
+        for (std::size_t i = 0; i < most_points; ++i) {
             f_(from + (to - from) * (1 + rule.node[i]) / 2, values_);
-            for (std::size_t k = 0; k <= degree; ++k) {
-                const double factor =
-                    (2 * static_cast<double>(k) + 1) / 2 * rule.weight[i] * legendre(k, rule.node[i]);
-                for (std::size_t n = 0; n < values_.size(); ++n) {
-                    piece.c[n][k] += factor * values_[n];
+            for (std::size_t n = 0; n < values_.size(); ++n) {
+                for (std::size_t k = 0; k < most_points; ++k) {
+                    coefficients_[n][k] += projection[i][k] * values_[n];
                 }
             }
         }
-        return piece;
-    }
-
-    Tried fit(double from, double to) {
-        Tried tried{project(from, to, most_points, 4), 0};
-        for (Quartic& c : tried.piece.c) {
-            c = to_powers(c);
-        }
-        constexpr int samples = 9;
-        for (int i = 0; i < samples; ++i) {
-            const double y = (1 - std::cos(std::numbers::pi * i / (samples - 1))) / 2;
-            f_(from + (to - from) * y, values_);
-            for (std::size_t n = 0; n < values_.size(); ++n) {
-                tried.error = std::max(tried.error, std::abs(values_[n] - value_of(tried.piece.c[n], y)));
-            }
+        Tried tried{from, to, {}, {}, 0, 0};
+        tried.c.reserve(values_.size());
+        tried.error.reserve(values_.size());
+        for (const auto& a : coefficients_) {
+            tried.c.push_back(to_powers({a[0], a[1], a[2], a[3], a[4]}));
+            tried.error.push_back(left_out(a));
+            tried.worst = std::max(tried.worst, tried.error.back());
         }
         return tried;
     }
 
     double largest() {
         double largest = 0;
-        constexpr int samples = 33;
+        constexpr int samples = 17;
         for (int i = 0; i < samples; ++i) {
             f_(static_cast<double>(i) / (samples - 1), values_);
             for (const double value : values_) {
@@ -144,52 +150,88 @@ public:
     }
 
 private:
+    static double left_out(const std::array<double, most_points>& a) {
+        constexpr std::size_t last_four = most_points - 4;
+        double sum = 0;
+        for (std::size_t k = std::tuple_size_v<Quartic>; k < a.size(); ++k) {
+            sum += (k < last_four ? 1 : 2) * std::abs(a[k]);
+        }
+        return sum;
+    }
+
     const Functions& f_;
     std::vector<double> values_;
+    std::vector<std::array<double, most_points>> coefficients_; ///< Legendre's, by function
 };
+
+/// The pieces of one function, rising: halves only where it needs them.
+void push_pieces(const std::vector<Tried>& tried, std::size_t at, std::size_t function, double bound,
+                 std::vector<QuarticFit::Piece>& pieces) {
+    const Tried& one = tried[at];
+    if (one.half == 0 || one.error[function] <= bound) {
+        pieces.push_back({function, one.from, one.to, one.c[function], one.error[function]});
+        return;
+    }
+    push_pieces(tried, one.half, function, bound, pieces);
+    push_pieces(tried, one.half + 1, function, bound, pieces);
+}
 
 } // namespace
 
 QuarticFit fit_quartics(std::size_t count, const Functions& f) {
     Fitter fitter(count, f);
     const double bound = wanted * fitter.largest();
-    const auto better = [](const Tried& l, const Tried& r) { return l.error < r.error; };
-    std::vector<Tried> tried; // a heap, the worst on top
-    tried.push_back(fitter.fit(0, 1));
-    while (tried.front().error > bound && tried.size() < most_pieces) {
-        std::pop_heap(tried.begin(), tried.end(), better);
-        const double from = tried.back().piece.from;
-        const double to = tried.back().piece.to;
-        tried.pop_back();
+    std::vector<Tried> tried{fitter.fit(0, 1)};
+    std::vector<std::size_t> leaves{0}; // a heap, the worst on top
+    const auto better = [&tried](std::size_t l, std::size_t r) { return tried[l].worst < tried[r].worst; };
+    while (tried[leaves.front()].worst > bound && leaves.size() < most_pieces) {
+        std::pop_heap(leaves.begin(), leaves.end(), better);
+        const std::size_t worst = leaves.back();
+        leaves.pop_back();
+        const double from = tried[worst].from;
+        const double to = tried[worst].to;
         const double middle = (from + to) / 2;
-        tried.push_back(fitter.fit(from, middle));
-        std::push_heap(tried.begin(), tried.end(), better);
-        tried.push_back(fitter.fit(middle, to));
-        std::push_heap(tried.begin(), tried.end(), better);
+        tried[worst].half = tried.size();
+        for (const auto& [start, end] : {std::pair(from, middle), std::pair(middle, to)}) {
+            leaves.push_back(tried.size());
+            tried.push_back(fitter.fit(start, end));
+            std::push_heap(leaves.begin(), leaves.end(), better);
+        }
     }
     QuarticFit result;
-    result.error = tried.front().error;
-    std::sort(tried.begin(), tried.end(),
-              [](const Tried& l, const Tried& r) { return l.piece.from < r.piece.from; });
-    for (Tried& one : tried) {
-        result.pieces.push_back(std::move(one.piece));
+    for (std::size_t n = 0; n < count; ++n) {
+        push_pieces(tried, 0, n, bound, result.pieces);
     }
     return result;
 }
 
 QuarticFit exact_quartics(std::size_t count, std::size_t degree, const Functions& f) {
+    const GaussRule& rule = rule_of(degree + 1);
+    std::vector<double> values(count);
+    std::vector<Quartic> legendre_parts(count);
+    for (std::size_t i = 0; i < rule.node.size(); ++i) {
+        f((1 + rule.node[i]) / 2, values);
+        for (std::size_t k = 0; k <= degree; ++k) {
+            const double factor =
+                (2 * static_cast<double>(k) + 1) / 2 * rule.weight[i] * legendre(k, rule.node[i]);
+            for (std::size_t n = 0; n < count; ++n) {
+                legendre_parts[n][k] += factor * values[n];
+            }
+        }
+    }
     QuarticFit result;
-    result.pieces.push_back(Fitter(count, f).project(0, 1, degree + 1, degree));
+    result.pieces.reserve(count);
     constexpr double rounding = 32 * std::numeric_limits<double>::epsilon();
-    for (Quartic& c : result.pieces.back().c) {
+    for (std::size_t n = 0; n < count; ++n) {
+        Quartic& a = legendre_parts[n];
         double largest = 0;
-        for (const double a : c) {
-            largest = std::max(largest, std::abs(a));
+        for (const double part : a) {
+            largest = std::max(largest, std::abs(part));
         }
-        for (double& a : c) {
-            a = std::abs(a) <= rounding * largest ? 0 : a;
+        for (double& part : a) {
+            part = std::abs(part) <= rounding * largest ? 0 : part;
         }
-        c = to_powers(c);
+        result.pieces.push_back({n, 0, 1, to_powers(a), 0});
     }
     return result;
 }

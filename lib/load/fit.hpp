@@ -17,21 +17,25 @@ using Quartic = std::array<double, 5>;
 /// Several functions of one parameter: values[i] is that of function i. `values` comes as it may.
 using Functions = std::function<void(double x, std::span<double> values)>;
 
-/// Quartics of several functions on the same pieces: what holds for the functions at every x (that they add
-/// up to a load and keep its place) holds for the integrals and first moments of the quartics.
+/// Quartics of several functions of a parameter, each function on pieces of its own. What holds for the
+/// functions at every x (that they add up to a load and keep its place) holds for the integrals and first
+/// moments of the quartics.
 struct QuarticFit {
-    /// On from..to of the parameter: y = (x - from) / (to - from).
     struct Piece {
-        double from = 0, to = 0;
-        std::vector<Quartic> c; ///< by function
+        std::size_t function = 0;
+        double from = 0, to = 0; ///< of the parameter: y = (x - from) / (to - from)
+        Quartic c{};
+        double error = 0; ///< bound of the difference, in the function's unit
     };
-    std::vector<Piece> pieces;
-    double error = 0; ///< the largest difference found, in the functions' unit
+    std::vector<Piece> pieces; ///< by function, then rising
 };
 
 /// Replaces smooth functions on 0..1 by quartics that keep integrals and first moments (the projection on
 /// Legendre polynomials keeps all moments up to the fourth). The worst piece is halved until every piece is
-/// within 1e-9 of the largest value, or there are 64.
+/// within 1e-9 of the largest value of all functions, or a function has 64.
+///
+/// The bound of a piece is the sum of the Legendre coefficients that were left out, up to the fifteenth, the
+/// last four counted twice for what follows them: no Legendre polynomial passes one.
 [[nodiscard]] QuarticFit fit_quartics(std::size_t count, const Functions& f);
 
 /// The same where the functions are polynomials of a degree up to four: one piece, found from degree + 1

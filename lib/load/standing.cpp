@@ -210,7 +210,7 @@ void put_points(const Stretch& s, Collector& collector) {
     put(s.bay.low_carrier, false, {whole.force - high.force, whole.moment - high.moment});
 }
 
-/// `error`: what the quartic may be off by, per length of the stretch.
+/// `error`: what the quartic is off by, per length of the line.
 void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c, double error,
                  Collector& collector) {
     const double across_from = between(s.a, s.b, from).y;
@@ -228,8 +228,7 @@ void put_quartic(const Stretch& s, bool high, double from, double to, Quartic c,
     for (double& k : c) {
         k *= rate;
     }
-    collector.note_curve_error(error * rate);
-    collector.put_line(carrier, none, {s.load_case, s.source, line_between(at_from, at_to, c)});
+    collector.put_line(carrier, none, {s.load_case, s.source, line_between(at_from, at_to, c)}, error * rate);
 }
 
 /// A stretch across the strips puts a line on each carrier: w times the part, a polynomial where the carriers
@@ -248,17 +247,15 @@ void put_lines(const Stretch& s, double noise, Collector& collector) {
         const double w1 = s.w_b - s.w_a;
         const double f0 = s.part(0);
         const double f1 = s.part(1) - f0;
-        fit.pieces.push_back({0, 1, {{s.w_a * f0, s.w_a * f1 + w1 * f0, w1 * f1, 0, 0}}});
+        fit.pieces.push_back({0, 0, 1, {s.w_a * f0, s.w_a * f1 + w1 * f0, w1 * f1, 0, 0}, 0});
     } else {
-        fit =
-            fit_quartics(1, [&](double t, std::span<double> values) { values.front() = s.w(t) * s.part(t); });
+        fit = fit_quartics(1, [&](double t, std::span<double> value) { value.front() = s.w(t) * s.part(t); });
     }
     for (const QuarticFit::Piece& piece : fit.pieces) {
-        const Quartic& c = piece.c.front();
-        put_quartic(s, true, piece.from, piece.to, c, fit.error, collector);
-        const Quartic rest{s.w(piece.from) - c[0], s.w(piece.to) - s.w(piece.from) - c[1], -c[2], -c[3],
-                           -c[4]};
-        put_quartic(s, false, piece.from, piece.to, rest, fit.error, collector);
+        put_quartic(s, true, piece.from, piece.to, piece.c, piece.error, collector);
+        const Quartic rest{s.w(piece.from) - piece.c[0], s.w(piece.to) - s.w(piece.from) - piece.c[1],
+                           -piece.c[2], -piece.c[3], -piece.c[4]};
+        put_quartic(s, false, piece.from, piece.to, rest, piece.error, collector);
     }
 }
 

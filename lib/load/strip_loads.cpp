@@ -31,7 +31,8 @@ class StripLoader {
 public:
     StripLoader(const StripAtLevels& strip, double noise) : strip_(strip), noise_(noise) {}
 
-    /// Calls put(i, line) for what a pressure on a piece of the strip brings its carriers, i of them.
+    /// Calls put(i, line, error) for what a pressure on a piece of the strip brings its carriers, i of
+    /// them; the line is off by no more than `error`.
     template <class Put>
     void carry(const StripPiece& piece, const Intensity& intensity, Put put) {
         std::vector<double> levels{piece.from};
@@ -52,8 +53,6 @@ public:
             carry_smooth(between_levels(piece, from, piece.to), intensity, put);
         }
     }
-
-    [[nodiscard]] double curve_error() const { return curve_error_; }
 
 private:
     /// Where the borders stay in their stretches, so that what the carriers take is smooth.
@@ -128,32 +127,29 @@ private:
     template <class Put>
     void put_fit(const StripPiece& part, const CarrierWindow& window, const QuarticFit& fit, Put& put) {
         constexpr double worth_counting = 1e-17;
+        double largest = 0;
         for (const QuarticFit::Piece& piece : fit.pieces) {
+            largest = std::max(largest, size_of(piece.c));
+        }
+        for (const QuarticFit::Piece& piece : fit.pieces) {
+            if (!(size_of(piece.c) > worth_counting * largest)) {
+                continue;
+            }
             const double from = (1 - piece.from) * part.from + piece.from * part.to;
             const double to = (1 - piece.to) * part.from + piece.to * part.to;
-            double largest = 0;
-            for (const Quartic& c : piece.c) {
-                largest = std::max(largest, size_of(c));
+            const std::size_t carrier = window.first + piece.function;
+            const double at_from = strip_.station(carrier, from);
+            const double at_to = strip_.station(carrier, to);
+            const double stretch = std::abs(at_to - at_from);
+            if (!(stretch > 0)) {
+                continue; // a piece as thin as rounding
             }
-            for (std::size_t i = 0; i < window.size(); ++i) {
-                if (!(size_of(piece.c[i]) > worth_counting * largest)) {
-                    continue;
-                }
-                const std::size_t carrier = window.first + i;
-                const double at_from = strip_.station(carrier, from);
-                const double at_to = strip_.station(carrier, to);
-                const double stretch = std::abs(at_to - at_from);
-                if (!(stretch > 0)) {
-                    continue; // a piece as thin as rounding
-                }
-                const double rate = (to - from) / stretch;
-                Quartic c = piece.c[i];
-                for (double& k : c) {
-                    k *= rate;
-                }
-                curve_error_ = std::max(curve_error_, fit.error * rate);
-                put(carrier, line_between(at_from, at_to, c));
+            const double rate = (to - from) / stretch;
+            Quartic c = piece.c;
+            for (double& k : c) {
+                k *= rate;
             }
+            put(carrier, line_between(at_from, at_to, c), piece.error * rate);
         }
     }
 
@@ -169,7 +165,6 @@ private:
     double noise_;
     StripBeam beam_;
     std::vector<double> places_;
-    double curve_error_ = 0;
 };
 
 std::array<Point, 4> corners_of(const StripPiece& piece) {
@@ -250,28 +245,25 @@ public:
 
     void put_uniform(const DeckPressure& pressure) {
         StripLoader loader(levels_, collector_.noise());
-        loader.carry(whole_, {1, 0, 0}, [&](std::size_t i, const LinePiece& unit) {
+        loader.carry(whole_, {1, 0, 0}, [&](std::size_t i, const LinePiece& unit, double error) {
             for (const DeckPressure::Uniform& u : pressure.uniform()) {
                 LinePiece line = unit;
                 for (double& c : line.c) {
                     c *= u.q;
                 }
-                put(i, u.load_case, line);
+                put(i, u.load_case, line, std::abs(u.q) * error);
             }
         });
-        for (const DeckPressure::Uniform& u : pressure.uniform()) {
-            collector_.note_curve_error(std::abs(u.q) * loader.curve_error());
-        }
     }
 
     void put_zones(const DeckPressure& pressure, std::vector<DeckPressure::Piece>& zones) {
         StripLoader loader(levels_, collector_.noise());
         pressure.zones_over(whole_, axes_, zones);
         for (const DeckPressure::Piece& zone : zones) {
-            loader.carry(zone.where, zone.intensity,
-                         [&](std::size_t i, const LinePiece& line) { put(i, zone.load_case, line); });
+            loader.carry(zone.where, zone.intensity, [&](std::size_t i, const LinePiece& line, double error) {
+                put(i, zone.load_case, line, error);
+            });
         }
-        collector_.note_curve_error(loader.curve_error());
     }
 
 private:
@@ -282,9 +274,9 @@ private:
         return off > 4 * collector_.noise() ? off : 0;
     }
 
-    void put(std::size_t i, std::uint32_t load_case, const LinePiece& line) {
+    void put(std::size_t i, std::uint32_t load_case, const LinePiece& line, double error) {
         const Source source{SourceKind::deck, strip_.deck};
-        collector_.put_line(levels_.carrier(i), strip_.deck, {load_case, source, line});
+        collector_.put_line(levels_.carrier(i), strip_.deck, {load_case, source, line}, error);
         if (const double way = way_to_carrier_ + beside_axis_[i]; way > 0) {
             collector_.note_moved(strip_.deck, load_case, way * most_force(line));
         }

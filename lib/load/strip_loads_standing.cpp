@@ -84,8 +84,8 @@ public:
             const QuarticFit fit =
                 degree ? exact_quartics(window.size(), *degree, taken) : fit_quartics(window.size(), taken);
             for (const QuarticFit::Piece& piece : fit.pieces) {
-                put_piece(line, window, (1 - piece.from) * from + piece.from * to,
-                          (1 - piece.to) * from + piece.to * to, piece.c, fit.error);
+                put_piece(line, window.first + piece.function, (1 - piece.from) * from + piece.from * to,
+                          (1 - piece.to) * from + piece.to * to, piece.c, piece.error);
             }
         }
     }
@@ -151,32 +151,27 @@ private:
                              {line.load_case, line.source, strip_.station(carrier, line.at(t).y), force});
     }
 
-    void put_piece(const StandingLine& line, const CarrierWindow& window, double from, double to,
-                   std::span<const Quartic> parts, double error) {
-        for (std::size_t i = 0; i < parts.size(); ++i) {
-            Quartic c = parts[i];
-            if (std::all_of(c.begin(), c.end(), [](double k) { return k == 0; })) {
-                continue;
-            }
-            const std::size_t carrier = window.first + i;
-            const double at_from = strip_.station(carrier, line.at(from).y);
-            const double at_to = strip_.station(carrier, line.at(to).y);
-            const double stretch = std::abs(at_to - at_from);
-            if (!(stretch > 0)) {
-                const double force =
-                    line.length * (to - from) * (c[0] + c[1] / 2 + c[2] / 3 + c[3] / 4 + c[4] / 5);
-                collector_.put_point(strip_.carrier(carrier), none,
-                                     {line.load_case, line.source, at_from, force});
-                continue;
-            }
-            const double rate = line.length * (to - from) / stretch;
-            for (double& k : c) {
-                k *= rate;
-            }
-            collector_.note_curve_error(error * rate);
-            collector_.put_line(strip_.carrier(carrier), none,
-                                {line.load_case, line.source, line_between(at_from, at_to, c)});
+    void put_piece(const StandingLine& line, std::size_t carrier, double from, double to, Quartic c,
+                   double error) {
+        if (std::all_of(c.begin(), c.end(), [](double k) { return k == 0; })) {
+            return;
         }
+        const double at_from = strip_.station(carrier, line.at(from).y);
+        const double at_to = strip_.station(carrier, line.at(to).y);
+        const double stretch = std::abs(at_to - at_from);
+        if (!(stretch > 0)) {
+            const double force =
+                line.length * (to - from) * (c[0] + c[1] / 2 + c[2] / 3 + c[3] / 4 + c[4] / 5);
+            collector_.put_point(strip_.carrier(carrier), none,
+                                 {line.load_case, line.source, at_from, force});
+            return;
+        }
+        const double rate = line.length * (to - from) / stretch;
+        for (double& k : c) {
+            k *= rate;
+        }
+        collector_.put_line(strip_.carrier(carrier), none,
+                            {line.load_case, line.source, line_between(at_from, at_to, c)}, error * rate);
     }
 
     StripAtLevels strip_;

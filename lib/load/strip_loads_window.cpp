@@ -18,28 +18,55 @@ std::size_t StripAtLevels::carriers_below(double place, double level) const {
     return low;
 }
 
+namespace {
+
+/// No more than this part of a moment at one end of a span of length `h` comes to its other end, where a span
+/// `next` is, and one `then` behind that; 0: none.
+double most_carried_over(double h, double next, double then) {
+    if (!(h > 0) || !(next > 0)) {
+        return 0.5;
+    }
+    const double in_next = then > 0 ? next / (2 * next + 1.5 * then) : 0.5;
+    return h / (2 * h + (2 - in_next) * next);
+}
+
+} // namespace
+
 CarrierWindow window_around(const StripAtLevels& strip, double from, double to, double level) {
-    constexpr double worth_counting = 1e-18;
+    constexpr double worth_counting = 1e-13;
     const std::size_t n = strip.size();
     const std::size_t below = strip.carriers_below(from, level);
     std::size_t first = below == 0 ? 0 : below - 1;
-    std::size_t end = std::min(strip.carriers_below(to, level), n - 1);
-    const auto span = [&](std::size_t i) { return strip.along(i + 1, level) - strip.along(i, level); };
-    // A moment at one end of a span comes to its other end by no more than h / (2 h + 1.5 h'), h' being the
-    // span behind it, since that in turn passes on no more than a half.
-    double left = 1;
-    while (first > 0 && left > worth_counting) {
-        --first;
-        const double h = span(first);
-        left *= first == 0 || !(h > 0) ? 0.5 : h / (2 * h + 1.5 * span(first - 1));
+    std::size_t last = std::min(strip.carriers_below(to, level), n - 1);
+    // span(i) goes from carrier i to the next; there is none past the ends
+    const auto span = [&](std::size_t i) {
+        return i + 1 < n ? strip.along(i + 1, level) - strip.along(i, level) : 0;
+    };
+    // A load bends a strip over a carrier by no more than 0.2 of it times its span (Pab (l + b) / 2 l^2 with
+    // the far end free), or by all of it times its overhang.
+    constexpr double in_span = 0.2;
+    double bent = std::max(strip.along(first, level) - from, to - strip.along(last, level));
+    for (std::size_t i = first; i < last; ++i) {
+        bent = std::max(bent, in_span * span(i));
     }
-    left = 1;
-    while (end + 1 < n && left > worth_counting) {
-        const double h = span(end);
-        ++end;
-        left *= end + 1 == n || !(h > 0) ? 0.5 : h / (2 * h + 1.5 * span(end));
+    // What the carriers beyond take of a moment is about that moment over their spans.
+    double moment = bent;
+    while (first > 0) {
+        const double h = span(--first);
+        if (!(moment > worth_counting * h)) {
+            break;
+        }
+        moment *= most_carried_over(h, first > 0 ? span(first - 1) : 0, first > 1 ? span(first - 2) : 0);
     }
-    return {first, end + 1};
+    moment = bent;
+    while (last + 1 < n) {
+        const double h = span(last++);
+        if (!(moment > worth_counting * h)) {
+            break;
+        }
+        moment *= most_carried_over(h, span(last), span(last + 1));
+    }
+    return {first, last + 1};
 }
 
 void set_beam(StripBeam& beam, const StripAtLevels& strip, const CarrierWindow& window, double level,

@@ -54,8 +54,9 @@ struct CarrierWindow {
 };
 
 /// The carriers that take a part worth counting of loads between two places of a level. From span to span
-/// what a load bends dies down, to 0.268 of it where spans are equal; past 1e-18 of it, carriers are left
-/// out, and those that stay are a beam of their own.
+/// what a load bends dies down, to 0.268 of it where spans are equal; where a carrier takes no more than
+/// 1e-13 of the load, those beyond are left out. The carriers that stay are a beam of their own, so that
+/// force and moment are kept.
 [[nodiscard]] CarrierWindow window_around(const StripAtLevels& strip, double from, double to, double level);
 
 /// Sets a beam on the window's carriers at a level.
