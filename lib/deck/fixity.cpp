@@ -142,7 +142,8 @@ public:
 
     [[nodiscard]] const SetAside& set_aside() const { return set_aside_; }
 
-    void share(const Plan& plan, const Framing& framing, std::uint32_t level, Sharing& sharing) const {
+    void share(const Plan& plan, const Framing& framing, std::uint32_t level, LostLoads& lost,
+               Sharing& sharing) const {
         CarrierAxes axes(deck_.carriers, sharing);
         for (std::size_t p = 0; p < panels_.panels.size(); ++p) {
             if (!shapes_[p].sides.empty()) {
@@ -151,7 +152,7 @@ public:
         }
         for (const FramedDeck& part : parts_) {
             share_part_nearest(plan, framing, level, deck_.index, part, area_of(part),
-                               carriers_near(part.outline), sharing);
+                               carriers_near(part.outline), lost, sharing);
         }
     }
 
@@ -320,7 +321,8 @@ double DecksBeside::length_along(std::uint32_t deck, Point a, Point b) const {
 }
 
 bool share_by_fixity(const Plan& plan, const Framing& framing, std::uint32_t level_index, std::uint32_t index,
-                     std::span<const LineCarrier> carriers, const DecksBeside& beside, Sharing& sharing) {
+                     std::span<const LineCarrier> carriers, const DecksBeside& beside, LostLoads& lost,
+                     Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
     const FramedDeck& deck = level.decks[index];
     FixityPanels panels(deck, index, carriers, beside,
@@ -328,7 +330,7 @@ bool share_by_fixity(const Plan& plan, const Framing& framing, std::uint32_t lev
     if (!panels.shape()) {
         return false;
     }
-    panels.share(plan, framing, level_index, sharing);
+    panels.share(plan, framing, level_index, lost, sharing);
     if (const SetAside& aside = panels.set_aside(); aside.area > 0) {
         Problem problem = problem_at(
             ProblemCode::fixity_set_aside, deck.origin, "decks",

@@ -42,7 +42,7 @@ private:
 /// cover, owner, order, motion.
 [[nodiscard]] bool share_by_fixity(const Plan& plan, const Framing& framing, std::uint32_t level,
                                    std::uint32_t deck, std::span<const LineCarrier> carriers,
-                                   const DecksBeside& beside, Sharing& sharing);
+                                   const DecksBeside& beside, LostLoads& lost, Sharing& sharing);
 
 /// How far the line that divides a corner between a continuous and a simply supported side is from the
 /// former, as a ratio: tan 60 degrees.

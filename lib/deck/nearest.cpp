@@ -1,6 +1,7 @@
 #include "deck/nearest.hpp"
 
-#include "deck/pressure.hpp"
+#include "deck/acting.hpp"
+#include "deck/lost_loads.hpp"
 #include "geometry/basic.hpp"
 
 #include <algorithm>
@@ -178,14 +179,15 @@ void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise
 } // namespace
 
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
-                   std::uint32_t deck_index, std::span<const LineCarrier> near, Sharing& sharing) {
+                   std::uint32_t deck_index, std::span<const LineCarrier> near, LostLoads& lost,
+                   Sharing& sharing) {
     share_part_nearest(plan, framing, level_index, deck_index, framing.levels[level_index].decks[deck_index],
-                       sharing.deck_area[deck_index], near, sharing);
+                       sharing.deck_area[deck_index], near, lost, sharing);
 }
 
 void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
                         std::uint32_t deck_index, const FramedDeck& deck, double whole,
-                        std::span<const LineCarrier> near, Sharing& sharing) {
+                        std::span<const LineCarrier> near, LostLoads& lost, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
     const double snap = plan.settings.snap;
     const double noise = noise_of(framing.largest_coordinate);
@@ -201,7 +203,7 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
     }
     if (selected.carriers.lines.empty() && selected.carriers.points.empty()) {
         leave_unsupported(deck, deck_index, noise, sharing);
-        report_no_carrier(plan, framing, level_index, deck_index, sharing);
+        report_no_carrier(plan, framing, {level_index, deck_index, deck, whole}, lost, sharing);
         return;
     }
     // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.

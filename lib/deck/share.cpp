@@ -1,6 +1,7 @@
 #include "deck/carrier_finder.hpp"
 #include "deck/doubtful.hpp"
 #include "deck/fixity.hpp"
+#include "deck/lost_loads.hpp"
 #include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
 #include "geometry/basic.hpp"
@@ -53,6 +54,7 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
     sharing.transfers.reserve(2 * likely, 2 * likely);
     CarrierFinder finder(carriers, level.decks.size());
     std::optional<DecksBeside> decks_beside;
+    LostLoads lost(plan, framing, level_index);
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
         sharing.deck_area.push_back(area_of(deck));
@@ -61,17 +63,17 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
             if (!decks_beside) {
                 decks_beside.emplace(level, plan.settings.snap);
             }
-            if (share_by_fixity(plan, framing, level_index, d, beside, *decks_beside, sharing)) {
+            if (share_by_fixity(plan, framing, level_index, d, beside, *decks_beside, lost, sharing)) {
                 continue;
             }
         }
         if (deck.span != SpanKind::one_way) {
-            share_nearest(plan, framing, level_index, d, beside, sharing);
+            share_nearest(plan, framing, level_index, d, beside, lost, sharing);
             continue;
         }
         const std::size_t first_bay = sharing.bays.size();
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
-        find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
+        find_weak_strips(plan, framing, level_index, d, first_bay, lost, sharing);
     }
     find_doubtful_members(plan, level, sharing);
     return sharing;

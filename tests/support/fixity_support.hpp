@@ -3,6 +3,7 @@
 #include "support/deck_support.hpp"
 
 #include "deck/fixity.hpp"
+#include "deck/lost_loads.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/strip_piece.hpp"
 
@@ -35,7 +36,9 @@ inline FixityShared share_by_fixity(const HandFramed& f) {
     FixityShared shared;
     shared.sharing.members = static_cast<std::uint32_t>(f.framing.levels[0].members.size());
     const runnel::DecksBeside beside(f.framing.levels[0], f.plan.settings.snap);
-    shared.fits = runnel::share_by_fixity(f.plan, f.framing, 0, 0, carriers_of(f), beside, shared.sharing);
+    runnel::LostLoads lost(f.plan, f.framing, 0);
+    shared.fits =
+        runnel::share_by_fixity(f.plan, f.framing, 0, 0, carriers_of(f), beside, lost, shared.sharing);
     return shared;
 }
 
