@@ -56,6 +56,7 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(higher_on_lower, "higher-on-lower", warning, "A higher role ends on a lower one.")                     \
     X(bears_on_too_far, "bears-on-too-far", error, "`bears_on` names a carrier that is not there.")          \
     X(stands_on_nothing, "stands-on-nothing", error, "A column or a stretch of wall with nothing under it.") \
+    X(columns_coincide, "columns-coincide", error, "Two columns at one point between the same levels.")      \
     X(load_path_loop, "load-path-loop", error, "Members that bear on each other in a loop.")                 \
     X(too_few_bearings, "too-few-bearings", error, "A member with too few bearings to stand.")               \
     X(mechanism, "mechanism", error, "A member that its hinges leave free to move.")                         \

@@ -2,6 +2,7 @@
 
 #include "deck/acting.hpp"
 #include "deck/lost_loads.hpp"
+#include "framing/draft.hpp"
 #include "geometry/basic.hpp"
 
 #include <algorithm>
@@ -90,9 +91,53 @@ bool add_line(const LineCarrier& carrier, const Box& window, NearestCarriers& ca
 struct Selection {
     NearestCarriers carriers;
     std::vector<std::uint32_t> idle; ///< members that lie in a deck on columns
-    Box deck_box;                    ///< local
-    double reach = 0;                ///< no point of the deck is farther from a carrier
+    std::vector<NearMissed> missed;
+    Box deck_box;     ///< local
+    double reach = 0; ///< no point of the deck is farther from a carrier
 };
+
+/// A gap is told to this part of `snap`.
+constexpr double told_to = 1e-6;
+
+/// How far a point lies beside the deck's edge, between two bounds.
+double gap_at(Point at, double from, double to, RingArea& area) {
+    const double enough = told_to * from;
+    while (to - from > enough) {
+        const double middle = (from + to) / 2;
+        (area.is_beside_edge(at, middle) ? to : from) = middle;
+    }
+    return to;
+}
+
+/// A carrier that is none of the deck's, but runs along its edge within a near miss.
+void look_beside(const LineCarrier& carrier, Selection& selected, double snap, RingArea& area) {
+    const Point from = carrier.from - selected.carriers.origin;
+    const Point to = carrier.to - selected.carriers.origin;
+    const double reach = snaps_of_a_near_miss * snap;
+    if (area.shared_with(from, to, reach).along_edge <= 2 * reach) {
+        return;
+    }
+    // Half-way along what is beside the edge lies near the middle of one of them.
+    double least = snap;
+    double most = reach;
+    while (most - least > told_to * snap) {
+        const double middle = (least + most) / 2;
+        (area.shared_with(from, to, middle).along_edge > 2 * reach ? most : least) = middle;
+    }
+    selected.missed.push_back({carrier.number, most, between(carrier.from, carrier.to, 0.5)});
+}
+
+/// What runs beside an edge that has a carrier of its own was not meant to carry it.
+bool has_own_carrier(const NearMissed& miss, const LineCarrier& missed, const NearestCarriers& carriers,
+                     double reach) {
+    constexpr double alike = 0.1; // sine of the angle
+    const Point d = missed.to - missed.from;
+    return std::any_of(carriers.carriers.begin(), carriers.carriers.end(), [&](const LineCarrier& own) {
+        const Point e = own.to - own.from;
+        return std::abs(cross(d, e)) <= alike * norm(d) * norm(e) &&
+               distance_to_segment(miss.place, own.from, own.to) <= 2 * reach;
+    });
+}
 
 Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& deck,
                  std::span<const LineCarrier> near, const Sharing& sharing, RingArea& area) {
@@ -110,6 +155,9 @@ Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& d
         const RingArea::Shared shared = area.shared_with(carrier.from - selected.carriers.origin,
                                                          carrier.to - selected.carriers.origin, snap);
         if (shared.inside <= snap && shared.along_edge <= snap) {
+            if (deck.span == SpanKind::two_way || carrier.number >= sharing.members) {
+                look_beside(carrier, selected, snap, area);
+            }
             continue;
         }
         if (deck.span == SpanKind::columns && carrier.number < sharing.members) {
@@ -118,13 +166,24 @@ Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& d
             add_line(carrier, window, selected.carriers);
         }
     }
+    std::erase_if(selected.missed, [&](const NearMissed& miss) {
+        const auto own = std::find_if(near.begin(), near.end(),
+                                      [&](const LineCarrier& c) { return c.number == miss.carrier; });
+        return has_own_carrier(miss, *own, selected.carriers, snaps_of_a_near_miss * snap);
+    });
     if (deck.span == SpanKind::columns) {
         for (const std::uint32_t c : level.columns) {
             const Point at = plan.columns[c].at - selected.carriers.origin;
-            if (box_of(at, at).meets(selected.deck_box.grown(snap)) &&
-                (area.contains(at) || area.is_beside_edge(at, snap))) {
+            const double reach = snaps_of_a_near_miss * snap;
+            if (!box_of(at, at).meets(selected.deck_box.grown(reach))) {
+                continue;
+            }
+            const std::uint32_t number = sharing.number_of({CarrierKind::column, c});
+            if (area.contains(at) || area.is_beside_edge(at, snap)) {
                 selected.carriers.points.push_back(at);
-                selected.carriers.point_number.push_back(sharing.number_of({CarrierKind::column, c}));
+                selected.carriers.point_number.push_back(number);
+            } else if (area.is_beside_edge(at, reach)) {
+                selected.missed.push_back({number, gap_at(at, snap, reach, area), plan.columns[c].at});
             }
         }
     }
@@ -198,6 +257,9 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
     }
     RingArea area(local_rings(deck, deck.outline.front()), noise, 4 * near.size());
     const Selection selected = select(plan, level, deck, near, sharing, area);
+    if (!selected.missed.empty()) {
+        report_near_misses(plan, level, deck_index, selected.missed, sharing);
+    }
     if (!selected.idle.empty()) {
         report_idle_members(level, deck_index, selected.idle, sharing);
     }
@@ -213,11 +275,12 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
     for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
         NearestCells cells = split(selected, how, radians, area);
         const double open = std::abs(cells.area() - whole);
-        if (open < least) {
+        const bool done = cells.sound && open <= closed_within * whole;
+        if (done || open < least) {
             least = open;
             best = std::move(cells);
         }
-        if (least <= closed_within * whole) {
+        if (done) {
             break;
         }
     }

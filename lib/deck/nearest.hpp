@@ -54,6 +54,7 @@ struct NearestCells {
     std::vector<Cell> cells;         ///< their `axes` count in the list above
     std::vector<Transfer> transfers; ///< one a cell
     DoubtfulArea way_leaves;
+    bool sound = true; ///< false: rounding to the grid upset what lies beside what
 
     [[nodiscard]] double area() const;
 };
@@ -99,6 +100,15 @@ struct UnsupportedPart {
 /// Problems of a split by the nearest carrier.
 void report_no_carrier(const Plan& plan, const Framing& framing, const UnsupportedPart& part, LostLoads& lost,
                        Sharing& sharing);
+/// Carriers that run along the deck's edge, or columns that stand by it, a little farther off than `snap`:
+/// they carry nothing of it, which the drawing hides.
+struct NearMissed {
+    std::uint32_t carrier = none; ///< as in Sharing
+    double gap = 0;               ///< m
+    Point place;                  ///< in the plan
+};
+void report_near_misses(const Plan& plan, const FramedLevel& level, std::uint32_t deck,
+                        std::span<const NearMissed> missed, Sharing& sharing);
 void report_way_leaves(const Plan& plan, const FramedLevel& level, std::uint32_t deck,
                        const DoubtfulArea& doubtful, Sharing& sharing);
 void report_idle_members(const FramedLevel& level, std::uint32_t deck, std::span<const std::uint32_t> members,

@@ -287,13 +287,20 @@ void snap_decks(LevelDraft& draft) {
 }
 
 void note_moves(LevelDraft& draft) {
-    if (draft.points_moved == 0) {
+    if (draft.points_moved + draft.edges_bent == 0) {
         return;
+    }
+    std::string what = draft.points_moved > 0
+                           ? counted(draft.points_moved, "point was", "points were") + " moved"
+                           : std::string();
+    if (draft.edges_bent > 0) {
+        what += (what.empty() ? "" : " and ") +
+                counted(draft.edges_bent, "place of a deck's edge was", "places of decks' edges were") +
+                " drawn to a point beside it";
     }
     draft.problems.add(ProblemCode::points_merged, [&] {
         return level_problem(draft, ProblemCode::points_merged,
-                             "On level " + draft.level.id + ' ' +
-                                 counted(draft.points_moved, "point was", "points were") + " moved, by " +
+                             "On level " + draft.level.id + ' ' + what + ", by " +
                                  length_text(draft.largest_move, draft.plan.units) + " at most (snap is " +
                                  length_text(draft.tolerance.snap, draft.plan.units) + ").",
                              {}, {draft.level.id});

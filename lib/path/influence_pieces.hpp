@@ -21,8 +21,9 @@ struct Beside {
 /// The floor of a level in pieces that do not overlap, and which of them lie beside each carrier: the one
 /// thing that influence areas ask of decks. A load anywhere on a piece is felt by the carriers beside it.
 ///
-/// One-way decks: the bays, from carrier to carrier, or from the last carrier to the edge. Two-way decks: the
-/// panels between carriers, whole. Decks on columns: see influence_columns.hpp.
+/// One-way decks: the bays, from carrier to carrier, or from the last carrier to the edge; a deck ends at its
+/// outline, also where another goes on. Two-way decks: see influence_panels.hpp; decks on columns: see
+/// influence_columns.hpp.
 struct FloorPieces {
     std::vector<StripPiece> shapes; ///< of the first pieces; those after them count whole
     std::vector<double> areas;      ///< by piece, m2
