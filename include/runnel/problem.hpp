@@ -71,7 +71,7 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(continuous_as_drawn, "continuous-as-drawn", note, "Members that run on over bearings.")                \
     X(stiffness_assumed, "stiffness-assumed", note, "A continuous member taken as of constant stiffness.")   \
     /* decks and loads */                                                                                    \
-    X(strip_unsupported, "strip-unsupported", error, "Strips of a deck that no carrier crosses.")            \
+    X(strip_unsupported, "strip-unsupported", error, "A deck, or strips or a part of one, without carrier.") \
     X(strip_cantilevers, "strip-cantilevers", warning, "Strips on one carrier, or with a long overhang.")    \
     X(strip_unstable, "strip-unstable", error, "Strips that no statics holds up.")                           \
     X(strip_by_lever, "strip-by-lever", warning, "Continuous strips cut where a span dies out in a wedge.")  \

@@ -1,5 +1,6 @@
 #include "deck/acting.hpp"
 
+#include "deck/level_zones.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/box_tree.hpp"
 #include "geometry/strip_sweep.hpp"
@@ -146,7 +147,8 @@ std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& 
     return pieces;
 }
 
-std::vector<std::uint32_t> really_acting(const FramedLevel& level, std::span<const std::uint32_t> acting,
+std::vector<std::uint32_t> really_acting(const FramedLevel& level, LevelZones& zones,
+                                         std::span<const std::uint32_t> acting, const Box& reach,
                                          const std::vector<StripPiece>& pieces, const StripAxes& axes,
                                          double noise) {
     std::vector<Box> boxes;
@@ -156,8 +158,11 @@ std::vector<std::uint32_t> really_acting(const FramedLevel& level, std::span<con
     const BoxFinder finder(std::move(boxes));
     std::vector<std::uint32_t> near;
     std::vector<StripPiece> inside;
-    const auto lies_on_deck = [&](const AreaLoad& load) {
-        for (const Convex& zone : convex_zone(load, axes, noise)) {
+    std::vector<Convex> around;
+    const auto lies_on_deck = [&](std::uint32_t index) {
+        around.clear();
+        zones.find(index, reach, axes, around);
+        for (const Convex& zone : around) {
             finder.find(box_of(zone), near);
             for (const std::uint32_t i : near) {
                 inside.clear();
@@ -173,7 +178,7 @@ std::vector<std::uint32_t> really_acting(const FramedLevel& level, std::span<con
     };
     std::vector<std::uint32_t> really;
     for (const std::uint32_t index : acting) {
-        if (level.area_loads[index].outline.empty() || lies_on_deck(level.area_loads[index])) {
+        if (level.area_loads[index].outline.empty() || lies_on_deck(index)) {
             really.push_back(index);
         }
     }

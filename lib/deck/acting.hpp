@@ -1,5 +1,6 @@
 #pragma once
 
+#include "geometry/box_tree.hpp"
 #include "geometry/convex.hpp"
 #include "geometry/strip_piece.hpp"
 
@@ -12,6 +13,8 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
+class LevelZones;
+
 /// Index of a case by its id; `none` if there is none.
 [[nodiscard]] std::uint32_t case_index(const Plan& plan, std::string_view id);
 /// The case that own weights go to; `none` if the plan has no dead case.
@@ -21,11 +24,11 @@ RUNNEL_NAMESPACE_BEGIN
 [[nodiscard]] Grouped<std::uint32_t> area_loads_by_deck(const FramedLevel& level, double noise);
 
 /// Those of the loads acting on a deck that lie on it by more than rounding: a zone that is drawn along its
-/// edge, on the outside, does not act. `pieces`: the deck's area in `axes`.
-[[nodiscard]] std::vector<std::uint32_t> really_acting(const FramedLevel& level,
-                                                       std::span<const std::uint32_t> acting,
-                                                       const std::vector<StripPiece>& pieces,
-                                                       const StripAxes& axes, double noise);
+/// edge, on the outside, does not act. `reach`: a box around the deck in the plan; `pieces`: the deck's area
+/// in `axes`.
+[[nodiscard]] std::vector<std::uint32_t>
+really_acting(const FramedLevel& level, LevelZones& zones, std::span<const std::uint32_t> acting,
+              const Box& reach, const std::vector<StripPiece>& pieces, const StripAxes& axes, double noise);
 
 /// The area loads with outlines that reach over each deck, whether they are meant for it or not.
 [[nodiscard]] Grouped<std::uint32_t> outlines_over_decks(const FramedLevel& level, double noise);

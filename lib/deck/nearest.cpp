@@ -1,6 +1,7 @@
 #include "deck/nearest.hpp"
 
-#include "deck/pressure.hpp"
+#include "deck/acting.hpp"
+#include "deck/lost_loads.hpp"
 #include "geometry/basic.hpp"
 
 #include <algorithm>
@@ -239,7 +240,8 @@ void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise
 } // namespace
 
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
-                   std::uint32_t deck_index, std::span<const LineCarrier> near, Sharing& sharing) {
+                   std::uint32_t deck_index, std::span<const LineCarrier> near, LostLoads& lost,
+                   Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
     const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
@@ -257,7 +259,8 @@ void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level
     }
     if (selected.carriers.lines.empty() && selected.carriers.points.empty()) {
         leave_unsupported(deck, deck_index, noise, sharing);
-        report_no_carrier(plan, framing, level_index, deck_index, sharing);
+        report_no_carrier(plan, framing, {level_index, deck_index, deck, sharing.deck_area[deck_index]}, lost,
+                          sharing);
         return;
     }
     const NearestSplit how{deck_index, sharing.deck_area[deck_index],  snap,

@@ -17,7 +17,7 @@ RUNNEL_NAMESPACE_BEGIN
 /// Shares one two-way deck or deck on columns: appends its axes, cells, transfers and problems to `sharing`.
 /// `near`: members and walls whose boxes meet the deck's, rising by number.
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
-                   std::span<const LineCarrier> near, Sharing& sharing);
+                   std::span<const LineCarrier> near, LostLoads& lost, Sharing& sharing);
 
 /// What a deck's points are shared among. Local coordinates: the deck's first corner is the origin, so that
 /// a plan far out loses nothing.
@@ -100,8 +100,15 @@ struct NearestSplit {
                                     std::span<const LineCarrier> near, Tolerance tolerance,
                                     NearestCells& cells);
 
+/// A deck, or a part of one, that has no carrier.
+struct UnsupportedPart {
+    std::uint32_t level = 0, deck = 0;
+    const FramedDeck& outline; ///< the framed deck itself, or a copy with the part's outline and openings
+    double area = 0;           ///< m2
+};
+
 /// Problems of a split by the nearest carrier.
-void report_no_carrier(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
+void report_no_carrier(const Plan& plan, const Framing& framing, const UnsupportedPart& part, LostLoads& lost,
                        Sharing& sharing);
 /// Carriers that run along the deck's edge, or columns that stand by it, a little farther off than `snap`:
 /// they carry nothing of it, which the drawing hides. `carriers`: those that carry it.

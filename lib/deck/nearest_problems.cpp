@@ -1,6 +1,7 @@
 #include "deck/nearest.hpp"
 
-#include "deck/pressure.hpp"
+#include "deck/acting.hpp"
+#include "deck/lost_loads.hpp"
 #include "geometry/basic.hpp"
 #include "plan/problems.hpp"
 
@@ -30,46 +31,27 @@ std::string start_of(const FramedLevel& level, const FramedDeck& deck) {
     return "Level " + level.id + ", deck " + deck.id + ": ";
 }
 
-/// What acts on a whole deck, by case, as text.
-std::string loads_text(const Plan& plan, const FramedLevel& level, std::uint32_t deck, double noise) {
-    StripAxes axes;
-    axes.origin = level.decks[deck].outline.front();
-    const DeckPressure pressure(plan, level, deck, area_loads_by_deck(level, noise)[deck], axes, noise);
-    std::vector<double> lost(plan.cases.size(), 0.0);
-    std::vector<DeckPressure::Piece> pieces;
-    for (const StripPiece& where : pieces_of_deck(level.decks[deck], axes, noise)) {
-        for (const DeckPressure::Uniform& u : pressure.uniform()) {
-            lost[u.load_case] += u.q * area_of(where);
-        }
-        pressure.zones_over(where, axes, pieces);
-        for (const DeckPressure::Piece& piece : pieces) {
-            lost[piece.load_case] += moments_of(piece.where, piece.intensity).area;
-        }
-    }
-    std::string text;
-    for (std::size_t c = 0; c < lost.size(); ++c) {
-        if (lost[c] != 0) {
-            text += (text.empty() ? "" : ", ") + plan.cases[c].id + ' ' + force_text(lost[c], plan.units);
-        }
-    }
-    return text.empty() ? "no load" : text;
-}
-
 } // namespace
 
-void report_no_carrier(const Plan& plan, const Framing& framing, std::uint32_t level_index,
-                       std::uint32_t deck_index, Sharing& sharing) {
-    const FramedLevel& level = framing.levels[level_index];
-    const FramedDeck& deck = level.decks[deck_index];
+void report_no_carrier(const Plan& plan, const Framing& framing, const UnsupportedPart& part, LostLoads& lost,
+                       Sharing& sharing) {
+    const FramedLevel& level = framing.levels[part.level];
+    const FramedDeck& deck = part.outline;
+    const bool whole = &deck == &level.decks[part.deck];
     const bool on_columns = deck.span == SpanKind::columns;
+    StripAxes axes;
+    axes.origin = deck.outline.front();
+    const std::string text =
+        lost.text(part.deck, axes, pieces_of_deck(deck, axes, noise_of(framing.largest_coordinate)));
+    const std::string place = whole ? "the deck" : "that part";
     Problem problem =
         problem_at(ProblemCode::strip_unsupported, deck.origin, "decks",
-                   start_of(level, deck) + area_text(sharing.deck_area[deck_index], plan.units) +
+                   start_of(level, deck) + area_text(part.area, plan.units) + (whole ? "" : " of it") +
                        " have no carrier, since no " +
-                       (on_columns ? "column or wall stands in the deck"
-                                   : "member or wall runs in the deck or along it") +
-                       " (" + loads_text(plan, level, deck_index, noise_of(framing.largest_coordinate)) +
-                       " would be lost), from " + point_text(deck.outline.front(), plan.units) + " on.",
+                       (on_columns ? "column or wall stands in " + place
+                                   : "member or wall runs in " + place + " or along it") +
+                       " (" + text + " would be lost), first corner at " +
+                       point_text(deck.outline.front(), plan.units) + '.',
                    on_columns ? "Columns have to reach up to the level to carry it; a deck on beams is "
                                 "\"two-way\" or \"one-way\"."
                               : "Draw the members along its edges, or let it span to columns.",

@@ -6,6 +6,8 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
+class LostLoads;
+
 /// A member or wall that may carry a deck, with its number in Sharing.
 struct LineCarrier {
     std::uint32_t number = none;
@@ -20,6 +22,6 @@ void share_one_way(const FramedDeck& deck, std::uint32_t index, std::span<const 
 /// Problems of the bays of one deck, which are those from `first_bay` on: strips that no carrier crosses,
 /// strips on one carrier, overhangs longer than half their back span.
 void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
-                      std::size_t first_bay, Sharing& sharing);
+                      std::size_t first_bay, LostLoads& lost, Sharing& sharing);
 
 RUNNEL_NAMESPACE_END

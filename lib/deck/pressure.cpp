@@ -72,10 +72,11 @@ private:
 } // namespace
 
 DeckPressure::DeckPressure(const Plan& plan, const FramedLevel& level, std::uint32_t deck_index,
-                           std::span<const std::uint32_t> acting, const StripAxes& axes, double noise)
+                           std::span<const std::uint32_t> acting, LevelZones& zones, const StripAxes& axes,
+                           double noise)
     : home_(axes), noise_(noise) {
     add_uniform(uniform_, own_weight_case(plan), level.decks[deck_index].own_weight);
-    add_zones(plan, level, acting);
+    add_zones(plan, level, reach_of(level.decks[deck_index], plan.settings.snap), acting, zones);
 
     // What covers the whole deck evenly and nothing replaces needs no cutting; what has no load matters only
     // as a replacer.
@@ -112,8 +113,8 @@ DeckPressure::DeckPressure(const Plan& plan, const FramedLevel& level, std::uint
     finder_ = BoxFinder(std::move(boxes));
 }
 
-void DeckPressure::add_zones(const Plan& plan, const FramedLevel& level,
-                             std::span<const std::uint32_t> acting) {
+void DeckPressure::add_zones(const Plan& plan, const FramedLevel& level, const Box& reach,
+                             std::span<const std::uint32_t> acting, LevelZones& zones) {
     // A load that replaces everywhere leaves nothing of the earlier ones of its case.
     std::vector<std::uint32_t> first_left(plan.cases.size(), 0);
     for (const std::uint32_t index : acting) {
@@ -132,9 +133,7 @@ void DeckPressure::add_zones(const Plan& plan, const FramedLevel& level,
         Zone zone{load_case, Plane(load), load.outline.empty(), load.replaces && !load.outline.empty(), 0, 0};
         if (!zone.everywhere) {
             zone.first = static_cast<std::uint32_t>(outlines_.size());
-            for (Convex& piece : convex_zone(load, home_, noise_)) {
-                outlines_.push_back(std::move(piece));
-            }
+            zones.find(index, reach, home_, outlines_);
             zone.last = static_cast<std::uint32_t>(outlines_.size());
         }
         zones_.push_back(zone);

@@ -1,6 +1,7 @@
 #pragma once
 
 #include "deck/acting.hpp"
+#include "deck/level_zones.hpp"
 #include "geometry/box_tree.hpp"
 #include "geometry/convex.hpp"
 #include "geometry/strip_piece.hpp"
@@ -34,10 +35,11 @@ struct Plane {
 /// whatever axes the pieces are; `replaces` leaves out exactly what it stands on.
 class DeckPressure {
 public:
-    /// `acting`: the level's area loads that may act on this deck, rising. `axes`: those in which most pieces
-    /// will be asked for, since zones need no turning there.
+    /// `acting`: the level's area loads that may act on this deck, rising; `zones`: the level's. `axes`:
+    /// those in which most pieces will be asked for, since zones need no turning there.
     DeckPressure(const Plan& plan, const FramedLevel& level, std::uint32_t deck,
-                 std::span<const std::uint32_t> acting, const StripAxes& axes, double noise);
+                 std::span<const std::uint32_t> acting, LevelZones& zones, const StripAxes& axes,
+                 double noise);
 
     struct Uniform {
         std::uint32_t load_case = 0;
@@ -81,7 +83,8 @@ private:
         int in_vain = 0;
     };
 
-    void add_zones(const Plan& plan, const FramedLevel& level, std::span<const std::uint32_t> acting);
+    void add_zones(const Plan& plan, const FramedLevel& level, const Box& reach,
+                   std::span<const std::uint32_t> acting, LevelZones& zones);
     [[nodiscard]] Surroundings zones_near(const StripPiece& area, const StripAxes& axes) const;
     void add_zones_over(const StripPiece& area, const StripAxes& axes, const Halving& halving,
                         std::vector<Piece>& pieces) const;
@@ -91,7 +94,7 @@ private:
     std::vector<Uniform> uniform_;
     std::vector<Zone> zones_;               ///< in the plan's order
     std::vector<std::uint32_t> everywhere_; ///< zones with load
-    std::vector<Convex> outlines_;          ///< convex pieces of the zones, in home_, by rising zone
+    std::vector<Convex> outlines_; ///< convex pieces of the zones near the deck, in home_, by rising zone
     std::vector<std::uint32_t> zone_of_;
     BoxFinder finder_; ///< of outlines_
 };

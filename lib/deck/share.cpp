@@ -2,6 +2,7 @@
 #include "deck/deck_area.hpp"
 #include "deck/doubtful.hpp"
 #include "deck/fixity.hpp"
+#include "deck/lost_loads.hpp"
 #include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
 #include "framing/draft.hpp"
@@ -47,6 +48,7 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
     sharing.transfers.reserve(2 * likely, 2 * likely);
     CarrierFinder finder(carriers, level.decks.size());
     std::optional<DecksBeside> decks_beside;
+    LostLoads lost(plan, framing, level_index);
     const double noise = noise_of(framing.largest_coordinate);
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
@@ -64,12 +66,12 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
             }
         }
         if (deck.span != SpanKind::one_way) {
-            share_nearest(plan, framing, level_index, d, beside, sharing);
+            share_nearest(plan, framing, level_index, d, beside, lost, sharing);
             continue;
         }
         const std::size_t first_bay = sharing.bays.size();
         share_one_way(deck, d, beside, framing, plan.settings.snap, sharing);
-        find_weak_strips(plan, framing, level_index, d, first_bay, sharing);
+        find_weak_strips(plan, framing, level_index, d, first_bay, lost, sharing);
     }
     find_doubtful_members(plan, level, sharing);
     return sharing;

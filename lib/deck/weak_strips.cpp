@@ -1,5 +1,5 @@
+#include "deck/lost_loads.hpp"
 #include "deck/one_way.hpp"
-#include "deck/pressure.hpp"
 #include "deck/strip_beam.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/strip_piece.hpp"
@@ -168,33 +168,15 @@ void check_overhang(const Sharing& sharing, BaysBeside& beside, const Bay& overh
     }
 }
 
-std::string loads_text(const Plan& plan, const FramedLevel& level, std::uint32_t deck, std::size_t first_bay,
-                       const Sharing& sharing, double noise) {
-    const StripAxes& axes = sharing.axes.back();
-    const DeckPressure pressure(plan, level, deck, area_loads_by_deck(level, noise)[deck], axes, noise);
-    std::vector<double> lost(plan.cases.size(), 0.0);
-    std::vector<DeckPressure::Piece> pieces;
+/// The bays of a deck that no carrier bounds.
+std::vector<StripPiece> unsupported_pieces(const Sharing& sharing, std::size_t first_bay) {
+    std::vector<StripPiece> pieces;
     for (std::size_t i = first_bay; i < sharing.bays.size(); ++i) {
-        const Bay& bay = sharing.bays[i];
-        if (!is_unsupported(bay)) {
-            continue;
-        }
-        const StripPiece where{bay.from, bay.to, bay.low, bay.high};
-        for (const DeckPressure::Uniform& u : pressure.uniform()) {
-            lost[u.load_case] += u.q * area_of(where);
-        }
-        pressure.zones_over(where, axes, pieces);
-        for (const DeckPressure::Piece& piece : pieces) {
-            lost[piece.load_case] += moments_of(piece.where, piece.intensity).area;
+        if (const Bay& bay = sharing.bays[i]; is_unsupported(bay)) {
+            pieces.push_back({bay.from, bay.to, bay.low, bay.high});
         }
     }
-    std::string text;
-    for (std::size_t c = 0; c < lost.size(); ++c) {
-        if (lost[c] != 0) {
-            text += (text.empty() ? "" : ", ") + plan.cases[c].id + ' ' + force_text(lost[c], plan.units);
-        }
-    }
-    return text.empty() ? "no load" : text;
+    return pieces;
 }
 
 /// Strips of a deck under lever or continuous that no statics holds (on one carrier alone, on a back span too
@@ -268,7 +250,7 @@ UnstableStrips find_unstable(const Sharing& sharing, BaysBeside& beside, std::ui
 } // namespace
 
 void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t level_index,
-                      std::uint32_t deck_index, std::size_t first_bay, Sharing& sharing) {
+                      std::uint32_t deck_index, std::size_t first_bay, LostLoads& lost, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
     const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
@@ -299,10 +281,10 @@ void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t le
         sharing.problems.push_back(std::move(problem));
     };
     if (unsupported.area > 0) {
-        const std::string lost =
-            loads_text(plan, level, deck_index, first_bay, sharing, noise_of(framing.largest_coordinate));
+        const std::string text =
+            lost.text(deck_index, sharing.axes.back(), unsupported_pieces(sharing, first_bay));
         report(ProblemCode::strip_unsupported, unsupported,
-               "lie in strips that no carrier crosses (" + lost + " would be lost)",
+               "lie in strips that no carrier crosses (" + text + " would be lost)",
                "Strips run along `direction`; members along them carry nothing. Turn the direction, end the "
                "deck at its "
                "carriers, or add a member across.");

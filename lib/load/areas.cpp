@@ -244,7 +244,7 @@ bool follows_cells(const FramedDeck& deck) {
 } // namespace
 
 void load_areas(const Plan& plan, const Framing& framing, std::uint32_t level_index, const Sharing& sharing,
-                Collector& collector) {
+                LevelZones& zones, Collector& collector) {
     const FramedLevel& level = framing.levels[level_index];
     const double noise = collector.noise();
     const Grouped<std::uint32_t> acting = area_loads_by_deck(level, noise);
@@ -260,13 +260,14 @@ void load_areas(const Plan& plan, const Framing& framing, std::uint32_t level_in
         });
         const std::vector<StripPiece> pieces =
             uneven ? pieces_of_deck(level.decks[d], plain, noise) : std::vector<StripPiece>{};
-        const std::vector<std::uint32_t> on_deck = really_acting(level, acting[d], pieces, plain, noise);
-        const DeckPressure upright(plan, level, d, on_deck, plain, noise);
+        const std::vector<std::uint32_t> on_deck = really_acting(
+            level, zones, acting[d], reach_of(level.decks[d], plan.settings.snap), pieces, plain, noise);
+        const DeckPressure upright(plan, level, d, on_deck, zones, plain, noise);
         account_applied(level.decks[d], d, upright, plain, pieces, collector);
         if (last > first) {
             // One-way decks have one pair of axes; in those of others zones are turned as they are asked for.
-            const DeckPressure pressure(plan, level, d, on_deck, sharing.axes[sharing.cells[first].axes],
-                                        noise);
+            const DeckPressure pressure(plan, level, d, on_deck, zones,
+                                        sharing.axes[sharing.cells[first].axes], noise);
             if (follows_cells(level.decks[d])) {
                 DeckLoader(sharing, d, pressure, plan.cases.size(), collector).load_cells(first, last);
             } else {

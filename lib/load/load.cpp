@@ -7,8 +7,9 @@ RUNNEL_NAMESPACE_BEGIN
 LevelLoads load_carriers(const Plan& plan, const Framing& framing, std::uint32_t level,
                          const Sharing& sharing) {
     Collector collector(plan, framing.levels[level], sharing, noise_of(framing.largest_coordinate));
-    load_areas(plan, framing, level, sharing, collector);
-    note_zones_off_decks(plan, framing, level, collector);
+    LevelZones zones(framing.levels[level], collector.noise());
+    load_areas(plan, framing, level, sharing, zones, collector);
+    note_zones_off_decks(plan, framing, level, zones, collector);
     load_lines_and_points(plan, framing, level, sharing, collector);
     load_own_weight(plan, framing, level, collector);
     return collector.finish();

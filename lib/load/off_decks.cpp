@@ -38,8 +38,9 @@ struct OnDecks {
     }
 };
 
-void lay_on_deck(const FramedLevel& level, std::uint32_t d, std::span<const std::uint32_t> outlines,
-                 std::span<const std::uint32_t> acting, double noise, std::vector<OnDecks>& on_decks) {
+void lay_on_deck(const FramedLevel& level, LevelZones& zones, std::uint32_t d,
+                 std::span<const std::uint32_t> outlines, std::span<const std::uint32_t> acting, double noise,
+                 std::vector<OnDecks>& on_decks) {
     const FramedDeck& deck = level.decks[d];
     const StripAxes plain{deck.outline.front(), 1, 0};
     for (const std::uint32_t i : acting) {
@@ -55,16 +56,23 @@ void lay_on_deck(const FramedLevel& level, std::uint32_t d, std::span<const std:
         openings.push_back(to_strip(plain, opening));
     }
     const std::vector<Convex> pieces = convex_pieces(to_strip(plain, deck.outline), openings, noise);
+    std::vector<Box> boxes;
+    boxes.reserve(pieces.size());
+    for (const Convex& piece : pieces) {
+        boxes.push_back(box_of(piece));
+    }
+    const BoxFinder finder(std::move(boxes));
+    std::vector<std::uint32_t> near;
+    std::vector<Convex> around;
     for (const std::uint32_t i : outlines) {
         const Intensity intensity = Plane(level.area_loads[i]).in(plain);
         const bool acts = std::binary_search(acting.begin(), acting.end(), i);
-        for (const Convex& zone : convex_zone(level.area_loads[i], plain, noise)) {
-            const Box box = box_of(zone);
-            for (const Convex& piece : pieces) {
-                if (!box.meets(box_of(piece))) {
-                    continue;
-                }
-                const Convex both = clipped(piece, zone, noise);
+        around.clear();
+        zones.find(i, box_of(deck.outline), plain, around);
+        for (const Convex& zone : around) {
+            finder.find(box_of(zone), near);
+            for (const std::uint32_t p : near) {
+                const Convex both = clipped(pieces[p], zone, noise);
                 on_decks[i].area.add(moments_of(both, {0, 0}).area);
                 on_decks[i].force.add(force_on(both, intensity));
                 if (acts) {
@@ -139,13 +147,13 @@ void warn_below_zero(const Plan& plan, const FramedLevel& level, std::size_t i, 
 } // namespace
 
 void note_zones_off_decks(const Plan& plan, const Framing& framing, std::uint32_t level_index,
-                          Collector& collector) {
+                          LevelZones& zones, Collector& collector) {
     const FramedLevel& level = framing.levels[level_index];
     const Grouped<std::uint32_t> outlines = outlines_over_decks(level, collector.noise());
     const Grouped<std::uint32_t> acting = area_loads_by_deck(level, collector.noise());
     std::vector<OnDecks> on_decks(level.area_loads.size());
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
-        lay_on_deck(level, d, outlines[d], acting[d], collector.noise(), on_decks);
+        lay_on_deck(level, zones, d, outlines[d], acting[d], collector.noise(), on_decks);
     }
     for (std::size_t i = 0; i < level.area_loads.size(); ++i) {
         if (!level.area_loads[i].outline.empty()) {

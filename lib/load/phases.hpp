@@ -1,5 +1,6 @@
 #pragma once
 
+#include "deck/level_zones.hpp"
 #include "load/collector.hpp"
 
 #include <runnel/load.hpp>
@@ -8,10 +9,10 @@ RUNNEL_NAMESPACE_BEGIN
 
 /// Area loads and the decks' own weight, on cells and in the account of what was put on.
 void load_areas(const Plan& plan, const Framing& framing, std::uint32_t level, const Sharing& sharing,
-                Collector& collector);
+                LevelZones& zones, Collector& collector);
 /// Area loads that reach off the decks: a note each with how much. Planes of pressure that fall below zero
 /// where they act: a warning with the lowest place.
-void note_zones_off_decks(const Plan& plan, const Framing& framing, std::uint32_t level,
+void note_zones_off_decks(const Plan& plan, const Framing& framing, std::uint32_t level, LevelZones& zones,
                           Collector& collector);
 
 /// Line and point loads: straight on the carrier that `on` names, along a carrier's axis, or standing on

@@ -260,7 +260,8 @@ TEST_CASE(
         const StripAxes asked = random.chance(0.3) ? home : axes_at();
         const double noise = noise_of(30);
         const auto acting = area_loads_by_deck(f.framing.levels[0], noise);
-        const DeckPressure pressure(f.plan, f.framing.levels[0], 0, acting[0], home, noise);
+        LevelZones zones(f.framing.levels[0], noise);
+        const DeckPressure pressure(f.plan, f.framing.levels[0], 0, acting[0], zones, home, noise);
 
         StripPiece area;
         area.from = random.between(-6, 4);

@@ -141,3 +141,43 @@ TEST_CASE("on two-way decks and decks on columns a wrong owner is seen as well")
         }
     }
 }
+
+TEST_CASE("on a big deck with many openings owners are told as on a small one") {
+    // 4 x 4 bays of 6 m, an opening in each; every second opening takes the place of a beam's middle. Beams
+    // outside the deck and one across the openings only are none of its carriers.
+    support::HandFramed f;
+    std::vector<Ring> openings;
+    for (int i = 0; i <= 4; ++i) {
+        for (int k = 0; k < 4; ++k) {
+            const double at = 6.0 * i;
+            const double from = 6.0 * k;
+            f.add_member({from, at}, {from + 6, at});
+            f.add_member({at, from}, {at, from + 6});
+            if (i < 4) {
+                const double y = k % 2 == 0 || i == 3 ? at + 2 : at + 5;
+                openings.push_back({{from + 2, y}, {from + 2, y + 2}, {from + 4, y + 2}, {from + 4, y}});
+            }
+        }
+    }
+    f.add_member({2.5, 3}, {3.5, 3}); // within an opening: nearest to its surroundings, but no carrier
+    f.add_member({24, 12}, {30, 12});
+    f.add_deck({{0, 0}, {24, 0}, {24, 24}, {0, 24}}, 0, std::move(openings));
+    FramedDeck& deck = f.level().decks[0];
+    for (const CornerAngles angles : {CornerAngles::equal, CornerAngles::by_fixity}) {
+        deck.span = SpanKind::two_way;
+        deck.corner_angles = angles;
+        Sharing sharing = f.share();
+        REQUIRE_FALSE(has_errors(sharing.problems));
+        CHECK(check_owners(f.plan, f.framing, 0, sharing, 4000, 1).empty());
+        std::size_t moved = 0;
+        for (std::size_t c = 0; c < sharing.cells.size(); ++c) {
+            std::uint32_t& carrier = sharing.transfers[c].front().carrier;
+            if (carrier == 10) {
+                carrier = 11;
+                ++moved;
+            }
+        }
+        REQUIRE(moved > 0);
+        CHECK(only_code(check_owners(f.plan, f.framing, 0, sharing, 4000, 1)) == ProblemCode::owner_broken);
+    }
+}
