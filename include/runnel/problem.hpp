@@ -39,10 +39,13 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(not_supported_yet, "not-supported-yet", error, "A key whose engine is not built yet.")                 \
     /* the plan's geometry by itself */                                                                      \
     X(zero_length, "zero-length", error, "A member, wall or line whose ends are the same point.")            \
-    X(ring_too_small, "ring-too-small", error, "A ring of fewer than three different points or no area.")    \
-    X(ring_crosses_itself, "ring-crosses-itself", error, "A ring that crosses or touches itself.")           \
+    X(ring_too_small, "ring-too-small", error,                                                               \
+      "A ring of fewer than three different points, or on average no wider than `snap`.")                    \
+    X(ring_crosses_itself, "ring-crosses-itself", error, "A ring that meets itself, within `snap`.")         \
     X(opening_outside_deck, "opening-outside-deck", error, "An opening that reaches outside its deck.")      \
-    X(openings_overlap, "openings-overlap", error, "Two openings of a deck that share area.")                \
+    X(opening_outside_zone, "opening-outside-zone", error,                                                   \
+      "An opening that reaches outside the outline of its area load.")                                       \
+    X(openings_overlap, "openings-overlap", error, "Two openings of an outline that share area.")            \
     X(decks_overlap, "decks-overlap", error, "Two decks of a level that share area.")                        \
     X(like_loop, "like-loop", error, "Levels that repeat each other in a loop.")                             \
     X(elevation_taken, "elevation-taken", error, "Two levels at the same elevation.")                        \
@@ -76,6 +79,9 @@ enum class Severity : std::uint8_t { error, warning, note };
       "Corner angles by fixity do not fit bays, which go to the nearest lines.")                           \
     X(share_has_no_effect, "share-has-no-effect", warning,                                                   \
       "A deck names a share that only one-way decks follow.")                                                \
+      "Corner angles by fixity do not fit panels, which go to the nearest lines.")                           \
+    X(key_has_no_effect, "key-has-no-effect", warning,                                                       \
+      "A deck gives a share or a direction that only one-way decks follow.")                                 \
     X(way_leaves_deck, "way-leaves-deck", warning,                                                           \
       "Area whose straight way to its carrier leaves the deck.")                                             \
     X(load_off_decks, "load-off-decks", error, "A line or point load that stands on nothing.")               \
