@@ -138,9 +138,13 @@ struct Sharing {
 [[nodiscard]] RUNNEL_EXPORT Sharing share_decks(const Plan& plan, const Framing& framing,
                                                 std::uint32_t level);
 
+/// How far the chords that draw a region's parabolas may be off, m, unless asked otherwise.
+inline constexpr double region_chord_error = 5e-4;
+
 /// The regions of a sharing, sorted by deck and then carrier. Parabolas are drawn by chords that are nowhere
 /// more than `chord_error` (m) off, and keep the area.
-[[nodiscard]] RUNNEL_EXPORT std::vector<Region> regions_of(const Sharing& sharing, double chord_error = 5e-4);
+[[nodiscard]] RUNNEL_EXPORT std::vector<Region> regions_of(const Sharing& sharing,
+                                                           double chord_error = region_chord_error);
 
 /// Area in m2 of the cells by carrier, and the area's line along each carrier: breadth of the region (m2 per
 /// m).

@@ -184,6 +184,7 @@ struct AreaLoad {
     double q = 0; ///< kN/m2, where `plane` is not given
     std::optional<PlaneOfLoad> plane;
     Ring outline;                   ///< empty: the decks named, or all
+    std::vector<Ring> openings;     ///< holes in the outline: there it does not act, nor replace
     std::vector<std::string> decks; ///< empty: the outline, or all
     bool replaces = false;
     std::string allowance; ///< empty: none

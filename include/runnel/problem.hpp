@@ -39,10 +39,13 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(not_supported_yet, "not-supported-yet", error, "A key whose engine is not built yet.")                 \
     /* the plan's geometry by itself */                                                                      \
     X(zero_length, "zero-length", error, "A member, wall or line whose ends are the same point.")            \
-    X(ring_too_small, "ring-too-small", error, "A ring of fewer than three different points or no area.")    \
-    X(ring_crosses_itself, "ring-crosses-itself", error, "A ring that crosses or touches itself.")           \
+    X(ring_too_small, "ring-too-small", error,                                                               \
+      "A ring of fewer than three different points, or on average no wider than `snap`.")                    \
+    X(ring_crosses_itself, "ring-crosses-itself", error, "A ring that meets itself, within `snap`.")         \
     X(opening_outside_deck, "opening-outside-deck", error, "An opening that reaches outside its deck.")      \
-    X(openings_overlap, "openings-overlap", error, "Two openings of a deck that share area.")                \
+    X(opening_outside_zone, "opening-outside-zone", error,                                                   \
+      "An opening that reaches outside the outline of its area load.")                                       \
+    X(openings_overlap, "openings-overlap", error, "Two openings of an outline that share area.")            \
     X(decks_overlap, "decks-overlap", error, "Two decks of a level that share area.")                        \
     X(like_loop, "like-loop", error, "Levels that repeat each other in a loop.")                             \
     X(elevation_taken, "elevation-taken", error, "Two levels at the same elevation.")                        \
@@ -56,6 +59,7 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(higher_on_lower, "higher-on-lower", warning, "A higher role ends on a lower one.")                     \
     X(bears_on_too_far, "bears-on-too-far", error, "`bears_on` names a carrier that is not there.")          \
     X(stands_on_nothing, "stands-on-nothing", error, "A column or a stretch of wall with nothing under it.") \
+    X(columns_coincide, "columns-coincide", error, "Two columns at one point between the same levels.")      \
     X(load_path_loop, "load-path-loop", error, "Members that bear on each other in a loop.")                 \
     X(too_few_bearings, "too-few-bearings", error, "A member with too few bearings to stand.")               \
     X(mechanism, "mechanism", error, "A member that its hinges leave free to move.")                         \
@@ -74,9 +78,9 @@ enum class Severity : std::uint8_t { error, warning, note };
     X(strip_clamped, "strip-clamped", warning, "Continuous strips clamped by two carriers close together.")  \
     X(crosses_opening, "crosses-opening", warning, "A member that carries a deck runs across its opening.")  \
     X(fixity_set_aside, "fixity-set-aside", warning,                                                         \
-      "Corner angles by fixity do not fit panels, which go to the nearest lines.")                           \
-    X(share_has_no_effect, "share-has-no-effect", warning,                                                   \
-      "A deck names a share that only one-way decks follow.")                                                \
+      "Corner angles by fixity do not fit bays, which go to the nearest lines.")                             \
+    X(key_has_no_effect, "key-has-no-effect", warning,                                                       \
+      "A deck gives a share or a direction that only one-way decks follow.")                                 \
     X(way_leaves_deck, "way-leaves-deck", warning,                                                           \
       "Area whose straight way to its carrier leaves the deck.")                                             \
     X(load_off_decks, "load-off-decks", error, "A line or point load that stands on nothing.")               \

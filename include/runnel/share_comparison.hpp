@@ -29,6 +29,15 @@ struct ComparedCarrier {
     double difference = 0;
 };
 
+/// Which of a carrier's values: &ComparedCarrier::total or &ComparedCarrier::largest_reaction.
+using ComparedValues = std::vector<double> ComparedCarrier::*;
+
+/// Which of a carrier's values, by run and case.
+struct RunCase {
+    std::size_t run = 0; ///< index into ShareComparison::runs
+    std::size_t load_case = 0;
+};
+
 /// The loads of a plan under each way of sharing its one-way decks.
 struct ShareComparison {
     std::vector<ShareRun> runs; ///< half, lever, continuous; before them the plan's own where it mixes them
@@ -39,9 +48,9 @@ struct ShareComparison {
     std::vector<ComparedCarrier> members;
 
     /// Difference of a value from that of the own run, in per cent; none where the own one is nothing and the
-    /// value is not, or either run was stopped.
-    [[nodiscard]] RUNNEL_EXPORT std::optional<double> percent(const std::vector<double>& values,
-                                                              std::size_t run, std::size_t load_case) const;
+    /// value is not, where either run was stopped, or the carrier has no such value.
+    [[nodiscard]] RUNNEL_EXPORT std::optional<double> percent(const ComparedCarrier& carrier,
+                                                              ComparedValues values, RunCase at) const;
 
     double noise = 0; ///< kN: what rounding may make of a difference
 };

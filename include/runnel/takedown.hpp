@@ -53,7 +53,9 @@ struct LevelTakedown {
         tributary_area; ///< by carrier, m2: own regions and what comes through members it carries
     /// By carrier, m2: the floor of this level on which a load is felt by the carrier. The full bays (not
     /// halves) beside it, and of each member that bears on it the influence area of its spans on both sides
-    /// of that bearing; what comes by two ways counts once.
+    /// of that bearing; what comes by two ways counts once. Never less than the tributary area. A deck ends
+    /// at its outline: where two meet and no carrier runs between them, neither is felt by the other's
+    /// carriers, as none of its load goes to them.
     std::vector<double> influence_area;
 };
 

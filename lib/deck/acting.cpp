@@ -97,7 +97,10 @@ Ring to_strip(const StripAxes& axes, const Ring& ring) {
     return turned;
 }
 
-std::vector<Convex> convex_zone(Ring ring, double noise) {
+namespace {
+
+/// The ring itself where it is convex (turned counter-clockwise), else its convex pieces.
+std::vector<Convex> convex_pieces_of(Ring ring, double noise) {
     if (signed_area(ring) < 0) {
         std::reverse(ring.begin(), ring.end());
     }
@@ -116,12 +119,25 @@ std::vector<Convex> convex_zone(Ring ring, double noise) {
     return convex_pieces(ring, {}, noise);
 }
 
-std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& axes, double noise) {
-    std::vector<Ring> openings;
-    openings.reserve(deck.openings.size());
-    for (const Ring& opening : deck.openings) {
-        openings.push_back(to_strip(axes, opening));
+std::vector<Ring> to_strip(const StripAxes& axes, const std::vector<Ring>& rings) {
+    std::vector<Ring> turned;
+    turned.reserve(rings.size());
+    for (const Ring& ring : rings) {
+        turned.push_back(to_strip(axes, ring));
     }
+    return turned;
+}
+
+} // namespace
+
+std::vector<Convex> convex_zone(const AreaLoad& load, const StripAxes& axes, double noise) {
+    Ring outline = to_strip(axes, load.outline);
+    return load.openings.empty() ? convex_pieces_of(std::move(outline), noise)
+                                 : convex_pieces(outline, to_strip(axes, load.openings), noise);
+}
+
+std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& axes, double noise) {
+    const std::vector<Ring> openings = to_strip(axes, deck.openings);
     std::vector<StripPiece> pieces;
     for (const Gap& gap : sweep_strips(to_strip(axes, deck.outline), openings, {}, noise).gaps) {
         pieces.push_back(
@@ -141,7 +157,7 @@ std::vector<std::uint32_t> really_acting(const FramedLevel& level, std::span<con
     std::vector<std::uint32_t> near;
     std::vector<StripPiece> inside;
     const auto lies_on_deck = [&](const AreaLoad& load) {
-        for (const Convex& zone : convex_zone(to_strip(axes, load.outline), noise)) {
+        for (const Convex& zone : convex_zone(load, axes, noise)) {
             finder.find(box_of(zone), near);
             for (const std::uint32_t i : near) {
                 inside.clear();

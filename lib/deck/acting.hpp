@@ -30,8 +30,8 @@ RUNNEL_NAMESPACE_BEGIN
 /// The area loads with outlines that reach over each deck, whether they are meant for it or not.
 [[nodiscard]] Grouped<std::uint32_t> outlines_over_decks(const FramedLevel& level, double noise);
 
-/// The ring itself where it is convex (turned counter-clockwise), else its convex pieces.
-[[nodiscard]] std::vector<Convex> convex_zone(Ring ring, double noise);
+/// Where an area load with an outline acts, seen in `axes`, in convex pieces.
+[[nodiscard]] std::vector<Convex> convex_zone(const AreaLoad& load, const StripAxes& axes, double noise);
 
 /// The area of a deck, less its openings, in pieces in the given axes.
 [[nodiscard]] std::vector<StripPiece> pieces_of_deck(const FramedDeck& deck, const StripAxes& axes,

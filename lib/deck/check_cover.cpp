@@ -1,3 +1,4 @@
+#include "deck/deck_area.hpp"
 #include "geometry/basic.hpp"
 #include "geometry/box_tree.hpp"
 #include "geometry/convex.hpp"
@@ -16,14 +17,6 @@ namespace {
 
 constexpr const char* fault =
     "This is a fault of the program or of overlapping openings; do not use the result.";
-
-double area_of(const FramedDeck& deck) {
-    double area = std::abs(signed_area(deck.outline));
-    for (const Ring& opening : deck.openings) {
-        area -= std::abs(signed_area(opening));
-    }
-    return area;
-}
 
 StripPiece piece_of(const Cell& cell) {
     return {cell.from, cell.to, cell.low, cell.high};
@@ -117,7 +110,7 @@ std::vector<Problem> check_cover(const Framing& framing, std::uint32_t level_ind
     std::vector<Problem> problems;
     for (std::size_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
-        const double area = area_of(deck);
+        const double area = area_of_deck(deck, noise_of(framing.largest_coordinate));
         const double found = covered[d].value();
         if (!(std::abs(found - area) <= relative * area)) {
             problems.push_back(problem_at(ProblemCode::cover_broken, deck.origin, "decks",
@@ -145,7 +138,7 @@ std::vector<Problem> check_disjoint(const Framing& framing, std::uint32_t level_
         }
         const FramedDeck& deck = level.decks[d];
         const SharedArea shared = shared_by(tiles, noise);
-        if (shared.area > relative * area_of(deck)) {
+        if (shared.area > relative * area_of_deck(deck, noise)) {
             problems.push_back(problem_at(ProblemCode::cells_overlap, deck.origin, "decks",
                                           "Level " + level.id + ", deck " + deck.id +
                                               ": regions overlap by " + exact_text(shared.area) + " m2.",

@@ -1,5 +1,6 @@
 #include "deck/convex_panel.hpp"
 
+#include "deck/nearest.hpp"
 #include "deck/panel_regions.hpp"
 #include "geometry/strip_piece.hpp"
 #include "geometry/strip_sweep.hpp"
@@ -68,14 +69,18 @@ std::vector<SideStretch> stretches_of(const Panel& panel, const PanelSide& side)
 /// Turns regions of sides into cells.
 class CellMaker {
 public:
-    CellMaker(const PanelDeck& deck, const Panel& panel, CarrierAxes& axes, Sharing& sharing)
-        : deck_(deck), panel_(panel), axes_(axes), sharing_(sharing) {
+    CellMaker(const PanelDeck& deck, const Panel& panel, RingArea& area, CarrierAxes& axes,
+              DoubtfulArea& way_leaves, Sharing& sharing)
+        : deck_(deck), panel_(panel), area_(area), axes_(axes), way_leaves_(way_leaves), sharing_(sharing) {
+        may_leave_ = std::any_of(panel.outer.begin(), panel.outer.end(),
+                                 [](const PanelEdge& edge) { return edge.carrier == none; });
         const Convex ring = ring_of(panel);
         std::vector<std::uint32_t> near;
         deck.opening_finder.find(box_of(std::span<const Point>(ring)), near);
         for (const std::uint32_t opening : near) {
             openings_.push_back(&deck.openings[opening]);
         }
+        may_leave_ = may_leave_ || !openings_.empty();
     }
 
     /// Among the carriers along the side by the foot of each point; in a gap between two, to the nearer.
@@ -169,8 +174,37 @@ private:
             }
         }
         sharing_.cells.push_back(cell);
+        if (may_leave_) {
+            check_ways(piece, station_from, station_to, sharing_.axes[axes],
+                       deck_.carriers[stretch.carrier].number);
+        }
         sharing_.transfers.push({deck_.carriers[stretch.carrier].number, station_from + 0.0, station_to, 1});
         sharing_.transfers.end_group();
+    }
+
+    /// Judged at the middle of what lies between the levels of openings' corners: all that its ways cross is
+    /// the same edges.
+    void check_ways(const StripPiece& piece, double station_from, double station_to, const StripAxes& axes,
+                    std::uint32_t carrier) {
+        levels_.assign({piece.from, piece.to});
+        for (const Ring& opening : openings_here_) {
+            for (const Point& p : opening) {
+                if (p.y > piece.from && p.y < piece.to) {
+                    levels_.push_back(p.y);
+                }
+            }
+        }
+        std::sort(levels_.begin(), levels_.end());
+        for (std::size_t i = 0; i + 1 < levels_.size(); ++i) {
+            const StripPiece part = between_levels(piece, levels_[i], levels_[i + 1]);
+            const double level = (part.from + part.to) / 2;
+            const double t = piece.fraction(level);
+            const Point middle = axes.to_plan({(part.low.at(0.5) + part.high.at(0.5)) / 2, level});
+            const Point foot = axes.to_plan({0, (1 - t) * station_from + t * station_to});
+            if (area_.length_outside(middle - deck_.origin, foot - deck_.origin) > deck_.tolerance.snap) {
+                way_leaves_.add(area_of(part), middle, carrier);
+            }
+        }
     }
 
     /// On the carrier but for rounding: on it.
@@ -178,10 +212,14 @@ private:
 
     const PanelDeck& deck_;
     const Panel& panel_;
+    RingArea& area_;
     CarrierAxes& axes_;
+    DoubtfulArea& way_leaves_;
     Sharing& sharing_;
+    bool may_leave_ = false;            ///< a way to a carrier may leave the deck
     std::vector<const Ring*> openings_; ///< that may reach into the panel
     std::vector<Ring> openings_here_;   ///< the same in a carrier's axes
+    std::vector<double> levels_;
 };
 
 /// Whether all points of the border between two of its corners lie within `snap` of the straight line.
@@ -205,6 +243,26 @@ PanelSide side_of(const Panel& panel, std::size_t first, std::size_t count) {
         side.carries = side.carries || panel.outer[(first + k) % n].carrier != none;
     }
     return side;
+}
+
+/// Where carriers fail along a side for more than `snap`.
+std::optional<Point> gap_in(const Panel& panel, const PanelSide& side, double snap) {
+    const std::size_t n = panel.outer.size();
+    double length = 0;
+    Point start;
+    for (std::size_t k = 0; k < side.edge_count; ++k) {
+        const PanelEdge& edge = panel.outer[(side.first_edge + k) % n];
+        if (edge.carrier != none) {
+            length = 0;
+            continue;
+        }
+        start = length > 0 ? start : edge.from;
+        length += distance(edge.from, panel.outer[(side.first_edge + k + 1) % n].from);
+        if (length > snap) {
+            return start;
+        }
+    }
+    return std::nullopt;
 }
 
 /// The farthest corner from the first: surely a corner of the whole.
@@ -259,7 +317,7 @@ PanelDeck::PanelDeck(const FramedDeck& of_deck, std::uint32_t deck_index,
     opening_finder = BoxFinder(std::move(boxes));
 }
 
-PanelShape shape_of(const Panel& panel, double snap) {
+PanelShape shape_of(const Panel& panel, std::uint32_t index, double snap) {
     PanelShape shape;
     if (panel.area <= snap * perimeter_of(ring_of(panel)) / 2) {
         shape.sides.push_back(side_of_sliver(panel));
@@ -273,24 +331,31 @@ PanelShape shape_of(const Panel& panel, double snap) {
             ++count;
         }
         shape.sides.push_back(side_of(panel, start + done, count));
+        if (const PanelSide& side = shape.sides.back(); side.carries && !shape.gap) {
+            shape.gap = gap_in(panel, side, snap);
+        }
         done += count;
     }
     for (std::size_t i = 0; i < shape.sides.size(); ++i) {
         const PanelSide& side = shape.sides[i];
         const PanelSide& next = shape.sides[(i + 1) % shape.sides.size()];
-        if (!(cross(side.b - side.a, next.b - next.a) > 0)) {
-            shape.not_convex = side.b;
+        if (cross(side.b - side.a, next.b - next.a) > 0) {
+            continue;
         }
+        // On a way along a carrier that ends inside, the panel lies on both sides.
+        const bool on_way = panel.outer[(side.first_edge + side.edge_count - 1) % n].beyond == index &&
+                            panel.outer[next.first_edge].beyond == index;
+        (on_way ? shape.inside : shape.reflex) = side.b;
     }
     if (!panel.holes.empty()) {
-        shape.not_convex = panel.holes.front().front().from;
+        shape.inside = panel.holes.front().front().from;
     }
     return shape;
 }
 
 void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<const PanelSide> sides,
-                        CarrierAxes& axes, Sharing& sharing) {
-    CellMaker cells(deck, panel, axes, sharing);
+                        RingArea& area, CarrierAxes& axes, DoubtfulArea& way_leaves, Sharing& sharing) {
+    CellMaker cells(deck, panel, area, axes, way_leaves, sharing);
     for (SideRegion& region : divide_among_sides(ring_of(panel), sides, deck.tolerance.noise)) {
         cells.add(sides[region.side], std::move(region.where));
     }

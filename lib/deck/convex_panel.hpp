@@ -14,6 +14,9 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
+class RingArea;
+struct DoubtfulArea;
+
 /// The axes in which what goes to each line carrier of a deck is described, one for each, entered in Sharing
 /// when first asked for: origin at the carrier's `from`, across = station, along = distance square to it,
 /// positive on its right.
@@ -41,14 +44,17 @@ struct PanelSide {
     double weight = 1;    ///< distances from it are divided by this before they are compared
 };
 
-/// The sides of a convex panel, counter-clockwise; or the place (from Panels::origin) where it is not convex
-/// or a carrier ends inside or stands free in it. A panel no broader than `snap` has the one side that
-/// carries most of it.
+/// The sides of a panel, counter-clockwise, and what is against sharing it among them, each with a place
+/// (from Panels::origin). A panel no broader than `snap` has the one side that carries most of it, and
+/// nothing against it.
 struct PanelShape {
     std::vector<PanelSide> sides;
-    std::optional<Point> not_convex;
+    std::optional<Point> reflex; ///< a corner where it is not convex
+    std::optional<Point> inside; ///< where a carrier ends inside or stands free in it
+    std::optional<Point> gap;    ///< of a side that is carried over a part of its length
 };
-[[nodiscard]] PanelShape shape_of(const Panel& panel, double snap);
+/// `index`: of the panel in its list.
+[[nodiscard]] PanelShape shape_of(const Panel& panel, std::uint32_t index, double snap);
 
 /// The deck whose panels are shared; what its cells need to know.
 struct PanelDeck {
@@ -67,12 +73,13 @@ struct PanelDeck {
 /// Shares a convex panel, made without the deck's openings, among the sides that carry: each point to the
 /// side from which its distance over the side's weight is least, square to it. What lies beyond a carrier's
 /// end goes to that end; openings are left out. With all weights 1 and carriers along every side this is the
-/// nearest line.
+/// nearest line. `area` is bounded by the deck's rings as seen from Panels::origin; what goes to its carrier
+/// straight across an opening or past the deck's edge is added to `way_leaves`.
 ///
 /// Appends cells and transfers. Laws (tests/laws/fixity_test.cpp): cover, owner, motion, and the carriers'
 /// order and direction make no difference. Cost: O(n^2) for n sides, far below any diagram for the few that
 /// bays have.
 void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<const PanelSide> sides,
-                        CarrierAxes& axes, Sharing& sharing);
+                        RingArea& area, CarrierAxes& axes, DoubtfulArea& way_leaves, Sharing& sharing);
 
 RUNNEL_NAMESPACE_END

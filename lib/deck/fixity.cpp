@@ -8,68 +8,13 @@
 
 #include <algorithm>
 #include <cmath>
+#include <limits>
 #include <optional>
 #include <string>
 
 RUNNEL_NAMESPACE_BEGIN
 
 namespace {
-
-/// Where there is deck beside the carriers of a deck, by stations.
-class DeckBesideCarriers {
-public:
-    DeckBesideCarriers(const Panels& panels, std::size_t carriers) : left_(carriers), right_(carriers) {
-        for (const Panel& panel : panels.panels) {
-            add(panel.outer);
-            for (const std::vector<PanelEdge>& hole : panel.holes) {
-                add(hole);
-            }
-        }
-        for (std::vector<std::vector<Stretch>>* side : {&left_, &right_}) {
-            for (std::vector<Stretch>& stretches : *side) {
-                std::sort(stretches.begin(), stretches.end(),
-                          [](const Stretch& l, const Stretch& r) { return l.from < r.from; });
-            }
-        }
-    }
-
-    /// Length of the part of a panel's edge with deck on its other side.
-    [[nodiscard]] double beyond(const PanelEdge& edge) const {
-        const bool forward = edge.station_from < edge.station_to;
-        const double from = std::min(edge.station_from, edge.station_to);
-        const double to = std::max(edge.station_from, edge.station_to);
-        const std::vector<Stretch>& stretches = (forward ? right_ : left_)[edge.carrier];
-        // They do not overlap: the first that matters is the first that ends behind `from`.
-        auto it =
-            std::lower_bound(stretches.begin(), stretches.end(), from,
-                             [](const Stretch& stretch, double station) { return stretch.to <= station; });
-        double length = 0;
-        for (; it != stretches.end() && it->from < to; ++it) {
-            length += std::min(to, it->to) - std::max(from, it->from);
-        }
-        return length;
-    }
-
-private:
-    struct Stretch {
-        double from, to;
-    };
-
-    void add(const std::vector<PanelEdge>& border) {
-        for (const PanelEdge& edge : border) {
-            if (edge.carrier == none) {
-                continue;
-            }
-            if (edge.station_from < edge.station_to) {
-                left_[edge.carrier].push_back({edge.station_from, edge.station_to});
-            } else {
-                right_[edge.carrier].push_back({edge.station_to, edge.station_from});
-            }
-        }
-    }
-
-    std::vector<std::vector<Stretch>> left_, right_; ///< by carrier
-};
 
 /// The ring of a border without the ways there and back along carriers that end inside.
 Ring ring_without_ends(const std::vector<PanelEdge>& border, Point origin) {
@@ -104,14 +49,42 @@ bool has_carrier(const Panel& panel) {
            });
 }
 
-/// Area that goes to the nearest lines although the rule would divide it otherwise, and where.
+/// Area that goes to the nearest lines although the rule would divide it otherwise: why, and where.
 struct SetAside {
     double area = 0;
     double largest = 0;
     Point place; ///< in the plan
+    bool reflex = false, inside = false, gap = false;
+
+    void add(double part, const PanelShape& shape, Point origin) {
+        area += part;
+        reflex = reflex || shape.reflex;
+        inside = inside || shape.inside;
+        gap = gap || shape.gap;
+        if (part > largest) {
+            largest = part;
+            place = origin + (shape.inside   ? *shape.inside
+                              : shape.reflex ? *shape.reflex
+                                             : shape.gap.value_or(Point{}));
+        }
+    }
+
+    [[nodiscard]] std::string reasons() const {
+        std::string text;
+        const auto add_if = [&](bool holds, const char* reason) {
+            if (holds) {
+                text += (text.empty() ? "" : ", or ") + std::string(reason);
+            }
+        };
+        add_if(inside, "in which a member or wall ends or stands free");
+        add_if(reflex, "that are not convex");
+        add_if(gap, "with a side that is carried over a part of its length only");
+        return text;
+    }
 };
 
-/// The panels of a deck with their sides, weighted.
+/// The panels of a deck with their sides, weighted. `carriers` share more than a point with the deck, and are
+/// not none.
 class FixityPanels {
 public:
     FixityPanels(const FramedDeck& deck, std::uint32_t index, std::span<const LineCarrier> carriers,
@@ -120,59 +93,140 @@ public:
           deck_(deck, index, carriers, panels_.origin, tolerance), beside_(beside),
           inside_(deck.openings.empty() ? panels_ : divide_into_panels(deck, carriers, tolerance),
                   carriers.size()),
-          carrier_finder_(boxes_of(carriers, tolerance.snap)) {}
-
-    /// Shapes all panels and finds those that are not fit. False: a part of the deck touches no carrier, so
-    /// that panels do not tell whose it is.
-    [[nodiscard]] bool shape() {
-        for (const Panel& panel : panels_.panels) {
-            PanelShape shape = shape_of(panel, deck_.tolerance.snap);
-            for (PanelSide& side : shape.sides) {
-                side.weight = continues(panel, side) ? fixity_weight() : 1;
-            }
-            if (shape.not_convex || !has_carrier(panel)) {
-                add_parts(panel, shape);
-                shape.sides.clear();
-            }
-            shapes_.push_back(std::move(shape));
+          carrier_finder_(boxes_of(carriers)) {
+        shapes_.reserve(panels_.panels.size());
+        for (std::uint32_t p = 0; p < panels_.panels.size(); ++p) {
+            shape(p);
         }
-        return std::all_of(parts_.begin(), parts_.end(),
-                           [this](const FramedDeck& part) { return touches_carrier(part); });
     }
 
     [[nodiscard]] const SetAside& set_aside() const { return set_aside_; }
 
-    void share(const Plan& plan, const Framing& framing, std::uint32_t level, Sharing& sharing) const {
+    /// Appends the cells; `area` is the deck's, seen from its first corner.
+    DoubtfulArea share(const Plan& plan, const Framing& framing, RingArea& area, Sharing& sharing) const {
+        DoubtfulArea way_leaves;
         CarrierAxes axes(deck_.carriers, sharing);
         for (std::size_t p = 0; p < panels_.panels.size(); ++p) {
             if (!shapes_[p].sides.empty()) {
-                share_convex_panel(deck_, panels_.panels[p], shapes_[p].sides, axes, sharing);
+                share_convex_panel(deck_, panels_.panels[p], shapes_[p].sides, area, axes, way_leaves,
+                                   sharing);
             }
         }
         for (const FramedDeck& part : parts_) {
-            share_part_nearest(plan, framing, level, deck_.index, part, area_of(part),
-                               carriers_near(part.outline), sharing);
+            share_part_nearest(plan, framing, deck_.index, part, area_of(part), carriers_around(part.outline),
+                               way_leaves, sharing);
         }
+        return way_leaves;
     }
 
 private:
-    static std::vector<Box> boxes_of(std::span<const LineCarrier> carriers, double snap) {
+    static std::vector<Box> boxes_of(std::span<const LineCarrier> carriers) {
         std::vector<Box> boxes;
         boxes.reserve(carriers.size());
         for (const LineCarrier& carrier : carriers) {
-            boxes.push_back(box_of(carrier.from, carrier.to).grown(snap));
+            boxes.push_back(box_of(carrier.from, carrier.to));
         }
         return boxes;
     }
 
-    [[nodiscard]] std::vector<LineCarrier> carriers_near(const Ring& ring) const {
-        std::vector<std::uint32_t> found;
-        carrier_finder_.find(box_of(std::span<const Point>(ring)), found);
-        std::vector<LineCarrier> near;
-        for (const std::uint32_t c : found) {
-            near.push_back(deck_.carriers[c]);
+    /// Weighs the sides of a panel, and keeps them where the panel is fit for them.
+    void shape(std::uint32_t index) {
+        const Panel& panel = panels_.panels[index];
+        PanelShape shape = shape_of(panel, index, deck_.tolerance.snap);
+        for (PanelSide& side : shape.sides) {
+            side.weight = continues(panel, side) ? fixity_weight() : 1;
         }
-        return near;
+        if (!shape.gap) {
+            shape.gap = carrier_beside_free_edge(panel);
+        }
+        const bool alike = is_alike(panel, shape.sides);
+        bool fits = !shape.reflex && !shape.inside && !shape.gap && has_carrier(panel);
+        if (alike && fits) {
+            // Beyond a free side a line may be nearer than those of the panel.
+            fits = std::all_of(shape.sides.begin(), shape.sides.end(),
+                               [](const PanelSide& side) { return side.carries; });
+        }
+        if (!fits) {
+            const double area = add_parts(panel);
+            if (!alike) {
+                set_aside_.add(area, shape, panels_.origin);
+            }
+            shape.sides.clear();
+        }
+        shapes_.push_back(std::move(shape));
+    }
+
+    /// Where a carrier lies beside a free edge that leaves it by more than `snap` farther on: drawn askew, it
+    /// does not bound the panel, and yet carries some of that edge.
+    [[nodiscard]] std::optional<Point> carrier_beside_free_edge(const Panel& panel) const {
+        std::vector<std::uint32_t> near;
+        for (std::size_t i = 0; i < panel.outer.size(); ++i) {
+            const PanelEdge& edge = panel.outer[i];
+            if (edge.carrier != none) {
+                continue;
+            }
+            const Point a = panels_.origin + edge.from;
+            const Point b = panels_.origin + panel.outer[(i + 1) % panel.outer.size()].from;
+            carrier_finder_.find(box_of(a, b).grown(deck_.tolerance.snap), near);
+            for (const std::uint32_t c : near) {
+                const auto bounds = [c](const PanelEdge& other) { return other.carrier == c; };
+                if (std::none_of(panel.outer.begin(), panel.outer.end(), bounds) &&
+                    runs_beside(deck_.carriers[c], a, b)) {
+                    return edge.from;
+                }
+            }
+        }
+        return std::nullopt;
+    }
+
+    /// Whether a carrier runs within `snap` of the line from a to b over at least half of what they have in
+    /// common, which is more than a point: what only meets it there does not.
+    [[nodiscard]] bool runs_beside(const LineCarrier& carrier, Point a, Point b) const {
+        const double length = distance(a, b);
+        const double snap = deck_.tolerance.snap;
+        const Point along = (1 / length) * (b - a);
+        double from = 0;
+        double to = 1;
+        const auto limit = [&](double at_from, double at_to) { // to where it is not below zero
+            if (at_from < 0 && at_to < 0) {
+                to = from;
+            } else if (at_from < 0) {
+                from = std::max(from, at_from / (at_from - at_to));
+            } else if (at_to < 0) {
+                to = std::min(to, at_from / (at_from - at_to));
+            }
+        };
+        const Point p = carrier.from - a;
+        const Point q = carrier.to - a;
+        limit(dot(along, p), dot(along, q));
+        limit(length - dot(along, p), length - dot(along, q));
+        const double in_common = to - from;
+        limit(snap - cross(along, p), snap - cross(along, q));
+        limit(snap + cross(along, p), snap + cross(along, q));
+        return (to - from) * std::abs(dot(along, q - p)) > snap && to - from >= in_common / 2;
+    }
+
+    /// All carriers that may be the nearest to some point within a ring, however far away.
+    [[nodiscard]] std::vector<LineCarrier> carriers_around(const Ring& ring) const {
+        const Box box = box_of(std::span<const Point>(ring));
+        const Point middle = between(box.low, box.high, 0.5);
+        const double half = distance(box.low, box.high) / 2; // no point is farther from the middle
+        std::vector<std::uint32_t> found;
+        for (double reach = half + deck_.tolerance.snap; found.empty(); reach *= 2) {
+            carrier_finder_.find(box.grown(reach), found);
+        }
+        double nearest = std::numeric_limits<double>::infinity();
+        for (const std::uint32_t c : found) {
+            nearest =
+                std::min(nearest, distance_to_segment(middle, deck_.carriers[c].from, deck_.carriers[c].to));
+        }
+        carrier_finder_.find(box.grown(nearest + half + deck_.tolerance.snap), found);
+        std::vector<LineCarrier> around;
+        around.reserve(found.size());
+        for (const std::uint32_t c : found) {
+            around.push_back(deck_.carriers[c]);
+        }
+        return around;
     }
 
     static double area_of(const FramedDeck& part) {
@@ -182,11 +236,6 @@ private:
             area.add(signed_area(opening)); // clockwise
         }
         return area.value();
-    }
-
-    [[nodiscard]] bool touches_carrier(const FramedDeck& part) const {
-        const Panels panels = divide_into_panels(part, carriers_near(part.outline), deck_.tolerance);
-        return std::any_of(panels.panels.begin(), panels.panels.end(), has_carrier);
     }
 
     /// A part of the deck as a deck of its own.
@@ -203,9 +252,9 @@ private:
         return part;
     }
 
-    /// A panel that is not fit, or what openings leave of it. They are cut out of this panel alone, so that
-    /// its border stays what it is to its neighbours.
-    void add_parts(const Panel& panel, const PanelShape& shape) {
+    /// A panel that is not fit, or what openings leave of it; its area. They are cut out of this panel alone,
+    /// so that its border stays what it is to its neighbours.
+    double add_parts(const Panel& panel) {
         const std::size_t first = parts_.size();
         FramedDeck whole = part_of(panel, panels_.origin);
         std::vector<std::uint32_t> near;
@@ -225,13 +274,7 @@ private:
         for (std::size_t p = first; p < parts_.size(); ++p) {
             area += area_of(parts_[p]);
         }
-        if (!is_alike(panel, shape.sides)) {
-            set_aside_.area += area;
-            if (area > set_aside_.largest) {
-                set_aside_.largest = area;
-                set_aside_.place = panels_.origin + shape.not_convex.value_or(panel.outer.front().from);
-            }
-        }
+        return area;
     }
 
     /// Whether all carriers of a panel weigh alike: then the rule gives what the nearest line gives.
@@ -270,8 +313,8 @@ private:
     const DecksBeside& beside_;
     DeckBesideCarriers inside_; ///< where outline less openings is
     BoxFinder carrier_finder_;
-    std::vector<PanelShape> shapes_; ///< by panel; without sides where it is not fit
-    std::vector<FramedDeck> parts_;  ///< of the deck, that go to the nearest lines
+    std::vector<PanelShape> shapes_; ///< by panel; without sides where it goes to the nearest lines
+    std::vector<FramedDeck> parts_;  ///< of the deck, that do so
     SetAside set_aside_;
 };
 
@@ -281,63 +324,26 @@ double fixity_weight() noexcept {
     return std::sqrt(3.0);
 }
 
-DecksBeside::DecksBeside(const FramedLevel& level, double snap) : snap_(snap) {
-    std::vector<Box> boxes;
-    for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
-        const Ring& outline = level.decks[d].outline;
-        for (std::size_t i = 0; i < outline.size(); ++i) {
-            edges_.push_back({d, outline[i], outline[(i + 1) % outline.size()]});
-            boxes.push_back(box_of(edges_.back().a, edges_.back().b));
-        }
-    }
-    finder_ = BoxFinder(std::move(boxes));
-}
-
-double DecksBeside::length_along(std::uint32_t deck, Point a, Point b) const {
-    const double length = distance(a, b);
-    if (!(length > 0)) {
-        return 0;
-    }
-    std::vector<std::uint32_t> near;
-    finder_.find(box_of(a, b).grown(snap_), near);
-    double along = 0;
-    for (const std::uint32_t e : near) {
-        const Edge& edge = edges_[e];
-        // Outlines run counter-clockwise: what lies on the other side runs against this one.
-        if (edge.deck == deck || dot(edge.b - edge.a, b - a) >= 0) {
-            continue;
-        }
-        const double at_a = station_of(edge.a, a, b);
-        const double at_b = station_of(edge.b, a, b);
-        const double from = std::max(0.0, at_b);
-        const double to = std::min(length, at_a);
-        if (to > from && distance_to_segment(between(a, b, from / length), edge.a, edge.b) <= snap_ &&
-            distance_to_segment(between(a, b, to / length), edge.a, edge.b) <= snap_) {
-            along += to - from;
-        }
-    }
-    return along;
-}
-
 bool share_by_fixity(const Plan& plan, const Framing& framing, std::uint32_t level_index, std::uint32_t index,
-                     std::span<const LineCarrier> carriers, const DecksBeside& beside, Sharing& sharing) {
+                     std::span<const LineCarrier> near, const DecksBeside& beside, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
     const FramedDeck& deck = level.decks[index];
-    FixityPanels panels(deck, index, carriers, beside,
-                        {noise_of(framing.largest_coordinate), plan.settings.snap});
-    if (!panels.shape()) {
+    const Tolerance tolerance{noise_of(framing.largest_coordinate), plan.settings.snap};
+    RingArea area(local_rings(deck), tolerance.noise, 4 * near.size());
+    const std::vector<LineCarrier> carriers = carriers_in_touch(deck, near, tolerance.snap, area);
+    if (carriers.empty()) {
         return false;
     }
-    panels.share(plan, framing, level_index, sharing);
+    const FixityPanels panels(deck, index, carriers, beside, tolerance);
+    report_way_leaves(plan, level, index, panels.share(plan, framing, area, sharing), sharing);
     if (const SetAside& aside = panels.set_aside(); aside.area > 0) {
         Problem problem = problem_at(
             ProblemCode::fixity_set_aside, deck.origin, "decks",
             "Level " + level.id + ", deck " + deck.id + ": " + area_text(aside.area, plan.units) +
-                " lie in panels that are not convex or in which a member or wall ends; they go to the "
-                "nearest "
-                "lines instead of by fixity, the largest part at " +
+                " lie in bays between members and walls " + aside.reasons() +
+                "; they go to the nearest lines instead of by fixity, the largest part at " +
                 point_text(aside.place, plan.units) + '.',
-            "Complete the members around such panels, or use \"corner_angles\": \"equal\".", {deck.id});
+            "Complete the members around such bays, or use \"corner_angles\": \"equal\".", {deck.id});
         problem.point = aside.place;
         sharing.problems.push_back(std::move(problem));
     }

@@ -24,6 +24,15 @@ void DoubtfulArea::add(double part, Point where, std::uint32_t carrier) {
     }
 }
 
+void DoubtfulArea::add(const DoubtfulArea& other) {
+    area += other.area;
+    if (other.largest > largest) {
+        largest = other.largest;
+        place = other.place;
+    }
+    carriers.insert(carriers.end(), other.carriers.begin(), other.carriers.end());
+}
+
 double NearestCells::area() const {
     Sum sum;
     for (const Cell& cell : cells) {
@@ -32,9 +41,8 @@ double NearestCells::area() const {
     return sum.value();
 }
 
-namespace {
-
-std::vector<Ring> local_rings(const FramedDeck& deck, Point origin) {
+std::vector<Ring> local_rings(const FramedDeck& deck) {
+    const Point origin = deck.outline.front();
     std::vector<Ring> rings;
     rings.reserve(1 + deck.openings.size());
     const auto add = [&](const Ring& ring) {
@@ -50,6 +58,21 @@ std::vector<Ring> local_rings(const FramedDeck& deck, Point origin) {
     }
     return rings;
 }
+
+std::vector<LineCarrier> carriers_in_touch(const FramedDeck& deck, std::span<const LineCarrier> near,
+                                           double snap, RingArea& area) {
+    const Point origin = deck.outline.front();
+    std::vector<LineCarrier> carriers;
+    for (const LineCarrier& carrier : near) {
+        const RingArea::Shared shared = area.shared_with(carrier.from - origin, carrier.to - origin, snap);
+        if (shared.inside > snap || shared.along_edge > snap) {
+            carriers.push_back(carrier);
+        }
+    }
+    return carriers;
+}
+
+namespace {
 
 /// The part of a carrier inside a window; none if it misses it.
 bool add_line(const LineCarrier& carrier, const Box& window, NearestCarriers& carriers) {
@@ -93,9 +116,8 @@ struct Selection {
     double reach = 0;                ///< no point of the deck is farther from a carrier
 };
 
-Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& deck,
-                 std::span<const LineCarrier> near, const Sharing& sharing, RingArea& area) {
-    const double snap = plan.settings.snap;
+/// Of a deck or a part of it, so far without carriers.
+Selection selection_for(const FramedDeck& deck, double snap) {
     Selection selected;
     selected.carriers.origin = deck.outline.front();
     Ring outline = deck.outline;
@@ -104,13 +126,15 @@ Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& d
     }
     selected.deck_box = box_of(outline);
     selected.reach = distance(selected.deck_box.low, selected.deck_box.high) + 2 * snap;
+    return selected;
+}
+
+Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& deck,
+                 std::span<const LineCarrier> near, const Sharing& sharing, RingArea& area) {
+    const double snap = plan.settings.snap;
+    Selection selected = selection_for(deck, snap);
     const Box window = selected.deck_box.grown(2 * selected.reach);
-    for (const LineCarrier& carrier : near) {
-        const RingArea::Shared shared = area.shared_with(carrier.from - selected.carriers.origin,
-                                                         carrier.to - selected.carriers.origin, snap);
-        if (shared.inside <= snap && shared.along_edge <= snap) {
-            continue;
-        }
+    for (const LineCarrier& carrier : carriers_in_touch(deck, near, snap, area)) {
         if (deck.span == SpanKind::columns && carrier.number < sharing.members) {
             selected.idle.push_back(carrier.number);
         } else {
@@ -130,6 +154,24 @@ Selection select(const Plan& plan, const FramedLevel& level, const FramedDeck& d
     return selected;
 }
 
+/// All carriers given, however far they are from the part.
+Selection select_all(const FramedDeck& part, std::span<const LineCarrier> carriers, double snap) {
+    Selection selected = selection_for(part, snap);
+    const Point middle = between(selected.deck_box.low, selected.deck_box.high, 0.5);
+    double nearest = std::numeric_limits<double>::infinity();
+    for (const LineCarrier& carrier : carriers) {
+        nearest = std::min(nearest, distance_to_segment(middle, carrier.from - selected.carriers.origin,
+                                                        carrier.to - selected.carriers.origin));
+    }
+    const double half = distance(selected.deck_box.low, selected.deck_box.high) / 2;
+    selected.reach = std::max(selected.reach, half + nearest + 2 * snap);
+    const Box window = selected.deck_box.grown(2 * selected.reach);
+    for (const LineCarrier& carrier : carriers) {
+        add_line(carrier, window, selected.carriers);
+    }
+    return selected;
+}
+
 /// Cells by way of a Voronoi diagram on a grid turned by `radians`.
 NearestCells split(const Selection& selected, NearestSplit how, double radians, RingArea& area) {
     // Four points far out, from which no point of the deck is nearest, close the cells of all others.
@@ -141,6 +183,25 @@ NearestCells split(const Selection& selected, NearestSplit how, double radians, 
     }
     const Grid grid(box_of(middle, middle).grown(away), radians);
     return nearest_cells(selected.carriers, grid, how, area);
+}
+
+/// Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
+NearestCells best_split(const Selection& selected, const NearestSplit& how, RingArea& area) {
+    NearestCells best;
+    double least = std::numeric_limits<double>::infinity();
+    for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
+        NearestCells cells = split(selected, how, radians, area);
+        const double open = std::abs(cells.area() - how.whole);
+        const bool done = cells.sound && open <= closed_within * how.whole;
+        if (done || open < least) {
+            least = open;
+            best = std::move(cells);
+        }
+        if (done) {
+            break;
+        }
+    }
+    return best;
 }
 
 void append(NearestCells&& cells, Sharing& sharing) {
@@ -179,14 +240,8 @@ void leave_unsupported(const FramedDeck& deck, std::uint32_t index, double noise
 
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
                    std::uint32_t deck_index, std::span<const LineCarrier> near, Sharing& sharing) {
-    share_part_nearest(plan, framing, level_index, deck_index, framing.levels[level_index].decks[deck_index],
-                       sharing.deck_area[deck_index], near, sharing);
-}
-
-void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level_index,
-                        std::uint32_t deck_index, const FramedDeck& deck, double whole,
-                        std::span<const LineCarrier> near, Sharing& sharing) {
     const FramedLevel& level = framing.levels[level_index];
+    const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
     const double noise = noise_of(framing.largest_coordinate);
     if (NearestCells bay;
@@ -194,8 +249,9 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
         append(std::move(bay), sharing);
         return;
     }
-    RingArea area(local_rings(deck, deck.outline.front()), noise, 4 * near.size());
+    RingArea area(local_rings(deck), noise, 4 * near.size());
     const Selection selected = select(plan, level, deck, near, sharing, area);
+    report_near_misses(plan, level, deck_index, near, selected.carriers, area, sharing);
     if (!selected.idle.empty()) {
         report_idle_members(level, deck_index, selected.idle, sharing);
     }
@@ -204,23 +260,27 @@ void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t 
         report_no_carrier(plan, framing, level_index, deck_index, sharing);
         return;
     }
-    // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
-    const NearestSplit how{deck_index, whole, snap, noise, deck.span == SpanKind::two_way, {}};
-    NearestCells best;
-    double least = std::numeric_limits<double>::infinity();
-    for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
-        NearestCells cells = split(selected, how, radians, area);
-        const double open = std::abs(cells.area() - whole);
-        if (open < least) {
-            least = open;
-            best = std::move(cells);
-        }
-        if (least <= closed_within * whole) {
-            break;
-        }
+    const NearestSplit how{deck_index, sharing.deck_area[deck_index],  snap,
+                           noise,      deck.span == SpanKind::two_way, {}};
+    NearestCells cells = best_split(selected, how, area);
+    report_way_leaves(plan, level, deck_index, cells.way_leaves, sharing);
+    append(std::move(cells), sharing);
+}
+
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t deck_index,
+                        const FramedDeck& part, double whole, std::span<const LineCarrier> carriers,
+                        DoubtfulArea& way_leaves, Sharing& sharing) {
+    const double snap = plan.settings.snap;
+    const double noise = noise_of(framing.largest_coordinate);
+    if (NearestCells bay; share_convex_bay(part, deck_index, carriers, {noise, snap}, bay)) {
+        append(std::move(bay), sharing);
+        return;
     }
-    report_way_leaves(plan, level, deck_index, best.way_leaves, sharing);
-    append(std::move(best), sharing);
+    RingArea area(local_rings(part), noise, 4 * carriers.size());
+    const NearestSplit how{deck_index, whole, snap, noise, true, {}};
+    NearestCells cells = best_split(select_all(part, carriers, snap), how, area);
+    way_leaves.add(cells.way_leaves);
+    append(std::move(cells), sharing);
 }
 
 RUNNEL_NAMESPACE_END

@@ -19,12 +19,6 @@ RUNNEL_NAMESPACE_BEGIN
 void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
                    std::span<const LineCarrier> near, Sharing& sharing);
 
-/// The same for a part of deck `deck`, given as a copy of it with the part's outline and openings, of `area`
-/// m2; carriers are those of `near` that share more than a point with the part.
-void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
-                        const FramedDeck& part, double area, std::span<const LineCarrier> near,
-                        Sharing& sharing);
-
 /// What a deck's points are shared among. Local coordinates: the deck's first corner is the origin, so that
 /// a plan far out loses nothing.
 struct NearestCarriers {
@@ -46,7 +40,23 @@ struct DoubtfulArea {
     std::vector<std::uint32_t> carriers;
 
     void add(double part, Point where, std::uint32_t carrier);
+    void add(const DoubtfulArea& other);
 };
+
+/// Shares a part of deck `deck`, given as a copy of it with the part's outline and openings, of `area` m2,
+/// by the nearest of `carriers`: all of them count, whether or not they touch the part. What goes there
+/// straight across an opening or past the deck's edge is added to `way_leaves`, to be told once a deck.
+void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t deck, const FramedDeck& part,
+                        double area, std::span<const LineCarrier> carriers, DoubtfulArea& way_leaves,
+                        Sharing& sharing);
+
+/// Outline and openings as seen from the deck's first corner.
+[[nodiscard]] std::vector<Ring> local_rings(const FramedDeck& deck);
+
+/// The members and walls of `near` that share more than a point with the closed deck, whose local rings
+/// bound `area`.
+[[nodiscard]] std::vector<LineCarrier>
+carriers_in_touch(const FramedDeck& deck, std::span<const LineCarrier> near, double snap, RingArea& area);
 
 /// Cells of one deck before they join the level's.
 struct NearestCells {
@@ -54,6 +64,7 @@ struct NearestCells {
     std::vector<Cell> cells;         ///< their `axes` count in the list above
     std::vector<Transfer> transfers; ///< one a cell
     DoubtfulArea way_leaves;
+    bool sound = true; ///< false: rounding to the grid upset what lies beside what
 
     [[nodiscard]] double area() const;
 };
@@ -92,6 +103,11 @@ struct NearestSplit {
 /// Problems of a split by the nearest carrier.
 void report_no_carrier(const Plan& plan, const Framing& framing, std::uint32_t level, std::uint32_t deck,
                        Sharing& sharing);
+/// Carriers that run along the deck's edge, or columns that stand by it, a little farther off than `snap`:
+/// they carry nothing of it, which the drawing hides. `carriers`: those that carry it.
+void report_near_misses(const Plan& plan, const FramedLevel& level, std::uint32_t deck,
+                        std::span<const LineCarrier> near, const NearestCarriers& carriers, RingArea& area,
+                        Sharing& sharing);
 void report_way_leaves(const Plan& plan, const FramedLevel& level, std::uint32_t deck,
                        const DoubtfulArea& doubtful, Sharing& sharing);
 void report_idle_members(const FramedLevel& level, std::uint32_t deck, std::span<const std::uint32_t> members,

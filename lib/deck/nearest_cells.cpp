@@ -199,6 +199,9 @@ private:
             return; // a point that only closes the diagram
         }
         const Point focus = noded_.nodes[node].place;
+        if (from == focus || to == focus) {
+            return; // an arc that ends at the node itself leaves no fan
+        }
         const Point toward_from = (1 / distance(focus, from)) * (from - focus);
         const Point toward_to = (1 / distance(focus, to)) * (to - focus);
         const Point turn = toward_to - toward_from;
@@ -348,9 +351,11 @@ NearestCells nearest_cells(const NearestCarriers& carriers, const Grid& grid, co
     const Rest rest(noded, convex.is_done);
     const std::span<const std::uint32_t> open(noded.node_of_point.data() + carriers.points.size(),
                                               noded.node_of_point.size() - carriers.points.size());
-    maker.add_diagram(segment_voronoi(carriers.lines, rest.noded, grid, open, split.noise), rest.pieces,
-                      convex.is_done);
-    return maker.take();
+    const VoronoiDiagram diagram = segment_voronoi(carriers.lines, rest.noded, grid, open, split.noise);
+    maker.add_diagram(diagram, rest.pieces, convex.is_done);
+    NearestCells cells = maker.take();
+    cells.sound = noded.settled && diagram.trusted;
+    return cells;
 }
 
 RUNNEL_NAMESPACE_END

@@ -132,7 +132,7 @@ void DeckPressure::add_zones(const Plan& plan, const FramedLevel& level,
         Zone zone{load_case, Plane(load), load.outline.empty(), load.replaces && !load.outline.empty(), 0, 0};
         if (!zone.everywhere) {
             zone.first = static_cast<std::uint32_t>(outlines_.size());
-            for (Convex& piece : convex_zone(to_strip(home_, load.outline), noise_)) {
+            for (Convex& piece : convex_zone(load, home_, noise_)) {
                 outlines_.push_back(std::move(piece));
             }
             zone.last = static_cast<std::uint32_t>(outlines_.size());

@@ -1,8 +1,10 @@
 #include "deck/carrier_finder.hpp"
+#include "deck/deck_area.hpp"
 #include "deck/doubtful.hpp"
 #include "deck/fixity.hpp"
 #include "deck/nearest.hpp"
 #include "deck/one_way.hpp"
+#include "framing/draft.hpp"
 #include "geometry/basic.hpp"
 
 #include <runnel/deck.hpp>
@@ -28,14 +30,6 @@ std::vector<LineCarrier> line_carriers(const Plan& plan, const FramedLevel& leve
     return carriers;
 }
 
-double area_of(const FramedDeck& deck) {
-    double area = std::abs(signed_area(deck.outline));
-    for (const Ring& opening : deck.openings) {
-        area -= std::abs(signed_area(opening));
-    }
-    return area;
-}
-
 } // namespace
 
 Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t level_index) {
@@ -53,10 +47,14 @@ Sharing share_decks(const Plan& plan, const Framing& framing, std::uint32_t leve
     sharing.transfers.reserve(2 * likely, 2 * likely);
     CarrierFinder finder(carriers, level.decks.size());
     std::optional<DecksBeside> decks_beside;
+    const double noise = noise_of(framing.largest_coordinate);
     for (std::uint32_t d = 0; d < level.decks.size(); ++d) {
         const FramedDeck& deck = level.decks[d];
-        sharing.deck_area.push_back(area_of(deck));
-        const std::vector<LineCarrier>& beside = finder.find(deck, plan.settings.snap);
+        sharing.deck_area.push_back(area_of_deck(deck, noise));
+        // Two-way decks also look at what they miss by little.
+        const double reach =
+            deck.span == SpanKind::one_way ? plan.settings.snap : snaps_of_a_near_miss * plan.settings.snap;
+        const std::vector<LineCarrier>& beside = finder.find(deck, reach);
         if (deck.span == SpanKind::two_way && deck.corner_angles == CornerAngles::by_fixity) {
             if (!decks_beside) {
                 decks_beside.emplace(level, plan.settings.snap);

@@ -88,6 +88,7 @@ struct LevelDraft {
     std::vector<std::uint32_t> line_of; ///< by member
 
     std::size_t points_moved = 0; ///< by more than noise
+    std::size_t edges_bent = 0;   ///< of decks, to points beside them
     double largest_move = 0;      ///< m
 
     /// `snap` with the noise of coordinates added: two points drawn exactly `snap` apart stay one point
@@ -136,6 +137,11 @@ struct LevelDraft {
             ++points_moved;
             largest_move = std::max(largest_move, move);
         }
+    }
+    /// And of an edge that was bent to a point beside it.
+    void count_bend(double by) {
+        ++edges_bent;
+        largest_move = std::max(largest_move, by);
     }
 };
 

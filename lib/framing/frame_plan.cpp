@@ -124,6 +124,7 @@ Framing frame_plan(const Plan& plan, const Limits& limits) {
     const std::unordered_set<std::string_view> repeated_ids = ids_on_several_levels(lists);
     const Tolerance tolerance{noise_of(framing.largest_coordinate), plan.settings.snap};
     ProblemList problems(limits.problems);
+    refuse_twin_columns(plan, framing, problems);
     std::size_t room = limits.members;
     for (const LevelLists& level : lists) {
         room -= std::min(room, level.members.size());

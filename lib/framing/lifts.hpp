@@ -1,5 +1,7 @@
 #pragma once
 
+#include "framing/problem_list.hpp"
+
 #include <runnel/framing.hpp>
 #include <runnel/plan.hpp>
 
@@ -15,5 +17,9 @@ void set_supports(const Plan& plan, const Framing& framing, FramedLevel& level);
 
 /// The largest coordinate of anything in the plan, m.
 [[nodiscard]] double largest_coordinate_of(const Plan& plan);
+
+/// Columns within `snap` of each other between the same levels: an error, since what comes there cannot tell
+/// them apart.
+void refuse_twin_columns(const Plan& plan, const Framing& framing, ProblemList& problems);
 
 RUNNEL_NAMESPACE_END

@@ -1,5 +1,7 @@
 #include "framing/snap.hpp"
 
+#include "plan/ring_checks.hpp"
+
 #include <unordered_map>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -238,21 +240,17 @@ void tidy(Ring& ring, bool counter_clockwise) {
     }
 }
 
-/// No wider anywhere than snap: snapping left nothing of it.
+/// On average no wider than snap: snapping left as good as nothing of it.
 bool has_collapsed(const Ring& ring, double snap) {
-    double around = 0;
-    for (std::size_t i = 0; i < ring.size(); ++i) {
-        around += distance(ring[i], ring[(i + 1) % ring.size()]);
-    }
-    return ring.size() < 3 || std::abs(signed_area(ring)) <= snap * around / 2;
+    return ring.size() < 3 || mean_width(ring) <= snap;
 }
 
 void refuse_ring(LevelDraft& draft, const FramedDeck& deck, const std::string& which, Point at) {
     draft.problems.add(ProblemCode::ring_too_small, [&] {
         Problem problem = problem_at(ProblemCode::ring_too_small, deck.origin, "decks",
-                                     which + " of deck " + deck.id + " is nowhere wider than snap (" +
+                                     which + " of deck " + deck.id + " is on average no wider than snap (" +
                                          length_text(draft.tolerance.snap, draft.plan.units) +
-                                         "): nothing of it is left when points within snap are one.",
+                                         ") once points within snap are one.",
                                      "Check its points, or set a smaller snap.", {deck.id});
         problem.point = at;
         return problem;
@@ -287,13 +285,20 @@ void snap_decks(LevelDraft& draft) {
 }
 
 void note_moves(LevelDraft& draft) {
-    if (draft.points_moved == 0) {
+    if (draft.points_moved + draft.edges_bent == 0) {
         return;
+    }
+    std::string what = draft.points_moved > 0
+                           ? counted(draft.points_moved, "point was", "points were") + " moved"
+                           : std::string();
+    if (draft.edges_bent > 0) {
+        what += (what.empty() ? "" : " and ") +
+                counted(draft.edges_bent, "place of a deck's edge was", "places of decks' edges were") +
+                " drawn to a point beside it";
     }
     draft.problems.add(ProblemCode::points_merged, [&] {
         return level_problem(draft, ProblemCode::points_merged,
-                             "On level " + draft.level.id + ' ' +
-                                 counted(draft.points_moved, "point was", "points were") + " moved, by " +
+                             "On level " + draft.level.id + ' ' + what + ", by " +
                                  length_text(draft.largest_move, draft.plan.units) + " at most (snap is " +
                                  length_text(draft.tolerance.snap, draft.plan.units) + ").",
                              {}, {draft.level.id});

@@ -85,9 +85,27 @@ void set_resultant(LinePiece& piece, const Resultant& wanted) {
     }
 }
 
+/// Bound of how far the ordinates of two pieces are apart over the second one.
+double apart(const LinePiece& changed, const LinePiece& piece) {
+    LinePiece difference = changed.between(piece.from, piece.to);
+    for (std::size_t k = 0; k < piece.c.size(); ++k) {
+        difference.c[k] -= piece.c[k];
+    }
+    return size_over(difference, piece.to - piece.from);
+}
+
 struct Stretch {
     std::size_t from = 0, to = 0; ///< clusters
     LinePiece piece;
+    double moved = 0; ///< bound of what its ordinates changed by
+};
+
+/// A piece of the sum with bounds of what its ordinates changed by: where ends moved by noise, and where
+/// neighbours were joined.
+struct Summed {
+    LinePiece piece;
+    double moved = 0;
+    double joined = 0;
 };
 
 /// The piece stretched to other ends, its force and moment kept: a short steep piece would otherwise gain or
@@ -113,7 +131,7 @@ std::vector<Stretch> stretches_of(const std::vector<LinePiece>& pieces, const st
     std::vector<Stretch> stretches;
     stretches.reserve(pieces.size());
     for (const LinePiece& piece : pieces) {
-        Stretch stretch{cluster_of(clusters, piece.from), cluster_of(clusters, piece.to), piece};
+        Stretch stretch{cluster_of(clusters, piece.from), cluster_of(clusters, piece.to), piece, 0};
         if (stretch.from >= stretch.to) {
             left_over.push_back(piece);
             continue;
@@ -122,6 +140,7 @@ std::vector<Stretch> stretches_of(const std::vector<LinePiece>& pieces, const st
         const double to = clusters[stretch.to];
         if (from != piece.from || to != piece.to) {
             stretch.piece = moved_to(piece, from, to);
+            stretch.moved = apart(stretch.piece, piece);
         }
         stretches.push_back(stretch);
     }
@@ -134,24 +153,13 @@ bool is_nothing(const LinePiece& piece) {
     return std::all_of(piece.c.begin(), piece.c.end(), [](double c) { return c == 0; });
 }
 
-/// One polynomial for both, where they are the same to rounding, and where they may differ because a border
-/// moved by noise: by the force on a strip as narrow as that. It is that of the longer piece, since to
-/// continue a short one far would blow up its rounding; force and moment stay those of both.
-bool join(LinePiece& left, const LinePiece& right, double noise) {
-    if (left.to != right.from) {
-        return false;
-    }
+/// Whether a piece continues the other as the same polynomial, to rounding, and where they may differ because
+/// a border moved by noise: by the force on a strip as narrow as that.
+bool continues(const LinePiece& longer, const LinePiece& shorter, double reach, double own, double noise) {
     constexpr double fitted = 16; // set_resultant at most multiplies a strip's intensity by 4 + 12
-    const bool left_leads = left.to - left.from >= right.to - right.from;
-    const LinePiece& shorter = left_leads ? right : left;
-    const LinePiece continued = (left_leads ? left : right).between(shorter.from, shorter.to);
-    const double reach = right.to - left.from;
+    const LinePiece continued = longer.between(shorter.from, shorter.to);
     const double length = shorter.to - shorter.from;
-    const double size = std::max(size_over(left, reach), size_over(right, reach));
-    // What a moved border does counts by what stands on the pieces themselves, not by how far they would
-    // reach.
-    const double own =
-        std::max(size_over(left, left.to - left.from), size_over(right, right.to - right.from));
+    const double size = std::max(size_over(longer, reach), size_over(shorter, reach));
     const double allowed = rounding * size + fitted * noise / length * own;
     double power = 1;
     for (std::size_t k = 0; k < continued.c.size(); ++k) {
@@ -160,27 +168,85 @@ bool join(LinePiece& left, const LinePiece& right, double noise) {
         }
         power *= length;
     }
-    const Resultant both = resultant_of(left, left.from) + resultant_of(right, left.from);
-    left = left_leads ? LinePiece{left.from, right.to, left.c} : right.between(left.from, right.to);
-    set_resultant(left, both);
+    return true;
+}
+
+/// One polynomial for both, where they are the same: that of the longer piece, since to continue a short one
+/// far would blow up its rounding; force and moment stay those of both. Noise is coarse far from the origin
+/// and on short pieces, so what all joins of a piece change is limited besides.
+bool join(Summed& left, const Summed& right, double noise) {
+    if (left.piece.to != right.piece.from) {
+        return false;
+    }
+    constexpr double most = 1e-9; // of the ordinates: as far as a fitted curve may be off
+    const double left_length = left.piece.to - left.piece.from;
+    const double right_length = right.piece.to - right.piece.from;
+    const bool left_leads = left_length >= right_length;
+    // What a moved border does counts by what stands on the pieces themselves, not by how far they would
+    // reach.
+    const double own = std::max(size_over(left.piece, left_length), size_over(right.piece, right_length));
+    const LinePiece& longer = left_leads ? left.piece : right.piece;
+    const LinePiece& shorter = left_leads ? right.piece : left.piece;
+    if (!continues(longer, shorter, left_length + right_length, own, noise)) {
+        return false;
+    }
+    LinePiece whole = longer.between(left.piece.from, right.piece.to);
+    set_resultant(whole, resultant_of(left.piece, whole.from) + resultant_of(right.piece, whole.from));
+    const double joined =
+        std::max(left.joined + apart(whole, left.piece), right.joined + apart(whole, right.piece));
+    if (!(joined <= most * own)) {
+        return false;
+    }
+    left = {whole, std::max(left.moved, right.moved), joined};
     return true;
 }
 
 /// Adds a piece too short to stand by itself to the longer of its neighbours, with its force and moment.
-void absorb(std::vector<LinePiece>& pieces, const LinePiece& sliver) {
-    const auto after = std::upper_bound(pieces.begin(), pieces.end(), sliver.from,
-                                        [](double station, const LinePiece& p) { return station < p.from; });
-    auto chosen = after == pieces.begin() ? after : after - 1;
-    if (after != pieces.end() && after->from == chosen->to &&
-        after->to - after->from > chosen->to - chosen->from) {
+void absorb(std::vector<Summed>& sums, const LinePiece& sliver) {
+    const auto after =
+        std::upper_bound(sums.begin(), sums.end(), sliver.from,
+                         [](double station, const Summed& sum) { return station < sum.piece.from; });
+    auto chosen = after == sums.begin() ? after : after - 1;
+    if (after != sums.end() && after->piece.from == chosen->piece.to &&
+        after->piece.to - after->piece.from > chosen->piece.to - chosen->piece.from) {
         chosen = after;
     }
-    set_resultant(*chosen, resultant_of(*chosen, chosen->from) + resultant_of(sliver, chosen->from));
+    const LinePiece before = chosen->piece;
+    set_resultant(chosen->piece, resultant_of(before, before.from) + resultant_of(sliver, before.from));
+    chosen->moved += apart(chosen->piece, before);
+}
+
+/// The sum between every two clusters, neighbours joined.
+std::vector<Summed> sums_of(const std::vector<Stretch>& stretches, const std::vector<double>& clusters,
+                            double noise) {
+    std::vector<Summed> sums;
+    std::vector<Stretch> active;
+    std::size_t next = 0;
+    for (std::size_t i = 0; i + 1 < clusters.size(); ++i) {
+        active.erase(
+            std::remove_if(active.begin(), active.end(), [i](const Stretch& s) { return s.to <= i; }),
+            active.end());
+        for (; next < stretches.size() && stretches[next].from <= i; ++next) {
+            active.push_back(stretches[next]);
+        }
+        Summed sum{{clusters[i], clusters[i + 1], {}}, 0, 0};
+        for (const Stretch& stretch : active) {
+            const LinePiece part = stretch.piece.between(sum.piece.from, sum.piece.to);
+            for (std::size_t k = 0; k < part.c.size(); ++k) {
+                sum.piece.c[k] += part.c[k];
+            }
+            sum.moved += stretch.moved;
+        }
+        if (!is_nothing(sum.piece) && (sums.empty() || !join(sums.back(), sum, noise))) {
+            sums.push_back(sum);
+        }
+    }
+    return sums;
 }
 
 } // namespace
 
-std::vector<LinePiece> merged(std::vector<LinePiece> pieces, double noise) {
+std::vector<LinePiece> merged(std::vector<LinePiece> pieces, double noise, double* changed) {
     if (pieces.size() < 2) {
         return pieces;
     }
@@ -191,34 +257,20 @@ std::vector<LinePiece> merged(std::vector<LinePiece> pieces, double noise) {
     if (stretches.empty()) {
         return slivers;
     }
-
-    std::vector<LinePiece> result;
-    std::vector<Stretch> active;
-    std::size_t next = 0;
-    for (std::size_t i = 0; i + 1 < clusters.size(); ++i) {
-        active.erase(
-            std::remove_if(active.begin(), active.end(), [i](const Stretch& s) { return s.to <= i; }),
-            active.end());
-        for (; next < stretches.size() && stretches[next].from <= i; ++next) {
-            active.push_back(stretches[next]);
-        }
-        LinePiece sum{clusters[i], clusters[i + 1], {}};
-        for (const Stretch& stretch : active) {
-            const LinePiece part = stretch.piece.between(sum.from, sum.to);
-            for (std::size_t k = 0; k < sum.c.size(); ++k) {
-                sum.c[k] += part.c[k];
-            }
-        }
-        if (!is_nothing(sum) && (result.empty() || !join(result.back(), sum, noise))) {
-            result.push_back(sum);
-        }
-    }
+    std::vector<Summed> sums = sums_of(stretches, clusters, noise);
     for (const LinePiece& sliver : slivers) {
-        if (!result.empty()) {
-            absorb(result, sliver);
+        if (!sums.empty()) {
+            absorb(sums, sliver);
         }
     }
-    return result;
+    pieces.clear();
+    for (const Summed& sum : sums) {
+        pieces.push_back(sum.piece);
+        if (changed != nullptr) {
+            *changed = std::max(*changed, sum.moved + sum.joined);
+        }
+    }
+    return pieces;
 }
 
 RUNNEL_NAMESPACE_END

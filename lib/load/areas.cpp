@@ -1,5 +1,6 @@
 #include "load/phases.hpp"
 
+#include "deck/deck_area.hpp"
 #include "deck/pressure.hpp"
 #include "geometry/line_pieces.hpp"
 #include "load/strip_loads.hpp"
@@ -215,12 +216,7 @@ double magnitude_on(const StripPiece& piece, const Intensity& intensity, double 
 /// The account of what presses on a deck, from the deck alone: its rings and the zones, no carriers.
 void account_applied(const FramedDeck& deck, std::uint32_t index, const DeckPressure& pressure,
                      const StripAxes& plain, const std::vector<StripPiece>& pieces, Collector& collector) {
-    AreaMoments whole = moments_of(to_strip(plain, deck.outline), {0, 0});
-    for (const Ring& opening : deck.openings) {
-        const AreaMoments hole = moments_of(to_strip(plain, opening), {0, 0}); // clockwise: negative
-        whole.area += hole.area;
-        whole.moment = whole.moment + hole.moment;
-    }
+    const AreaMoments whole = moments_of_deck(deck, plain, collector.noise());
     for (const DeckPressure::Uniform& u : pressure.uniform()) {
         collector.applied(index, u.load_case, u.q * whole.area,
                           u.q * (whole.moment + whole.area * plain.origin), std::abs(u.q * whole.area));

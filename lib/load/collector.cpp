@@ -114,6 +114,7 @@ LevelLoads Collector::finish() {
     auto grouped = Grouped<CarrierLine>::from_pairs(carriers, std::move(lines_));
     loads.lines.reserve(carriers, grouped.items().size());
     std::vector<LinePiece> run;
+    double changed = 0; // kN/m, where pieces are joined
     for (std::size_t c = 0; c < carriers; ++c) {
         const std::span<CarrierLine> own = grouped[c];
         std::stable_sort(own.begin(), own.end(),
@@ -130,7 +131,7 @@ LevelLoads Collector::finish() {
                 for (std::size_t k = i; k < end; ++k) {
                     run.push_back(own[k].piece);
                 }
-                for (const LinePiece& piece : merged(std::move(run), noise_)) {
+                for (const LinePiece& piece : merged(std::move(run), noise_, &changed)) {
                     loads.lines.push({own[i].load_case, own[i].source, piece});
                 }
                 run = {};
@@ -172,7 +173,8 @@ LevelLoads Collector::finish() {
             }
         }
     }
-    loads.curve_error = largest_curve_error(curve_errors_);
+    const double curve_error = largest_curve_error(curve_errors_);
+    loads.curve_error = curve_error > 0 ? curve_error + changed : 0;
     loads.problems = std::move(problems);
     return loads;
 }

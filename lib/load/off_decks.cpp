@@ -58,7 +58,7 @@ void lay_on_deck(const FramedLevel& level, std::uint32_t d, std::span<const std:
     for (const std::uint32_t i : outlines) {
         const Intensity intensity = Plane(level.area_loads[i]).in(plain);
         const bool acts = std::binary_search(acting.begin(), acting.end(), i);
-        for (const Convex& zone : convex_zone(to_strip(plain, level.area_loads[i].outline), noise)) {
+        for (const Convex& zone : convex_zone(level.area_loads[i], plain, noise)) {
             const Box box = box_of(zone);
             for (const Convex& piece : pieces) {
                 if (!box.meets(box_of(piece))) {
@@ -80,23 +80,34 @@ std::string name_of(const FramedLevel& level, std::size_t i) {
            ")";
 }
 
+double length_around(const Ring& ring) {
+    double length = 0;
+    for (std::size_t k = 0; k < ring.size(); ++k) {
+        length += distance(ring[k], ring[(k + 1) % ring.size()]);
+    }
+    return length;
+}
+
 void note_off_decks(const Plan& plan, const FramedLevel& level, std::size_t i, const OnDecks& on,
-                    std::vector<Problem>& problems) {
+                    double noise, std::vector<Problem>& problems) {
     const AreaLoad& load = level.area_loads[i];
-    double around = 0;
-    for (std::size_t k = 0; k < load.outline.size(); ++k) {
-        around += distance(load.outline[k], load.outline[(k + 1) % load.outline.size()]);
+    double around = length_around(load.outline);
+    for (const Ring& opening : load.openings) {
+        around += length_around(opening);
     }
     const StripAxes plain{load.outline.front(), 1, 0};
-    Ring whole = to_strip(plain, load.outline);
-    if (signed_area(whole) < 0) {
-        std::reverse(whole.begin(), whole.end());
+    const Intensity intensity = Plane(load).in(plain);
+    Sum area;
+    Sum whole_force;
+    for (const Convex& piece : convex_zone(load, plain, noise)) {
+        area.add(moments_of(piece, {0, 0}).area);
+        whole_force.add(force_on(piece, intensity));
     }
-    const double off = signed_area(whole) - on.area.value();
+    const double off = area.value() - on.area.value();
     if (off <= plan.settings.snap * around) {
         return;
     }
-    const double force = force_on(whole, Plane(load).in(plain)) - on.force.value();
+    const double force = whole_force.value() - on.force.value();
     Problem problem = problem_at(ProblemCode::zone_off_decks, load.origin, "area_loads",
                                  name_of(level, i) + ": " + area_text(off, plan.units) +
                                      " of its outline lie off every deck; " + force_text(force, plan.units) +
@@ -138,7 +149,7 @@ void note_zones_off_decks(const Plan& plan, const Framing& framing, std::uint32_
     }
     for (std::size_t i = 0; i < level.area_loads.size(); ++i) {
         if (!level.area_loads[i].outline.empty()) {
-            note_off_decks(plan, level, i, on_decks[i], collector.problems);
+            note_off_decks(plan, level, i, on_decks[i], collector.noise(), collector.problems);
         }
         if (level.area_loads[i].plane) {
             warn_below_zero(plan, level, i, on_decks[i], collector.problems);

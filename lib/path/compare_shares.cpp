@@ -38,7 +38,7 @@ std::vector<Problem> errors_of(const Takedown& takedown) {
     return errors;
 }
 
-/// Reads the values of takedowns off, run by run, so that no two takedowns need be kept at a time.
+/// Reads the values of takedowns off, run by run: besides the plan's own takedown no more than one is kept.
 class Comparer {
 public:
     Comparer(ShareComparison& comparison, std::size_t cases) : to_(comparison) { to_.cases = cases; }
@@ -173,14 +173,15 @@ private:
 
 } // namespace
 
-std::optional<double> ShareComparison::percent(const std::vector<double>& values, std::size_t run,
-                                               std::size_t load_case) const {
-    if (!runs[run].complete || !runs[own].complete) {
+std::optional<double> ShareComparison::percent(const ComparedCarrier& carrier, ComparedValues values,
+                                               RunCase at) const {
+    const std::vector<double>& all = carrier.*values;
+    if (!runs[at.run].complete || !runs[own].complete || all.empty()) {
         return std::nullopt;
     }
     constexpr double whole = 100;
-    const double base = values[own * cases + load_case];
-    const double difference = values[run * cases + load_case] - base;
+    const double base = all[own * cases + at.load_case];
+    const double difference = all[at.run * cases + at.load_case] - base;
     if (std::abs(difference) <= noise) {
         return 0;
     }

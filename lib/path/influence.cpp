@@ -56,26 +56,46 @@ struct Floor {
     Grouped<std::uint32_t> over;   ///< by bearing: those that land right over it
 };
 
-void lay_beside(const Stretches& stretches, std::uint32_t member, const Beside& beside, Tolerance tolerance,
-                std::vector<std::pair<std::uint32_t, Patch>>& patches) {
+/// Lays a piece that counts whole beside every stretch that it shares more than `snap` with, and beside the
+/// one that it shares most with; where it goes to one point, beside those that meet there.
+void lay_whole(const Stretches& stretches, std::uint32_t member, const Beside& beside, double snap,
+               std::vector<std::pair<std::uint32_t, Patch>>& patches) {
     const double low = std::min(beside.station_from, beside.station_to);
     const double high = std::max(beside.station_from, beside.station_to);
-    const double least = beside.whole ? tolerance.snap : tolerance.noise;
-    const bool at_point = high - low <= least;
+    const bool at_point = high - low <= snap;
+    const std::uint32_t first = stretches.at(member, low);
+    const auto shared = [&](std::uint32_t s) {
+        return std::min(high, stretches.end(member, s)) - std::max(low, stretches.start(member, s));
+    };
+    std::uint32_t most = first;
+    for (std::uint32_t s = first; s < stretches.of(member) && stretches.start(member, s) <= high; ++s) {
+        most = shared(s) > shared(most) ? s : most;
+    }
+    for (std::uint32_t s = first; s < stretches.of(member) && stretches.start(member, s) <= high; ++s) {
+        if (at_point || s == most || shared(s) > snap) {
+            patches.push_back({stretches.first(member) + s, {beside.piece, 0, 1}});
+        }
+    }
+}
+
+void lay_by_stretches(const Stretches& stretches, std::uint32_t member, const Beside& beside, double noise,
+                      std::vector<std::pair<std::uint32_t, Patch>>& patches) {
+    const double low = std::min(beside.station_from, beside.station_to);
+    const double high = std::max(beside.station_from, beside.station_to);
+    const bool at_point = high - low <= noise;
     const double length = beside.station_to - beside.station_from;
     const auto fraction = [&](double station) {
         return std::clamp((station - beside.station_from) / length, 0.0, 1.0);
     };
-    const std::uint32_t last = stretches.of(member) - 1;
-    for (std::uint32_t s = stretches.at(member, low); s <= last; ++s) {
+    for (std::uint32_t s = stretches.at(member, low); s < stretches.of(member); ++s) {
         const double from = std::max(low, stretches.start(member, s));
         const double to = std::min(high, stretches.end(member, s));
         if (from > high) {
             return;
         }
-        if (at_point || (beside.whole && to - from > least)) {
+        if (at_point) {
             patches.push_back({stretches.first(member) + s, {beside.piece, 0, 1}});
-        } else if (!beside.whole && to - from > least) {
+        } else if (to - from > noise) {
             const double x = fraction(from);
             const double y = fraction(to);
             patches.push_back({stretches.first(member) + s, {beside.piece, std::min(x, y), std::max(x, y)}});
@@ -91,7 +111,11 @@ Floor lay_out(const FramedLevel& framed, const LevelPath& path, const FloorPiece
     const std::span<const Bearing> bearings = framed.bearings.items();
     for (std::uint32_t m = 0; m < framed.members.size(); ++m) {
         for (const Beside& beside : pieces.beside[m]) {
-            lay_beside(stretches, m, beside, tolerance, patches);
+            if (beside.whole) {
+                lay_whole(stretches, m, beside, tolerance.snap, patches);
+            } else {
+                lay_by_stretches(stretches, m, beside, tolerance.noise, patches);
+            }
         }
         const std::span<const Bearing> own = framed.bearings[m];
         const auto first = static_cast<std::uint32_t>(framed.bearings.first(m));
@@ -161,6 +185,7 @@ private:
             await(floor_.over[bearing]);
         }
         add_parts();
+        add_within();
         return area_.value();
     }
 
@@ -187,8 +212,22 @@ private:
         if (!whole) {
             parts_.push_back(patch);
         } else if (std::exchange(piece_seen_[patch.piece], carrier_) != carrier_) {
-            area_.add(pieces_.areas[patch.piece]);
+            if (pieces_.within[patch.piece] == none) {
+                area_.add(pieces_.areas[patch.piece]);
+            } else {
+                within_.push_back(patch.piece);
+            }
         }
+    }
+
+    /// Of pieces within others; where those are there they add nothing.
+    void add_within() {
+        for (const std::uint32_t piece : within_) {
+            if (piece_seen_[pieces_.within[piece]] != carrier_) {
+                area_.add(pieces_.areas[piece]);
+            }
+        }
+        within_.clear();
     }
 
     /// Parts of the same piece are united; of a piece that is there as a whole they add nothing.
@@ -220,6 +259,7 @@ private:
     std::vector<std::uint32_t> piece_seen_;
     std::vector<std::uint32_t> waiting_; ///< bearings that land on what has been gone through
     std::vector<Patch> parts_;
+    std::vector<std::uint32_t> within_; ///< pieces within others
     Sum area_;
 };
 

@@ -1,8 +1,8 @@
 #include "path/influence_pieces.hpp"
 
-#include "deck/panels.hpp"
 #include "geometry/box_tree.hpp"
 #include "path/influence_columns.hpp"
+#include "path/influence_panels.hpp"
 
 #include <algorithm>
 #include <optional>
@@ -30,12 +30,15 @@ public:
 
     FloorPieces make() {
         add_bays();
-        const Grouped<std::uint32_t> on_columns = cells_on_columns();
+        const Grouped<std::uint32_t> nearest = cells_of_nearest();
         for (std::uint32_t d = 0; d < framed_.decks.size(); ++d) {
+            if (nearest[d].empty()) {
+                continue;
+            }
             if (framed_.decks[d].span == SpanKind::two_way) {
-                add_panels(framed_.decks[d]);
-            } else if (!on_columns[d].empty()) {
-                add_felt_areas(d, on_columns[d]);
+                add_panels(framed_.decks[d], nearest[d]);
+            } else {
+                add_felt_areas(d, nearest[d]);
             }
         }
         pieces_.beside = Grouped<Beside>::from_pairs(sharing_.carrier_count(), std::move(beside_));
@@ -46,6 +49,7 @@ private:
     void add_bays() {
         pieces_.shapes.reserve(sharing_.bays.size());
         pieces_.areas.reserve(sharing_.bays.size());
+        pieces_.within.reserve(sharing_.bays.size());
         beside_.reserve(2 * sharing_.bays.size());
         for (const Bay& bay : sharing_.bays) {
             pieces_.shapes.push_back({bay.from, bay.to, bay.low, bay.high});
@@ -61,25 +65,20 @@ private:
         }
     }
 
-    std::uint32_t add_piece(double area) {
+    std::uint32_t add_piece(double area, std::uint32_t within = none) {
         pieces_.areas.push_back(area);
+        pieces_.within.push_back(within);
         return static_cast<std::uint32_t>(pieces_.areas.size() - 1);
     }
 
-    void add_panels(const FramedDeck& deck) {
-        const std::vector<LineCarrier> carriers = carriers_near(deck);
-        for (const Panel& panel : divide_into_panels(deck, carriers, tolerance_).panels) {
-            const std::uint32_t piece = add_piece(panel.area);
-            const auto lay_beside = [&](const std::vector<PanelEdge>& border) {
-                for (const PanelEdge& edge : border) {
-                    if (edge.carrier != none) {
-                        beside_.push_back({carriers[edge.carrier].number,
-                                           {piece, edge.station_from, edge.station_to, true}});
-                    }
-                }
-            };
-            lay_beside(panel.outer);
-            std::for_each(panel.holes.begin(), panel.holes.end(), lay_beside);
+    void add_panels(const FramedDeck& deck, std::span<const std::uint32_t> cells) {
+        const auto first = static_cast<std::uint32_t>(pieces_.areas.size());
+        for (const PanelPart& part : panel_parts(deck, carriers_near(deck), sharing_, cells, tolerance_)) {
+            const std::uint32_t piece =
+                add_piece(part.area, part.within == none ? none : first + part.within);
+            for (const FeltAlong& along : part.along) {
+                beside_.push_back({along.carrier, {piece, along.station_from, along.station_to, true}});
+            }
         }
     }
 
@@ -124,12 +123,12 @@ private:
         }
     }
 
-    /// Cells of decks on columns that go to any, by deck.
-    Grouped<std::uint32_t> cells_on_columns() const {
+    /// Cells of two-way decks and decks on columns that go to any carrier, by deck.
+    Grouped<std::uint32_t> cells_of_nearest() const {
         std::vector<std::pair<std::uint32_t, std::uint32_t>> cells;
         for (std::uint32_t c = 0; c < sharing_.cells.size(); ++c) {
             const std::uint32_t deck = sharing_.cells[c].deck;
-            if (framed_.decks[deck].span == SpanKind::columns && !sharing_.transfers[c].empty()) {
+            if (framed_.decks[deck].span != SpanKind::one_way && !sharing_.transfers[c].empty()) {
                 cells.emplace_back(deck, c);
             }
         }

@@ -18,15 +18,18 @@ struct Beside {
     bool whole = false; ///< counts whole, however short the stretch
 };
 
-/// The floor of a level in pieces that do not overlap, and which of them lie beside each carrier: the one
-/// thing that influence areas ask of decks. A load anywhere on a piece is felt by the carriers beside it.
+/// The floor of a level in pieces, and which of them lie beside each carrier: the one thing that influence
+/// areas ask of decks. A load anywhere on a piece is felt by the carriers beside it. Pieces do not overlap,
+/// but for some that lie within another one and have more carriers beside them.
 ///
-/// One-way decks: the bays, from carrier to carrier, or from the last carrier to the edge. Two-way decks: the
-/// panels between carriers, whole. Decks on columns: see influence_columns.hpp.
+/// One-way decks: the bays, from carrier to carrier, or from the last carrier to the edge; a deck ends at its
+/// outline, also where another goes on. Two-way decks: see influence_panels.hpp; decks on columns: see
+/// influence_columns.hpp.
 struct FloorPieces {
-    std::vector<StripPiece> shapes; ///< of the first pieces; those after them count whole
-    std::vector<double> areas;      ///< by piece, m2
-    Grouped<Beside> beside;         ///< by carrier, numbered as in Sharing
+    std::vector<StripPiece> shapes;    ///< of the first pieces; those after them count whole
+    std::vector<double> areas;         ///< by piece, m2
+    std::vector<std::uint32_t> within; ///< by piece: that it is part of; none of most
+    Grouped<Beside> beside;            ///< by carrier, numbered as in Sharing
 
     /// Area of a piece between two fractions of it.
     [[nodiscard]] double area_between(std::uint32_t piece, double from, double to) const;

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <array>
 #include <map>
+#include <utility>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -61,11 +62,25 @@ ClosedDiagram::ClosedDiagram(std::span<const AxisLine> lines, std::vector<Point>
                              double noise) {
     const std::array<Point, 4> guards = far_points(box);
     points.insert(points.end(), guards.begin(), guards.end());
-    const Grid grid(box_of(points).grown(noise), 0);
-    noded = node_on_grid(lines, points, grid);
-    const std::span<const std::uint32_t> open(
-        noded.node_of_point.data() + noded.node_of_point.size() - guards.size(), guards.size());
-    voronoi = segment_voronoi(lines, noded, grid, open, noise);
+    const Box window = box_of(points).grown(noise);
+    bool first = true;
+    // Where rounding to the grid has upset the topology, a grid that is turned will hardly do the same.
+    for (const double radians : {0.0, 0.3, 1.0, 2.2}) {
+        const Grid grid(window, radians);
+        NodedLines cut = node_on_grid(lines, points, grid);
+        const std::span<const std::uint32_t> open(
+            cut.node_of_point.data() + cut.node_of_point.size() - guards.size(), guards.size());
+        VoronoiDiagram drawn = segment_voronoi(lines, cut, grid, open, noise);
+        const bool sound = cut.settled && drawn.trusted;
+        if (sound || first) {
+            noded = std::move(cut);
+            voronoi = std::move(drawn);
+        }
+        if (sound) {
+            break;
+        }
+        first = false;
+    }
 }
 
 namespace {

@@ -26,7 +26,8 @@ struct Site {
                                            Tolerance tolerance);
 
 /// The Voronoi diagram of lines and points; its sites are the nodes after the pieces of lines. Four nodes of
-/// its own, far out, close the cells of all others.
+/// its own, far out, close the cells of all others. One that cannot be trusted is drawn anew on turned grids;
+/// if none can be, the first stays.
 struct ClosedDiagram {
     NodedLines noded;
     VoronoiDiagram voronoi;

@@ -55,7 +55,7 @@ void check_loads(const Plan& plan, const Framing& framing, std::uint32_t level, 
 
 /// Splits and loads every level; levels know nothing of each other here. Problems come out in the order of
 /// phases, then of levels, whatever the number of threads.
-std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, unsigned threads,
+std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, bool framed, unsigned threads,
                                     PathInput& input) {
     const std::size_t levels = framing.levels.size();
     input.sharing.resize(levels);
@@ -65,7 +65,8 @@ std::vector<Problem> share_and_load(const Plan& plan, const Framing& framing, un
     for_each_index(levels, threads, [&](std::size_t l) {
         const auto level = static_cast<std::uint32_t>(l);
         input.sharing[l] = share_decks(plan, framing, level);
-        const bool whole = !has_errors(input.sharing[l].problems);
+        // Where the framing has errors the laws would tell of those again, as if the program were at fault.
+        const bool whole = framed && !has_errors(input.sharing[l].problems);
         if (whole) {
             check_split(plan, framing, level, input.sharing[l], broken[l]);
         }
@@ -99,7 +100,7 @@ Takedown take_down(Plan plan, const TakedownOptions& options) {
     // Sharing and loads need members, not bearings: their problems are found in the same pass as those of
     // framing.
     PathInput input;
-    std::vector<Problem> more = share_and_load(plan, framing, options.threads, input);
+    std::vector<Problem> more = share_and_load(plan, framing, !has_errors(problems), options.threads, input);
     append(problems, more);
     if (has_errors(problems)) {
         return stopped(std::move(plan), std::move(framing), std::move(problems));

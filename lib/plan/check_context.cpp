@@ -190,25 +190,29 @@ Ring CheckContext::good_ring(const Ring& ring, const Subject& subject, std::stri
                    " further apart than `snap`, " + lengths(snap) + "; a ring takes at least 3.");
         return {};
     }
-    double around = 0;
-    for (std::size_t i = 0; i < kept.size(); ++i) {
-        around += distance(kept[i], kept[(i + 1) % kept.size()]);
-    }
-    const std::optional<Point> contact = self_contact(kept, snap);
-    const double area = std::abs(signed_area(kept));
-    // A strip along its whole length no wider than `snap` has this area or less.
-    if (area <= snap * around / 2 && !(contact && kept.size() > fewest)) {
+    const std::optional<SelfContact> contact = self_contact(kept, snap);
+    // What is wider only in places is refused too: snapping its corners may leave nothing of it.
+    const double width = mean_width(kept);
+    if (width <= snap && !(contact && kept.size() > fewest)) {
         report(subject, ProblemCode::ring_too_small, inside,
-               name + " has an area of " + area_text(area, plan.units) +
-                   ": it is nowhere wider than `snap`, " + lengths(snap) + '.')
+               name + " has an area of " + area_text(std::abs(signed_area(kept)), plan.units) +
+                   " and a mean width (area by half the length around) of " + lengths(width) +
+                   ", no more than `snap`, " + lengths(snap) + '.')
             .point = kept.front();
         return {};
     }
     if (contact) {
+        const bool crosses =
+            contact->gap <= noise_of(std::max(std::abs(contact->at.x), std::abs(contact->at.y)));
+        const std::string place = point_text(contact->at, plan.units);
         report(subject, ProblemCode::ring_crosses_itself, inside,
-               name + " crosses or touches itself at " + point_text(*contact, plan.units) + '.',
-               "List its corners in order, once around.")
-            .point = *contact;
+               crosses
+                   ? name + " crosses or touches itself at " + place + '.'
+                   : name + " comes within " + lengths(contact->gap) + " of itself at " + place +
+                         "; what is no further apart than `snap`, " + lengths(snap) + ", is taken as one.",
+               crosses ? "List its corners in order, once around."
+                       : "Widen or close the gap, or set a smaller `snap`.")
+            .point = contact->at;
         return {};
     }
     return kept;

@@ -38,6 +38,11 @@ private:
 void check_members(CheckContext& context, const LevelIndex& index, std::size_t level);
 void check_joist_fields(CheckContext& context, std::size_t level);
 void check_decks(CheckContext& context, std::size_t level);
+/// Openings of a deck or of an area load's outline: each a good ring, inside the outline but for `snap`, and
+/// no two sharing area. `outside`: the code of one that reaches outside. An empty outline is one that could
+/// not be worked with, and nothing is compared with it.
+void check_openings(CheckContext& context, const std::vector<Ring>& openings, const Ring& outline,
+                    const Subject& subject, ProblemCode outside);
 void check_loads(CheckContext& context, const LevelIndex& index, std::size_t level);
 void check_later_references(CheckContext& context, const LevelIndex& index);
 

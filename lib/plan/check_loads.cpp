@@ -64,9 +64,12 @@ void check_area_load(CheckContext& context, const LevelIndex& index, std::size_t
     } else {
         context.good_number(load.q, subject, "/q", dimension::area_load);
     }
-    if (!load.outline.empty()) {
-        (void)context.good_ring(load.outline, subject, "/outline");
+    const Ring outline = load.outline.empty() ? Ring{} : context.good_ring(load.outline, subject, "/outline");
+    if (load.outline.empty() && !load.openings.empty() && !context.from_text) { // else told when it was read
+        context.report(subject, ProblemCode::conflicting_keys, "/openings",
+                       "`openings` of " + subject.name() + " needs an `outline`, in which it leaves holes.");
     }
+    check_openings(context, load.openings, outline, subject, ProblemCode::opening_outside_zone);
     for (std::size_t k = 0; k < load.decks.size(); ++k) {
         const std::string& name = load.decks[k];
         const std::optional<std::string_view> id = index.local_id(level, name);

@@ -119,79 +119,24 @@ void check_joist_fields(CheckContext& context, std::size_t level) {
 
 namespace {
 
-struct Opening {
-    std::size_t index;
-    Ring ring;
-};
-
-/// Each opening with the first one before it that it shares area with.
-void check_overlaps(CheckContext& context, const std::vector<Opening>& openings, const Subject& subject) {
-    if (openings.size() < 2) {
+/// Under another span all load goes to what is nearest.
+void warn_of_keys_without_effect(CheckContext& context, const Deck& deck, const Subject& subject) {
+    if (deck.span == SpanKind::one_way) {
         return;
     }
-    std::vector<Box> boxes;
-    for (const Opening& opening : openings) {
-        // Less than `snap` is no overlap: neighbours that only touch are not even looked at.
-        boxes.push_back(box_of(opening.ring).grown(-context.snap / 2));
+    const std::string follow = "which only one-way decks follow; this one is `" +
+                               std::string(name_of(deck.span)) + "`, where all load goes to what is nearest.";
+    constexpr const char* hint = "Leave it out, or make the deck one-way.";
+    if (deck.direction) {
+        context.report(subject, ProblemCode::key_has_no_effect, "/direction",
+                       "`direction` of " + subject.name() + " is given, " + follow, hint);
     }
-    std::vector<std::optional<RingQuery>> queries(openings.size());
-    const auto query = [&](std::size_t i) -> const RingQuery& {
-        if (!queries[i]) {
-            queries[i].emplace(openings[i].ring, context.snap);
-        }
-        return *queries[i];
-    };
-    const BoxTree tree(boxes);
-    std::vector<std::uint32_t> near;
-    constexpr std::size_t most = 100; // of one deck: the rest is the same mistake
-    std::size_t told = 0;
-    for (std::uint32_t i = 1; i < openings.size() && told < most; ++i) {
-        tree.find(boxes[i], near);
-        for (const std::uint32_t k : near) {
-            if (k >= i) {
-                break;
-            }
-            if (const auto p = shared_point(query(i), openings[i].ring, query(k), openings[k].ring)) {
-                ++told;
-                context
-                    .report(subject, ProblemCode::openings_overlap,
-                            "/openings/" + std::to_string(openings[i].index),
-                            "Openings " + std::to_string(openings[k].index) + " and " +
-                                std::to_string(openings[i].index) + " of " + subject.name() +
-                                " share area around " + point_text(*p, context.plan.units) +
-                                (told == most ? "; no more overlaps of this deck are listed." : "."),
-                            "Draw them as one opening.")
-                    .point = *p;
-                break;
-            }
-        }
+    if (deck.share.value_or(Share::half) != Share::half) {
+        context.report(subject, ProblemCode::key_has_no_effect, "/share",
+                       "`share` of " + subject.name() + " is `" + std::string(name_of(*deck.share)) + "`, " +
+                           follow,
+                       hint);
     }
-}
-
-void check_openings(CheckContext& context, const Deck& deck, const Ring& outline, const Subject& subject) {
-    std::optional<RingQuery> query;
-    if (!outline.empty()) {
-        query.emplace(outline, context.snap);
-    }
-    std::vector<Opening> good;
-    for (std::size_t i = 0; i < deck.openings.size(); ++i) {
-        const std::string inside = "/openings/" + std::to_string(i);
-        Ring ring = context.good_ring(deck.openings[i], subject, inside);
-        if (ring.empty()) {
-            continue;
-        }
-        if (const auto p = query ? query->point_beyond(ring, Side::outside) : std::nullopt) {
-            context
-                .report(subject, ProblemCode::opening_outside_deck, inside,
-                        "Opening " + std::to_string(i) + " of " + subject.name() +
-                            " reaches outside the deck at " + point_text(*p, context.plan.units) +
-                            ", by more than `snap`, " + context.lengths(context.snap) + '.',
-                        "Let it end at the deck's edge, or draw the edge around it.")
-                .point = *p;
-        }
-        good.push_back({i, std::move(ring)});
-    }
-    check_overlaps(context, good, subject);
 }
 
 } // namespace
@@ -204,7 +149,7 @@ void check_decks(CheckContext& context, std::size_t level) {
             CheckContext::subject(deck, "decks", "deck", i, static_cast<std::uint32_t>(level));
         const Ring outline = context.good_ring(deck.outline, subject, "/outline");
         if (!deck.openings.empty()) {
-            check_openings(context, deck, outline, subject);
+            check_openings(context, deck.openings, outline, subject, ProblemCode::opening_outside_deck);
         }
         if (deck.span == SpanKind::one_way && !deck.direction) {
             context.report(subject, ProblemCode::missing_key, "",
@@ -214,13 +159,7 @@ void check_decks(CheckContext& context, std::size_t level) {
         if (deck.direction) {
             context.good_number(*deck.direction, subject, "/direction", dimension::none);
         }
-        if (deck.span != SpanKind::one_way && deck.share.value_or(Share::half) != Share::half) {
-            context.report(subject, ProblemCode::share_has_no_effect, "/share",
-                           "`share` of " + subject.name() + " is `" + std::string(name_of(*deck.share)) +
-                               "`, which only one-way decks follow; this one is `" +
-                               std::string(name_of(deck.span)) + "`, where all load goes to what is nearest.",
-                           "Leave it out, or make the deck one-way.");
-        }
+        warn_of_keys_without_effect(context, deck, subject);
         if (deck.span != SpanKind::two_way && deck.corner_angles != CornerAngles::equal) {
             context.report(subject, ProblemCode::conflicting_keys, "/corner_angles",
                            "`corner_angles` of " + subject.name() +

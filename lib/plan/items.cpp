@@ -200,13 +200,22 @@ JoistField read_joist_field(ObjectReader& object) {
     return field;
 }
 
+namespace {
+
+std::vector<Ring> rings_from(const JsonValue& value) {
+    std::vector<Ring> rings;
+    value.each("a list of rings", [&](const JsonValue& ring) { rings.push_back(ring_from(ring)); });
+    return rings;
+}
+
+} // namespace
+
 Deck read_deck(ObjectReader& object) {
     Deck deck;
     deck.id = object.id();
     deck.outline = object.ring("outline", Need::required);
     if (const auto openings = object.value("openings")) {
-        openings->each("a list of rings",
-                       [&](const JsonValue& opening) { deck.openings.push_back(ring_from(opening)); });
+        deck.openings = rings_from(*openings);
     }
     const auto span_word = object.value("span");
     const std::optional<SpanKind> span =
@@ -276,11 +285,28 @@ AreaLoad read_area_load(ObjectReader& object) {
             load.q = quantity_from(*q, dimension::area_load);
         }
     }
-    load.outline = object.ring("outline", Need::optional);
+    const auto outline = object.value("outline");
+    if (outline) {
+        load.outline = ring_from(*outline);
+    }
+    if (const auto openings = object.value("openings")) {
+        load.openings = rings_from(*openings);
+        if (!outline) {
+            openings->report(
+                ProblemCode::conflicting_keys,
+                openings->name() + " needs an `outline`, in which it leaves holes.",
+                "Give the outline, or leave `openings` out: an opening of a deck carries no load "
+                "anyway.");
+            load.openings.clear();
+        }
+    }
     load.decks = object.texts("decks");
     load.replaces = object.boolean("replaces", false);
-    load.allowance = object.text("allowance");
-    note_without_effect(object.value("allowance"));
+    const auto allowance = object.value("allowance");
+    if (allowance) {
+        load.allowance = text_from(*allowance, "a text");
+    }
+    note_without_effect(allowance);
     return load;
 }
 

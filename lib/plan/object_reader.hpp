@@ -142,7 +142,8 @@ template <class Choice>
 
 enum class Need : std::uint8_t { optional, required };
 
-/// Reads an object by asking for its keys; `finish` reports those that nobody asked for.
+/// Reads an object by asking for its keys, each once (keys are counted, so that nothing is looked for when
+/// all are found); `finish` reports those that nobody asked for.
 class ObjectReader {
 public:
     /// `value` must be an object.

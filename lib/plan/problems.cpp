@@ -3,6 +3,7 @@
 #include <array>
 #include <charconv>
 #include <cmath>
+#include <limits>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -87,13 +88,45 @@ std::string force_text(double kilonewtons, Units units) {
     return quantity_text(kilonewtons, units, dimension::force);
 }
 
+namespace {
+
+/// So many decimals that a step of the last one is no more than a millimetre.
+int decimals_to_a_millimetre(LengthUnit unit) {
+    switch (unit) {
+    case LengthUnit::m:
+    case LengthUnit::ft:
+        return 3;
+    case LengthUnit::in:
+        return 2;
+    case LengthUnit::cm:
+        return 1;
+    case LengthUnit::mm:
+        return 0;
+    }
+    return 3;
+}
+
+/// With no more than that many decimals, and no zeros at the end of them.
+std::string fixed_text(double value, int decimals) {
+    std::array<char, std::numeric_limits<double>::max_exponent10 + 20> buffer;
+    const auto [end, error] = std::to_chars(buffer.data(), buffer.data() + buffer.size(), value,
+                                            std::chars_format::fixed, decimals);
+    std::string text(buffer.data(), end);
+    if (text.find('.') != std::string::npos) {
+        text.erase(text.find_last_not_of('0') + 1);
+        if (text.back() == '.') {
+            text.pop_back();
+        }
+    }
+    return text == "-0" ? "0" : text;
+}
+
+} // namespace
+
 std::string point_text(Point point, Units units) {
     const double scale = si_per_unit(units, dimension::length);
-    // What is far below anything that can be built is rounding of zero.
-    constexpr double nothing = 1e-9; // m
-    point.x = std::abs(point.x) < nothing ? 0 : point.x;
-    point.y = std::abs(point.y) < nothing ? 0 : point.y;
-    return '(' + text_of(point.x / scale) + ", " + text_of(point.y / scale) + ')';
+    const int decimals = decimals_to_a_millimetre(units.length);
+    return '(' + fixed_text(point.x / scale, decimals) + ", " + fixed_text(point.y / scale, decimals) + ')';
 }
 
 RUNNEL_NAMESPACE_END

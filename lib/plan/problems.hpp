@@ -32,7 +32,8 @@ RUNNEL_NAMESPACE_BEGIN
 [[nodiscard]] std::string length_text(double metres, Units units);
 [[nodiscard]] std::string area_text(double square_metres, Units units);
 [[nodiscard]] std::string force_text(double kilonewtons, Units units);
-/// A plan point in the document's units: "(4.5, 1)".
+/// A plan point in the document's units, to the millimetre or less wherever it lies: "(4.5, 1)",
+/// "(400012.375, -3)".
 [[nodiscard]] std::string point_text(Point point, Units units);
 
 /// Shortest text that reads back to the same double (data files).

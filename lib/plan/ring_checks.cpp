@@ -21,24 +21,24 @@ bool segments_meet(Point a, Point b, Point c, Point d) {
     return (ca < 0) != (cb < 0) && (ac < 0) != (ad < 0);
 }
 
-/// A point within `snap` of both segments.
-std::optional<Point> contact_of(Point a, Point b, Point c, Point d, double snap) {
-    for (const Point p : {a, b}) {
-        if (distance_to_segment(p, c, d) <= snap) {
-            return p;
-        }
-    }
-    for (const Point p : {c, d}) {
-        if (distance_to_segment(p, a, b) <= snap) {
-            return p;
-        }
-    }
+/// Where two segments cross, or come within `snap` of each other.
+std::optional<SelfContact> contact_of(Point a, Point b, Point c, Point d, double snap) {
     if (segments_meet(a, b, c, d)) {
         const double ca = cross(d - c, a - c);
         const double cb = cross(d - c, b - c);
-        return between(a, b, ca / (ca - cb));
+        return SelfContact{between(a, b, ca / (ca - cb)), 0};
     }
-    return std::nullopt;
+    // Apart, they are nearest to each other at an end of one.
+    SelfContact nearest{a, distance_to_segment(a, c, d)};
+    const auto see = [&nearest](Point p, double gap) {
+        if (gap < nearest.gap) {
+            nearest = {p, gap};
+        }
+    };
+    see(b, distance_to_segment(b, c, d));
+    see(c, distance_to_segment(c, a, b));
+    see(d, distance_to_segment(d, a, b));
+    return nearest.gap <= snap ? std::optional(nearest) : std::nullopt;
 }
 
 class SelfContactSweep {
@@ -55,7 +55,7 @@ public:
         }
     }
 
-    std::optional<Point> run() {
+    std::optional<SelfContact> run() {
         struct Event {
             double x;
             bool starts;
@@ -74,7 +74,7 @@ public:
         std::vector<Order::iterator> handles(n, order_.end());
         for (const Event& event : events) {
             x_ = event.x;
-            const std::optional<Point> found =
+            const std::optional<SelfContact> found =
                 event.starts ? enter(event.edge, handles) : leave(event.edge, handles);
             if (found) {
                 return found;
@@ -122,7 +122,7 @@ private:
         return turn != 0 ? turn > 0 : e < f;
     }
 
-    std::optional<Point> compare(std::uint32_t e, std::uint32_t f) const {
+    std::optional<SelfContact> compare(std::uint32_t e, std::uint32_t f) const {
         const auto n = static_cast<std::uint32_t>(ring_.size());
         if ((e + 1) % n == f || (f + 1) % n == e) {
             return std::nullopt; // neighbours are looked at by themselves
@@ -130,7 +130,7 @@ private:
         return contact_of(ring_[e], ring_[(e + 1) % n], ring_[f], ring_[(f + 1) % n], snap_);
     }
 
-    std::optional<Point> enter(std::uint32_t e, std::vector<Order::iterator>& handles) {
+    std::optional<SelfContact> enter(std::uint32_t e, std::vector<Order::iterator>& handles) {
         const auto it = order_.insert(e).first;
         handles[e] = it;
         if (it != order_.begin()) {
@@ -141,13 +141,13 @@ private:
         const auto above = std::next(it);
         return above != order_.end() ? compare(e, *above) : std::nullopt;
     }
-    std::optional<Point> leave(std::uint32_t e, std::vector<Order::iterator>& handles) {
+    std::optional<SelfContact> leave(std::uint32_t e, std::vector<Order::iterator>& handles) {
         const auto it = handles[e];
         if (it == order_.end()) {
             return std::nullopt;
         }
         const auto above = std::next(it);
-        std::optional<Point> found;
+        std::optional<SelfContact> found;
         if (it != order_.begin() && above != order_.end()) {
             found = compare(*std::prev(it), *above);
         }
@@ -162,23 +162,23 @@ private:
     Order order_;
 };
 
-std::optional<Point> contact_of_neighbours(const Ring& ring, double snap) {
+std::optional<SelfContact> contact_of_neighbours(const Ring& ring, double snap) {
     const std::size_t n = ring.size();
     for (std::size_t i = 0; i < n; ++i) {
         const Point before = ring[i];
         const Point corner = ring[(i + 1) % n];
         const Point after = ring[(i + 2) % n];
-        if (distance_to_segment(before, corner, after) <= snap) {
-            return before;
+        if (const double gap = distance_to_segment(before, corner, after); gap <= snap) {
+            return SelfContact{before, gap};
         }
-        if (distance_to_segment(after, before, corner) <= snap) {
-            return after;
+        if (const double gap = distance_to_segment(after, before, corner); gap <= snap) {
+            return SelfContact{after, gap};
         }
     }
     return std::nullopt;
 }
 
-std::optional<Point> contact_of_all(const Ring& ring, double snap) {
+std::optional<SelfContact> contact_of_all(const Ring& ring, double snap) {
     const std::size_t n = ring.size();
     for (std::size_t i = 0; i < n; ++i) {
         for (std::size_t j = i + 2; j < n; ++j) {
@@ -195,6 +195,14 @@ std::optional<Point> contact_of_all(const Ring& ring, double snap) {
 
 } // namespace
 
+double mean_width(const Ring& ring) {
+    double around = 0;
+    for (std::size_t i = 0; i < ring.size(); ++i) {
+        around += distance(ring[i], ring[(i + 1) % ring.size()]);
+    }
+    return around > 0 ? 2 * std::abs(signed_area(ring)) / around : 0;
+}
+
 Ring without_repeats(const Ring& ring, double snap) {
     Ring kept;
     kept.reserve(ring.size());
@@ -209,7 +217,7 @@ Ring without_repeats(const Ring& ring, double snap) {
     return kept;
 }
 
-std::optional<Point> self_contact(const Ring& ring, double snap) {
+std::optional<SelfContact> self_contact(const Ring& ring, double snap) {
     if (const auto p = contact_of_neighbours(ring, snap)) {
         return p;
     }

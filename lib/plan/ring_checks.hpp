@@ -13,9 +13,17 @@ RUNNEL_NAMESPACE_BEGIN
 /// The ring without corners within `snap` of the one before: what will be one point after snapping.
 [[nodiscard]] Ring without_repeats(const Ring& ring, double snap);
 
+/// Area by half the length around: the width, on average, of what is long and narrow.
+[[nodiscard]] double mean_width(const Ring& ring);
+
+struct SelfContact {
+    Point at;
+    double gap = 0; ///< between the two parts of the ring, m; 0 where they cross
+};
+
 /// A place where a ring (without repeats) comes within `snap` of itself elsewhere than at a corner's own two
 /// edges; nothing if it is simple. O(n log n): a sweep that compares neighbours only (Shamos and Hoey 1976).
-[[nodiscard]] std::optional<Point> self_contact(const Ring& ring, double snap);
+[[nodiscard]] std::optional<SelfContact> self_contact(const Ring& ring, double snap);
 
 enum class Side : std::uint8_t { inside, outside };
 

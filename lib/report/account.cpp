@@ -235,8 +235,8 @@ void Account::level_members(std::uint32_t level, std::size_t most) {
                    indent);
     }
     if (const double off = takedown_.levels[level].loads.curve_error; off > 0) {
-        page_.paragraph("line loads of strips on skew carriers are fitted curves: force and first moment are "
-                        "kept, ordinates are within " +
+        page_.paragraph("loads between skew carriers are fitted curves: force and first moment are kept, "
+                        "ordinates are within " +
                             three_figures(off / scale_.line_load) + ' ' +
                             unit_text(scale_.units, dimension::line_load),
                         indent);

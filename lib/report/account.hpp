@@ -43,6 +43,7 @@ private:
     std::size_t balance_rows(PageTable& table, std::string_view where, std::span<const Balance> balances,
                              bool all) const;
     bool support_rows(PageTable& table) const;
+    [[nodiscard]] std::string moved(const Balance& balance) const;
     /// Joists of one field that read the same stand in one row, under the first one's id.
     struct Alike {
         std::uint32_t first = 0; ///< member
@@ -70,16 +71,16 @@ private:
     [[nodiscard]] std::string area_load(double kilonewtons_per_square_metre) const;
     [[nodiscard]] std::string area_load_unit() const;
 
-    using Values = std::vector<double> ComparedCarrier::*;
     struct ComparedGroup {
         const ComparedCarrier* first = nullptr;
         std::size_t count = 0;
     };
     void stopped_share(const ShareRun& run);
-    void compared(std::string_view heading, const std::vector<ComparedCarrier>& carriers, Values values);
+    void compared(std::string_view heading, const std::vector<ComparedCarrier>& carriers,
+                  ComparedValues values);
     [[nodiscard]] std::vector<ComparedGroup> differing(const std::vector<ComparedCarrier>& carriers,
-                                                       Values values) const;
-    void compared_rows(PageTable& table, const ComparedGroup& group, Values values) const;
+                                                       ComparedValues values) const;
+    void compared_rows(PageTable& table, const ComparedGroup& group, ComparedValues values) const;
 
     const Takedown& takedown_;
     const ShareComparison* shares_;

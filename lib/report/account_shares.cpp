@@ -50,7 +50,8 @@ void Account::shares() {
     page_.paragraph("%: difference from " +
                         (own.share ? '`' + std::string(name_of_run(own)) + "`, which this plan uses"
                                    : std::string("the plan's own shares, which are not all alike")) +
-                        "; carriers and cases that differ, the most different first",
+                        "; carriers and cases that differ, sorted by their largest change as part of what "
+                        "the carrier takes in all cases together",
                     indent);
     for (const ShareRun& run : shares_->runs) {
         if (!run.complete) {
@@ -81,13 +82,13 @@ void Account::stopped_share(const ShareRun& run) {
 
 /// Carriers that differ; joists of one field that read the same in one group.
 std::vector<Account::ComparedGroup> Account::differing(const std::vector<ComparedCarrier>& carriers,
-                                                       Values values) const {
+                                                       ComparedValues values) const {
     std::vector<ComparedGroup> groups;
-    const auto differs = [&](const std::vector<double>& all) {
-        for (std::size_t i = 0; i < all.size(); ++i) {
-            const std::size_t run = i / shares_->cases;
-            const std::optional<double> percent = shares_->percent(all, run, i % shares_->cases);
-            if (shares_->runs[run].complete && (!percent || *percent != 0)) {
+    const auto differs = [&](const ComparedCarrier& carrier) {
+        for (std::size_t i = 0; i < (carrier.*values).size(); ++i) {
+            const RunCase at{i / shares_->cases, i % shares_->cases};
+            const std::optional<double> percent = shares_->percent(carrier, values, at);
+            if (shares_->runs[at.run].complete && (!percent || *percent != 0)) {
                 return true;
             }
         }
@@ -98,7 +99,7 @@ std::vector<Account::ComparedGroup> Account::differing(const std::vector<Compare
                alike(a.level, a.carrier.index, b.carrier.index) && read_the_same(a.*values, b.*values);
     };
     for (const ComparedCarrier& carrier : carriers) {
-        if (!differs(carrier.*values)) {
+        if (!differs(carrier)) {
             continue;
         }
         constexpr std::ptrdiff_t recent = 6; // as in the list of members
@@ -116,7 +117,10 @@ std::vector<Account::ComparedGroup> Account::differing(const std::vector<Compare
 }
 
 void Account::compared(std::string_view heading, const std::vector<ComparedCarrier>& carriers,
-                       Values values) {
+                       ComparedValues values) {
+    if (carriers.empty()) {
+        return; // a plan without members
+    }
     page_.line(heading, indent);
     PageTable table;
     table.names("of", id_width);
@@ -154,7 +158,7 @@ void Account::compared(std::string_view heading, const std::vector<ComparedCarri
     page_.blank();
 }
 
-void Account::compared_rows(PageTable& table, const ComparedGroup& group, Values values) const {
+void Account::compared_rows(PageTable& table, const ComparedGroup& group, ComparedValues values) const {
     const ComparedCarrier& carrier = *group.first;
     const std::string alike = group.count > 1 ? " (" + std::to_string(group.count) + " alike)" : "";
     const std::vector<double>& all = carrier.*values;
@@ -175,7 +179,7 @@ void Account::compared_rows(PageTable& table, const ComparedGroup& group, Values
         bool differs = false;
         for (std::size_t r = 0; r < shares_->runs.size(); ++r) {
             if (r != shares_->own && shares_->runs[r].complete) {
-                const std::optional<double> percent = shares_->percent(all, r, c);
+                const std::optional<double> percent = shares_->percent(carrier, values, {r, c});
                 differs = differs || !percent || *percent != 0;
                 add(r);
                 row.push_back(percent_text(percent));

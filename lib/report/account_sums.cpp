@@ -1,9 +1,11 @@
 #include "report/account.hpp"
 
 #include "geometry/basic.hpp"
+#include "path/balance.hpp"
 #include "report/some_cases.hpp"
 
 #include <algorithm>
+#include <cmath>
 
 RUNNEL_NAMESPACE_BEGIN
 
@@ -120,7 +122,8 @@ void Account::balance() {
     for (const std::string_view heading : {"applied", "shared", "arrived"}) {
         table.values(with_unit(heading, dimension::force));
     }
-    table.values("per deck area");
+    table.values(with_unit("moved", dimension::length));
+    table.values("per area");
     table.values("closes");
     balance_rows(table, "building", takedown_.balance, true);
     const std::size_t shown = std::min(most_levels, takedown_.level_balance.size());
@@ -144,8 +147,26 @@ void Account::balance() {
             "their own levels and in that of the members",
             indent);
     }
-    page_.line("per deck area in " + area_load_unit(), indent);
+    page_.line("per area: what is applied per deck area in " + area_load_unit(), indent);
+    page_.paragraph("moved: how far on plan sharing moved the resultant of what was applied, as halves and "
+                    "nearest carriers do and statics does not",
+                    indent);
+    page_.paragraph("closes: the three forces agree, and so do the moments of shared and arrived about both "
+                    "plan axes",
+                    indent);
     page_.blank();
+}
+
+/// Distance on plan of the resultants of what was applied and what was shared; blank where up and down
+/// cancel, so that there is no resultant.
+std::string Account::moved(const Balance& balance) const {
+    const double force = std::abs(balance.applied.force);
+    if (force <= closing * balance.applied.magnitude) {
+        return "";
+    }
+    const double metres = norm(balance.shared.moment - balance.applied.moment) / force;
+    const std::string text = length(metres);
+    return text.find_first_of("123456789") == std::string::npos ? "0" : text;
 }
 
 /// Rows of levels without load of a case are left out; how many.
@@ -160,7 +181,7 @@ std::size_t Account::balance_rows(PageTable& table, std::string_view where, std:
         }
         table.add_row({std::string(first ? where : ""), takedown_.plan.cases[balance.load_case].id,
                        force(balance.applied.force), force(balance.shared.force),
-                       force(balance.arrived.force),
+                       force(balance.arrived.force), moved(balance),
                        balance.area > 0 ? area_load(balance.applied.force / balance.area) : "",
                        balance.closes ? "yes" : "NO"});
         first = false;
@@ -173,7 +194,7 @@ std::size_t Account::balance_rows(PageTable& table, std::string_view where, std:
 bool Account::support_rows(PageTable& table) const {
     const auto add_row = [&](std::string_view what, std::uint32_t load_case, double value) {
         const std::string text = force(value);
-        table.add_row({std::string(what), takedown_.plan.cases[load_case].id, text, text, text, "", ""});
+        table.add_row({std::string(what), takedown_.plan.cases[load_case].id, text, text, text, "", "", ""});
     };
     const double own_weight = own_weight_of_supports(takedown_);
     if (own_weight != 0 && takedown_.self_weight_case != none) {

@@ -3,6 +3,7 @@
 #include "report/problem_json.hpp"
 #include "report/result_writer.hpp"
 
+#include <runnel/deck.hpp>
 #include <runnel/version.hpp>
 
 RUNNEL_NAMESPACE_BEGIN
@@ -62,6 +63,13 @@ void ResultWriter::units_and_conventions() {
         "sagging positive; at a fixed end: positive where it holds a cantilever that runs "
         "towards the other end");
     json_.key("first_moments").text("[sum of P x, sum of P y] about the plan's origin");
+    json_.key("lines").text("of one case together; neighbours that continue each other within 1e-9 of their "
+                            "ordinates are one, with force and first moment kept");
+    static_assert(region_chord_error == 5e-4, "the sentence below says so");
+    json_.key("regions").text(
+        "pieces of deck nearest to a carrier, of one-way decks by the halves of spans, whichever share the "
+        "loads follow; parabolas in rings are drawn by chords that are nowhere more than 0.5 mm off and keep "
+        "the area");
     json_.close_object();
 }
 

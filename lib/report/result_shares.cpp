@@ -37,20 +37,21 @@ void ResultWriter::compared(const ShareComparison& shares, std::size_t run, cons
     json_.open_object();
     json_.key("id").text(names_.carrier_anywhere(carrier.level, carrier.carrier));
     json_.key("kind").text(Names::kind(carrier.carrier.kind));
-    values_and_percent(shares, run, carrier.total, "total");
+    values_and_percent(shares, run, carrier, &ComparedCarrier::total, "total");
     if (carrier.carrier.kind == CarrierKind::member) {
-        values_and_percent(shares, run, carrier.largest_reaction, "reaction");
+        values_and_percent(shares, run, carrier, &ComparedCarrier::largest_reaction, "reaction");
     }
     json_.close_object();
 }
 
 void ResultWriter::values_and_percent(const ShareComparison& shares, std::size_t run,
-                                      const std::vector<double>& values, std::string_view key) {
+                                      const ComparedCarrier& carrier, ComparedValues values,
+                                      std::string_view key) {
     json_.key(key);
-    by_case(std::span(values).subspan(run * shares.cases, shares.cases), scale_.force);
+    by_case(std::span(carrier.*values).subspan(run * shares.cases, shares.cases), scale_.force);
     json_.key(std::string(key) + "_percent").open_object();
     for (std::uint32_t c = 0; c < shares.cases; ++c) {
-        if (const std::optional<double> percent = shares.percent(values, run, c)) {
+        if (const std::optional<double> percent = shares.percent(carrier, values, {run, c})) {
             json_.key(case_id(c)).number(*percent);
         }
     }

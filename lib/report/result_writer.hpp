@@ -52,8 +52,8 @@ private:
     // The comparison of shares.
     void shares(const ShareComparison& shares);
     void compared(const ShareComparison& shares, std::size_t run, const ComparedCarrier& carrier);
-    void values_and_percent(const ShareComparison& shares, std::size_t run, const std::vector<double>& values,
-                            std::string_view key);
+    void values_and_percent(const ShareComparison& shares, std::size_t run, const ComparedCarrier& carrier,
+                            ComparedValues values, std::string_view key);
 
     // Shared by all.
     void by_case(std::span<const double> values, double scale);

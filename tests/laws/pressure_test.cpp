@@ -90,6 +90,9 @@ double ordinate_at(const BeamAndColumn& d, const std::vector<AreaLoad>& loads, c
     std::vector<double> breaks{d.opening_near, d.opening_far};
     for (const AreaLoad& load : loads) {
         cross_upright(load.outline, station, breaks);
+        for (const Ring& opening : load.openings) {
+            cross_upright(opening, station, breaks);
+        }
     }
     double sum = 0;
     for (const Stretch& part : between_all(breaks, 0, std::min(d.depth, d.border_at(station)))) {

@@ -83,9 +83,15 @@ TEST_CASE("a plan built in code is checked like one that was read, with pointers
          "/levels/0/members/0/section"},
         {"no dead case", [&](Plan& p) { p.cases[0].kind = CaseKind::live; }, ProblemCode::no_dead_case,
          "/cases"},
+        {"openings of an area load on all decks",
+         [&](Plan& p) {
+             p.levels[0].area_loads[0].openings = {Ring{{1, 1}, {2, 1}, {2, 2}}};
+         },
+         ProblemCode::conflicting_keys, "/levels/0/area_loads/0/openings"},
         {"corner angles of a deck on columns",
          [&](Plan& p) {
              p.levels[0].decks[0].span = SpanKind::columns;
+             p.levels[0].decks[0].direction.reset();
              p.levels[0].decks[0].corner_angles = CornerAngles::by_fixity;
          },
          ProblemCode::conflicting_keys, "/levels/0/decks/0/corner_angles"},
@@ -93,8 +99,12 @@ TEST_CASE("a plan built in code is checked like one that was read, with pointers
          [&](Plan& p) {
              p.levels[0].decks[0].span = SpanKind::two_way;
              p.levels[0].decks[0].share = Share::continuous;
+             p.levels[0].decks[0].direction.reset();
          },
-         ProblemCode::share_has_no_effect, "/levels/0/decks/0/share"},
+         ProblemCode::key_has_no_effect, "/levels/0/decks/0/share"},
+        {"the direction of a deck on columns",
+         [&](Plan& p) { p.levels[0].decks[0].span = SpanKind::columns; }, ProblemCode::key_has_no_effect,
+         "/levels/0/decks/0/direction"},
         {"a joist and no end of them", [&](Plan& p) { p.levels[0].joist_fields[0].spacing = 1e-8; },
          ProblemCode::too_much, "/levels/0/joist_fields/0/spacing"},
         {"more levels than the limit",

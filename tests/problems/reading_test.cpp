@@ -150,6 +150,61 @@ TEST_CASE("an unknown key names the nearest known one, or what is known") {
     CHECK(hint("colour").substr(0, 9) == "Known are");
 }
 
+TEST_CASE("a ring that is too narrow is told by its mean width, one that nearly meets itself by the gap") {
+    const auto told = [](const std::string& outline) {
+        return read_plan(plan_with(R"([{"id": "L", "elevation": 3, "area_loads": [
+            {"case": "live", "q": 1, "outline": )" +
+                                   outline + "}]}]"))
+            .problems;
+    };
+    const auto narrow = told("[[0, 0], [6, 0], [6, 0.01]]"); // 10 mm at one end
+    REQUIRE(narrow.size() == 1);
+    CHECK(narrow[0].code == ProblemCode::ring_too_small);
+    CHECK(
+        narrow[0].message ==
+        "`outline` of area_loads[0] has an area of 0.03 m2 and a mean width (area by half the length around) "
+        "of 0.00499583 m, no more than `snap`, 0.005 m.");
+    CHECK(told("[[0, 0], [6, 0], [6, 0.0101]]").empty());
+
+    const auto slit = told("[[0, 0], [2, 0], [2, 3], [2.002, 3], [2.002, 0], [4, 0], [4, 6], [0, 6]]");
+    REQUIRE(slit.size() == 1);
+    CHECK(slit[0].code == ProblemCode::ring_crosses_itself);
+    CHECK(slit[0].message.find("comes within 0.002 m of itself at (2") != std::string::npos);
+    CHECK(slit[0].message.find("`snap`, 0.005 m") != std::string::npos);
+
+    for (const char* crossing :
+         {"[[0, 0], [6, 4], [6, 0], [0, 4]]", "[[0, 0], [4, 0], [4, 6], [2, 0], [0, 6]]",
+          "[[0, 0], [4, 0], [4, 6], [4, 8], [4, 6], [0, 6]]"}) {
+        CAPTURE(crossing);
+        const auto problems = told(crossing);
+        REQUIRE(problems.size() == 1);
+        CHECK(problems[0].message.find("crosses or touches itself at") != std::string::npos);
+        CHECK(problems[0].message.find("snap") == std::string::npos);
+    }
+}
+
+TEST_CASE("what is known is listed once each, and an unknown key is told whatever stands beside it") {
+    const auto told = [](const std::string& area_load) {
+        const PlanReading reading =
+            read_plan(plan_with(R"([{"id": "L", "elevation": 3, "area_loads": [)" + area_load + "]}]"));
+        const Problem* problem = find(reading, ProblemCode::unknown_key);
+        return problem == nullptr ? std::string{} : problem->hint;
+    };
+    const std::string known = "Known are case, q, outline, openings, decks, replaces or allowance.";
+    CHECK(told(R"({"case": "live", "q": 1, "colour": 1})") == known);
+    CHECK(told(R"({"case": "live", "q": 1, "allowance": "partition", "colour": 1})") == known);
+    CHECK(told(R"({"colour": 1, "case": "live", "q": 1, "allowance": "partition"})") == known);
+}
+
+TEST_CASE("an allowance has no effect yet, which is told also where nothing else is unusual") {
+    const PlanReading reading = read_plan(plan_with(
+        R"([{"id": "L", "elevation": 3, "area_loads": [{"case": "live", "q": 1, "allowance": "partition"}]}])"));
+    const Problem* problem = find(reading, ProblemCode::not_supported_yet);
+    REQUIRE(problem != nullptr);
+    CHECK(problem->severity == Severity::note);
+    CHECK(problem->pointer == "/levels/0/area_loads/0/allowance");
+}
+
 TEST_CASE("what is not JSON is told with what was likely meant") {
     const auto hint = [](std::string_view text) {
         const PlanReading reading = read_plan(text);
@@ -288,9 +343,11 @@ TEST_CASE("a plane of pressure is read in its own units and in the plan's") {
 TEST_CASE(
     "lever and continuous are for one-way decks: named by another, a warning; in the settings, nothing") {
     const auto decks = [](const char* span, const char* share) {
+        const bool one_way = std::string(span) == "one-way";
         return std::string(R"([{"id": "L", "elevation": 3, "decks": [
-            {"id": "D", "outline": [[0, 0], [6, 0], [6, 4], [0, 4]], "direction": 0, "span": ")") +
-               span + "\", \"share\": \"" + share + "\"}]}]";
+            {"id": "D", "outline": [[0, 0], [6, 0], [6, 4], [0, 4]], )") +
+               (one_way ? R"("direction": 0, )" : "") + R"("span": ")" + span + R"(", "share": ")" + share +
+               R"("}]}])";
     };
     for (const char* span : {"two-way", "columns"}) {
         for (const char* share : {"lever", "continuous"}) {
@@ -298,7 +355,7 @@ TEST_CASE(
             CAPTURE(share);
             const PlanReading reading = read_plan(plan_with(decks(span, share)));
             REQUIRE(reading.problems.size() == 1);
-            CHECK(reading.problems[0].code == ProblemCode::share_has_no_effect);
+            CHECK(reading.problems[0].code == ProblemCode::key_has_no_effect);
             CHECK(reading.problems[0].severity == Severity::warning);
             CHECK(reading.problems[0].pointer == "/levels/0/decks/0/share");
         }
@@ -307,6 +364,27 @@ TEST_CASE(
                   .problems.empty());
     }
     CHECK(read_plan(plan_with(decks("one-way", "lever"))).problems.empty());
+}
+
+TEST_CASE("a direction is for one-way decks: given for another it is a warning, whatever its value") {
+    const auto deck = [](const char* rest) {
+        return std::string(R"([{"id": "L", "elevation": 3, "decks": [
+            {"id": "D", "outline": [[0, 0], [6, 0], [6, 4], [0, 4]], )") +
+               rest + "}]}]";
+    };
+    const PlanReading two_way = read_plan(plan_with(deck(R"("span": "two-way", "direction": 0)")));
+    REQUIRE(two_way.problems.size() == 1);
+    CHECK(two_way.problems[0].code == ProblemCode::key_has_no_effect);
+    CHECK(two_way.problems[0].severity == Severity::warning);
+    CHECK(two_way.problems[0].pointer == "/levels/0/decks/0/direction");
+    CHECK(two_way.problems[0].message ==
+          "`direction` of deck D is given, which only one-way decks follow; this one is `two-way`, where all "
+          "load goes to what is nearest.");
+    CHECK(read_plan(plan_with(deck(R"("span": "columns", "direction": 90)"))).problems.size() == 1);
+    CHECK(read_plan(plan_with(deck(R"("span": "columns")"))).problems.empty());
+    CHECK(read_plan(plan_with(deck(R"("direction": 90)"))).problems.empty());
+    // A span that cannot be read is told alone.
+    CHECK(read_plan(plan_with(deck(R"("span": "sideways", "direction": 90)"))).problems.size() == 1);
 }
 
 TEST_CASE("corner angles are read, and are equal where nothing is said") {

@@ -241,6 +241,16 @@ private:
             level.area_loads.back().outline =
                 rectangle(x, y, x + random_.between(0.5, 6), y + random_.between(0.5, 6));
             level.area_loads.back().replaces = random_.chance(0.3);
+            if (i % 2 == 0) { // a ring of load
+                const Ring& outline = level.area_loads.back().outline;
+                Ring opening;
+                for (std::size_t k = 0; k < outline.size(); ++k) {
+                    const Point p = outline[k];
+                    const Point q = outline[(k + 2) % outline.size()];
+                    opening.push_back({0.7 * p.x + 0.3 * q.x, 0.7 * p.y + 0.3 * q.y});
+                }
+                level.area_loads.back().openings = {std::move(opening)};
+            }
         }
         for (int i = random_.whole(0, 3); i > 0; --i) {
             LineLoad load;
@@ -503,6 +513,10 @@ void spoil(Plan& plan, Random& random) {
             load.outline =
                 random.star({random.between(0, 10), random.between(0, 10)}, 0.5, 8, random.whole(3, 30));
             load.replaces = random.chance(0.5);
+            for (int i = random.whole(0, 2); i > 0; --i) { // some reach outside, some overlap
+                load.openings.push_back(
+                    random.star({random.between(0, 10), random.between(0, 10)}, 0.1, 2, random.whole(3, 12)));
+            }
         }
     }
 }

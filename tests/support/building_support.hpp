@@ -44,8 +44,8 @@ void for_each_point(runnel::Plan& plan, F f) {
 }
 
 /// Gives the decks of a building rules of every kind (two-way, on columns, lever, continuous, corner angles),
-/// drawn by lot for each deck by its id, and pressures that vary over planes. What lever and continuous cannot
-/// hold by statics is left as it was. `placing` is the building's.
+/// drawn by lot for each deck by its id, and pressures that vary over planes. What lever and continuous
+/// cannot hold by statics is left as it was. `placing` is the building's.
 void mix_rules(runnel::Plan& plan, std::uint64_t seed, const Placing& placing = {});
 
 /// Does to a plan what a tired hand does: drops, doubles, moves or turns something.

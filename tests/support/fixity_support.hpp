@@ -39,6 +39,27 @@ inline FixityShared share_by_fixity(const HandFramed& f) {
     return shared;
 }
 
+/// The same level with deck 0 two-way and its corners divided equally, by the whole of the sharing.
+inline runnel::Sharing share_equal(HandFramed f) {
+    f.level().decks[0].span = runnel::SpanKind::two_way;
+    f.level().decks[0].corner_angles = runnel::CornerAngles::equal;
+    return f.share();
+}
+
+/// The only problem with a code; null: there is none, or there are several.
+inline const runnel::Problem* problem_of(const runnel::Sharing& sharing, runnel::ProblemCode code) {
+    const runnel::Problem* found = nullptr;
+    for (const runnel::Problem& problem : sharing.problems) {
+        if (problem.code == code) {
+            if (found != nullptr) {
+                return nullptr;
+            }
+            found = &problem;
+        }
+    }
+    return found;
+}
+
 /// Beams along all sides of a ring, side by side.
 inline void add_beams_around(HandFramed& f, const runnel::Ring& ring) {
     for (std::size_t i = 0; i < ring.size(); ++i) {

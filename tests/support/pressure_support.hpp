@@ -41,12 +41,19 @@ inline bool lies_in(const runnel::Ring& ring, runnel::Point p) {
     return in;
 }
 
+/// Whether a load without decks of its own acts at a point.
+inline bool acts_at(const runnel::AreaLoad& load, runnel::Point p) {
+    return load.outline.empty() || (lies_in(load.outline, p) &&
+                                    std::none_of(load.openings.begin(), load.openings.end(),
+                                                 [p](const runnel::Ring& ring) { return lies_in(ring, p); }));
+}
+
 /// What the area loads of a case press on a point of a deck that they all act on; own weight left out.
 inline double pressure_at(std::span<const runnel::AreaLoad> loads, const std::string& load_case,
                           runnel::Point p) {
     double q = 0;
     for (const runnel::AreaLoad& load : loads) {
-        if (load.case_id == load_case && (load.outline.empty() || lies_in(load.outline, p))) {
+        if (load.case_id == load_case && acts_at(load, p)) {
             q = (load.replaces ? 0 : q) + pressure_of(load, p);
         }
     }
@@ -131,6 +138,38 @@ inline long double integral_over(const Corners& polygon, std::span<const runnel:
     return doubled < 0 ? -sum : sum; // whichever way the ring runs
 }
 
+/// The plane as signed rings: 1 on the deck, inside a zone and outside its openings is the sum of their
+/// signs. Openings lie in their outline and do not overlap each other.
+struct Signed {
+    long double sign = 1;
+    runnel::Ring ring;
+};
+using Figure = std::vector<Signed>;
+
+inline Figure figure(const runnel::Ring& outline, std::span<const runnel::Ring> openings) {
+    Figure rings{{1, outline}};
+    for (const runnel::Ring& opening : openings) {
+        rings.push_back({-1, opening});
+    }
+    return rings;
+}
+
+/// Integral over what all figures have in common: multiplied out, a sum over one ring of each.
+inline long double integral_over_figures(const Corners& all, std::span<const Figure> figures,
+                                         runnel::Point base, const Pressure& pressure,
+                                         std::vector<runnel::Ring>& chosen) {
+    if (figures.empty()) {
+        return integral_over(all, chosen, base, pressure);
+    }
+    long double sum = 0;
+    for (const Signed& part : figures.front()) {
+        chosen.push_back(part.ring);
+        sum += part.sign * integral_over_figures(all, figures.subspan(1), base, pressure, chosen);
+        chosen.pop_back();
+    }
+    return sum;
+}
+
 } // namespace exact
 
 /// Force that area loads of a case put on a deck that they all act on, in long double.
@@ -150,22 +189,21 @@ inline long double force_on(const runnel::FramedDeck& deck, std::span<const runn
             static_cast<long double>(q),
             {static_cast<long double>(pressure_of(load, {base.x + 1, base.y}) - q),
              static_cast<long double>(pressure_of(load, {base.x, base.y + 1}) - q)}};
-        std::vector<runnel::Ring> own{deck.outline};
+        std::vector<exact::Figure> own{exact::figure(deck.outline, deck.openings)};
         if (!load.outline.empty()) {
-            own.push_back(load.outline);
+            own.push_back(exact::figure(load.outline, load.openings));
         }
-        std::vector<runnel::Ring> replacing;
+        std::vector<exact::Figure> replacing;
         bool left = true;
         for (std::size_t k = i + 1; k < loads.size(); ++k) {
             if (loads[k].replaces && loads[k].case_id == load_case) {
                 left = left && !loads[k].outline.empty();
-                replacing.push_back(loads[k].outline);
+                replacing.push_back(exact::figure(loads[k].outline, loads[k].openings));
             }
         }
-        // Less what replaces it and less the openings, by inclusion and exclusion. Openings lie in the
-        // outline and do not overlap each other.
+        // Less what replaces it, by inclusion and exclusion.
         for (std::uint32_t chosen = 0; left && chosen < (1U << replacing.size()); ++chosen) {
-            std::vector<runnel::Ring> common = own;
+            std::vector<exact::Figure> common = own;
             long double sign = 1;
             for (std::size_t k = 0; k < replacing.size(); ++k) {
                 if ((chosen >> k & 1U) != 0) {
@@ -173,14 +211,26 @@ inline long double force_on(const runnel::FramedDeck& deck, std::span<const runn
                     sign = -sign;
                 }
             }
-            force += sign * exact::integral_over(all, common, base, pressure);
-            for (const runnel::Ring& opening : deck.openings) {
-                common[0] = opening;
-                force -= sign * exact::integral_over(all, common, base, pressure);
-            }
+            std::vector<runnel::Ring> rings;
+            force += sign * exact::integral_over_figures(all, common, base, pressure, rings);
         }
     }
     return force;
+}
+
+/// One or two openings in an upright rectangle, which may touch its edges and each other but share no area.
+inline void add_openings(Random& random, runnel::AreaLoad& load) {
+    const double x = load.outline[0].x; // where it begins whichever way it runs
+    const double y = std::min(load.outline[0].y, load.outline[2].y);
+    const double width = load.outline[2].x - x;
+    const double depth = std::abs(load.outline[2].y - load.outline[0].y);
+    const double middle = x + width * random.between(0.3, 0.7);
+    const double bottom = y + depth / 4 * random.whole(0, 2);
+    load.openings.push_back(
+        {{x, bottom}, {middle, bottom}, {middle, bottom + depth / 4}, {x, bottom + depth / 4}});
+    if (random.chance(0.5)) {
+        load.openings.push_back({{middle, y}, {middle, y + depth / 2}, {x + width, y}});
+    }
 }
 
 /// Area loads as they come: uniform or over a plane, everywhere or in a zone of any shape, and some replace,
@@ -207,6 +257,9 @@ inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double re
         const runnel::Point centre{random.between(-reach, reach), random.between(-reach, reach)};
         if (random.chance(0.4)) {
             load.outline = random.star(centre, 0.1 * reach, reach, random.whole(3, 11));
+            if (load.outline.size() > 4 && random.chance(0.4)) { // fewer may leave their middle outside
+                load.openings.push_back(random.star(centre, 0.01 * reach, 0.03 * reach, random.whole(3, 6)));
+            }
         } else if (random.chance(0.6)) { // upright, often along edges and other zones
             const double step = reach / 6;
             const double x = step * random.whole(-7, 5);
@@ -216,6 +269,9 @@ inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double re
             load.outline = {{x, y}, {r, y}, {r, t}, {x, t}};
             if (random.chance(0.5)) {
                 std::reverse(load.outline.begin(), load.outline.end());
+            }
+            if (random.chance(0.4)) {
+                add_openings(random, load);
             }
         }
         load.replaces = replacing < most_replacing && random.chance(0.35);
@@ -228,6 +284,9 @@ inline std::vector<runnel::AreaLoad> random_area_loads(Random& random, double re
 inline std::vector<runnel::AreaLoad> moved(std::vector<runnel::AreaLoad> loads, const Motion& move) {
     for (runnel::AreaLoad& load : loads) {
         load.outline = move(load.outline);
+        for (runnel::Ring& opening : load.openings) {
+            opening = move(opening);
+        }
         if (load.plane) {
             for (runnel::Point& p : load.plane->at) {
                 p = move(p);

@@ -264,7 +264,7 @@ TEST_CASE("a deck without any carrier is an error with what would be lost") {
         HandFramed f = two_way({{0, 0}, {6, 0}, {6, 4}, {0, 4}}, {{{1, 1}, {1, 2}, {3, 2}, {3, 1}}});
         f.level().decks.back().span = span;
         f.add_member({6, 2}, {9, 2}); // touches it only
-        f.add_member({-1, -0.1}, {9, -0.1});
+        f.add_member({-1, -0.2}, {9, -0.2});
         f.add_area_load("live", 2);
         f.add_area_load("dead", 1, {{0, 0}, {3, 0}, {3, 1}, {0, 1}});
         const Sharing sharing = f.share();
@@ -364,5 +364,23 @@ TEST_CASE("a joint close to a corner of a bay loses no area far from the origin"
                      Role::joist);
         const double area = shared(f.share()).all;
         CHECK(area == doctest::Approx(signed_area(ring)).epsilon(1e-10));
+    }
+}
+
+TEST_CASE(
+    "a beam drawn a little beside a two-way deck's edge is told with its gap; one farther off is not meant") {
+    for (const double gap : {0.003, 0.008, 0.05, 0.3}) {
+        CAPTURE(gap);
+        support::HandFramed f;
+        f.add_member({0, 0}, {6, 0}, Role::beam);
+        f.add_member({0, 4}, {6, 4}, Role::beam);
+        f.add_member({6 + gap, 0}, {6 + gap, 4}, Role::beam);
+        f.add_deck({{0, 0}, {6, 0}, {6, 4}, {0, 4}}, 0);
+        f.level().decks[0].span = SpanKind::two_way;
+        const Sharing sharing = f.share();
+        const bool told = std::any_of(sharing.problems.begin(), sharing.problems.end(), [](const Problem& p) {
+            return p.code == ProblemCode::near_miss && p.ids == std::vector<std::string>{"D0", "M2"};
+        });
+        CHECK(told == (gap > 0.005 && gap < 0.1));
     }
 }

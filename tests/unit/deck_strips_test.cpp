@@ -488,6 +488,25 @@ TEST_CASE("an overhang in front of two back spans is cut at their level") {
     check_kept(loads);
 }
 
+TEST_CASE("a line load between skew carriers is fitted under halves too, and says within what") {
+    HandFramed f;
+    f.add_member({0, 0}, {-1, 4});
+    f.add_member({4, 0}, {6, 4});
+    f.add_deck({{0, 0}, {4, 0}, {6, 4}, {-1, 4}}, 0);
+    f.level().line_loads.push_back({"live", 3, 3, {1, 0.5}, {3, 3.5}, {}, {}});
+    const LevelLoads loads = f.load(f.share());
+    CHECK(loads.curve_error > 0);
+    CHECK(loads.curve_error < 1e-8);
+    // At half height the span runs from -0.5 to 5, the load stands at 2; w is per metre of the load.
+    const double station = std::hypot(1, 4) / 2;
+    const double rate = std::hypot(2, 3) / 3 / (std::hypot(1, 4) / 4);
+    double w = 0;
+    for (const CarrierLine& line : loads.lines[0]) {
+        w += line.piece.from <= station && station < line.piece.to ? line.piece.at(station) : 0;
+    }
+    CHECK(std::abs(w - 3 * rate * 3 / 5.5) <= loads.curve_error);
+}
+
 TEST_CASE("lever on skew carriers: an even load on whole bays stays linear, one on a part is fitted") {
     HandFramed f;
     f.add_member({0, 0}, {-1, 4});

@@ -192,3 +192,55 @@ TEST_CASE("own weight of a deck is its q and its build together") {
     deck.build = "floor";
     CHECK(frame_plan(p.plan).levels[0].decks[0].own_weight == doctest::Approx(1.8));
 }
+
+TEST_CASE("a deck's edge that is drawn to a column beside it is told, since that changes its area") {
+    PlanBuilder p;
+    p.column("C1", {3, 0.004});
+    p.deck("D", rectangle(0, 0, 6, 4));
+    const Framing framing = frame_plan(p.plan);
+    REQUIRE(framing.levels[0].decks[0].outline.size() == 5);
+    const Problem* note = find_problem(framing, ProblemCode::points_merged);
+    REQUIRE(note);
+    CHECK(note->message ==
+          "On level floor 1 place of a deck's edge was drawn to a point beside it, by 0.004 m at "
+          "most (snap is 0.005 m).");
+}
+
+TEST_CASE("openings that overlap by less than snap are drawn to touch") {
+    PlanBuilder p;
+    p.deck("D", rectangle(0, 0, 6, 4)).openings = {rectangle(2, 1, 3, 2), rectangle(2.2, 1.996, 2.8, 2.5)};
+    const Framing framing = frame_plan(p.plan);
+    CHECK_FALSE(has_errors(framing.problems));
+    double area = 0;
+    for (const Ring& opening : framing.levels[0].decks[0].openings) {
+        for (std::size_t i = 0; i < opening.size(); ++i) {
+            const Point a = opening[i];
+            const Point b = opening[(i + 1) % opening.size()];
+            area -= (a.x * b.y - b.x * a.y) / 2; // clockwise
+        }
+    }
+    // Of the first opening a trapezoid of 1 m by 0.6 m, 4 mm high, is left to the second.
+    CHECK(area == doctest::Approx(1 + 0.6 * 0.504 - 0.004 * 0.8).epsilon(1e-12));
+}
+
+TEST_CASE("an opening that a point beside it draws together is refused, not folded") {
+    PlanBuilder p;
+    p.deck("D", rectangle(0, 0, 6, 4)).openings = {rectangle(1, 1, 1.008, 3)};
+    p.column("C1", {1.004, 2});
+    const Framing framing = frame_plan(p.plan);
+    const Problem* problem = find_problem(framing, ProblemCode::ring_too_small);
+    REQUIRE(problem != nullptr);
+    CHECK(problem->point == Point{1.004, 2});
+}
+
+TEST_CASE("two columns at one point between the same levels are refused; one on the other is not") {
+    PlanBuilder p;
+    p.column("C1", {0, 0}).column("C2", {0.003, 0});
+    CHECK(codes(frame_plan(p.plan), Severity::error) == std::vector<std::string>{"columns-coincide"});
+    p.plan.levels.push_back(p.floor());
+    p.plan.levels.back().id = "roof";
+    p.plan.levels.back().elevation = 7;
+    p.plan.columns[1].base = p.floor().id;
+    p.plan.columns[1].top = "roof";
+    CHECK(codes(frame_plan(p.plan), Severity::error).empty());
+}

@@ -211,6 +211,51 @@ TEST_CASE("a ring of load: a zone whose middle a later one takes out, and puts o
     }
 }
 
+TEST_CASE("a zone with an opening is a ring of load, and what was there before stays in the opening") {
+    for (const double turn : {0.0, 33.0}) {
+        CAPTURE(turn);
+        const support::Motion move{turn, {100, -50}};
+        HandFramed f;
+        f.add_member(move({0, 0}), move({0, 4}));
+        f.add_member(move({6, 0}), move({6, 4}));
+        f.add_deck(move(rectangle(0, 0, 6, 4)), turn);
+        f.add_area_load("live", 2);
+        f.add_area_load("live", 7, move(rectangle(1, 0.5, 5, 3.5)), true);
+        f.level().area_loads.back().openings = {move(rectangle(2, 1, 4, 3))};
+        f.add_area_load("dead", 3, move(rectangle(1, 0.5, 5, 3.5)));
+        f.level().area_loads.back().openings = {move(rectangle(2, 1, 4, 3))};
+        const LevelLoads loads = loaded(f);
+        // 24 m2, of which the ring of 12 - 4 m2 has 7 instead of 2; all of it symmetric.
+        CHECK(line_total(loads, 0) == Approx((16 * 2 + 8 * 7) / 2.0));
+        CHECK(line_total(loads, 1) == Approx((16 * 2 + 8 * 7) / 2.0));
+        CHECK(line_at(loads, 0, live, 2) == Approx(2 + 7 + 2));
+        CHECK(line_at(loads, 0, live, 0.75) == Approx(2 + 14));
+        CHECK(line_at(loads, 0, live, 0.25) == Approx(6));
+        CHECK(line_total(loads, 0, dead) == Approx(8 * 3 / 2.0));
+        CHECK(line_at(loads, 0, dead, 2) == Approx(3));
+    }
+}
+
+TEST_CASE("a ring of load along the edges of a two-way deck goes to each beam by its corners' bisectors") {
+    TwoWay t;
+    t.f.add_area_load("live", 3, rectangle(0, 0, 9, 5));
+    t.f.level().area_loads.back().openings = {rectangle(1, 1, 8, 4)};
+    t.f.add_area_load("dead", 6, rectangle(0, 0, 2, 2)); // an L around the corner
+    t.f.level().area_loads.back().openings = {rectangle(0, 0, 1, 1)};
+    const LevelLoads loads = t.f.load(t.sharing);
+    // A metre deep: trapezoids of (9 + 7) / 2 and (5 + 3) / 2 m2.
+    for (const std::uint32_t beam : {0U, 2U}) {
+        CHECK(line_total(loads, beam) == Approx(3 * 8));
+        CHECK(line_total(loads, beam + 1) == Approx(3 * 4));
+        CHECK(line_at(loads, beam, live, 4) == Approx(3));
+        CHECK(line_at(loads, beam, live, 0.5) == Approx(1.5));
+    }
+    CHECK(line_total(loads, 0, dead) == Approx(6 * 1.5));
+    CHECK(line_total(loads, 3, dead) == Approx(6 * 1.5));
+    CHECK(line_at(loads, 0, dead, 0.5) == Approx(0));
+    CHECK(line_at(loads, 0, dead, 1.5) == Approx(9));
+}
+
 TEST_CASE("a plane that replaces stands instead of what lay there, and is replaced itself") {
     HandFramed f = deck_on_two_beams();
     f.add_area_load("live", 4);
@@ -426,6 +471,29 @@ TEST_CASE(
     CHECK(find(loaded(off), ProblemCode::pressure_below_zero) == nullptr);
 }
 
+TEST_CASE("the opening of a zone is no part of what lies off the decks, and none of what lies on them") {
+    HandFramed f = deck_on_two_beams();
+    f.add_area_load("live", 1, rectangle(4, 0, 8, 4));
+    f.level().area_loads.back().openings = {rectangle(5, 1, 7, 3)};
+    const LevelLoads loads = loaded(f);
+    const Problem* note = find(loads, ProblemCode::zone_off_decks);
+    REQUIRE(note != nullptr);
+    CHECK(note->message ==
+          "Level L, area_loads[0] (live): 6 m2 of its outline lie off every deck; 6 kN there "
+          "are not carried.");
+    CHECK(line_total(loads, 1) == Approx(6));
+
+    HandFramed inside = deck_on_two_beams();
+    inside.add_area_load("live", 1, rectangle(1, 1, 5, 3));
+    inside.level().area_loads.back().openings = {rectangle(2, 1, 4, 3)};
+    CHECK(find(loaded(inside), ProblemCode::zone_off_decks) == nullptr);
+
+    HandFramed around = deck_on_two_beams(); // the whole deck lies in the opening
+    around.add_area_load("live", 1, rectangle(-1, -1, 7, 5));
+    around.level().area_loads.back().openings = {rectangle(0, 0, 6, 4)};
+    CHECK(loaded(around).balance.empty());
+}
+
 TEST_CASE("a zone drawn along a deck's edge on the outside puts nothing on it, not even rounding") {
     const support::Motion move{31, {400000, 3200000}};
     HandFramed f;
@@ -455,4 +523,29 @@ TEST_CASE("a plane in a plan file goes down to the ground") {
     REQUIRE(takedown.foundations.size() == 4);
     CHECK(takedown.foundations[0].reactions.at(1) == Approx(10.5));
     CHECK(takedown.foundations[1].reactions.at(1) == Approx(19.5));
+}
+
+TEST_CASE("openings of an area load are read, in any unit, and repeated by a level like its own") {
+    const PlanReading reading = read_plan(R"({"runnel": "plan/1", "units": {"length": "m", "force": "kN"},
+        "cases": [{"id": "dead", "kind": "dead"}, {"id": "live", "kind": "live"}],
+        "columns": [{"id": "A", "at": [0, 0], "top": "R"}, {"id": "B", "at": [6, 0], "top": "R"},
+                    {"id": "C", "at": [0, 4], "top": "R"}, {"id": "D", "at": [6, 4], "top": "R"}],
+        "levels": [{"id": "F", "elevation": 3,
+            "members": [{"id": "west", "role": "beam", "from": [0, 0], "to": [0, 4]},
+                        {"id": "east", "role": "beam", "from": [6, 0], "to": [6, 4]}],
+            "decks": [{"id": "D1", "outline": [[0, 0], [6, 0], [6, 4], [0, 4]], "direction": 0}],
+            "area_loads": [{"case": "live", "q": 3, "outline": [[0, 0], [6, 0], [6, 4], [0, 4]],
+                            "openings": [[[1, 1], ["500 cm", 1], [5, 3], [1, 3]],
+                                         [[0, 0], [1, 0], [1, 1], [0, 1]]]}]},
+            {"id": "R", "elevation": 6, "like": "F"}]})");
+    REQUIRE(reading.problems.empty());
+    REQUIRE(reading.plan.levels.at(0).area_loads.at(0).openings.size() == 2);
+    CHECK(reading.plan.levels[0].area_loads[0].openings[0] == rectangle(1, 1, 5, 3));
+    const Takedown takedown = take_down(reading.plan);
+    CHECK_FALSE(has_errors(takedown.problems));
+    double all = 0;
+    for (const auto& foundation : takedown.foundations) {
+        all += foundation.reactions.at(1);
+    }
+    CHECK(all == Approx(2 * 3 * (24 - 8 - 1)));
 }

@@ -75,6 +75,12 @@ const Lift& lift_of(const Takedown& takedown, const std::string& id) {
     return takedown.columns.front().lifts.front();
 }
 
+Takedown completed(const PlanBuilder& builder) {
+    Takedown takedown = runnel::take_down(builder.plan);
+    REQUIRE(takedown.complete);
+    return takedown;
+}
+
 struct Areas {
     double region = 0, tributary = 0, influence = 0;
 };
@@ -141,6 +147,39 @@ TEST_CASE("influence areas do not depend on how decks are outlined") {
     for (std::size_t c = 0; c < one.size(); ++c) {
         CAPTURE(c);
         CHECK(many[c] == Approx(one[c]).epsilon(1e-12));
+    }
+}
+
+TEST_CASE("where two decks meet and no carrier runs, neither is felt by the carriers of the other") {
+    for (const SpanKind span : {SpanKind::one_way, SpanKind::two_way}) {
+        PlanBuilder builder;
+        for (const double x : {0.0, 6.0}) {
+            const std::string n = std::to_string(static_cast<int>(x));
+            builder.column("S" + n, {x, 0}).column("N" + n, {x, 4}).girder("G" + n, {x, 0}, {x, 4});
+        }
+        const auto areas_with = [&](double joint) {
+            builder.floor().decks.clear();
+            for (const auto& [from, to] : {std::pair(0.0, joint), std::pair(joint, 6.0)}) {
+                if (to > from) {
+                    Deck& deck = builder.deck("D" + std::to_string(from), rectangle(from, 0, to, 4));
+                    deck.span = span;
+                    if (span == SpanKind::one_way) {
+                        deck.direction = 0;
+                    }
+                }
+            }
+            const Takedown t = completed(builder);
+            return std::pair(areas_of(t, "G0"), areas_of(t, "G6"));
+        };
+        const std::pair<Areas, Areas> whole = areas_with(0);
+        CHECK(whole.first.tributary == Approx(12));
+        CHECK(whole.first.influence == Approx(24));
+        CHECK(whole.second.influence == Approx(24));
+        const std::pair<Areas, Areas> apart = areas_with(2);
+        CHECK(apart.first.tributary == Approx(8)); // as the load goes
+        CHECK(apart.first.influence == Approx(8));
+        CHECK(apart.second.tributary == Approx(16));
+        CHECK(apart.second.influence == Approx(16));
     }
 }
 
@@ -238,12 +277,9 @@ TEST_CASE("turning, moving and renumbering a building changes no influence area"
 
 namespace {
 
-/// Influence areas of the first level, by carrier, from the framing alone: what is neither bay nor cell.
+/// Influence areas of the first level, by carrier.
 std::vector<double> influence_of_panels(const Plan& plan, const Framing& framing) {
-    Sharing sharing;
-    sharing.members = static_cast<std::uint32_t>(framing.levels[0].members.size());
-    sharing.walls = static_cast<std::uint32_t>(plan.walls.size());
-    sharing.columns = static_cast<std::uint32_t>(plan.columns.size());
+    const Sharing sharing = share_decks(plan, framing, 0);
     const Tolerance tolerance{noise_of(framing.largest_coordinate), plan.settings.snap};
     return influence_areas(framing.levels[0], sharing, find_landings(framing.levels[0], sharing),
                            floor_pieces(plan, framing.levels[0], sharing, tolerance), tolerance);
@@ -298,6 +334,51 @@ TEST_CASE("on two-way panels a column feels the panels around it, a beam those o
     check();
 }
 
+TEST_CASE("a beam feels what it takes from across a slot, besides the panel that it lies along") {
+    PlanBuilder builder;
+    builder.column("A", {0.2, 0}).column("B", {0.2, 4}).girder("G", {0.2, 0}, {0.2, 4});
+    Deck& deck = builder.deck("D", rectangle(0, 0, 3, 4));
+    deck.span = SpanKind::two_way;
+    deck.openings.push_back({{0.2, 0}, {0.4, 0}, {0.4, 4}, {0.2, 4}});
+    const Takedown t = completed(builder);
+    const Areas areas = areas_of(t, "G");
+    CHECK(areas.tributary == Approx(11.2));
+    CHECK(areas.influence == Approx(11.2));
+    CHECK(lift_of(t, "A").influence_area == Approx(11.2));
+}
+
+// By hand. Two panels that meet at no carrier: the left one between W and M, the right one between N and E,
+// with a slot 1 wide between M and N. The strip beyond the slot that no carrier touches is halved.
+TEST_CASE("of a panel across an opening a beam feels what goes to it, and the beams along it the whole") {
+    PlanBuilder builder;
+    for (const double x : {0.0, 4.0, 10.0}) {
+        builder.column("C" + std::to_string(static_cast<int>(x)) + "s", {x, 0});
+        builder.column("C" + std::to_string(static_cast<int>(x)) + "n", {x, 6});
+        builder.girder("G" + std::to_string(static_cast<int>(x)), {x, 0}, {x, 6});
+    }
+    Deck& deck = builder.deck("D", rectangle(0, 0, 10, 6));
+    deck.span = SpanKind::two_way;
+    deck.openings.push_back({{4, 0}, {5, 0}, {5, 6}, {4, 6}});
+    const Takedown t = completed(builder);
+    CHECK(areas_of(t, "G0").influence == Approx(24));
+    CHECK(areas_of(t, "G4").tributary == Approx(12 + 2 * 6)); // from x = 5 to x = 7, across the slot
+    CHECK(areas_of(t, "G4").influence == Approx(24 + 2 * 6));
+    CHECK(areas_of(t, "G10").influence == Approx(5 * 6));
+}
+
+TEST_CASE("of a girder's two spans only the one that floor across a slot goes to brings it to its columns") {
+    PlanBuilder builder;
+    builder.column("A", {0, 0}).column("B", {6, 0}).column("C", {12, 0}).girder("G", {0, 0}, {12, 0});
+    Deck& deck = builder.deck("D", {{0, -1}, {12, -1}, {12, 0}, {5, 0}, {5, 3}, {0, 3}});
+    deck.span = SpanKind::two_way;
+    deck.openings.push_back({{0, 0}, {5, 0}, {5, 1}, {0, 1}});
+    const Takedown t = completed(builder);
+    CHECK(areas_of(t, "G").influence == Approx(12 + 10));
+    CHECK(lift_of(t, "A").influence_area == Approx(12 + 10));
+    CHECK(lift_of(t, "B").influence_area == Approx(12 + 10));
+    CHECK(lift_of(t, "C").influence_area == Approx(12));
+}
+
 namespace {
 
 /// A flat slab on columns 6 by 8 apart, 4 bays by 3, that reaches past the first lines of columns on two
@@ -311,12 +392,6 @@ PlanBuilder flat_slab(double past_x, double past_y) {
     }
     builder.deck("D", rectangle(-past_x, -past_y, 24, 24)).span = SpanKind::columns;
     return builder;
-}
-
-Takedown completed(const PlanBuilder& builder) {
-    Takedown takedown = runnel::take_down(builder.plan);
-    REQUIRE(takedown.complete);
-    return takedown;
 }
 
 } // namespace
@@ -505,10 +580,35 @@ TEST_CASE("what lands right over a bearing is felt there, and not at the bearing
     sharing.columns = 5;
     FloorPieces pieces;
     pieces.areas = {10};
+    pieces.within = {none};
     pieces.beside = Grouped<Beside>::from_pairs(8, {{b, {0, 0, 8, true}}});
     const std::vector<double> areas =
         influence_areas(framed, sharing, find_landings(framed, sharing), pieces, {1e-12, 0.005});
     CHECK(areas == std::vector<double>{10, 10, 10, 10, 0, 0, 10, 10});
+}
+
+TEST_CASE(
+    "a short stretch of floor around a bearing, by less than snap on both sides, is felt all the same") {
+    FramedLevel framed;
+    framed.members.resize(1);
+    framed.members[0].length = 8;
+    std::vector<std::pair<std::uint32_t, Bearing>> bearings(3);
+    for (std::uint32_t i = 0; i < 3; ++i) {
+        bearings[i].second.station = 4.0 * i;
+        bearings[i].second.on = {CarrierKind::column, i};
+    }
+    framed.bearings = Grouped<Bearing>::from_pairs(1, bearings);
+    framed.columns = {0, 1, 2};
+    Sharing sharing;
+    sharing.members = 1;
+    sharing.columns = 3;
+    FloorPieces pieces;
+    pieces.areas = {10};
+    pieces.within = {none};
+    pieces.beside = Grouped<Beside>::from_pairs(4, {{0, {0, 3.998, 4.004, true}}});
+    const std::vector<double> areas =
+        influence_areas(framed, sharing, find_landings(framed, sharing), pieces, {1e-12, 0.005});
+    CHECK(areas == std::vector<double>{10, 0, 10, 10});
 }
 
 TEST_CASE("a slab beyond an edge column that is set back is felt by it and by its neighbour on that side") {

@@ -99,6 +99,45 @@ TEST_CASE("far from the origin, where coordinates are coarse, force and moment s
     }
 }
 
+TEST_CASE("joined pieces stay within 1e-9 of their ordinates however coarse coordinates are, as is told") {
+    constexpr double far_noise = 7e-9; // at 1000 km
+    constexpr unsigned seed = 6;
+    INFO("seed ", seed);
+    std::mt19937 random(seed);
+    std::uniform_real_distribution<double> unit(-1, 1);
+    std::size_t joined = 0;
+    std::size_t kept = 0;
+    for (int round = 0; round < 200; ++round) {
+        const double bend = std::pow(10, -6 - 5 * std::abs(unit(random))); // from piece to piece
+        std::vector<LinePiece> pieces;
+        for (int i = 0; i < 40; ++i) {
+            pieces.push_back(
+                {0.02 * i, 0.02 * (i + 1), {1 + bend * unit(random), bend * unit(random), 0, 0, 0}});
+        }
+        double changed = 0;
+        const auto result = merged(pieces, far_noise, &changed);
+        REQUIRE(changed <= 1.0000001e-9);
+        for (double station = 0.001; station < 0.8; station += 0.002) {
+            REQUIRE(std::abs(intensity_at(result, station) - intensity_at(pieces, station)) <=
+                    changed + 1e-15);
+        }
+        joined += result.size() == 1 ? 1 : 0;
+        kept += result.size() > 30 ? 1 : 0;
+    }
+    CHECK(joined > 20);
+    CHECK(kept > 20);
+}
+
+TEST_CASE("an end that noise moved changes short pieces by no more than is told") {
+    double changed = 0;
+    const auto result = merged({linear(0, 1, 1, 1), linear(1 + 1e-9, 1.01, 7, 7)}, 7e-9, &changed);
+    REQUIRE(result.size() == 2);
+    const double off = std::abs(result[1].at(1.005) - 7);
+    CHECK(off > 1e-7); // 1e-9 m of 0.01 m
+    CHECK(off <= changed);
+    CHECK(changed < 1e-4);
+}
+
 TEST_CASE("loads that cancel leave nothing") {
     const auto result = merged({linear(0, 4, 2, 2), linear(1, 2, -2, -2)}, noise);
     REQUIRE(result.size() == 2);

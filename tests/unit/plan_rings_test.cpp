@@ -64,9 +64,28 @@ TEST_CASE("the sweep finds a ring's contact with itself exactly where looking at
         const bool expected = crosses_by_all_pairs(ring);
         crossing += expected ? 1 : 0;
         CHECK(contact.has_value() == expected);
+        if (contact) {
+            CHECK(contact->gap >= 0);
+            CHECK(contact->gap <= snap);
+        }
     }
     CHECK(crossing > 300);
     CHECK(crossing < 2700);
+}
+
+TEST_CASE("a ring that crosses itself has no gap there, one with a slit has the slit's width") {
+    for (const double angle : {0.0, 17.0, 42.08, 90.0}) {
+        CAPTURE(angle);
+        const Ring bow_tie = turned({{0, 0}, {6, 4}, {6, 0}, {0, 4}}, angle, {5e4, -2e4});
+        REQUIRE(self_contact(bow_tie, snap));
+        CHECK(self_contact(bow_tie, snap)->gap == 0);
+        const Ring slit =
+            turned({{0, 0}, {2, 0}, {2, 3}, {2.01, 3}, {2.004, 0.5}, {2.01, 0}, {4, 0}, {4, 6}, {0, 6}},
+                   angle, {5e4, -2e4});
+        REQUIRE(self_contact(slit, snap));
+        CHECK(self_contact(slit, snap)->gap == doctest::Approx(0.004).epsilon(1e-6));
+        CHECK_FALSE(self_contact(slit, 0.003));
+    }
 }
 
 TEST_CASE("rings of upright and level edges: combs, steps and slots") {

@@ -150,3 +150,44 @@ TEST_CASE("a bearing that only some variable cases would lift is named") {
 TEST_CASE("nothing lifts where all loads press") {
     CHECK(lifts_with_some_cases(support::takedown_of(support::footbridge)).empty());
 }
+
+namespace {
+
+/// A floor of two beams and an overhang of 2 m beyond the second, on columns; `share` of its deck.
+std::string overhanging(std::string_view share) {
+    std::string text = R"({
+  "runnel": "plan/1", "title": "Balcony", "units": {"length": "m", "force": "kN"},
+  "settings": {"share": ")";
+    text += share;
+    text += R"("},
+  "cases": [{"id": "dead", "kind": "dead"}, {"id": "live", "kind": "live"}, {"id": "wind", "kind": "other"}],
+  "columns": [{"id": "P", "at": [0, 0], "top": "floor"}, {"id": "Q", "at": [0, 5], "top": "floor"},
+              {"id": "R", "at": [6, 0], "top": "floor"}, {"id": "S", "at": [6, 5], "top": "floor"}],
+  "levels": [{"id": "floor", "elevation": 3,
+    "decks": [{"id": "D", "span": "one-way", "direction": 0, "outline": [[0, 0], [8, 0], [8, 5], [0, 5]]}],
+    "members": [{"id": "A", "role": "beam", "from": [0, 0], "to": [0, 5]},
+                {"id": "B", "role": "beam", "from": [6, 0], "to": [6, 5]}],
+    "area_loads": [{"case": "live", "q": 2},
+                   {"case": "wind", "q": 1, "outline": [[0, 0], [3, 0], [3, 5], [0, 5]]},
+                   {"case": "wind", "q": -1, "outline": [[3, 0], [6, 0], [6, 5], [3, 5]]}],
+    "line_loads": [{"case": "dead", "w": 3, "from": [1, 1], "to": [1, 4]}]}]})";
+    return text;
+}
+
+} // namespace
+
+TEST_CASE("how far sharing by halves moves the resultant is shown, and that statics leaves it in place") {
+    const std::string halves = single_spaced(account_of(support::takedown_of(overhanging("half")), {}));
+    // Live: 2 kN/m2 x 8 m x 5 m. Halves bring 30 kN to A and 30 + 20 to B: at 6 x 50 / 80 = 3.75 m instead of
+    // 4 m. The line load follows statics under every share. Wind presses as much as it lifts.
+    CHECK(halves.find("floor dead 9.00 9.00 9.00 0 0.225 yes") != std::string::npos);
+    CHECK(halves.find(" live 80.0 80.0 80.0 0.250 2.00 yes") != std::string::npos);
+    CHECK(halves.find(" wind 0.0 0.0 0.0 0 yes") != std::string::npos);
+    const std::string statics = single_spaced(account_of(support::takedown_of(overhanging("lever")), {}));
+    CHECK(statics.find(" live 80.0 80.0 80.0 0 2.00 yes") != std::string::npos);
+    const Units millimetres{LengthUnit::mm, ForceUnit::kN};
+    const std::string fine =
+        single_spaced(account_of(support::takedown_of(overhanging("half")), millimetres));
+    CHECK(fine.find("moved, mm") != std::string::npos);
+    CHECK(fine.find(" live 80.0 80.0 80.0 250 2.00 yes") != std::string::npos);
+}

@@ -76,6 +76,18 @@ TEST_CASE("what differs between shares is shown with its per cent, uplift in wor
     CHECK(holds(account, "0.500  new"));
     CHECK(holds(account, "3 others do not differ"));
     CHECK(holds(account, "4 others do not differ"));
+    CHECK(holds(account, "sorted by their\n  largest change as part of what the carrier takes"));
+}
+
+TEST_CASE("a plan without members has no tables of members to compare") {
+    Takedown takedown = takedown_of(support::footbridge);
+    ShareComparison shares = made_up(takedown);
+    CHECK(holds(account_of(takedown, shares), "Members, largest reaction"));
+    shares.members.clear();
+    const std::string account = account_of(takedown, shares);
+    CHECK(holds(account, "Columns and walls, at their feet\n    none differs"));
+    CHECK(!holds(account, "Members, all load on them"));
+    CHECK(!holds(account, "Members, largest reaction"));
 }
 
 TEST_CASE("the result lists every share with its values, and none for a share that stopped") {
@@ -155,16 +167,18 @@ TEST_CASE("a floor over two equal spans brings 3/8 and 10/8 of a span where halv
     CHECK(value(0, 2) == Approx(span * 3 / 8));
     CHECK(value(1, 0) == Approx(span));
     CHECK(value(1, 2) == Approx(span * 10 / 8));
-    CHECK(*shares.percent(compared_member(shares, 0).total, 2, live) == Approx(-25));
-    CHECK(*shares.percent(compared_member(shares, 1).total, 2, live) == Approx(25));
-    CHECK(*shares.percent(compared_member(shares, 1).largest_reaction, 2, live) == Approx(25));
-    CHECK(*shares.percent(compared_member(shares, 1).total, 1, live) == 0);
+    CHECK(*shares.percent(compared_member(shares, 0), &ComparedCarrier::total, {2, live}) == Approx(-25));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {2, live}) == Approx(25));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::largest_reaction, {2, live}) ==
+          Approx(25));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {1, live}) == 0);
+    CHECK(!shares.percent(shares.supports[0], &ComparedCarrier::largest_reaction, {2, live}));
     CHECK(shares.members[0].difference == Approx(0.25));
     // The plan's own is what the others are measured by.
     builder.plan.settings.share = Share::continuous;
     const ShareComparison other = compare_shares(builder.plan);
     CHECK(other.own == 2);
-    CHECK(*other.percent(compared_member(other, 0).total, 0, live) == Approx(100.0 / 3));
+    CHECK(*other.percent(compared_member(other, 0), &ComparedCarrier::total, {0, live}) == Approx(100.0 / 3));
     TakedownOptions options;
     options.share = Share::lever;
     CHECK(compare_shares(builder.plan, options).own == 1);
@@ -187,8 +201,9 @@ TEST_CASE("a plan that mixes shares is compared with its own mixture") {
     CHECK(!shares.runs[0].share);
     REQUIRE(shares.runs[0].complete);
     const std::size_t live = shares.cases - 1;
-    CHECK(*shares.percent(compared_member(shares, 1).total, 1, live) == doctest::Approx(-20));
-    CHECK(*shares.percent(compared_member(shares, 1).total, 3, live) == 0);
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {1, live}) ==
+          doctest::Approx(-20));
+    CHECK(*shares.percent(compared_member(shares, 1), &ComparedCarrier::total, {3, live}) == 0);
 }
 
 TEST_CASE("a share that errors stop says why, and the others are compared") {
@@ -200,7 +215,7 @@ TEST_CASE("a share that errors stop says why, and the others are compared") {
     for (const std::size_t run : {1U, 2U}) {
         CHECK(!shares.runs[run].complete);
         REQUIRE(!shares.runs[run].problems.empty());
-        CHECK(!shares.percent(shares.members[0].total, run, 0));
+        CHECK(!shares.percent(shares.members[0], &ComparedCarrier::total, {run, 0}));
     }
     CHECK(shares.members[0].difference == 0);
     const Takedown takedown = take_down(builder.plan);
