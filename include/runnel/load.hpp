@@ -64,8 +64,8 @@ struct LevelLoads {
     std::vector<DeckBalance> balance;
     /// Where a line stands for a curve that no polynomial of degree four is (strips on skew carriers), it
     /// keeps force and first moment and is off by no more than this, kN/m: the largest sum, by carrier, case
-    /// and source, of the bounds of all curves that add up at one station, and what joining lines changes.
-    /// 0: all exact, but for what the rounding of coordinates moves.
+    /// and source, of the bounds of all curves that add up at one station, what joining such lines changes
+    /// included. 0: all exact, but for what the rounding of coordinates moves.
     double curve_error = 0;
     std::vector<Problem> problems;
 };

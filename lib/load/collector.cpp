@@ -173,8 +173,8 @@ LevelLoads Collector::finish() {
             }
         }
     }
-    const double fitted = largest_curve_error(curve_errors_);
-    loads.curve_error = fitted > 0 ? fitted + changed : 0;
+    const double curve_error = largest_curve_error(curve_errors_);
+    loads.curve_error = curve_error > 0 ? curve_error + changed : 0;
     loads.problems = std::move(problems);
     return loads;
 }

@@ -112,7 +112,14 @@ class Fitter {
 public:
     Fitter(std::size_t count, const Functions& f) : f_(f), values_(count), coefficients_(count) {}
 
-    Tried fit(double from, double to) {
+    /// Only functions that `whole`, which this stretch is half of, did not fit within `bound`.
+    Tried fit(double from, double to, const Tried* whole = nullptr, double bound = 0) {
+        wanted_.clear();
+        for (std::size_t n = 0; n < values_.size(); ++n) {
+            if (whole == nullptr || whole->error[n] > bound) {
+                wanted_.push_back(n);
+            }
+        }
         static const Projection projection = projection_of(rule_of(most_points));
         for (auto& a : coefficients_) {
             a.fill(0);
@@ -120,7 +127,7 @@ public:
         const GaussRule& rule = rule_of(most_points);
         for (std::size_t i = 0; i < most_points; ++i) {
             f_(from + (to - from) * (1 + rule.node[i]) / 2, values_);
-            for (std::size_t n = 0; n < values_.size(); ++n) {
+            for (const std::size_t n : wanted_) {
                 for (std::size_t k = 0; k < most_points; ++k) {
                     coefficients_[n][k] += projection[i][k] * values_[n];
                 }
@@ -161,6 +168,7 @@ private:
 
     const Functions& f_;
     std::vector<double> values_;
+    std::vector<std::size_t> wanted_;                           ///< functions
     std::vector<std::array<double, most_points>> coefficients_; ///< Legendre's, by function
 };
 
@@ -194,7 +202,7 @@ QuarticFit fit_quartics(std::size_t count, const Functions& f) {
         tried[worst].half = tried.size();
         for (const auto& [start, end] : {std::pair(from, middle), std::pair(middle, to)}) {
             leaves.push_back(tried.size());
-            tried.push_back(fitter.fit(start, end));
+            tried.push_back(fitter.fit(start, end, &tried[worst], bound));
             std::push_heap(leaves.begin(), leaves.end(), better);
         }
     }
