@@ -66,7 +66,8 @@ std::vector<LineCarrier> carriers_in_touch(const FramedDeck& deck, std::span<con
     std::vector<LineCarrier> carriers;
     for (const LineCarrier& carrier : near) {
         const RingArea::Shared shared = area.shared_with(carrier.from - origin, carrier.to - origin, snap);
-        if (shared.inside > snap || shared.along_edge > snap) {
+        // An edge of a length of snap or two lies beside whatever ends there.
+        if (shared.inside > snap || shared.along_edge > 2 * snap) {
             carriers.push_back(carrier);
         }
     }

@@ -20,6 +20,18 @@ bool is_in_closed_ring(Point p, const Ring& ring, double reach) {
     return inside;
 }
 
+/// Inside one of a deck's openings, and not on its edge.
+bool is_in_opening(Point p, const FramedDeck& deck, double reach) {
+    return std::any_of(deck.openings.begin(), deck.openings.end(), [&](const Ring& opening) {
+        for (std::size_t i = 0; i < opening.size(); ++i) {
+            if (nearest_on({opening[i], opening[(i + 1) % opening.size()]}, p).distance <= reach) {
+                return false;
+            }
+        }
+        return is_in_closed_ring(p, opening, 0);
+    });
+}
+
 class SupportWatcher {
 public:
     SupportWatcher(LevelDraft& draft, const NearMisses& reported)
@@ -92,7 +104,8 @@ private:
         decks_.find(box_of(axis.from, axis.to).grown(draft_.reach()), found);
         return std::any_of(found.begin(), found.end(), [&](std::uint32_t i) {
             const FramedDeck& deck = draft_.level.decks[i];
-            if (column && deck.span != SpanKind::columns) {
+            if (column &&
+                (deck.span != SpanKind::columns || is_in_opening(axis.from, deck, draft_.reach()))) {
                 return false;
             }
             return is_in_closed_ring(axis.from, deck.outline, draft_.reach()) ||

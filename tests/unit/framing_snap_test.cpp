@@ -244,3 +244,16 @@ TEST_CASE("two columns at one point between the same levels are refused; one on 
     p.plan.columns[1].top = "roof";
     CHECK(codes(frame_plan(p.plan), Severity::error).empty());
 }
+
+TEST_CASE("a column in an opening of a deck on columns carries nothing, one on the opening's edge does") {
+    PlanBuilder p;
+    Deck& deck = p.deck("D", rectangle(0, 0, 6, 4));
+    deck.span = SpanKind::columns;
+    deck.openings = {rectangle(2, 1, 4, 3)};
+    p.column("C1", {3, 2}).column("C2", {4, 2}).column("C3", {0, 0});
+    const Framing framing = frame_plan(p.plan);
+    const Problem* problem = find_problem(framing, ProblemCode::carries_nothing);
+    REQUIRE(problem != nullptr);
+    CHECK(problem->ids == std::vector<std::string>{"C1"});
+    CHECK(codes(framing) == std::vector<std::string>{"carries-nothing"});
+}
