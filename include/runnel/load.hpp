@@ -73,7 +73,7 @@ struct LevelLoads {
 /// Turns a level's area, line and point loads and own weights into line and point loads on its carriers.
 ///
 /// Own weight of members counts here (case: the plan's self-weight case); that of columns and walls does not.
-/// Laws (tests/laws/load_test.cpp):
+/// Laws (tests/laws/pressure_test.cpp, strips_test.cpp):
 ///   (1) force     by deck and case, what the carriers get is what was put on
 ///   (2) exact     a uniform load on a straight-edged region is linear along its carrier, a plane of pressure
 ///                 between parabolas a quartic (tests/laws/pressure_test.cpp)

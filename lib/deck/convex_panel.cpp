@@ -70,7 +70,7 @@ std::vector<SideStretch> stretches_of(const Panel& panel, const PanelSide& side)
 class CellMaker {
 public:
     CellMaker(const PanelDeck& deck, const Panel& panel, RingArea& area, CarrierAxes& axes,
-              DoubtfulArea& way_leaves, Sharing& sharing)
+              GatheredArea& way_leaves, Sharing& sharing)
         : deck_(deck), panel_(panel), area_(area), axes_(axes), way_leaves_(way_leaves), sharing_(sharing) {
         may_leave_ = std::any_of(panel.outer.begin(), panel.outer.end(),
                                  [](const PanelEdge& edge) { return edge.carrier == none; });
@@ -214,7 +214,7 @@ private:
     const Panel& panel_;
     RingArea& area_;
     CarrierAxes& axes_;
-    DoubtfulArea& way_leaves_;
+    GatheredArea& way_leaves_;
     Sharing& sharing_;
     bool may_leave_ = false;            ///< a way to a carrier may leave the deck
     std::vector<const Ring*> openings_; ///< that may reach into the panel
@@ -354,7 +354,7 @@ PanelShape shape_of(const Panel& panel, std::uint32_t index, double snap) {
 }
 
 void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<const PanelSide> sides,
-                        RingArea& area, CarrierAxes& axes, DoubtfulArea& way_leaves, Sharing& sharing) {
+                        RingArea& area, CarrierAxes& axes, GatheredArea& way_leaves, Sharing& sharing) {
     CellMaker cells(deck, panel, area, axes, way_leaves, sharing);
     for (SideRegion& region : divide_among_sides(ring_of(panel), sides, deck.tolerance.noise)) {
         cells.add(sides[region.side], std::move(region.where));

@@ -15,7 +15,7 @@
 RUNNEL_NAMESPACE_BEGIN
 
 class RingArea;
-struct DoubtfulArea;
+struct GatheredArea;
 
 /// The axes in which what goes to each line carrier of a deck is described, one for each, entered in Sharing
 /// when first asked for: origin at the carrier's `from`, across = station, along = distance square to it,
@@ -80,6 +80,6 @@ struct PanelDeck {
 /// order and direction make no difference. Cost: O(n^2) for n sides, far below any diagram for the few that
 /// bays have.
 void share_convex_panel(const PanelDeck& deck, const Panel& panel, std::span<const PanelSide> sides,
-                        RingArea& area, CarrierAxes& axes, DoubtfulArea& way_leaves, Sharing& sharing);
+                        RingArea& area, CarrierAxes& axes, GatheredArea& way_leaves, Sharing& sharing);
 
 RUNNEL_NAMESPACE_END

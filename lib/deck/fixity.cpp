@@ -103,8 +103,8 @@ public:
     [[nodiscard]] const SetAside& set_aside() const { return set_aside_; }
 
     /// Appends the cells; `area` is the deck's, seen from its first corner.
-    DoubtfulArea share(const Plan& plan, const Framing& framing, RingArea& area, Sharing& sharing) const {
-        DoubtfulArea way_leaves;
+    GatheredArea share(const Plan& plan, const Framing& framing, RingArea& area, Sharing& sharing) const {
+        GatheredArea way_leaves;
         CarrierAxes axes(deck_.carriers, sharing);
         for (std::size_t p = 0; p < panels_.panels.size(); ++p) {
             if (!shapes_[p].sides.empty()) {

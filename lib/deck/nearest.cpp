@@ -11,29 +11,6 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
-void DoubtfulArea::add(double part, Point where, std::uint32_t carrier) {
-    if (part <= 0) {
-        return;
-    }
-    area += part;
-    if (part > largest) {
-        largest = part;
-        place = where;
-    }
-    if (carriers.empty() || carriers.back() != carrier) {
-        carriers.push_back(carrier);
-    }
-}
-
-void DoubtfulArea::add(const DoubtfulArea& other) {
-    area += other.area;
-    if (other.largest > largest) {
-        largest = other.largest;
-        place = other.place;
-    }
-    carriers.insert(carriers.end(), other.carriers.begin(), other.carriers.end());
-}
-
 double NearestCells::area() const {
     Sum sum;
     for (const Cell& cell : cells) {
@@ -273,7 +250,7 @@ void share_nearest(const Plan& plan, const Framing& framing, std::uint32_t level
 
 void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t deck_index,
                         const FramedDeck& part, double whole, std::span<const LineCarrier> carriers,
-                        DoubtfulArea& way_leaves, Sharing& sharing) {
+                        GatheredArea& way_leaves, Sharing& sharing) {
     const double snap = plan.settings.snap;
     const double noise = noise_of(framing.largest_coordinate);
     if (NearestCells bay; share_convex_bay(part, deck_index, carriers, {noise, snap}, bay)) {

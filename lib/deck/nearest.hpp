@@ -1,6 +1,7 @@
 #pragma once
 
 #include "deck/convex_bay.hpp"
+#include "deck/gathered_area.hpp"
 #include "deck/one_way.hpp"
 #include "geometry/faces.hpp"
 #include "geometry/grid_noding.hpp"
@@ -32,22 +33,11 @@ struct NearestCarriers {
 /// What may be missing of a deck's area by rounding alone, relative.
 inline constexpr double closed_within = 1e-10;
 
-/// A part of a split that asks for a warning: how much, and where its largest part lies.
-struct DoubtfulArea {
-    double area = 0;
-    double largest = 0;
-    Point place; ///< in the plan
-    std::vector<std::uint32_t> carriers;
-
-    void add(double part, Point where, std::uint32_t carrier);
-    void add(const DoubtfulArea& other);
-};
-
 /// Shares a part of deck `deck`, given as a copy of it with the part's outline and openings, of `area` m2,
 /// by the nearest of `carriers`: all of them count, whether or not they touch the part. What goes there
 /// straight across an opening or past the deck's edge is added to `way_leaves`, to be told once a deck.
 void share_part_nearest(const Plan& plan, const Framing& framing, std::uint32_t deck, const FramedDeck& part,
-                        double area, std::span<const LineCarrier> carriers, DoubtfulArea& way_leaves,
+                        double area, std::span<const LineCarrier> carriers, GatheredArea& way_leaves,
                         Sharing& sharing);
 
 /// Outline and openings as seen from the deck's first corner.
@@ -63,7 +53,7 @@ struct NearestCells {
     std::vector<StripAxes> axes;
     std::vector<Cell> cells;         ///< their `axes` count in the list above
     std::vector<Transfer> transfers; ///< one a cell
-    DoubtfulArea way_leaves;
+    GatheredArea way_leaves;
     bool sound = true; ///< false: rounding to the grid upset what lies beside what
 
     [[nodiscard]] double area() const;
@@ -116,7 +106,7 @@ void report_near_misses(const Plan& plan, const FramedLevel& level, std::uint32_
                         std::span<const LineCarrier> near, const NearestCarriers& carriers, RingArea& area,
                         Sharing& sharing);
 void report_way_leaves(const Plan& plan, const FramedLevel& level, std::uint32_t deck,
-                       const DoubtfulArea& doubtful, Sharing& sharing);
+                       const GatheredArea& doubtful, Sharing& sharing);
 void report_idle_members(const FramedLevel& level, std::uint32_t deck, std::span<const std::uint32_t> members,
                          Sharing& sharing);
 

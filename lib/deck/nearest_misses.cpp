@@ -78,18 +78,6 @@ private:
     double reach_;
 };
 
-std::string id_of(Carrier carrier, const Plan& plan, const FramedLevel& level) {
-    switch (carrier.kind) {
-    case CarrierKind::member:
-        return level.members[carrier.index].id;
-    case CarrierKind::wall:
-        return plan.walls[carrier.index].id;
-    case CarrierKind::column:
-        return plan.columns[carrier.index].id;
-    }
-    return {};
-}
-
 std::vector<NearMiss> find_misses(const Plan& plan, const FramedLevel& level, const FramedDeck& deck,
                                   std::span<const LineCarrier> near, const NearestCarriers& carriers,
                                   RingArea& area, const Sharing& sharing) {
@@ -131,7 +119,7 @@ void report_near_misses(const Plan& plan, const FramedLevel& level, std::uint32_
     const FramedDeck& deck = level.decks[deck_index];
     for (const NearMiss& miss : find_misses(plan, level, deck, near, carriers, area, sharing)) {
         const Carrier carrier = sharing.carrier(miss.carrier);
-        const std::string id = id_of(carrier, plan, level);
+        const std::string& id = carrier_id(plan, level, carrier);
         const bool column = carrier.kind == CarrierKind::column;
         Problem problem = problem_at(
             ProblemCode::near_miss, deck.origin, "decks",

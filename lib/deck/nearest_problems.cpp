@@ -14,19 +14,6 @@ namespace {
 
 constexpr std::size_t named_at_most = 12;
 
-std::string id_of(const Plan& plan, const FramedLevel& level, const Sharing& sharing, std::uint32_t number) {
-    const Carrier carrier = sharing.carrier(number);
-    switch (carrier.kind) {
-    case CarrierKind::member:
-        return level.members[carrier.index].id;
-    case CarrierKind::wall:
-        return plan.walls[carrier.index].id;
-    case CarrierKind::column:
-        return plan.columns[carrier.index].id;
-    }
-    return {};
-}
-
 std::string start_of(const FramedLevel& level, const FramedDeck& deck) {
     return "Level " + level.id + ", deck " + deck.id + ": ";
 }
@@ -61,7 +48,7 @@ void report_no_carrier(const Plan& plan, const Framing& framing, const Unsupport
 }
 
 void report_way_leaves(const Plan& plan, const FramedLevel& level, std::uint32_t deck_index,
-                       const DoubtfulArea& doubtful, Sharing& sharing) {
+                       const GatheredArea& doubtful, Sharing& sharing) {
     // Along each way `snap` was let pass; of area, what the drawing may be off by.
     if (doubtful.area <= plan.settings.snap * plan.settings.snap) {
         return;
@@ -72,7 +59,7 @@ void report_way_leaves(const Plan& plan, const FramedLevel& level, std::uint32_t
     carriers.erase(std::unique(carriers.begin(), carriers.end()), carriers.end());
     std::vector<std::string> ids{deck.id};
     for (std::size_t i = 0; i < carriers.size() && i < named_at_most; ++i) {
-        ids.push_back(id_of(plan, level, sharing, carriers[i]));
+        ids.push_back(carrier_id(plan, level, sharing.carrier(carriers[i])));
     }
     Problem problem = problem_at(
         ProblemCode::way_leaves_deck, deck.origin, "decks",

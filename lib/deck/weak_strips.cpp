@@ -1,3 +1,4 @@
+#include "deck/gathered_area.hpp"
 #include "deck/lost_loads.hpp"
 #include "deck/one_way.hpp"
 #include "deck/strip_beam.hpp"
@@ -33,41 +34,14 @@ bool is_overhang(const Bay& bay) {
     return (bay.low_carrier == none) != (bay.high_carrier == none);
 }
 
-/// An area that is weak in one way, gathered over the bays of a deck, and where its largest part lies.
-struct WeakArea {
-    double area = 0;
-    double largest = 0;
-    Point place;
-    std::vector<std::uint32_t> carriers;
-
-    void add(double part, Point where, std::uint32_t carrier) {
-        if (part <= 0) {
-            return;
-        }
-        area += part;
-        if (part > largest) {
-            largest = part;
-            place = where;
-        }
-        if (carrier != none) {
-            carriers.push_back(carrier);
-        }
-    }
-};
-
-std::string id_of(std::uint32_t carrier, const Plan& plan, const FramedLevel& level, const Sharing& sharing) {
-    const Carrier c = sharing.carrier(carrier);
-    return c.kind == CarrierKind::member ? level.members[c.index].id : plan.walls[c.index].id;
-}
-
-std::vector<std::string> ids_of(const FramedDeck& deck, WeakArea& weak, const Plan& plan,
+std::vector<std::string> ids_of(const FramedDeck& deck, GatheredArea& weak, const Plan& plan,
                                 const FramedLevel& level, const Sharing& sharing) {
     constexpr std::size_t most = 20;
     std::sort(weak.carriers.begin(), weak.carriers.end());
     weak.carriers.erase(std::unique(weak.carriers.begin(), weak.carriers.end()), weak.carriers.end());
     std::vector<std::string> ids{deck.id};
     for (std::size_t i = 0; i < weak.carriers.size() && i < most; ++i) {
-        ids.push_back(id_of(weak.carriers[i], plan, level, sharing));
+        ids.push_back(carrier_id(plan, level, sharing.carrier(weak.carriers[i])));
     }
     return ids;
 }
@@ -142,7 +116,7 @@ double long_overhang_area(const Bay& overhang, const Bay& back, double from, dou
 }
 
 void check_overhang(const Sharing& sharing, BaysBeside& beside, const Bay& overhang, double snap,
-                    WeakArea& alone, WeakArea& too_long) {
+                    GatheredArea& alone, GatheredArea& too_long) {
     const bool low_is_edge = overhang.low_carrier == none;
     const std::uint32_t carrier = low_is_edge ? overhang.high_carrier : overhang.low_carrier;
     const Point place = middle_of(overhang, sharing.axes[overhang.axes]);
@@ -182,13 +156,13 @@ std::vector<StripPiece> unsupported_pieces(const Sharing& sharing, std::size_t f
 /// Strips of a deck under lever or continuous that no statics holds (on one carrier alone, on a back span too
 /// short), or whose spans are so uneven that they cannot run on, or clamp the deck.
 struct UnstableStrips {
-    WeakArea alone, short_back, by_lever, clamped;
+    GatheredArea alone, short_back, by_lever, clamped;
 };
 
 /// The spans of a continuous strip beside one so short that it clamps them. Where such a span dies out the
 /// strip was cut, so that what is left is about as wide all along: the middle tells.
 void find_clamped(const Strip& strip, std::span<const StripCarrier> carriers, const StripAxes& axes,
-                  WeakArea& clamped) {
+                  GatheredArea& clamped) {
     const double low = strip.low.at(0.5);
     const double high = strip.high.at(0.5);
     const double level = (strip.from + strip.to) / 2;
@@ -255,9 +229,9 @@ void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t le
     const FramedDeck& deck = level.decks[deck_index];
     const double snap = plan.settings.snap;
     BaysBeside beside(sharing, first_bay);
-    WeakArea unsupported;
-    WeakArea alone;
-    WeakArea too_long;
+    GatheredArea unsupported;
+    GatheredArea alone;
+    GatheredArea too_long;
     for (std::size_t i = first_bay; i < sharing.bays.size(); ++i) {
         const Bay& bay = sharing.bays[i];
         if (is_unsupported(bay)) {
@@ -268,7 +242,8 @@ void find_weak_strips(const Plan& plan, const Framing& framing, std::uint32_t le
         }
     }
 
-    const auto report = [&](ProblemCode code, WeakArea& weak, const std::string& sentence, const char* hint) {
+    const auto report = [&](ProblemCode code, GatheredArea& weak, const std::string& sentence,
+                            const char* hint) {
         if (weak.area <= 0) {
             return;
         }

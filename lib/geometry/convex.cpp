@@ -81,19 +81,6 @@ Convex clipped(Convex polygon, const Convex& window, double noise) {
     return polygon;
 }
 
-Convex carve(Convex polygon, const Convex& window, double noise, std::vector<Convex>& outside) {
-    Convex left;
-    Convex right;
-    for (std::size_t i = 0; i < window.size() && !polygon.empty(); ++i) {
-        cut(polygon, window[i], window[(i + 1) % window.size()], noise, left, right);
-        if (!right.empty()) {
-            outside.push_back(right);
-        }
-        polygon.swap(left);
-    }
-    return polygon;
-}
-
 std::vector<Convex> convex_pieces(std::span<const Point> outline, std::span<const Ring> openings,
                                   double noise) {
     std::vector<Convex> pieces;

@@ -24,9 +24,6 @@ void cut(const Convex& polygon, Point a, Point b, double noise, Convex& left, Co
 /// The part of `polygon` inside `window`.
 [[nodiscard]] Convex clipped(Convex polygon, const Convex& window, double noise);
 
-/// The parts of `polygon` outside `window`, in convex pieces, appended to `outside`; returns the part inside.
-Convex carve(Convex polygon, const Convex& window, double noise, std::vector<Convex>& outside);
-
 /// A ring with openings in convex pieces (trapezoids), by one sweep. Any ring that does not cross itself.
 [[nodiscard]] std::vector<Convex> convex_pieces(std::span<const Point> outline,
                                                 std::span<const Ring> openings, double noise);

@@ -33,7 +33,7 @@ struct LevelEdge {
 /// Rings may touch each other and themselves. `noise` is what rounding did to what they share with pieces:
 /// an edge so near a piece's border lies on it, and the piece ends at the edge, on whichever side of the
 /// border that is; so that pieces on both sides of a border close. Coordinates need a local origin.
-/// Laws (tests/unit/geometry_voronoi_test.cpp): parts of pieces that cover the area add up to it.
+/// Laws (tests/unit/geometry_clip_test.cpp): parts of pieces that cover the area add up to it.
 class RingArea {
 public:
     /// `questions`: about how many pieces will be asked for.

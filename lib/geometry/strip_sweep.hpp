@@ -37,7 +37,7 @@ struct StripSweep {
 ///
 /// Coordinates should have a local origin; `noise` is what rounding did to them, in m. Rings may run either
 /// way round; openings may touch or overlap each other and the outline. Marks may reach outside, cross each
-/// other and the edges. Laws (tests/laws/strip_sweep_test.cpp):
+/// other and the edges. Laws (tests/laws/one_way_test.cpp, tests/unit/geometry_convex_test.cpp):
 ///   (1) cover    gap areas add up to the area, signed, whatever rounding does
 ///   (2) order    the result does not depend on the order of marks, openings and ring starts
 /// Cost: O((n + k) log n) for n edges and marks with k crossings.

@@ -1,5 +1,6 @@
 #include "path/findings.hpp"
 
+#include "deck/gathered_area.hpp"
 #include "geometry/basic.hpp"
 #include "path/member_names.hpp"
 #include "path/member_path.hpp"
@@ -37,18 +38,6 @@ double magnitude_of_all(std::span<const double> values) {
         sum += std::abs(value);
     }
     return sum;
-}
-
-std::string carrier_id(const Plan& plan, const FramedLevel& level, Carrier carrier) {
-    switch (carrier.kind) {
-    case CarrierKind::member:
-        return level.members[carrier.index].id;
-    case CarrierKind::wall:
-        return plan.walls[carrier.index].id;
-    case CarrierKind::column:
-        break;
-    }
-    return plan.columns[carrier.index].id;
 }
 
 std::string moment_text(double moment, Units units) {

@@ -27,10 +27,10 @@ namespace {
 /// carriers, and the two equations of equilibrium, as one dense system.
 std::vector<long double> dense_parts(const std::vector<double>& at, double u) {
     const std::size_t n = at.size();
-    const long double origin = at.front();
-    const long double size = at.back() - at.front();
-    const auto place = [&](double x) { return (x - origin) / size; };
-    const auto cube = [](long double x) { return x > 0 ? x * x * x / 6 : 0; };
+    const auto origin = static_cast<long double>(at.front());
+    const auto size = static_cast<long double>(at.back()) - origin;
+    const auto place = [&](double x) { return (static_cast<long double>(x) - origin) / size; };
+    const auto cube = [](long double x) { return x > 0 ? x * x * x / 6 : 0.0L; };
     std::vector<std::vector<long double>> m(n + 2, std::vector<long double>(n + 3, 0));
     for (std::size_t j = 0; j < n; ++j) {
         m[j][0] = 1;
@@ -75,7 +75,8 @@ std::vector<long double> parts_of(Share share, const std::vector<double>& at, do
     while (i + 2 < at.size() && at[i + 1] < u) {
         ++i;
     }
-    parts[i + 1] = (static_cast<long double>(u) - at[i]) / (static_cast<long double>(at[i + 1]) - at[i]);
+    const auto low = static_cast<long double>(at[i]);
+    parts[i + 1] = (static_cast<long double>(u) - low) / (static_cast<long double>(at[i + 1]) - low);
     parts[i] = 1 - parts[i + 1];
     return parts;
 }

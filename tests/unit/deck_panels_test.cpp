@@ -263,7 +263,8 @@ TEST_CASE("panels of random decks: cover, adjacency, order, motion") {
         const double area = deck_area(plain.level().decks[0]);
         worst = std::max(worst, std::abs(total_area(panels) - area) / area);
         CHECK(total_area(panels) == Approx(area).epsilon(1e-13));
-        CHECK(check_adjacency(panels) >= 0);
+        const auto shared = check_adjacency(panels);
+        CHECK((shared > 0 || panels.panels.size() == 1));
         most = std::max(most, panels.panels.size());
         for (HandFramed& other : std::vector<HandFramed>{build({}, true), build({37, {1e4, -3e3}}, false)}) {
             const std::vector<double> expected = areas(panels);
