@@ -62,7 +62,7 @@ void refuse_twin_columns(const Plan& plan, const Framing& framing, ProblemList& 
             const Height other = height_of(plan, framing, order[k]);
             if (distance(at, other_at) <= plan.settings.snap &&
                 std::max(own.foot, other.foot) < std::min(own.head, other.head)) {
-                pairs.push_back(std::minmax(order[i], order[k]));
+                pairs.emplace_back(std::min(order[i], order[k]), std::max(order[i], order[k]));
             }
         }
     }

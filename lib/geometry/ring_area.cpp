@@ -7,7 +7,7 @@
 
 RUNNEL_NAMESPACE_BEGIN
 
-RingArea::RingArea(std::vector<Ring> rings, double noise, std::size_t questions) : noise_(noise) {
+RingArea::RingArea(const std::vector<Ring>& rings, double noise, std::size_t questions) : noise_(noise) {
     std::vector<Box> boxes;
     for (const Ring& ring : rings) {
         for (std::size_t i = 0; i < ring.size(); ++i) {

@@ -37,7 +37,7 @@ struct LevelEdge {
 class RingArea {
 public:
     /// `questions`: about how many pieces will be asked for.
-    RingArea(std::vector<Ring> rings, double noise, std::size_t questions);
+    RingArea(const std::vector<Ring>& rings, double noise, std::size_t questions);
 
     enum class Place : std::uint8_t { inside, outside, edge };
     /// Where a box lies; `edge` if an edge may meet it.
