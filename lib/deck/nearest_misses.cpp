@@ -78,6 +78,7 @@ private:
     double reach_;
 };
 
+/// Carriers and columns come rising by number, as all lists of a level do.
 std::vector<NearMiss> find_misses(const Plan& plan, const FramedLevel& level, const FramedDeck& deck,
                                   std::span<const LineCarrier> near, const NearestCarriers& carriers,
                                   RingArea& area, const Sharing& sharing) {
@@ -89,8 +90,10 @@ std::vector<NearMiss> find_misses(const Plan& plan, const FramedLevel& level, co
         }
     };
     for (const LineCarrier& line : near) {
-        const bool carries = std::any_of(carriers.carriers.begin(), carriers.carriers.end(),
-                                         [&](const LineCarrier& own) { return own.number == line.number; });
+        const auto own = std::lower_bound(
+            carriers.carriers.begin(), carriers.carriers.end(), line.number,
+            [](const LineCarrier& carrier, std::uint32_t number) { return carrier.number < number; });
+        const bool carries = own != carriers.carriers.end() && own->number == line.number;
         const bool could = deck.span == SpanKind::two_way || line.number >= sharing.members;
         if (could && !carries) {
             note(finder.along(line));
@@ -101,8 +104,8 @@ std::vector<NearMiss> find_misses(const Plan& plan, const FramedLevel& level, co
         for (const std::uint32_t c : level.columns) {
             const Point at = plan.columns[c].at;
             const std::uint32_t number = sharing.number_of({CarrierKind::column, c});
-            const bool carries = std::find(carriers.point_number.begin(), carriers.point_number.end(),
-                                           number) != carriers.point_number.end();
+            const bool carries =
+                std::binary_search(carriers.point_number.begin(), carriers.point_number.end(), number);
             if (!carries && box_of(at, at).meets(beside)) {
                 note(finder.at(at, number));
             }
