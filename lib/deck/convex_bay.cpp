@@ -28,7 +28,8 @@ bool ConvexBay::close(double noise) {
         const double run = std::min(distance(corner[i], corner[j]), distance(corner[j], corner[next(j)]));
         runs_on[i] = std::abs(turn) * run <= in_line;
         const bool turns_back = runs_on[i] && dot(direction[i], direction[j]) < 0;
-        // The bisector of all but straight edges is hard to place by what they differ in.
+        // A bisector is off by rounding over the sine of the turn: flatter corners than this would cost more
+        // than five digits, and go to the diagram.
         constexpr double all_but_straight = 1e-5;
         if (turns_back || (!runs_on[i] && turn < all_but_straight)) {
             return false;

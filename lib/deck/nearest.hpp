@@ -30,7 +30,8 @@ struct NearestCarriers {
     std::vector<std::uint32_t> point_number; ///< of the columns in Sharing
 };
 
-/// What may be missing of a deck's area by rounding alone, relative.
+/// What a split may leave open of a deck's area, relative, before it is tried on another grid: a tenth of
+/// what the law of cover allows (check_cover).
 inline constexpr double closed_within = 1e-10;
 
 /// Shares a part of deck `deck`, given as a copy of it with the part's outline and openings, of `area` m2,

@@ -343,7 +343,9 @@ NearestCells nearest_cells(const NearestCarriers& carriers, const Grid& grid, co
         for (const std::uint32_t face : convex.faces) {
             maker.add_face(faces.half_edges[face], split.noise);
         }
-        constexpr double nothing_left = 1e-13; // of the area: no part of the deck lies outside them
+        // Of the area: what the sums of many bays lose by rounding. Below it no part of the deck lies outside
+        // the bays, and no diagram is needed.
+        constexpr double nothing_left = 1e-13;
         if (std::abs(maker.area() - split.whole) <= nothing_left * split.whole) {
             return maker.take();
         }

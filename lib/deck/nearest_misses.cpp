@@ -23,7 +23,7 @@ struct NearMiss {
 /// The least distance for which `holds`, between one for which it does not and one for which it does.
 template <class Holds>
 double least_for(double from, double to, Holds holds) {
-    constexpr double told_to = 1e-6; // of the lower bound
+    constexpr double told_to = 1e-6; // of the lower bound: messages give six figures
     const double enough = told_to * from;
     while (to - from > enough) {
         const double middle = (from + to) / 2;

@@ -110,8 +110,9 @@ public:
         for (const Point& p : deck.outline) {
             size = std::max(size, distance(p, deck.outline.front()));
         }
-        constexpr double trusted_digits =
-            1e-8; // of a deck's size: what an ill-conditioned border may be off by
+        // Of a deck's size: a border that doubles place badly keeps that of the diagram's grid, whose steps
+        // are about this long. Points that near to one are not judged.
+        constexpr double trusted_digits = 1e-8;
         // Carriers may have been fitted to deck edges, or edges to carriers, by `snap`.
         margin_ = trusted_digits * size + 4 * tolerance.noise + tolerance.snap;
         candidates_.reserve(carriers.size());
